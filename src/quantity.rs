@@ -1,0 +1,185 @@
+//! The names of what can be judged: symbol, unit, JSON name. Holds no values.
+//! Symbols follow ISO 26909 / ISO 2162 and EN 13906-1.
+
+use serde::{Deserialize, Serialize};
+
+use crate::units::Millimetres;
+
+/// One judged or reported quantity of a spring.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum Quantity {
+    /// Rate R in the drawing's window.
+    Rate,
+    /// Load F at a stated length.
+    LoadAt(Millimetres),
+    /// Free length L0.
+    FreeLength,
+    /// Solid length Lc.
+    SolidLength,
+    /// Share of the loading work not given back.
+    Hysteresis,
+    /// Length lost between the first and the last loading stroke.
+    Set,
+    /// Largest departure from the fitted line in the window, as a share of Fn.
+    Straightness,
+    /// Outside coil diameter De, by caliper.
+    OutsideDiameter,
+    /// Inside coil diameter Di, by caliper.
+    InsideDiameter,
+    /// Wire diameter d, by caliper.
+    WireDiameter,
+}
+
+/// The unit a quantity is reported in.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize)]
+pub enum Unit {
+    /// Newton.
+    #[serde(rename = "N")]
+    Newton,
+    /// Millimetre.
+    #[serde(rename = "mm")]
+    Millimetre,
+    /// Newton per millimetre.
+    #[serde(rename = "N/mm")]
+    NewtonPerMillimetre,
+    /// Megapascal.
+    #[serde(rename = "MPa")]
+    Megapascal,
+    /// Percent.
+    #[serde(rename = "%")]
+    Percent,
+}
+
+impl Quantity {
+    /// The key used in `result.json`, in `springs.csv` and under `[requirements]`.
+    pub const fn name(self) -> &'static str {
+        match self {
+            Self::Rate => "rate",
+            Self::LoadAt(_) => "load",
+            Self::FreeLength => "free_length",
+            Self::SolidLength => "solid_length",
+            Self::Hysteresis => "hysteresis",
+            Self::Set => "set",
+            Self::Straightness => "straightness",
+            Self::OutsideDiameter => "outside_diameter",
+            Self::InsideDiameter => "inside_diameter",
+            Self::WireDiameter => "wire_diameter",
+        }
+    }
+
+    /// The quantity with this name; `at` is the length a load is asked at.
+    pub fn from_name(name: &str, at: Option<Millimetres>) -> Option<Self> {
+        if let Some(length) = at {
+            return (name == "load").then_some(Self::LoadAt(length));
+        }
+        let plain = [
+            Self::Rate,
+            Self::FreeLength,
+            Self::SolidLength,
+            Self::Hysteresis,
+            Self::Set,
+            Self::Straightness,
+            Self::OutsideDiameter,
+            Self::InsideDiameter,
+            Self::WireDiameter,
+        ];
+        plain.into_iter().find(|quantity| quantity.name() == name)
+    }
+
+    /// The symbol printed in tables and charts.
+    pub const fn symbol(self) -> &'static str {
+        match self {
+            Self::Rate => "R",
+            Self::LoadAt(_) => "F",
+            Self::FreeLength => "L0",
+            Self::SolidLength => "Lc",
+            Self::Hysteresis => "hysteresis",
+            Self::Set => "set",
+            Self::Straightness => "straightness",
+            Self::OutsideDiameter => "De",
+            Self::InsideDiameter => "Di",
+            Self::WireDiameter => "d",
+        }
+    }
+
+    /// The words for it.
+    pub const fn title(self) -> &'static str {
+        match self {
+            Self::Rate => "rate",
+            Self::LoadAt(_) => "load at length",
+            Self::FreeLength => "free length",
+            Self::SolidLength => "solid length",
+            Self::Hysteresis => "hysteresis",
+            Self::Set => "set",
+            Self::Straightness => "straightness",
+            Self::OutsideDiameter => "outside diameter",
+            Self::InsideDiameter => "inside diameter",
+            Self::WireDiameter => "wire diameter",
+        }
+    }
+
+    /// The unit its values are in.
+    pub const fn unit(self) -> Unit {
+        match self {
+            Self::Rate => Unit::NewtonPerMillimetre,
+            Self::LoadAt(_) => Unit::Newton,
+            Self::Hysteresis | Self::Straightness => Unit::Percent,
+            _ => Unit::Millimetre,
+        }
+    }
+
+    /// The length a load is taken at.
+    pub const fn at_length(self) -> Option<Millimetres> {
+        match self {
+            Self::LoadAt(length) => Some(length),
+            _ => None,
+        }
+    }
+
+    /// Whether a caliper measures it, and not the bench.
+    pub const fn by_caliper(self) -> bool {
+        matches!(
+            self,
+            Self::OutsideDiameter | Self::InsideDiameter | Self::WireDiameter
+        )
+    }
+}
+
+impl Unit {
+    /// The symbol of the unit.
+    pub const fn symbol(self) -> &'static str {
+        match self {
+            Self::Newton => "N",
+            Self::Millimetre => "mm",
+            Self::NewtonPerMillimetre => "N/mm",
+            Self::Megapascal => "MPa",
+            Self::Percent => "%",
+        }
+    }
+}
+
+/// How grave a departure from a requirement is; the order is from least to gravest.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord, Serialize, Deserialize)]
+#[serde(rename_all = "lowercase")]
+pub enum Class {
+    /// Minor.
+    Minor,
+    /// Major; what a requirement is where nothing is stated.
+    Major,
+    /// Critical.
+    Critical,
+}
+
+impl Class {
+    /// Every class, gravest first.
+    pub const ALL: [Self; 3] = [Self::Critical, Self::Major, Self::Minor];
+
+    /// The word for it.
+    pub const fn word(self) -> &'static str {
+        match self {
+            Self::Minor => "minor",
+            Self::Major => "major",
+            Self::Critical => "critical",
+        }
+    }
+}

@@ -1,0 +1,134 @@
+//! Reading a file whole: path as written, SHA-256, UTF-8 text.
+
+use std::path::{Path, PathBuf};
+use std::sync::Arc;
+
+use serde::{Deserialize, Serialize};
+use sha2::Digest;
+
+/// Anything larger than this is no hand-written file; exports go by their own road.
+const LARGEST_HAND_WRITTEN: u64 = 4 << 20;
+
+/// What a judgement was made from: the path as it was written, and the SHA-256 of its bytes.
+#[derive(Clone, Debug, PartialEq, Eq, PartialOrd, Ord, Serialize, Deserialize)]
+pub struct InputFile {
+    /// What the file is for: `lot`, `drawing`, `rig`, `export`, `findings`.
+    pub role: String,
+    /// The path as written on the command line or in the file that names it.
+    pub path: String,
+    /// SHA-256 of the bytes, lower-case hexadecimal.
+    pub sha256: String,
+}
+
+/// A hand-written file, read whole.
+#[derive(Clone, Debug)]
+pub struct Source {
+    /// The path as written, made printable.
+    pub name: String,
+    /// Where the file lies; paths inside it are relative to this path's folder.
+    pub path: PathBuf,
+    /// The text, without a byte-order mark.
+    pub text: Arc<str>,
+    /// SHA-256 of the bytes, lower-case hexadecimal.
+    pub sha256: String,
+}
+
+/// Why a file could not be read as text.
+#[derive(Debug, thiserror::Error, miette::Diagnostic)]
+#[expect(missing_docs, reason = "the messages say it")]
+pub enum TextError {
+    #[error("cannot read `{name}`")]
+    #[diagnostic(
+        code(coilassay::text::read),
+        help("check the path; a path inside a file is relative to the folder of that file")
+    )]
+    Read {
+        name: String,
+        #[source]
+        cause: std::io::Error,
+    },
+    #[error("`{name}` is not UTF-8 text: byte {offset} does not belong to any character")]
+    #[diagnostic(code(coilassay::text::encoding), help("save the file as UTF-8"))]
+    Encoding { name: String, offset: usize },
+    #[error("`{name}` is empty")]
+    #[diagnostic(
+        code(coilassay::text::empty),
+        help("write the file, or name another one")
+    )]
+    Empty { name: String },
+    #[error("`{name}` holds {bytes} bytes, more than a hand-written file does")]
+    #[diagnostic(
+        code(coilassay::text::size),
+        help("is this an export? Name it under `exports` in the lot file")
+    )]
+    TooLarge { name: String, bytes: u64 },
+}
+
+impl Source {
+    /// Reads `path`; `as_written` is the path as the user wrote it.
+    ///
+    /// # Errors
+    /// [`TextError`] where the file is missing, empty, too large to be hand-written, or not UTF-8.
+    pub fn open(path: &Path, as_written: &str) -> Result<Self, TextError> {
+        let name = super::printable(as_written, &super::Alphabet::Any);
+        let read = |cause| TextError::Read {
+            name: name.clone(),
+            cause,
+        };
+        let bytes = std::fs::metadata(path).map_err(read)?.len();
+        if bytes > LARGEST_HAND_WRITTEN {
+            return Err(TextError::TooLarge { name, bytes });
+        }
+        let bytes = std::fs::read(path).map_err(read)?;
+        let sha256 = hex(&sha2::Sha256::digest(&bytes));
+        let body = bytes.strip_prefix(b"\xEF\xBB\xBF").unwrap_or(&bytes);
+        let text = std::str::from_utf8(body).map_err(|fault| TextError::Encoding {
+            name: name.clone(),
+            offset: fault.valid_up_to() + bytes.len() - body.len(),
+        })?;
+        if text.trim().is_empty() {
+            return Err(TextError::Empty { name });
+        }
+        Ok(Self {
+            name,
+            path: path.to_owned(),
+            text: text.into(),
+            sha256,
+        })
+    }
+
+    /// This file as a line of provenance.
+    pub fn input(&self, role: &str) -> InputFile {
+        InputFile {
+            role: role.to_owned(),
+            path: self.name.clone(),
+            sha256: self.sha256.clone(),
+        }
+    }
+}
+
+/// `path` as it stands in the folder of `file`, unless it is absolute.
+pub fn beside(file: &Path, path: &str) -> PathBuf {
+    file.parent().unwrap_or(Path::new("")).join(path)
+}
+
+/// Lower-case hexadecimal of some bytes.
+pub fn hex(bytes: &[u8]) -> String {
+    bytes.iter().map(|byte| format!("{byte:02x}")).collect()
+}
+
+/// A running SHA-256 for files that are read block by block.
+#[derive(Clone, Debug, Default)]
+pub struct Hasher(sha2::Sha256);
+
+impl Hasher {
+    /// Takes in the next block.
+    pub fn update(&mut self, block: &[u8]) {
+        self.0.update(block);
+    }
+
+    /// The digest, lower-case hexadecimal.
+    pub fn finish(self) -> String {
+        hex(&self.0.finalize())
+    }
+}

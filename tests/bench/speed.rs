@@ -1,0 +1,2 @@
+//! coilassay
+fn main() {}
