@@ -1,8 +1,31 @@
 //! coilassay judges coil springs from what a bench tester measured.
 //!
-//! Data flows down the list of rooms; a room imports only from those above it.
+//! Data flows down the list of rooms; a room imports only from those above it (`tests/it/rooms.rs` holds it to that).
+
+pub mod units;
+
+pub mod stats;
+
+pub mod text;
 
 pub mod quantity;
+
+pub mod drawing;
+
+pub mod rig;
+
+pub mod intake;
+
+pub mod curve;
+
+pub mod fit;
+
+pub mod characteristic;
+
+pub mod doubt;
+
+pub mod verdict;
+
+pub mod lot;
+
 pub mod record;
-pub mod text;
-pub mod units;

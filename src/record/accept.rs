@@ -5,6 +5,9 @@ use std::collections::BTreeMap;
 use serde::{Deserialize, Serialize};
 
 use super::spring::{LedgerFacts, SpringResult};
+use crate::curve::WindowOf;
+use crate::drawing::Policy;
+use crate::lot::{Decision, LotReason};
 use crate::quantity::{Class, Unit};
 use crate::text::InputFile;
 use crate::units::{Finite, Megapascals, Millimetres, Newtons, NewtonsPerMillimetre};
@@ -17,108 +20,13 @@ pub enum Kind {
     Accept,
 }
 
-/// The decision on a lot.
-#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize)]
-#[serde(rename_all = "lowercase")]
-pub enum Decision {
-    /// The plan accepts the lot.
-    Accepted,
-    /// The plan rejects the lot.
-    Rejected,
-    /// The measurements do not settle it.
-    Undecided,
-}
-
-/// How undecided springs count.
-#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize)]
-#[serde(rename_all = "lowercase")]
-pub enum Undecided {
-    /// They leave the lot undecided.
-    Report,
-    /// They count as conforming.
-    Pass,
-    /// They count as failing.
-    Fail,
-}
-
-/// Why the lot has the decision it has.
-#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
-#[serde(tag = "code", rename_all = "snake_case")]
-pub enum LotReason {
-    /// Proven failing springs reach the rejection number of a class.
-    ProvenFailures {
-        /// Class.
-        class: Class,
-        /// Springs proven failing.
-        failing: u32,
-        /// Rejection number.
-        reject: u32,
-    },
-    /// Even all undecided springs failing, the acceptance number holds.
-    WithinAcceptance {
-        /// Class.
-        class: Class,
-        /// Springs proven failing.
-        failing: u32,
-        /// Springs undecided.
-        undecided: u32,
-        /// Acceptance number.
-        accept: u32,
-    },
-    /// Undecided springs could turn the decision.
-    UndecidedMatter {
-        /// Class.
-        class: Class,
-        /// Springs proven failing.
-        failing: u32,
-        /// Springs undecided.
-        undecided: u32,
-        /// Acceptance number.
-        accept: u32,
-    },
-    /// Undecided springs count as conforming, as agreed.
-    UndecidedPass {
-        /// Class.
-        class: Class,
-        /// Springs undecided.
-        undecided: u32,
-    },
-    /// Undecided springs count as failing, as agreed; this rejection proves nothing.
-    UndecidedFail {
-        /// Class.
-        class: Class,
-        /// Springs proven failing.
-        failing: u32,
-        /// Springs undecided.
-        undecided: u32,
-        /// Rejection number.
-        reject: u32,
-    },
-    /// Fewer springs measured than the plan asks for.
-    Missing {
-        /// Class.
-        class: Class,
-        /// Springs measured.
-        measured: u32,
-        /// Springs the plan asks for.
-        wanted: u32,
-    },
-    /// A spring beyond the sample is proven failing.
-    FailureBeyondSample {
-        /// The spring.
-        spring: String,
-        /// Class of the failure.
-        class: Class,
-    },
-}
-
 /// What simple acceptance would have said, and whose risk it is.
 #[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
 pub struct SimpleAcceptance {
     /// Its decision.
     pub decision: Decision,
-    /// Springs it would call failing.
-    pub failing: u32,
+    /// Springs of the sample it would call failing.
+    pub failing: u64,
 }
 
 /// The lot, as its file states it.
@@ -212,7 +120,7 @@ pub struct DrawingFacts {
     /// `t95` (95 % conformance probability) or `U`.
     pub guard: String,
     /// How undecided springs count.
-    pub undecided_springs: Undecided,
+    pub undecided_springs: Policy,
 }
 
 /// Stresses at a load or length; theory, see the formulas in the report.
@@ -290,18 +198,6 @@ pub struct TheoryFacts {
     pub members: Vec<MemberFacts>,
 }
 
-/// What the window's bounds are.
-#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize)]
-#[serde(rename_all = "lowercase")]
-pub enum WindowOf {
-    /// Loads in N.
-    Load,
-    /// Deflections in mm from contact.
-    Deflection,
-    /// Lengths in mm.
-    Length,
-}
-
 /// The window of the rate, one for the whole lot.
 #[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
 pub struct WindowFacts {
@@ -350,15 +246,15 @@ pub struct ClassPlan {
     /// Letter of the plan an arrow led to.
     pub used_letter: Option<String>,
     /// Springs to measure.
-    pub sample_size: u32,
+    pub sample_size: u64,
     /// Acceptance number Ac.
-    pub accept: u32,
+    pub accept: u64,
     /// Rejection number Re.
-    pub reject: u32,
+    pub reject: u64,
     /// Springs proven failing in this class.
-    pub failing: u32,
+    pub failing: u64,
     /// Springs undecided for a requirement of this class.
-    pub undecided: u32,
+    pub undecided: u64,
     /// Probability that a lot exactly at the AQL is accepted, 0 … 1 (binomial).
     pub accepted_at_aql: Option<Finite>,
 }
@@ -373,11 +269,11 @@ pub struct PlanFacts {
     /// Code letter of the first class.
     pub code_letter: Option<String>,
     /// Sample size (the largest over the classes).
-    pub sample_size: u32,
+    pub sample_size: u64,
     /// Ac of the major class, or of the first one there is.
-    pub accept: u32,
+    pub accept: u64,
     /// Re of the same class.
-    pub reject: u32,
+    pub reject: u64,
     /// The plan of each class.
     pub classes: Vec<ClassPlan>,
 }

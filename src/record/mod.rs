@@ -5,14 +5,20 @@ mod accept;
 mod spring;
 
 pub use accept::{
-    AcceptRecord, Caution, ClassPlan, ConditionFacts, Decision, DrawingFacts, Kind, LotFacts,
-    LotReason, MemberFacts, OutputFile, PlanFacts, Provenance, RequirementFacts, RigFacts,
-    SimpleAcceptance, StressFacts, TheoryFacts, Undecided, WindowFacts, WindowOf,
+    AcceptRecord, Caution, ClassPlan, ConditionFacts, DrawingFacts, Kind, LotFacts, MemberFacts,
+    OutputFile, PlanFacts, Provenance, RequirementFacts, RigFacts, SimpleAcceptance, StressFacts,
+    TheoryFacts, WindowFacts,
 };
 pub use spring::{
-    Advice, BudgetFigure, CharacteristicResult, FindingResult, FitFacts, LackFacts, LedgerFacts,
-    Part, Reason, RepeatFacts, SetAside, SpringResult, Verdict,
+    BudgetFigure, CharacteristicResult, FindingResult, FitFacts, LackFacts, LedgerFacts,
+    RepeatFacts, SetAside, SpringResult,
 };
+
+pub use crate::characteristic::Part;
+pub use crate::curve::WindowOf;
+pub use crate::drawing::Policy as Undecided;
+pub use crate::lot::{Advice, Decision, LotReason};
+pub use crate::verdict::{Reason, Verdict};
 
 /// The version of the layout of `result.json`.
 pub const FORMAT: u32 = 1;

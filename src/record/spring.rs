@@ -2,74 +2,11 @@
 
 use serde::{Deserialize, Serialize};
 
+use crate::characteristic::Part;
+use crate::lot::Advice;
 use crate::quantity::{Class, Unit};
 use crate::units::{Finite, Millimetres, Newtons, NewtonsPerMillimetre};
-
-/// The verdict on a spring or on one of its characteristics.
-#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize)]
-#[serde(rename_all = "lowercase")]
-pub enum Verdict {
-    /// Proven inside the limits.
-    Conforms,
-    /// Proven outside a limit.
-    Fails,
-    /// Neither is proven.
-    Undecided,
-}
-
-/// Why a characteristic has the verdict it has, or no value.
-#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
-#[serde(tag = "code", rename_all = "snake_case")]
-pub enum Reason {
-    /// The value lies below the lower limit by more than the guard band.
-    BelowLower,
-    /// The value lies above the upper limit by more than the guard band.
-    AboveUpper,
-    /// The lower limit lies inside the guard band of the value.
-    LowerWithinUncertainty,
-    /// The upper limit lies inside the guard band of the value.
-    UpperWithinUncertainty,
-    /// The guard bands leave no room between the limits: this bench cannot prove the requirement.
-    GuardBandsMeet,
-    /// The export gives deflections only and this spring has no measured free length.
-    NoAbsoluteLength,
-    /// The curve does not span the window of the rate.
-    WindowNotReached,
-    /// The curve does not reach the test length.
-    LengthNotReached,
-    /// The drawing's stroke is not in the export.
-    StrokeNotRecorded,
-    /// There is no full cycle of loading and unloading.
-    NoFullCycle,
-    /// There is only one loading stroke.
-    OneLoadingStroke,
-    /// The rise to solid was not reached; the shortest length reached is given.
-    SolidNotReached {
-        /// The shortest length the curve reached.
-        shortest_mm: Millimetres,
-    },
-    /// The solid length is below the shortest length reached, which is inside the limit.
-    SolidBelowShortest {
-        /// The shortest length the curve reached.
-        shortest_mm: Millimetres,
-    },
-    /// Too few independent points to give an uncertainty, and the rig file states no repeatability.
-    UncertaintyUnknown,
-    /// The spring was not measured for this.
-    NotMeasured,
-    /// Listed under `not_inspected` in the lot file.
-    NotInspected,
-}
-
-/// Whether an uncertainty is this spring's own or shared by all springs of one rig set-up.
-#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize)]
-#[serde(rename_all = "lowercase")]
-pub enum Part {
-    /// Independent from spring to spring.
-    Own,
-    /// The same for all springs measured in this set-up.
-    Common,
-}
+use crate::verdict::{Reason, Verdict};
 
 /// One line of an uncertainty budget.
 #[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
@@ -223,39 +160,6 @@ pub struct FindingResult {
     pub text: String,
     /// Its class.
     pub class: Class,
-}
-
-/// What would settle an undecided characteristic.
-#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
-#[serde(tag = "do", rename_all = "snake_case")]
-pub enum Advice {
-    /// Repeating on this bench can settle it.
-    Repeat {
-        /// The characteristic.
-        name: String,
-        /// Length of a load.
-        at_length_mm: Option<Millimetres>,
-        /// Further measurements wanted.
-        times: u32,
-    },
-    /// Only a bench with a smaller uncertainty can settle it.
-    BetterBench {
-        /// The characteristic.
-        name: String,
-        /// Length of a load.
-        at_length_mm: Option<Millimetres>,
-        /// The largest expanded uncertainty that would settle it; `null` where the value lies on the limit.
-        expanded_uncertainty: Option<Finite>,
-        /// Its unit.
-        unit: Unit,
-    },
-    /// The characteristic must be measured first.
-    Measure {
-        /// The characteristic.
-        name: String,
-        /// Length of a load.
-        at_length_mm: Option<Millimetres>,
-    },
 }
 
 /// Everything concluded about one spring.

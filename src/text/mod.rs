@@ -1,13 +1,15 @@
 //! A file as read: its path as written, its SHA-256, its text, and the place a fault points at.
-//! Here: reading from disk, the excerpt a fault shows, opening TOML, making a foreign string printable.
+//! Here: reading from disk (whole, or block by block), the excerpt a fault shows, opening TOML, making a foreign string printable.
 //! Elsewhere: what a file means (`drawing`, `rig`, `intake`), writing (`cli`).
 
+mod blocks;
 mod excerpt;
 mod fault;
 mod printable;
 mod source;
 mod toml;
 
+pub use blocks::{Block, Blocks, Next, Tail};
 pub use excerpt::{Excerpt, Place};
 pub use fault::{Fault, Faults};
 pub use printable::{Alphabet, printable};

@@ -1,1 +1,13 @@
-//! tests
+//! The one test binary.
+#![expect(
+    clippy::unwrap_used,
+    clippy::panic,
+    clippy::indexing_slicing,
+    reason = "tests"
+)]
+
+mod fit_published;
+mod plan_published;
+mod published;
+mod stats_published;
+mod type_a_coverage;

@@ -1,0 +1,94 @@
+//! Hysteresis and set: what differs between strokes.
+
+use crate::curve::Curve;
+use crate::stats::StatsError;
+
+use super::budget::{Estimate, Line, Part, with_repeatability};
+use super::measure::{Absence, Setup};
+use super::scales;
+
+/// Hysteresis of the last full cycle, (loading work − unloading work) / loading work over the travel common to
+/// both strokes and before any rise to solid, in %.
+///
+/// # Errors
+/// [`StatsError`] from the coverage factor.
+pub(super) fn hysteresis(
+    setup: &Setup<'_>,
+    curve: &Curve,
+    residual_sd: Option<f64>,
+) -> Result<Result<Estimate, Absence>, StatsError> {
+    let contact_load = setup.rig.contact_load.get();
+    let cycles = curve.loading.len().min(curve.unloading.len());
+    let last = cycles
+        .checked_sub(1)
+        .and_then(|last| Some((curve.loading.get(last)?, curve.unloading.get(last)?)));
+    let Some((loading, unloading)) = last else {
+        return Ok(Err(Absence::NoFullCycle));
+    };
+    let common = || {
+        let from = curve
+            .contact(loading, contact_load)?
+            .u
+            .max(unloading.reach()?.0);
+        let end = loading.reach()?.1.min(unloading.reach()?.1);
+        let to = curve
+            .rise(loading, contact_load)
+            .map_or(end, |rise| rise.u.min(end));
+        let works = (loading.work(from, to)?, unloading.work(from, to)?);
+        (works.0 > 0.0).then_some((from, to, works))
+    };
+    let Some((from, to, (given, back))) = common() else {
+        return Ok(Err(Absence::NoFullCycle));
+    };
+    let percent = 100.0 * (given - back) / given;
+    let mean_load = given / (to - from);
+    let points = loading.between(from, to).len().max(1) as f64;
+    let scatter = residual_sd.map_or(0.0, |sd| 100.0 * sd / mean_load * (2.0 / points).sqrt());
+    let shown = vec![
+        Line::new("scatter", Part::Own, scatter),
+        Line::new(
+            "resolution of load",
+            Part::Own,
+            100.0 * setup.rig.force.resolution.get() / 6.0_f64.sqrt() / mean_load,
+        ),
+    ];
+    let mut lines = with_repeatability(shown, setup.repeatability("hysteresis"));
+    lines.push(Line::new(
+        "force reversibility",
+        Part::Common,
+        100.0 * scales::reversibility(setup.rig),
+    ));
+    Estimate::new(percent, lines).map(Ok)
+}
+
+/// Set: length at contact, first less last loading stroke, presetting strokes of the recording included, mm.
+///
+/// # Errors
+/// [`StatsError`] from the coverage factor.
+pub(super) fn set(
+    setup: &Setup<'_>,
+    curve: &Curve,
+) -> Result<Result<Estimate, Absence>, StatsError> {
+    let contact_load = setup.rig.contact_load.get();
+    let [first, .., last] = curve.loading.as_slice() else {
+        return Ok(Err(Absence::OneLoadingStroke));
+    };
+    let contacts = curve
+        .contact(first, contact_load)
+        .zip(curve.contact(last, contact_load));
+    let Some((first, last)) = contacts else {
+        return Ok(Err(Absence::WindowNotReached));
+    };
+    let set = last.u - first.u;
+    let shown = vec![
+        Line::new("contact", Part::Own, first.scatter.hypot(last.scatter)),
+        Line::new(
+            "resolution of travel",
+            Part::Own,
+            setup.rig.travel.resolution.get() / 6.0_f64.sqrt(),
+        ),
+    ];
+    let mut lines = with_repeatability(shown, setup.repeatability("set"));
+    lines.extend(scales::travel_scale(setup.rig, -set));
+    Estimate::new(set, lines).map(Ok)
+}

@@ -1,0 +1,314 @@
+//! Every characteristic of one spring, in the order of the drawing.
+
+use crate::curve::{Bounds, Contact, Curve, CurveError};
+use crate::drawing::Drawing;
+use crate::intake::Conditions;
+use crate::quantity::Quantity;
+use crate::rig::Rig;
+use crate::stats::StatsError;
+
+use super::budget::{Estimate, Line, Part, combine, with_repeatability};
+use super::length::{self, OwnFree, Solid};
+use super::rate::{self, RateFit};
+use super::{load, loops};
+
+/// What measuring needs to know besides the curve: the same for the whole lot.
+#[derive(Clone, Copy, Debug)]
+pub struct Setup<'a> {
+    /// The drawing.
+    pub drawing: &'a Drawing,
+    /// The rig.
+    pub rig: &'a Rig,
+    /// Conditions of the test.
+    pub conditions: Conditions,
+    /// The window.
+    pub bounds: Bounds,
+    /// Fn, N.
+    pub full_load: f64,
+    /// Standard uncertainty of the caliper by quantity, mm.
+    pub caliper: &'a [(&'static str, f64)],
+}
+
+impl Setup<'_> {
+    pub(super) fn repeatability(&self, of: &str) -> Option<f64> {
+        self.rig
+            .repeatability
+            .iter()
+            .find(|(name, _)| *name == of)
+            .map(|(_, stated)| *stated)
+    }
+
+    /// Contact on the first loading stroke after the presetting strokes of the recording.
+    pub(super) fn first_contact(&self, curve: &Curve) -> Option<Contact> {
+        let preset = usize::try_from(self.conditions.presetting_recorded).ok()?;
+        curve.contact(curve.loading.get(preset)?, self.rig.contact_load.get())
+    }
+
+    fn caliper(&self, of: Quantity) -> f64 {
+        self.caliper
+            .iter()
+            .find(|(name, _)| *name == of.name())
+            .map_or(0.0, |(_, standard)| *standard)
+    }
+}
+
+/// Why there is no value.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Absence {
+    /// Deflections only, and no free length of this spring's own.
+    NoAbsoluteLength,
+    /// The curve does not span the window.
+    WindowNotReached,
+    /// The curve does not reach the length.
+    LengthNotReached,
+    /// The stroke is not in the export.
+    StrokeNotRecorded,
+    /// No full cycle.
+    NoFullCycle,
+    /// One loading stroke only.
+    OneLoadingStroke,
+    /// Nothing measured it.
+    NotMeasured,
+}
+
+/// What is known of a characteristic.
+#[derive(Clone, Debug, PartialEq)]
+pub enum Measured {
+    /// A value.
+    Value(Estimate),
+    /// The true value lies below this one (a solid length that was not reached).
+    Below(Estimate),
+    /// No value.
+    Absent(Absence),
+}
+
+/// One characteristic.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Characteristic {
+    /// Which.
+    pub quantity: Quantity,
+    /// What is known of it.
+    pub measured: Measured,
+}
+
+/// All that one curve says.
+#[derive(Clone, Debug)]
+pub struct Measurement {
+    /// The fit of the rate.
+    pub fit: Option<RateFit>,
+    /// The characteristics, those of the drawing first and in its order.
+    pub characteristics: Vec<Characteristic>,
+    /// Origin of lengths in `u` on the judged stroke, mm; `None` where there are none.
+    pub origin: Option<f64>,
+}
+
+/// Why a spring cannot be measured.
+#[derive(Debug, thiserror::Error, miette::Diagnostic)]
+#[expect(missing_docs, reason = "the messages say it")]
+pub enum MeasureError {
+    #[error(transparent)]
+    #[diagnostic(transparent)]
+    Curve(#[from] CurveError),
+    #[error("the uncertainty of spring `{spring}` cannot be computed")]
+    #[diagnostic(
+        code(coilassay::characteristic::statistics),
+        help("a figure in the rig file or the export is far out of any usable size")
+    )]
+    Statistics {
+        spring: String,
+        #[source]
+        cause: StatsError,
+    },
+}
+
+/// Measures everything the drawing requires, and what informs beside it. `caliper` holds this spring's values by
+/// caliper, mm.
+///
+/// # Errors
+/// [`MeasureError`] where the curve is no usable one.
+pub fn measure(
+    setup: &Setup<'_>,
+    curve: &Curve,
+    caliper: &[(Quantity, f64)],
+) -> Result<Measurement, MeasureError> {
+    let by_caliper = |quantity: Quantity| {
+        caliper
+            .iter()
+            .find(|(known, _)| *known == quantity)
+            .map(|(_, value)| *value)
+    };
+    let own = by_caliper(Quantity::FreeLength).map(|value| OwnFree {
+        value,
+        standard: setup.caliper(Quantity::FreeLength),
+    });
+    let path = rate::judged(setup, curve);
+    let fit = match path {
+        Some(path) => rate::fit(setup, curve, path, own.map(|own| own.value))?,
+        None => Err(Absence::StrokeNotRecorded),
+    };
+    let spring = Spring {
+        setup,
+        curve,
+        fit: &fit,
+        own,
+    };
+    let failed = |cause| MeasureError::Statistics {
+        spring: curve.id.clone(),
+        cause,
+    };
+    let mut characteristics = Vec::new();
+    for quantity in wanted(setup.drawing) {
+        let measured = if quantity.by_caliper() {
+            let lines = vec![Line::new("gauge", Part::Common, setup.caliper(quantity))];
+            match by_caliper(quantity) {
+                Some(value) => Measured::Value(Estimate::new(value, lines).map_err(failed)?),
+                None => Measured::Absent(Absence::NotMeasured),
+            }
+        } else {
+            spring.measure(quantity).map_err(failed)?
+        };
+        characteristics.push(Characteristic { quantity, measured });
+    }
+    let origin = load::origin(setup, curve, own).map(|origin| origin.u);
+    Ok(Measurement {
+        fit: fit.ok(),
+        characteristics,
+        origin,
+    })
+}
+
+/// What is measured: the requirements in their order, then what informs.
+fn wanted(drawing: &Drawing) -> Vec<Quantity> {
+    let mut wanted: Vec<Quantity> = drawing
+        .requirements
+        .iter()
+        .map(|one| one.quantity)
+        .collect();
+    for informs in [
+        Quantity::Rate,
+        Quantity::FreeLength,
+        Quantity::Hysteresis,
+        Quantity::Set,
+    ] {
+        if !wanted.contains(&informs) {
+            wanted.push(informs);
+        }
+    }
+    wanted
+}
+
+struct Spring<'a> {
+    setup: &'a Setup<'a>,
+    curve: &'a Curve,
+    fit: &'a Result<RateFit, Absence>,
+    own: Option<OwnFree>,
+}
+
+impl Spring<'_> {
+    fn measure(&self, quantity: Quantity) -> Result<Measured, StatsError> {
+        let (setup, curve) = (self.setup, self.curve);
+        let residual_sd = self.fit.as_ref().ok().map(|fit| fit.line.residual_sd);
+        let found = match quantity {
+            Quantity::Rate => self.rate()?,
+            Quantity::LoadAt(length) => match rate::judged(setup, curve) {
+                Some(path) => {
+                    load::estimate(setup, curve, path, self.own, length.get(), residual_sd)?
+                }
+                None => Err(Absence::StrokeNotRecorded),
+            },
+            Quantity::FreeLength => match self.own {
+                Some(own) => Ok(length::by_gauge(own)?),
+                None => length::free(setup, curve)?,
+            },
+            Quantity::SolidLength => {
+                return Ok(match length::solid(setup, curve, self.own)? {
+                    Solid::Seen(estimate) => Measured::Value(estimate),
+                    Solid::Below(estimate) => Measured::Below(estimate),
+                    Solid::Absent(why) => Measured::Absent(why),
+                });
+            }
+            Quantity::Hysteresis => loops::hysteresis(setup, curve, residual_sd)?,
+            Quantity::Set => loops::set(setup, curve)?,
+            Quantity::Straightness => self.straightness()?,
+            Quantity::OutsideDiameter | Quantity::InsideDiameter | Quantity::WireDiameter => {
+                Err(Absence::NotMeasured)
+            }
+        };
+        Ok(found.map_or_else(Measured::Absent, Measured::Value))
+    }
+
+    fn rate(&self) -> Result<Result<Estimate, Absence>, StatsError> {
+        match self.fit {
+            Ok(fit) => {
+                rate::estimate(self.setup, self.curve, fit, self.own.map(|own| own.value)).map(Ok)
+            }
+            Err(why) => Ok(Err(*why)),
+        }
+    }
+
+    fn straightness(&self) -> Result<Result<Estimate, Absence>, StatsError> {
+        let fit = match self.fit {
+            Ok(fit) => fit,
+            Err(why) => return Ok(Err(*why)),
+        };
+        let scatter = Line::new(
+            "scatter",
+            Part::Own,
+            100.0 * fit.line.residual_sd / self.setup.full_load,
+        );
+        let lines = with_repeatability(vec![scatter], self.setup.repeatability("straightness"));
+        Estimate::new(100.0 * fit.straightness, lines).map(Ok)
+    }
+}
+
+/// The characteristics of repeated measurements of one spring, averaged one by one. A characteristic that one of
+/// them lacks is averaged over the others.
+///
+/// # Errors
+/// [`StatsError`] from the coverage factor.
+pub fn average(measurements: &[Measurement]) -> Result<Vec<Characteristic>, StatsError> {
+    let Some(first) = measurements.first() else {
+        return Ok(Vec::new());
+    };
+    let mut averaged = Vec::new();
+    for (place, characteristic) in first.characteristics.iter().enumerate() {
+        let all = || {
+            measurements
+                .iter()
+                .filter_map(|one| one.characteristics.get(place))
+                .map(|one| &one.measured)
+        };
+        let values: Vec<Estimate> = all()
+            .filter_map(|one| {
+                if let Measured::Value(estimate) = one {
+                    Some(estimate.clone())
+                } else {
+                    None
+                }
+            })
+            .collect();
+        let measured = match combine(&values)? {
+            Some(estimate) => Measured::Value(estimate),
+            None => lowest(all()).unwrap_or_else(|| characteristic.measured.clone()),
+        };
+        averaged.push(Characteristic {
+            quantity: characteristic.quantity,
+            measured,
+        });
+    }
+    Ok(averaged)
+}
+
+/// Of several bounds from above, the lowest.
+fn lowest<'a>(all: impl Iterator<Item = &'a Measured>) -> Option<Measured> {
+    let bounds = all.filter_map(|one| {
+        if let Measured::Below(estimate) = one {
+            Some(estimate)
+        } else {
+            None
+        }
+    });
+    bounds
+        .min_by(|a, b| a.value.total_cmp(&b.value))
+        .map(|estimate| Measured::Below(estimate.clone()))
+}

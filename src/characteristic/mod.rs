@@ -1,0 +1,18 @@
+//! One value with its uncertainty budget, per judged quantity of one spring.
+//! Here: which points make a value, and what makes it uncertain, own or common to the rig.
+//! Elsewhere: the curve itself (`curve`), limits and verdicts (`drawing`, `verdict`).
+
+mod budget;
+mod length;
+mod load;
+mod loops;
+mod measure;
+mod rate;
+mod scales;
+
+pub use budget::{Estimate, Line, Part, Uncertainty, combine};
+pub use length::OwnFree;
+pub use measure::{
+    Absence, Characteristic, MeasureError, Measured, Measurement, Setup, average, measure,
+};
+pub use rate::RateFit;

@@ -1,0 +1,304 @@
+//! From what the tester wrote to one spring's curve: empty-platen zero, frame compliance, strokes.
+
+use crate::drawing::Way;
+use crate::rig::{Compliance, Means, RawCurve, Rig};
+
+use super::contact::{self, Contact};
+use super::error::CurveError;
+use super::path::Path;
+use super::solid::{self, Rise};
+use super::strokes::split;
+
+/// What travel is measured from.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Frame {
+    /// `u` is minus the length: lengths are absolute.
+    Absolute,
+    /// `u` is a deflection from wherever the tester set zero.
+    Relative,
+}
+
+/// The load of the empty platen.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum Zero {
+    /// Read before contact and taken off every load.
+    Read {
+        /// Mean reading, N.
+        mean: f64,
+        /// Standard deviation of the mean, N.
+        standard: f64,
+        /// Readings.
+        count: usize,
+    },
+    /// The export starts in contact.
+    NotRead,
+}
+
+/// One spring's curve, corrected.
+#[derive(Clone, Debug)]
+pub struct Curve {
+    /// The spring.
+    pub id: String,
+    /// The export, as written.
+    pub export: String,
+    /// First and last line of the spring in the export.
+    pub lines: (u64, u64),
+    /// What travel is measured from.
+    pub frame: Frame,
+    /// Empty-platen load.
+    pub zero: Zero,
+    /// The loading strokes, in order.
+    pub loading: Vec<Path>,
+    /// The unloading strokes, in order.
+    pub unloading: Vec<Path>,
+    /// Smallest and largest load, N.
+    pub loads: (f64, f64),
+}
+
+impl Curve {
+    /// Contact on a stroke.
+    pub fn contact(&self, path: &Path, contact_load: f64) -> Option<Contact> {
+        contact::find(path, contact_load)
+    }
+
+    /// A first idea of the rate, N/mm, for plausibility only: no window, no uncertainty.
+    pub fn plain_rate(&self, contact_load: f64) -> Option<f64> {
+        let path = self.loading.last()?;
+        solid::plain_rate(path, self.contact(path, contact_load)?.u)
+    }
+
+    /// The rise to solid on a loading stroke.
+    pub fn rise(&self, path: &Path, contact_load: f64) -> Option<Rise> {
+        let contact = self.contact(path, contact_load)?;
+        let rate = solid::plain_rate(path, contact.u)?;
+        solid::rise(path, contact.u, rate)
+    }
+}
+
+/// Corrects one spring's raw curve by what the rig file says.
+///
+/// # Errors
+/// [`CurveError`] where the points are no spring's: no contact, wrong sign, wrong direction.
+pub fn correct(raw: &RawCurve, rig: &Rig) -> Result<Curve, CurveError> {
+    let site = Site {
+        raw,
+        last: raw.first_line + raw.load.len().saturating_sub(1) as u64,
+    };
+    let contact_load = rig.contact_load.get();
+    let mut u = site.travel(rig.means)?;
+    site.check_direction(&u, contact_load, rig.means)?;
+    let zero = empty_readings(&u, &raw.load, contact_load);
+    let offset = match zero {
+        Zero::Read { mean, .. } => mean,
+        Zero::NotRead => 0.0,
+    };
+    let load: Vec<f64> = raw.load.iter().map(|f| f - offset).collect();
+    if let Compliance::Measured { value, .. } = rig.frame {
+        let zeroed_at = if rig.means == Means::Deflection {
+            0.0
+        } else {
+            rig.zeroed_at_load
+        };
+        for (x, f) in u.iter_mut().zip(&load) {
+            *x -= value * (f - zeroed_at); // s = s_ind − C·F, and L = L_ind + C·(F − F_z)
+        }
+    }
+    let resolution = rig.travel.resolution.get();
+    let (mut loading, mut unloading) = (Vec::new(), Vec::new());
+    for stroke in split(&u, resolution) {
+        let path = Path::new(
+            &u,
+            &load,
+            stroke.points,
+            raw.first_line,
+            resolution,
+            stroke.way,
+        );
+        match stroke.way {
+            Way::Loading => loading.push(path),
+            Way::Unloading => unloading.push(path),
+        }
+    }
+    let loads = load
+        .iter()
+        .fold((f64::INFINITY, f64::NEG_INFINITY), |(low, high), f| {
+            (low.min(*f), high.max(*f))
+        });
+    if loading.is_empty() {
+        return Err(site.no_contact(loads.1 - loads.0, contact_load));
+    }
+    Ok(Curve {
+        id: raw.id.clone(),
+        export: raw.export.clone(),
+        lines: (raw.first_line, site.last),
+        frame: if rig.means == Means::Deflection {
+            Frame::Relative
+        } else {
+            Frame::Absolute
+        },
+        zero,
+        loading,
+        unloading,
+        loads,
+    })
+}
+
+struct Site<'a> {
+    raw: &'a RawCurve,
+    last: u64,
+}
+
+impl Site<'_> {
+    fn names(&self) -> (String, String, u64, u64) {
+        (
+            self.raw.id.clone(),
+            self.raw.export.clone(),
+            self.raw.first_line,
+            self.last,
+        )
+    }
+
+    fn no_contact(&self, rise: f64, contact: f64) -> CurveError {
+        let (spring, export, first, last) = self.names();
+        CurveError::NoContact {
+            spring,
+            export,
+            first,
+            last,
+            rise,
+            contact,
+        }
+    }
+
+    /// Travel as `u`, growing with compression.
+    fn travel(&self, means: Means) -> Result<Vec<f64>, CurveError> {
+        let (spring, export, first, last) = self.names();
+        let travel = &self.raw.travel;
+        match means {
+            Means::Deflection => Ok(travel.clone()),
+            Means::Length => match travel.iter().find(|length| **length < 0.0) {
+                Some(length) => Err(CurveError::NegativeLength {
+                    spring,
+                    export,
+                    first,
+                    last,
+                    length: *length,
+                }),
+                None => Ok(travel.iter().map(|length| -length).collect()),
+            },
+            Means::PlatenPosition { at_zero_gap: gap } => {
+                let above = travel.iter().any(|position| *position > gap);
+                let below = travel.iter().any(|position| *position < gap);
+                if above && below {
+                    return Err(CurveError::GapCrossed {
+                        spring,
+                        export,
+                        first,
+                        last,
+                        gap,
+                    });
+                }
+                Ok(travel
+                    .iter()
+                    .map(|position| -(position - gap).abs())
+                    .collect())
+            }
+        }
+    }
+
+    fn check_direction(&self, u: &[f64], contact: f64, means: Means) -> Result<(), CurveError> {
+        let loads = &self.raw.load;
+        let (Some(start), Some(from)) = (loads.first(), u.first()) else {
+            return Err(self.no_contact(0.0, contact));
+        };
+        let most = loads
+            .iter()
+            .zip(u)
+            .max_by(|a, b| a.0.total_cmp(b.0))
+            .unwrap_or((start, from));
+        let least = loads.iter().copied().fold(*start, f64::min);
+        let (rise, fall) = (most.0 - start, start - least);
+        let (spring, export, first, last) = self.names();
+        if fall > rise.max(contact) {
+            return Err(CurveError::LoadFalls {
+                spring,
+                export,
+                first,
+                last,
+                fall,
+            });
+        }
+        if rise <= contact {
+            return Err(self.no_contact(rise, contact));
+        }
+        if most.1 <= from {
+            let means = match means {
+                Means::Deflection => "a deflection",
+                Means::Length => "a length",
+                Means::PlatenPosition { .. } => "a platen position",
+            };
+            return Err(CurveError::WrongWay {
+                spring,
+                export,
+                first,
+                last,
+                means,
+            });
+        }
+        Ok(())
+    }
+}
+
+/// The empty-platen readings before first contact: points that lie more than one contact load's travel
+/// before the place where the first rise, taken back, starts. Fewer than three are none.
+fn empty_readings(u: &[f64], load: &[f64], contact: f64) -> Zero {
+    let Some(place) = rise_of(u, load, contact) else {
+        return Zero::NotRead;
+    };
+    let before: Vec<f64> = u
+        .iter()
+        .zip(load)
+        .take_while(|(_, f)| **f - place.base <= contact)
+        .filter(|(x, _)| **x < place.clear_of)
+        .map(|(_, f)| *f)
+        .collect();
+    let count = before.len();
+    match (
+        count >= 3,
+        crate::stats::mean(&before),
+        crate::stats::standard_deviation(&before),
+    ) {
+        (true, Some(mean), Some(sd)) => Zero::Read {
+            mean,
+            standard: sd / (count as f64).sqrt(),
+            count,
+        },
+        _ => Zero::NotRead,
+    }
+}
+
+struct FirstRise {
+    base: f64,
+    clear_of: f64,
+}
+
+fn rise_of(u: &[f64], load: &[f64], contact: f64) -> Option<FirstRise> {
+    let base = *load.first()?;
+    let place = load.iter().position(|f| f - base > contact)?;
+    let beyond = load
+        .iter()
+        .skip(place)
+        .position(|f| f - base > 6.0 * contact)
+        .map_or(load.len() - 1, |more| place + more.max(2))
+        .min(load.len() - 1);
+    let (f0, f1) = (load.get(place)?, load.get(beyond)?);
+    let (u0, u1) = (u.get(place)?, u.get(beyond)?);
+    let slope = (f1 - f0) / (u1 - u0);
+    if !(slope > 0.0 && slope.is_finite()) {
+        return None;
+    }
+    Some(FirstRise {
+        base,
+        clear_of: u0 - (f0 - base) / slope - contact / slope,
+    })
+}

@@ -1,0 +1,22 @@
+//! One spring's points after correction: contact, empty-platen zero, frame compliance, strokes, the
+//! window's bounds, the rise to solid, and the curve thinned for drawing.
+//! Inside this room travel is one coordinate `u` in mm that grows with compression: the deflection, or
+//! minus the length. Elsewhere: the fit (`fit`), what is judged (`characteristic`).
+
+mod contact;
+mod correct;
+mod error;
+mod path;
+mod reduced;
+mod solid;
+mod strokes;
+mod window;
+
+pub use contact::Contact;
+pub use correct::{Curve, Frame, Zero, correct};
+pub use error::CurveError;
+pub use path::{Node, Path, Side};
+pub use reduced::{Axis, Reduced, thin};
+pub use solid::Rise;
+pub use strokes::{Stroke, split};
+pub use window::{Bounds, WindowMiss, WindowOf, full_load, window_of};

@@ -1,0 +1,169 @@
+//! A stroke as a path of nodes in growing compression, dwell points averaged.
+
+use std::ops::Range;
+
+use crate::drawing::Way;
+
+/// Nodes averaged on either side when a crossing is looked for.
+const SMOOTH: usize = 2;
+
+/// Points of one dwell, averaged.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Node {
+    /// Travel, mm, growing with compression.
+    pub u: f64,
+    /// Load, N.
+    pub load: f64,
+    /// First line of the export.
+    pub first_line: u64,
+    /// Last line of the export.
+    pub last_line: u64,
+}
+
+/// Which side of the loop a path is.
+pub type Side = Way;
+
+/// A stroke's nodes in growing `u`.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Path {
+    /// The nodes.
+    pub nodes: Vec<Node>,
+    /// Loading or unloading.
+    pub side: Side,
+}
+
+impl Path {
+    /// The path of one stroke: `u` in mm, `load` in N; the point at index i stands on line `first_line + i`.
+    /// Consecutive points within half a `resolution` of travel are one dwell, so that sampling density does not weigh.
+    pub fn new(
+        u: &[f64],
+        load: &[f64],
+        points: Range<usize>,
+        first_line: u64,
+        resolution: f64,
+        side: Side,
+    ) -> Self {
+        let mut nodes: Vec<(Node, f64, f64)> = Vec::new(); // node with sums, its first u, its count
+        let start = points.start;
+        let stretch = u
+            .get(points.clone())
+            .unwrap_or(&[])
+            .iter()
+            .zip(load.get(points).unwrap_or(&[]));
+        for (offset, (x, f)) in stretch.enumerate() {
+            let line = first_line + (start + offset) as u64;
+            match nodes.last_mut() {
+                Some((node, first, count)) if (x - *first).abs() <= resolution / 2.0 => {
+                    node.u += x;
+                    node.load += f;
+                    node.last_line = line;
+                    *count += 1.0;
+                }
+                _ => nodes.push((
+                    Node {
+                        u: *x,
+                        load: *f,
+                        first_line: line,
+                        last_line: line,
+                    },
+                    *x,
+                    1.0,
+                )),
+            }
+        }
+        let mut nodes: Vec<Node> = nodes
+            .into_iter()
+            .map(|(node, _, count)| Node {
+                u: node.u / count,
+                load: node.load / count,
+                ..node
+            })
+            .collect();
+        if side == Way::Unloading {
+            nodes.reverse();
+        }
+        Self { nodes, side }
+    }
+
+    /// The travel at which the smoothed load first reaches `level`, in mm: loads averaged over five nodes and
+    /// made monotone, then interpolated. `None` where the stroke starts above the level or never reaches it.
+    pub fn crossing(&self, level: f64) -> Option<f64> {
+        let mut before: Option<(f64, f64)> = None;
+        for place in 0..self.nodes.len() {
+            let (u, load) = self.smoothed(place)?;
+            if load >= level {
+                let (u0, load0) = before?;
+                return Some(if load > load0 {
+                    u0 + (level - load0) / (load - load0) * (u - u0)
+                } else {
+                    u
+                });
+            }
+            if before.is_none_or(|(_, highest)| load > highest) {
+                before = Some((u, load));
+            }
+        }
+        None
+    }
+
+    /// Mean travel and load of the nodes around `place`; fewer near the ends, always as many on either side.
+    fn smoothed(&self, place: usize) -> Option<(f64, f64)> {
+        let reach = SMOOTH
+            .min(place)
+            .min(self.nodes.len().checked_sub(place + 1)?);
+        let around = self.nodes.get(place - reach..=place + reach)?;
+        let count = around.len() as f64;
+        Some((
+            around.iter().map(|node| node.u).sum::<f64>() / count,
+            around.iter().map(|node| node.load).sum::<f64>() / count,
+        ))
+    }
+
+    /// The nodes with `from ≤ u ≤ to`.
+    pub fn between(&self, from: f64, to: f64) -> Vec<Node> {
+        self.nodes
+            .iter()
+            .filter(|node| node.u >= from && node.u <= to)
+            .copied()
+            .collect()
+    }
+
+    /// Smallest and largest travel of the stroke, mm.
+    pub fn reach(&self) -> Option<(f64, f64)> {
+        let least = self.nodes.iter().map(|node| node.u).reduce(f64::min)?;
+        Some((
+            least,
+            self.nodes.iter().map(|node| node.u).fold(least, f64::max),
+        ))
+    }
+
+    /// Work over the travel `from` … `to` by the trapezium rule, N·mm; ends interpolated.
+    pub fn work(&self, from: f64, to: f64) -> Option<f64> {
+        let mut sum = 0.0;
+        let mut last = (from, self.load_at(from)?);
+        for node in self
+            .nodes
+            .iter()
+            .filter(|node| node.u > from && node.u < to)
+        {
+            sum += (node.u - last.0) * (node.load + last.1) / 2.0;
+            last = (node.u, node.load);
+        }
+        Some(sum + (to - last.0) * (self.load_at(to)? + last.1) / 2.0)
+    }
+
+    /// Load at travel `u` between its two neighbours, N; `None` outside the stroke.
+    pub fn load_at(&self, u: f64) -> Option<f64> {
+        self.nodes.windows(2).find_map(|pair| match pair {
+            [a, b] if a.u <= u && u <= b.u => {
+                let share = if b.u > a.u {
+                    (u - a.u) / (b.u - a.u)
+                } else {
+                    0.0
+                };
+                Some(a.load + share * (b.load - a.load))
+            }
+            _ => None,
+        })
+    }
+}

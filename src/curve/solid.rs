@@ -1,0 +1,67 @@
+//! The rise to solid at the end of a loading stroke.
+
+use super::path::Path;
+
+/// The tangent rate beyond which the coils are taken to lie on each other, over the rate of the stroke.
+const STEEP: f64 = 5.0;
+/// The travel over which a tangent is taken, as a share of the stroke.
+const TANGENT: f64 = 1.0 / 200.0;
+
+/// Where the rise to solid begins.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Rise {
+    /// Travel, mm.
+    pub u: f64,
+    /// Load there, N.
+    pub load: f64,
+    /// Travel over which the tangent was taken, mm.
+    pub tangent_over: f64,
+}
+
+/// A first idea of the stroke's rate, N/mm: the median of the tangents over equal pieces of travel after contact.
+pub(super) fn plain_rate(path: &Path, contact_u: f64) -> Option<f64> {
+    let (_, end) = path.reach()?;
+    let step = (end - contact_u) / 20.0;
+    if step <= 0.0 {
+        return None;
+    }
+    let mut slopes = Vec::new();
+    let mut ahead = path.nodes.iter().filter(|node| node.u >= contact_u);
+    let mut last = *ahead.next()?;
+    for node in ahead {
+        if node.u - last.u >= step {
+            slopes.push((node.load - last.load) / (node.u - last.u));
+            last = *node;
+        }
+    }
+    crate::stats::median(slopes)
+}
+
+/// The rise at the end of `path`, whose rate is about `rate` (N/mm); `None` where it was not reached.
+pub(super) fn rise(path: &Path, contact_u: f64, rate: f64) -> Option<Rise> {
+    let (_, end) = path.reach()?;
+    let over = TANGENT * (end - contact_u);
+    let nodes = &path.nodes;
+    let mut begin = None;
+    let mut ahead = nodes.len().checked_sub(1)?;
+    for place in (0..nodes.len().saturating_sub(1)).rev() {
+        let here = nodes.get(place)?;
+        while ahead > place + 1 && nodes.get(ahead - 1)?.u - here.u >= over {
+            ahead -= 1;
+        }
+        let there = nodes.get(ahead)?;
+        if there.load - here.load <= STEEP * rate * (there.u - here.u).max(over) {
+            // Too near the end of the stroke to tell: a tangent needs its length of travel.
+            if begin.is_none() && there.u - here.u < over {
+                continue;
+            }
+            break;
+        }
+        begin = Some(Rise {
+            u: here.u,
+            load: here.load,
+            tangent_over: over,
+        });
+    }
+    begin
+}

@@ -1,0 +1,133 @@
+//! What the drawing's window means on a curve: one window for the whole lot, fixed from the drawing.
+
+use serde::{Deserialize, Serialize};
+
+use crate::drawing::{Drawing, Window};
+use crate::quantity::Quantity;
+
+use super::correct::{Curve, Frame};
+use super::path::Path;
+
+/// What the window's bounds are.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize)]
+#[serde(rename_all = "lowercase")]
+pub enum WindowOf {
+    /// Loads in N.
+    Load,
+    /// Deflections in mm from contact.
+    Deflection,
+    /// Lengths in mm.
+    Length,
+}
+
+/// The window with its bounds in N or mm.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Bounds {
+    /// What the bounds are.
+    pub of: WindowOf,
+    /// Start, N or mm.
+    pub from: f64,
+    /// End, N or mm.
+    pub to: f64,
+}
+
+/// Why a window has no place on a curve.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum WindowMiss {
+    /// The stroke does not span it.
+    NotReached,
+    /// It is given in lengths, and the curve has none.
+    NoAbsoluteLength,
+}
+
+/// Fn in N, the load at the smallest permitted length Ln: as stated under `[rate_test] full_load`, else
+/// nominal rate (stated, or else theory's) times L0 − Ln.
+pub fn full_load(drawing: &Drawing) -> f64 {
+    if let Some(stated) = drawing.rate_test.full_load {
+        return stated;
+    }
+    let stated = drawing
+        .requirements
+        .iter()
+        .find(|one| one.quantity == Quantity::Rate)
+        .and_then(|one| one.limits.nominal);
+    stated.unwrap_or(drawing.theory.rate.get()) * travel_to_smallest(drawing)
+}
+
+fn travel_to_smallest(drawing: &Drawing) -> f64 {
+    let free = drawing
+        .members
+        .first()
+        .map_or(0.0, |member| member.free.nominal);
+    free - drawing.theory.smallest.get()
+}
+
+/// The window of `drawing` with its bounds in N or mm.
+pub fn window_of(drawing: &Drawing) -> Bounds {
+    match drawing.rate_test.window {
+        Window::FullLoad(from, to) => {
+            let full = full_load(drawing);
+            Bounds {
+                of: WindowOf::Load,
+                from: from * full,
+                to: to * full,
+            }
+        }
+        Window::Deflection(from, to) => {
+            let travel = travel_to_smallest(drawing);
+            Bounds {
+                of: WindowOf::Deflection,
+                from: from * travel,
+                to: to * travel,
+            }
+        }
+        Window::Lengths(from, to) => Bounds {
+            of: WindowOf::Length,
+            from,
+            to,
+        },
+    }
+}
+
+impl Bounds {
+    /// The window as travel on one stroke of `curve`, in mm of `u`. `free` is the spring's own measured free
+    /// length where the export gives none.
+    ///
+    /// # Errors
+    /// [`WindowMiss`]; the window is never shrunk to fit.
+    pub fn on(
+        &self,
+        curve: &Curve,
+        path: &Path,
+        contact_load: f64,
+        free: Option<f64>,
+    ) -> Result<(f64, f64), WindowMiss> {
+        let contact = || {
+            curve
+                .contact(path, contact_load)
+                .map(|contact| contact.u)
+                .ok_or(WindowMiss::NotReached)
+        };
+        let (from, to) = match self.of {
+            WindowOf::Load => {
+                let at = |level| path.crossing(level).ok_or(WindowMiss::NotReached);
+                (at(self.from)?, at(self.to)?)
+            }
+            WindowOf::Deflection => (contact()? + self.from, contact()? + self.to),
+            WindowOf::Length => {
+                let origin = match (curve.frame, free) {
+                    (Frame::Absolute, _) => 0.0,
+                    (Frame::Relative, Some(free)) => contact()? + free,
+                    (Frame::Relative, None) => return Err(WindowMiss::NoAbsoluteLength),
+                };
+                (origin - self.from, origin - self.to)
+            }
+        };
+        let (least, most) = path.reach().ok_or(WindowMiss::NotReached)?;
+        if from >= least && to <= most && from < to {
+            Ok((from, to))
+        } else {
+            Err(WindowMiss::NotReached)
+        }
+    }
+}

@@ -1,0 +1,177 @@
+//! Reads what the drawing requires, and holds it against the rest of the drawing.
+
+use crate::quantity::{Class, Quantity};
+use crate::text::Table;
+use crate::units::System;
+
+use super::limits::{CLASSES, Requirement, read_limits};
+use super::open::Arrangement;
+use super::terms::{Acceptance, Aqls, PlanTerms, RateTest, Window};
+
+/// The quantities stated under their own name, in the order they are judged and printed after the rate and loads.
+const PLAIN: [Quantity; 8] = [
+    Quantity::FreeLength,
+    Quantity::SolidLength,
+    Quantity::Hysteresis,
+    Quantity::Set,
+    Quantity::Straightness,
+    Quantity::OutsideDiameter,
+    Quantity::InsideDiameter,
+    Quantity::WireDiameter,
+];
+
+/// Reads `[requirements]`: rate first, loads from the longest length down, then the others.
+pub(super) fn read_requirements(
+    table: Table<'_>,
+    units: System,
+    arrangement: Option<Arrangement>,
+) -> Option<Vec<Requirement>> {
+    let mut requirements = Vec::new();
+    if table.has("rate") {
+        requirements.push(read_one(table.table("rate"), Quantity::Rate, units.rate())?);
+    }
+    let mut loads = Vec::new();
+    for load in table.tables("load") {
+        loads.push(read_load(load, units)?);
+    }
+    loads.sort_by(|a, b| length_of(b).total_cmp(&length_of(a)));
+    for pair in loads.windows(2) {
+        if let [a, b] = pair
+            && (length_of(a) - length_of(b)).abs() < 1e-9
+        {
+            table.fault(
+                &table.place("load"),
+                format!("two loads are required at {} mm", length_of(a)),
+                "state each test length once",
+            );
+            return None;
+        }
+    }
+    requirements.extend(loads);
+    for quantity in PLAIN {
+        if !table.has(quantity.name()) {
+            continue;
+        }
+        if quantity.by_caliper() && arrangement == Some(Arrangement::Nested) {
+            let what = format!(
+                "a {} of a nested set is not yet judged by this version",
+                quantity.title()
+            );
+            table.fault(
+                &table.place(quantity.name()),
+                what,
+                "judge the members on drawings of their own",
+            );
+            return None;
+        }
+        let scale = match quantity {
+            Quantity::Hysteresis | Quantity::Straightness => 1.0,
+            _ => units.length(),
+        };
+        requirements.push(read_one(table.table(quantity.name()), quantity, scale)?);
+    }
+    Some(requirements)
+}
+
+fn length_of(requirement: &Requirement) -> f64 {
+    requirement
+        .quantity
+        .at_length()
+        .map_or(0.0, crate::units::Millimetres::get)
+}
+
+fn read_load(table: Table<'_>, units: System) -> Option<Requirement> {
+    if !table.has("at_length") {
+        table.missing("at_length", "write the test length: at_length = 48.0");
+    }
+    let length = table.positive("at_length")?.value * units.length();
+    read_one(
+        table,
+        Quantity::LoadAt(length.try_into().ok()?),
+        units.force(),
+    )
+}
+
+fn read_one(table: Table<'_>, quantity: Quantity, scale: f64) -> Option<Requirement> {
+    let limits = read_limits(table, scale);
+    let class = if table.has("class") {
+        table.word("class", &CLASSES)
+    } else {
+        Some(Class::Major)
+    };
+    Some(Requirement {
+        quantity,
+        limits: limits?,
+        class: class?,
+    })
+}
+
+/// Test lengths and window lengths must lie between solid and free.
+pub(super) fn check_lengths(
+    root: Table<'_>,
+    requirements: &[Requirement],
+    test: &RateTest,
+    scale: f64,
+    free: f64,
+    solid: f64,
+) {
+    let shown = |length: f64| length / scale;
+    let inside = |length: f64| length < free && length > solid;
+    let between = format!(
+        "a test length lies between the solid length {:.3} and the free length {:.3}",
+        shown(solid),
+        shown(free)
+    );
+    let tables = root.table("requirements").tables("load");
+    for (requirement, table) in requirements
+        .iter()
+        .filter(|one| one.quantity.at_length().is_some())
+        .zip(tables)
+    {
+        let at = table
+            .positive("at_length")
+            .map_or(length_of(requirement), |at| at.value * scale);
+        if !inside(at) {
+            table.fault(
+                &table.place("at_length"),
+                format!("no load can be measured at {}", shown(at)),
+                between.clone(),
+            );
+        }
+    }
+    if let Window::Lengths(from, to) = test.window
+        && !(inside(from) && inside(to))
+    {
+        root.fault(
+            &root.table("rate_test").place("window"),
+            "the window reaches beyond the spring's travel",
+            between,
+        );
+    }
+}
+
+/// Every class that is required needs an AQL, unless it is zero-accept by nature.
+pub(super) fn check_classes(
+    root: Table<'_>,
+    requirements: &[Requirement],
+    acceptance: Option<&Acceptance>,
+) {
+    let Some(PlanTerms::Attributes {
+        aql: Aqls::ByClass(given),
+        ..
+    }) = acceptance.map(|terms| &terms.plan)
+    else {
+        return;
+    };
+    for class in Class::ALL {
+        let wanted = class != Class::Critical && requirements.iter().any(|one| one.class == class);
+        if wanted && !given.iter().any(|(known, _)| *known == class) {
+            let what = format!("requirements of class {} have no AQL", class.word());
+            root.fault(
+                &root.table("acceptance").place("plan"),
+                what,
+                format!("add {} = … to aql", class.word()),
+            );
+        }
+    }
+}

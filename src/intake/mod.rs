@@ -1,0 +1,10 @@
+//! The lot file as opened: which exports it names, who measured what, and what was found without the bench.
+//! Elsewhere: what an export says (`rig`), what follows from it (`curve` and below).
+
+mod exports;
+mod findings;
+mod open;
+
+pub use exports::{Export, natural_order, resolve};
+pub use findings::{Caliper, FindingsError, read_findings};
+pub use open::{Conditions, Finding, KEYS, Lot, NotInspected, Repeat, open};

@@ -1,0 +1,366 @@
+//! Opens a lot file.
+
+use std::collections::BTreeMap;
+use std::path::{Path, PathBuf};
+
+use jiff::civil::Date;
+
+use crate::drawing::{CLASSES, read_units};
+use crate::quantity::{Class, Quantity};
+use crate::rig::standard_of;
+use crate::text::{At, InputFile, Keys, Source, Table, read_toml};
+use crate::units::System;
+
+use super::exports::{Export, resolve};
+
+const INSTRUMENT: &[&str] = &["uncertainty", "k"];
+
+/// The keys a lot file may hold.
+#[rustfmt::skip] // keeps the list a list
+pub const KEYS: Keys = &[
+    ("", &["units", "drawing", "rig", "exports", "findings", "sample", "not_inspected", "lot", "conditions", "caliper", "repeat", "finding"]),
+    ("not_inspected", &["requirement", "at_length", "reason"]),
+    ("lot", &["number", "size", "supplier", "received", "inspector", "sample_drawn", "note", "concession", "supplier_values", "tags"]),
+    ("lot.tags", &["*"]),
+    ("conditions", &["temperature", "presetting_strokes", "presetting_recorded"]),
+    ("caliper", &["free_length", "outside_diameter", "inside_diameter", "wire_diameter"]),
+    ("caliper.free_length", INSTRUMENT),
+    ("caliper.outside_diameter", INSTRUMENT),
+    ("caliper.inside_diameter", INSTRUMENT),
+    ("caliper.wire_diameter", INSTRUMENT),
+    ("repeat", &["spring", "export", "reason", "invalid"]),
+    ("finding", &["spring", "class", "text"]),
+];
+
+/// Conditions of the test.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Conditions {
+    /// °C.
+    pub temperature: Option<f64>,
+    /// Strokes made before the recording.
+    pub presetting_strokes: Option<u64>,
+    /// Loading strokes at the start of each export that are presetting.
+    pub presetting_recorded: u64,
+}
+
+/// A repeated measurement.
+#[derive(Clone, Debug)]
+pub struct Repeat {
+    /// The spring, as written.
+    pub spring: String,
+    /// Its export.
+    pub export: Export,
+    /// Why it was taken.
+    pub reason: String,
+    /// Why the earlier measurements of this spring do not count, where they do not.
+    pub invalid: Option<String>,
+}
+
+/// Something seen.
+#[derive(Clone, Debug)]
+pub struct Finding {
+    /// The spring, as written.
+    pub spring: At<String>,
+    /// Class.
+    pub class: Class,
+    /// What was seen.
+    pub text: String,
+}
+
+/// A requirement that was not inspected.
+#[derive(Clone, Debug)]
+pub struct NotInspected {
+    /// Which.
+    pub quantity: Quantity,
+    /// Why.
+    pub reason: String,
+}
+
+/// A lot file, opened and free of faults.
+#[derive(Clone, Debug)]
+pub struct Lot {
+    /// The file.
+    pub source: Source,
+    /// The drawing: path as written, and where it lies.
+    pub drawing: (String, PathBuf),
+    /// The rig file.
+    pub rig: (String, PathBuf),
+    /// The exports, in natural order of their names.
+    pub exports: Vec<Export>,
+    /// The caliper findings file.
+    pub findings_file: Option<(String, PathBuf)>,
+    /// Which springs form the sample, in order, where the file says so.
+    pub sample: Vec<At<String>>,
+    /// What was not inspected.
+    pub not_inspected: Vec<NotInspected>,
+    /// Lot number.
+    pub number: String,
+    /// Springs in the lot.
+    pub size: At<u64>,
+    /// Supplier.
+    pub supplier: Option<String>,
+    /// Date received.
+    pub received: Option<Date>,
+    /// Inspector.
+    pub inspector: Option<String>,
+    /// How the sample was drawn.
+    pub sample_drawn: Option<String>,
+    /// A note to print.
+    pub note: Option<String>,
+    /// Concession.
+    pub concession: Option<String>,
+    /// The supplier's own values.
+    pub supplier_values: Option<String>,
+    /// Free tags.
+    pub tags: BTreeMap<String, String>,
+    /// Conditions.
+    pub conditions: Conditions,
+    /// Standard uncertainty of the caliper by quantity, mm.
+    pub caliper: Vec<(&'static str, f64)>,
+    /// Repeats.
+    pub repeats: Vec<Repeat>,
+    /// Findings.
+    pub findings: Vec<Finding>,
+}
+
+impl Lot {
+    /// The lot file as a line of provenance.
+    pub fn input(&self) -> InputFile {
+        self.source.input("lot")
+    }
+}
+
+/// Opens the lot file at `path`, written as `as_written`.
+///
+/// # Errors
+/// A report of every fault in the file.
+pub fn open(path: &Path, as_written: &str) -> miette::Result<Lot> {
+    let source = Source::open(path, as_written)?;
+    Ok(read_toml(&source, KEYS, |root| read(root, &source))?)
+}
+
+fn read(root: Table<'_>, source: &Source) -> Option<Lot> {
+    let units = read_units(root)?;
+    let drawing = named_file(root, "drawing", source);
+    let rig = named_file(root, "rig", source);
+    let exports = read_exports(root, source);
+    let head = root.table("lot");
+    let number = head.required_text(
+        "number",
+        "write the lot number under [lot], in quotes: number = \"0044\"",
+    );
+    if !head.has("size") {
+        head.missing("size", "write how many springs the lot holds: size = 1200");
+    }
+    let size = head.whole("size").filter(|size| at_least_one(head, size));
+    let repeats = read_all(root, "repeat", |table| read_repeat(table, source));
+    let findings = read_all(root, "finding", read_finding);
+    let not_inspected = read_all(root, "not_inspected", |table| {
+        read_not_inspected(table, units)
+    });
+    let caliper = read_caliper(root.table("caliper"), units);
+    let conditions = read_conditions(root.table("conditions"));
+    let received = if head.has("received") {
+        Some(head.date("received")?.value)
+    } else {
+        None
+    };
+    Some(Lot {
+        source: source.clone(),
+        drawing: drawing?,
+        rig: rig?,
+        exports: exports?,
+        findings_file: if root.has("findings") {
+            Some(named_file(root, "findings", source)?)
+        } else {
+            None
+        },
+        sample: root.raw_texts("sample"),
+        not_inspected: not_inspected?,
+        number: number?,
+        size: size?,
+        supplier: head.text("supplier"),
+        received,
+        inspector: head.text("inspector"),
+        sample_drawn: head.text("sample_drawn"),
+        note: head.text("note"),
+        concession: head.text("concession"),
+        supplier_values: head.text("supplier_values"),
+        tags: head.table("tags").all_texts().into_iter().collect(),
+        conditions: conditions?,
+        caliper: caliper?,
+        repeats: repeats?,
+        findings: findings?,
+    })
+}
+
+fn at_least_one(head: Table<'_>, size: &At<u64>) -> bool {
+    let fine = size.value >= 1;
+    if !fine {
+        head.fault(
+            &size.span,
+            "a lot of no springs cannot be judged",
+            "write how many springs the lot holds",
+        );
+    }
+    fine
+}
+
+fn read_all<T>(
+    root: Table<'_>,
+    key: &str,
+    read: impl Fn(Table<'_>) -> Option<T>,
+) -> Option<Vec<T>> {
+    let all: Vec<Option<T>> = root.tables(key).into_iter().map(read).collect();
+    all.into_iter().collect()
+}
+
+fn named_file(root: Table<'_>, key: &str, source: &Source) -> Option<(String, PathBuf)> {
+    if !root.has(key) {
+        root.missing(
+            key,
+            format!("write {key} = \"…\": a path relative to this file"),
+        );
+    }
+    let written = root.raw_text(key)?.value;
+    let path = crate::text::beside(&source.path, &written);
+    Some((written, path))
+}
+
+fn read_exports(root: Table<'_>, source: &Source) -> Option<Vec<Export>> {
+    let patterns = root.raw_texts("exports");
+    if patterns.is_empty() {
+        root.missing("exports", "write exports = [\"springs/*.csv\"]");
+        return None;
+    }
+    let mut exports: Vec<Export> = Vec::new();
+    for pattern in &patterns {
+        match resolve(&source.path, &pattern.value) {
+            Ok(found) => exports.extend(
+                found
+                    .into_iter()
+                    .filter(|one| !exports.iter().any(|known| known.path == one.path))
+                    .collect::<Vec<_>>(),
+            ),
+            Err(why) => root.fault(
+                &pattern.span,
+                why,
+                "paths are relative to this file; * stands for any part of a name",
+            ),
+        }
+    }
+    Some(exports)
+}
+
+fn required(table: Table<'_>, keys: &[&str], help: &str) {
+    for key in keys {
+        if !table.has(key) {
+            table.missing(key, help);
+        }
+    }
+}
+
+fn read_repeat(table: Table<'_>, source: &Source) -> Option<Repeat> {
+    required(
+        table,
+        &["spring", "export", "reason"],
+        "a repeat states spring, export and reason, each in quotes",
+    );
+    let written = table.raw_text("export");
+    let spring = table.raw_text("spring");
+    let reason = table.text("reason");
+    let written = written?.value;
+    Some(Repeat {
+        spring: spring?.value,
+        export: Export {
+            path: crate::text::beside(&source.path, &written),
+            written,
+        },
+        reason: reason?,
+        invalid: table.text("invalid"),
+    })
+}
+
+fn read_finding(table: Table<'_>) -> Option<Finding> {
+    required(
+        table,
+        &["spring", "class", "text"],
+        "a finding states spring, class and text",
+    );
+    let (spring, class, text) = (
+        table.raw_text("spring"),
+        table.word("class", &CLASSES),
+        table.text("text"),
+    );
+    Some(Finding {
+        spring: spring?,
+        class: class?,
+        text: text?,
+    })
+}
+
+fn read_not_inspected(table: Table<'_>, units: System) -> Option<NotInspected> {
+    required(
+        table,
+        &["requirement", "reason"],
+        "say which requirement was not inspected, and why",
+    );
+    let at = table
+        .positive("at_length")
+        .and_then(|at| (at.value * units.length()).try_into().ok());
+    let name = table.raw_text("requirement")?;
+    let quantity = Quantity::from_name(&name.value, at);
+    if quantity.is_none() {
+        table.fault(
+            &name.span,
+            format!("\"{}\" names no requirement", name.value),
+            "write it as in the drawing: rate, free_length …; a load needs at_length too",
+        );
+    }
+    Some(NotInspected {
+        quantity: quantity?,
+        reason: table.text("reason")?,
+    })
+}
+
+fn read_caliper(table: Table<'_>, units: System) -> Option<Vec<(&'static str, f64)>> {
+    let mut stated = Vec::new();
+    for quantity in [
+        Quantity::FreeLength,
+        Quantity::OutsideDiameter,
+        Quantity::InsideDiameter,
+        Quantity::WireDiameter,
+    ] {
+        if table.has(quantity.name()) {
+            let help = "write outside_diameter = { uncertainty = 0.02, k = 2 }";
+            stated.push((
+                quantity.name(),
+                standard_of(table.table(quantity.name()), help)? * units.length(),
+            ));
+        }
+    }
+    Some(stated)
+}
+
+fn read_conditions(table: Table<'_>) -> Option<Conditions> {
+    let temperature = table.number("temperature");
+    if let Some(degrees) = &temperature
+        && !(-100.0..=400.0).contains(&degrees.value)
+    {
+        table.fault(
+            &degrees.span,
+            format!("{} °C is no test temperature", degrees.value),
+            "write the temperature in °C",
+        );
+        return None;
+    }
+    Some(Conditions {
+        temperature: temperature.map(|degrees| degrees.value),
+        presetting_strokes: table
+            .whole("presetting_strokes")
+            .map(|strokes| strokes.value),
+        presetting_recorded: table
+            .whole("presetting_recorded")
+            .map_or(0, |strokes| strokes.value),
+    })
+}

@@ -1,0 +1,399 @@
+//! The decision on a lot.
+
+use serde::{Deserialize, Serialize};
+
+use crate::drawing::Policy;
+use crate::quantity::Class;
+use crate::verdict::{Overall, Verdict};
+
+use super::terms::ClassTerms;
+
+/// The decision on a lot.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize)]
+#[serde(rename_all = "lowercase")]
+pub enum Decision {
+    /// The plan accepts the lot.
+    Accepted,
+    /// The plan rejects the lot.
+    Rejected,
+    /// The measurements do not settle it.
+    Undecided,
+}
+
+/// Why the lot has the decision it has.
+#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
+#[serde(tag = "code", rename_all = "snake_case")]
+pub enum LotReason {
+    /// Proven failing springs reach the rejection number of a class.
+    ProvenFailures {
+        /// Class.
+        class: Class,
+        /// Springs proven failing.
+        failing: u64,
+        /// Rejection number.
+        reject: u64,
+    },
+    /// Even all undecided springs failing, the acceptance number holds.
+    WithinAcceptance {
+        /// Class.
+        class: Class,
+        /// Springs proven failing.
+        failing: u64,
+        /// Springs undecided.
+        undecided: u64,
+        /// Acceptance number.
+        accept: u64,
+    },
+    /// Undecided springs could turn the decision.
+    UndecidedMatter {
+        /// Class.
+        class: Class,
+        /// Springs proven failing.
+        failing: u64,
+        /// Springs undecided.
+        undecided: u64,
+        /// Acceptance number.
+        accept: u64,
+    },
+    /// Undecided springs count as conforming, as agreed.
+    UndecidedPass {
+        /// Class.
+        class: Class,
+        /// Springs undecided.
+        undecided: u64,
+    },
+    /// Undecided springs count as failing, as agreed; this rejection proves nothing.
+    UndecidedFail {
+        /// Class.
+        class: Class,
+        /// Springs proven failing.
+        failing: u64,
+        /// Springs undecided.
+        undecided: u64,
+        /// Rejection number.
+        reject: u64,
+    },
+    /// Fewer springs measured than the plan asks for.
+    Missing {
+        /// Class.
+        class: Class,
+        /// Springs measured.
+        measured: u64,
+        /// Springs the plan asks for.
+        wanted: u64,
+    },
+    /// A spring beyond the sample is proven failing.
+    FailureBeyondSample {
+        /// The spring.
+        spring: String,
+        /// Class of the failure.
+        class: Class,
+    },
+}
+
+/// How one class stands.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Standing {
+    /// The terms.
+    pub terms: ClassTerms,
+    /// Springs of the sample proven failing, counted in their gravest class.
+    pub failing: u64,
+    /// Springs of the sample that may yet prove failing in this class.
+    pub undecided: u64,
+    /// Springs of the sample that are not there.
+    pub missing: u64,
+}
+
+/// The decision and its grounds.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Outcome {
+    /// The decision.
+    pub decision: Decision,
+    /// Why, class by class, gravest first.
+    pub reasons: Vec<LotReason>,
+    /// How each class stands.
+    pub standings: Vec<Standing>,
+    /// What simple acceptance would have said.
+    pub simple: Decision,
+    /// Springs of the sample that simple acceptance calls failing.
+    pub simple_failing: u64,
+}
+
+/// Decides a lot from its springs in the order of the sample; springs beyond a class' sample size do not count for it.
+///
+/// d ≥ Re: rejected, proven. d + u ≤ Ac: accepted. Otherwise as `policy` says. Missing springs count as if they could
+/// all fail. A proven failure beyond the sample leaves an otherwise accepted lot undecided.
+pub fn decide(terms: &[ClassTerms], springs: &[(String, Overall)], policy: Policy) -> Outcome {
+    let mut reasons = Vec::new();
+    let mut decisions = Vec::new();
+    let mut standings = Vec::new();
+    let mut simple = Vec::new();
+    for one in terms {
+        let standing = stand(one, springs);
+        let (decision, reason) = of_class(&standing, policy);
+        decisions.push(decision);
+        reasons.push(reason);
+        simple.push(simply(one, springs, standing.missing));
+        standings.push(standing);
+    }
+    let beyond = beyond_sample(terms, springs);
+    if !beyond.is_empty() {
+        decisions.push(Decision::Undecided);
+        reasons.extend(beyond);
+    }
+    let widest = terms.iter().map(|one| one.sample_size).max().unwrap_or(0);
+    let simple_failing = sample(springs, widest)
+        .filter(|spring| spring.simple == Verdict::Fails)
+        .count() as u64;
+    Outcome {
+        decision: gravest(&decisions),
+        reasons,
+        standings,
+        simple: gravest(&simple),
+        simple_failing,
+    }
+}
+
+fn gravest(decisions: &[Decision]) -> Decision {
+    if decisions.contains(&Decision::Rejected) {
+        Decision::Rejected
+    } else if decisions.contains(&Decision::Undecided) || decisions.is_empty() {
+        Decision::Undecided
+    } else {
+        Decision::Accepted
+    }
+}
+
+fn sample(springs: &[(String, Overall)], size: u64) -> impl Iterator<Item = &Overall> {
+    springs
+        .iter()
+        .take(usize::try_from(size).unwrap_or(usize::MAX))
+        .map(|(_, overall)| overall)
+}
+
+fn stand(terms: &ClassTerms, springs: &[(String, Overall)]) -> Standing {
+    let class = terms.class;
+    let sampled = || sample(springs, terms.sample_size);
+    let failing = sampled()
+        .filter(|spring| spring.failing == Some(class))
+        .count() as u64;
+    let could = |spring: &&Overall| {
+        spring.undecided.contains(&class) && spring.failing.is_none_or(|proven| proven < class)
+    };
+    Standing {
+        terms: terms.clone(),
+        failing,
+        undecided: sampled().filter(could).count() as u64,
+        missing: terms.sample_size - (sampled().count() as u64),
+    }
+}
+
+fn of_class(standing: &Standing, policy: Policy) -> (Decision, LotReason) {
+    let Standing {
+        terms,
+        failing,
+        undecided,
+        missing,
+    } = standing;
+    let ClassTerms {
+        class,
+        accept,
+        reject,
+        sample_size,
+        ..
+    } = terms;
+    let (class, failing, undecided) = (*class, *failing, *undecided);
+    if failing >= *reject {
+        return (
+            Decision::Rejected,
+            LotReason::ProvenFailures {
+                class,
+                failing,
+                reject: *reject,
+            },
+        );
+    }
+    if failing + undecided + missing <= *accept {
+        return (
+            Decision::Accepted,
+            LotReason::WithinAcceptance {
+                class,
+                failing,
+                undecided,
+                accept: *accept,
+            },
+        );
+    }
+    if *missing > 0 {
+        return (
+            Decision::Undecided,
+            LotReason::Missing {
+                class,
+                measured: sample_size - missing,
+                wanted: *sample_size,
+            },
+        );
+    }
+    match policy {
+        Policy::Report => (
+            Decision::Undecided,
+            LotReason::UndecidedMatter {
+                class,
+                failing,
+                undecided,
+                accept: *accept,
+            },
+        ),
+        Policy::Pass => (
+            Decision::Accepted,
+            LotReason::UndecidedPass { class, undecided },
+        ),
+        Policy::Fail => (
+            Decision::Rejected,
+            LotReason::UndecidedFail {
+                class,
+                failing,
+                undecided,
+                reject: *reject,
+            },
+        ),
+    }
+}
+
+fn simply(terms: &ClassTerms, springs: &[(String, Overall)], missing: u64) -> Decision {
+    let of = |verdict| {
+        sample(springs, terms.sample_size)
+            .filter(|spring| {
+                spring.simple == verdict
+                    && (verdict != Verdict::Fails || spring.simple_failing == Some(terms.class))
+            })
+            .count() as u64
+    };
+    let failing = of(Verdict::Fails);
+    if failing >= terms.reject {
+        Decision::Rejected
+    } else if failing + of(Verdict::Undecided) + missing > terms.accept {
+        Decision::Undecided
+    } else {
+        Decision::Accepted
+    }
+}
+
+fn beyond_sample(terms: &[ClassTerms], springs: &[(String, Overall)]) -> Vec<LotReason> {
+    let mut named = Vec::new();
+    for one in terms {
+        let rest = springs
+            .iter()
+            .skip(usize::try_from(one.sample_size).unwrap_or(usize::MAX));
+        for (id, _) in rest.filter(|(_, spring)| spring.failing == Some(one.class)) {
+            named.push(LotReason::FailureBeyondSample {
+                spring: id.clone(),
+                class: one.class,
+            });
+        }
+    }
+    named
+}
+
+#[cfg(test)]
+mod tests {
+    use std::collections::BTreeSet;
+
+    use super::*;
+
+    fn spring(failing: Option<Class>, undecided: &[Class]) -> (String, Overall) {
+        let verdict = if failing.is_some() {
+            Verdict::Fails
+        } else if undecided.is_empty() {
+            Verdict::Conforms
+        } else {
+            Verdict::Undecided
+        };
+        let undecided: BTreeSet<Class> = undecided.iter().copied().collect();
+        (
+            String::new(),
+            Overall {
+                verdict,
+                failing,
+                undecided,
+                simple: verdict,
+                simple_failing: failing,
+            },
+        )
+    }
+
+    fn terms(class: Class, sample_size: u64, accept: u64) -> ClassTerms {
+        ClassTerms {
+            class,
+            plan: None,
+            sample_size,
+            accept,
+            reject: accept + 1,
+        }
+    }
+
+    fn lot(good: usize, failing: usize, undecided: usize) -> Vec<(String, Overall)> {
+        let mut springs = vec![spring(None, &[]); good];
+        springs.extend(vec![spring(Some(Class::Major), &[]); failing]);
+        springs.extend(vec![spring(None, &[Class::Major]); undecided]);
+        springs
+    }
+
+    #[test]
+    fn the_rule_of_proven_and_undecided_springs() {
+        let plan = [terms(Class::Major, 10, 2)];
+        let rows = [
+            (7, 3, 0, Policy::Pass, Decision::Rejected),
+            (8, 1, 1, Policy::Fail, Decision::Accepted),
+            (7, 2, 1, Policy::Report, Decision::Undecided),
+            (7, 2, 1, Policy::Pass, Decision::Accepted),
+            (7, 2, 1, Policy::Fail, Decision::Rejected),
+            (6, 0, 0, Policy::Pass, Decision::Undecided), // four missing
+            (8, 0, 0, Policy::Report, Decision::Accepted), // even both missing ones failing
+            (2, 3, 0, Policy::Report, Decision::Rejected), // settled although five are missing
+        ];
+        for (good, failing, undecided, policy, wanted) in rows {
+            let got = decide(&plan, &lot(good, failing, undecided), policy).decision;
+            assert_eq!(
+                got, wanted,
+                "{good} good, {failing} failing, {undecided} undecided, {policy:?}"
+            );
+        }
+    }
+
+    #[test]
+    fn a_spring_counts_once_in_its_gravest_class() {
+        let plan = [
+            terms(Class::Critical, 5, 0),
+            terms(Class::Major, 5, 1),
+            terms(Class::Minor, 5, 1),
+        ];
+        let mut springs = lot(3, 1, 0);
+        springs.push(spring(Some(Class::Minor), &[Class::Major]));
+        let outcome = decide(&plan, &springs, Policy::Report);
+        let counts: Vec<(u64, u64)> = outcome
+            .standings
+            .iter()
+            .map(|one| (one.failing, one.undecided))
+            .collect();
+        assert_eq!(counts, [(0, 0), (1, 1), (1, 0)]);
+        assert_eq!(outcome.decision, Decision::Undecided);
+        springs.pop();
+        springs.push(spring(Some(Class::Critical), &[]));
+        assert_eq!(
+            decide(&plan, &springs, Policy::Pass).decision,
+            Decision::Rejected
+        );
+    }
+
+    #[test]
+    fn a_failure_beyond_the_sample_is_named_and_withholds_acceptance() {
+        let plan = [terms(Class::Major, 5, 0)];
+        let outcome = decide(&plan, &lot(5, 1, 0), Policy::Pass);
+        assert_eq!(outcome.decision, Decision::Undecided);
+        assert!(matches!(
+            outcome.reasons.last(),
+            Some(LotReason::FailureBeyondSample { .. })
+        ));
+    }
+}

@@ -1,0 +1,17 @@
+//! What the verdicts on springs do to a lot: plan tables, the decision, advice on undecided springs.
+//! Elsewhere: the terms as agreed (`drawing`), the verdicts (`verdict`).
+
+mod advice;
+mod decide;
+mod plan;
+mod plan_table;
+mod terms;
+
+pub use advice::{Advice, advise};
+pub use decide::{Decision, LotReason, Outcome, Standing, decide};
+pub use plan::{
+    Aql, Arrow, CodeLetter, PlanError, SinglePlan, normal_single, probability_of_acceptance,
+};
+pub use terms::{ClassTerms, class_terms};
+
+pub use crate::drawing::Level;

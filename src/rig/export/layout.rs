@@ -1,0 +1,290 @@
+//! Which column of this file is which, from its own header and units line.
+
+use std::ops::Range;
+
+use super::error::{ExportError, show};
+use super::labels::{Units, Wanted};
+use super::lines::{Context, content};
+use crate::rig::dialect::{Dialect, Pushing, SpringFrom};
+
+/// A line above the table, kept for what it says.
+#[derive(Clone, Debug)]
+pub(super) struct HeadLine {
+    pub(super) number: u64,
+    pub(super) text: String,
+}
+
+/// The columns of a file, by their position.
+#[derive(Clone, Debug)]
+pub(super) struct Layout {
+    /// The names of all columns, as the header writes them.
+    pub(super) names: Vec<String>,
+    pub(super) load: usize,
+    pub(super) travel: usize,
+    pub(super) time: Option<usize>,
+    pub(super) spring: Option<usize>,
+}
+
+const LOAD: &str = "load";
+const TRAVEL: &str = "travel";
+const TIME: &str = "time";
+const SPRING: &str = "spring's name";
+
+impl Layout {
+    /// The layout of a file with these lines above its table.
+    ///
+    /// # Errors
+    /// Columns that are missing, doubled or named twice; units that contradict the rig file or are none.
+    pub(super) fn new(
+        context: &Context<'_>,
+        header: &HeadLine,
+        units: Option<&HeadLine>,
+    ) -> Result<Self, ExportError> {
+        let header = Cells::of(context, header)?;
+        let layout = Self::find(context, &header)?;
+        layout.check_header_units(context, &header)?;
+        if let Some(units) = units {
+            layout.check_units_line(context, &Cells::of(context, units)?)?;
+        }
+        Ok(layout)
+    }
+
+    /// The layout of a file without a header, whose first line of cells is `first`: columns `1`, `2`, ….
+    ///
+    /// # Errors
+    /// As [`Layout::new`].
+    pub(super) fn numbered(
+        context: &Context<'_>,
+        first: &HeadLine,
+        units: Option<&HeadLine>,
+    ) -> Result<Self, ExportError> {
+        let mut header = Cells::of(context, first)?;
+        let count = header.cells.len();
+        header.names = (1..=count).map(|number| number.to_string()).collect();
+        let layout = Self::find(context, &header)?;
+        if let Some(units) = units {
+            layout.check_units_line(context, &Cells::of(context, units)?)?;
+        }
+        Ok(layout)
+    }
+
+    fn find(context: &Context<'_>, header: &Cells<'_>) -> Result<Self, ExportError> {
+        let dialect = context.dialect;
+        let spring = match &dialect.spring {
+            SpringFrom::FileName => None,
+            SpringFrom::Column(name) => Some(header.position(SPRING, name)?),
+        };
+        let time = dialect.time.as_ref();
+        let layout = Self {
+            load: header.position(LOAD, &dialect.load.column)?,
+            travel: header.position(TRAVEL, &dialect.travel.column)?,
+            time: time.map(|name| header.position(TIME, name)).transpose()?,
+            spring,
+            names: header.names.clone(),
+        };
+        layout.refuse_shared(header)?;
+        Ok(layout)
+    }
+
+    fn roles(&self) -> impl Iterator<Item = (&'static str, usize)> {
+        let some = [(LOAD, Some(self.load)), (TRAVEL, Some(self.travel))];
+        let more = [(TIME, self.time), (SPRING, self.spring)];
+        some.into_iter()
+            .chain(more)
+            .filter_map(|(role, column)| Some((role, column?)))
+    }
+
+    fn refuse_shared(&self, header: &Cells<'_>) -> Result<(), ExportError> {
+        let mut taken: Vec<(&'static str, usize)> = Vec::new();
+        for (role, column) in self.roles() {
+            if let Some((first, _)) = taken.iter().find(|(_, other)| *other == column) {
+                return Err(ExportError::SharedColumn {
+                    at: header.spot(column, self.name(column)),
+                    first,
+                    second: role,
+                });
+            }
+            taken.push((role, column));
+        }
+        Ok(())
+    }
+
+    /// The name of a column.
+    pub(super) fn name(&self, column: usize) -> &str {
+        self.names.get(column).map_or("", String::as_str)
+    }
+
+    /// Whether a column holds numbers that are used.
+    pub(super) fn is_number(&self, column: usize) -> bool {
+        column == self.load || column == self.travel || Some(column) == self.time
+    }
+
+    /// What a number of a column is multiplied by: its unit in N (pushing positive), mm or s.
+    pub(super) fn factor(&self, column: usize, dialect: &Dialect) -> f64 {
+        if column == self.load {
+            match dialect.load.pushing {
+                Pushing::Positive => dialect.load.unit.newtons(),
+                Pushing::Negative => -dialect.load.unit.newtons(),
+            }
+        } else if column == self.travel {
+            dialect.travel.unit.millimetres()
+        } else {
+            1.0
+        }
+    }
+
+    fn units(&self, context: &Context<'_>) -> Vec<(usize, Wanted)> {
+        let dialect = context.dialect;
+        let mut wanted = vec![
+            (self.load, Wanted::Force(dialect.load.unit)),
+            (self.travel, Wanted::Length(dialect.travel.unit)),
+        ];
+        wanted.extend(self.time.map(|time| (time, Wanted::Seconds)));
+        wanted
+    }
+
+    fn check_header_units(
+        &self,
+        context: &Context<'_>,
+        header: &Cells<'_>,
+    ) -> Result<(), ExportError> {
+        for (column, wanted) in self.units(context) {
+            let name = self.name(column);
+            if let Some(found) = wanted.contradicted_by(name) {
+                return Err(ExportError::UnitContradicts {
+                    at: header.spot(column, name),
+                    found: show(found),
+                    wanted: wanted.symbol(),
+                });
+            }
+        }
+        Ok(())
+    }
+
+    fn check_units_line(
+        &self,
+        context: &Context<'_>,
+        units: &Cells<'_>,
+    ) -> Result<(), ExportError> {
+        for (column, wanted) in self.units(context) {
+            let cell = units.names.get(column).map_or("", String::as_str);
+            let at = || units.spot(column, self.name(column));
+            let (found, wanted_symbol) = (show(cell.trim()), wanted.symbol());
+            match wanted.against(cell) {
+                Units::Agree => {}
+                Units::Contradict => {
+                    return Err(ExportError::UnitContradicts {
+                        at: at(),
+                        found,
+                        wanted: wanted_symbol,
+                    });
+                }
+                Units::None => {
+                    return Err(ExportError::NoUnit {
+                        at: at(),
+                        found,
+                        wanted: wanted_symbol,
+                    });
+                }
+            }
+        }
+        Ok(())
+    }
+}
+
+/// A line above the table, cut into cells.
+struct Cells<'c> {
+    context: &'c Context<'c>,
+    line: &'c HeadLine,
+    cells: Vec<Range<usize>>,
+    names: Vec<String>,
+}
+
+impl<'c> Cells<'c> {
+    fn of(context: &'c Context<'c>, line: &'c HeadLine) -> Result<Self, ExportError> {
+        let cells = context.cells(line.number, &line.text)?;
+        let quoted = context.dialect.quoted;
+        let held = |cell: &Range<usize>| {
+            let cell = line.text.get(cell.clone()).unwrap_or_default();
+            content(cell, quoted).trim().to_owned()
+        };
+        Ok(Self {
+            names: cells.iter().map(held).collect(),
+            context,
+            line,
+            cells,
+        })
+    }
+
+    fn spot(&self, column: usize, name: &str) -> super::error::Spot {
+        let end = self.line.text.len();
+        let cell = self.cells.get(column).cloned().unwrap_or(end..end);
+        self.context
+            .spot(self.line.number, &self.line.text, cell, Some(name))
+    }
+
+    /// The one column called `name`.
+    fn position(&self, role: &'static str, name: &str) -> Result<usize, ExportError> {
+        let mut named = (0..)
+            .zip(&self.names)
+            .filter(|(_, cell)| *cell == name.trim());
+        match (named.next(), named.next()) {
+            (Some((column, _)), None) => Ok(column),
+            (Some((first, _)), Some((second, _))) => Err(ExportError::DoubledColumn {
+                at: self.spot(second, name),
+                role,
+                first: first + 1,
+                second: second + 1,
+            }),
+            (None, _) => Err(self.unknown(role, name)),
+        }
+    }
+
+    fn unknown(&self, role: &'static str, name: &str) -> ExportError {
+        let known: Vec<String> = self
+            .names
+            .iter()
+            .map(|cell| format!("`{}`", show(cell)))
+            .collect();
+        let advice =
+            if self.names.iter().any(|cell| cell.contains('"')) && !self.context.dialect.quoted {
+                "the header is in quotes: write quoted = true in the rig file".to_owned()
+            } else if let Some(near) = nearest(name, &self.names) {
+                format!("did you mean `{}`?", show(near))
+            } else if self.names.len() == 1 {
+                "the line has one cell only: mend `delimiter` or `header_line` in the rig file"
+                    .to_owned()
+            } else {
+                "mend the column's name or `header_line` in the rig file".to_owned()
+            };
+        ExportError::UnknownColumn {
+            at: self.context.spot(
+                self.line.number,
+                &self.line.text,
+                0..self.line.text.len(),
+                None,
+            ),
+            role,
+            wanted: show(name),
+            known: known.join(", "),
+            advice,
+        }
+    }
+}
+
+/// The name nearest to `name`, capitals aside, if one is near.
+fn nearest<'n>(name: &str, names: &'n [String]) -> Option<&'n str> {
+    let wanted = name.trim().to_lowercase();
+    let scored = names.iter().filter(|known| !known.is_empty()).map(|known| {
+        let lower = known.to_lowercase();
+        let inside = lower
+            .split(|letter: char| !letter.is_alphanumeric())
+            .any(|word| word == wanted);
+        let distance = strsim::damerau_levenshtein(&wanted, &lower);
+        (if inside { 0 } else { distance }, known)
+    });
+    scored
+        .min_by_key(|(distance, _)| *distance)
+        .filter(|(distance, known)| *distance <= 1 + known.chars().count() / 3)
+        .map(|(_, known)| known.as_str())
+}

@@ -1,0 +1,421 @@
+//! Opens a rig file: how the tester writes, and what is known of its scales, frame and repeatability.
+
+use std::path::Path;
+
+use jiff::civil::Date;
+
+use crate::drawing::read_units;
+use crate::quantity::Quantity;
+use crate::text::{InputFile, Keys, Source, Table, read_toml};
+use crate::units::{Newtons, System};
+
+use super::dialect::Dialect;
+use super::read_dialect::read_export;
+
+const SCALE: &[&str] = &[
+    "class",
+    "certificate",
+    "unknown",
+    "resolution",
+    "range",
+    "calibrated",
+    "zero",
+    "set_at_length",
+    "zeroed_at_load",
+];
+const STATED: &[&str] = &["value", "uncertainty", "k", "unknown"];
+
+/// The keys a rig file may hold.
+#[rustfmt::skip] // keeps the list a list
+pub const KEYS: Keys = &[
+    ("", &["units", "rig", "export", "force", "travel", "frame", "contact", "repeatability"]),
+    ("rig", &["name", "check_every"]),
+    ("export", &["header_line", "units_line", "delimiter", "decimal", "encoding", "quoted", "last_line_open", "load", "travel", "time", "spring"]),
+    ("export.load", &["column", "unit", "pushing"]),
+    ("export.travel", &["column", "unit", "means", "at_zero_gap"]),
+    ("export.time", &["column", "unit"]),
+    ("export.spring", &["from", "column"]),
+    ("force", SCALE),
+    ("force.certificate", &["relative", "k", "error", "drift"]),
+    ("force.resolution", STATED),
+    ("force.range", &["from", "to"]),
+    ("force.calibrated", &["on", "until"]),
+    ("travel", SCALE),
+    ("travel.certificate", &["relative", "k", "error", "drift"]),
+    ("travel.resolution", STATED),
+    ("travel.range", &["from", "to"]),
+    ("travel.zero", STATED),
+    ("travel.calibrated", &["on", "until"]),
+    ("frame", &["compliance", "allowance"]),
+    ("frame.compliance", STATED),
+    ("contact", &["load"]),
+    ("repeatability", &["of", "standard_deviation"]),
+];
+
+/// What the export's travel means.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum Means {
+    /// Deflection of the spring, growing as it is compressed.
+    Deflection,
+    /// Length of the spring.
+    Length,
+    /// Position of the platen; the length is its distance from the reading with the platens touching, mm.
+    PlatenPosition {
+        /// Reading with the platens touching, mm.
+        at_zero_gap: f64,
+    },
+}
+
+/// What is known of a scale's error.
+#[derive(Clone, Debug, PartialEq)]
+pub enum Accuracy {
+    /// A class of ISO 7500-1 or ISO 9513: the relative error is within ± `half_width`.
+    Class {
+        /// The class as written.
+        class: String,
+        /// Relative half-width.
+        half_width: f64,
+    },
+    /// A calibration certificate.
+    Certificate {
+        /// Relative standard uncertainty, U/k.
+        standard: f64,
+        /// Found relative error, not corrected.
+        error: f64,
+        /// Relative half-width of the drift since.
+        drift: f64,
+    },
+    /// Declared negligible by whoever wrote the rig file; the report repeats it.
+    DeclaredNegligible,
+}
+
+/// A figure that is stated, or declared negligible.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum Known {
+    /// Stated.
+    Stated(f64),
+    /// Declared negligible; the report repeats it.
+    DeclaredNegligible,
+}
+
+impl Known {
+    /// The figure; 0 where it was declared negligible.
+    pub const fn get(self) -> f64 {
+        match self {
+            Self::Stated(figure) => figure,
+            Self::DeclaredNegligible => 0.0,
+        }
+    }
+}
+
+/// A scale: its accuracy, resolution and calibration.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Scale {
+    /// Accuracy.
+    pub accuracy: Accuracy,
+    /// Resolution in N or mm.
+    pub resolution: Known,
+    /// Usable range in N or mm.
+    pub range: Option<(f64, f64)>,
+    /// Calibrated on, and until.
+    pub calibrated: Option<(Date, Date)>,
+}
+
+/// Compliance of the frame.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum Compliance {
+    /// Measured: mm/N and its standard uncertainty.
+    Measured {
+        /// mm/N.
+        value: f64,
+        /// Standard uncertainty, mm/N.
+        standard: f64,
+    },
+    /// Not known, so not corrected; up to this share of the travel may be the frame's.
+    NotCorrected {
+        /// Share of travel, 0 … 1.
+        allowance: f64,
+    },
+    /// Declared negligible.
+    DeclaredNegligible,
+}
+
+/// A rig file, opened and free of faults.
+#[derive(Clone, Debug)]
+pub struct Rig {
+    /// The file.
+    pub input: InputFile,
+    /// Name.
+    pub name: String,
+    /// How often a check on a reference spring is wanted, as written.
+    pub check_every: Option<String>,
+    /// How the export is written.
+    pub dialect: Dialect,
+    /// What travel means.
+    pub means: Means,
+    /// Force scale.
+    pub force: Scale,
+    /// Travel scale.
+    pub travel: Scale,
+    /// Standard uncertainty of the length scale's zero, mm (for lengths and platen positions).
+    pub zero: Known,
+    /// Length at which the length scale was set, mm.
+    pub set_at_length: f64,
+    /// Load at which it was set, N.
+    pub zeroed_at_load: f64,
+    /// Frame.
+    pub frame: Compliance,
+    /// Contact load F_c.
+    pub contact_load: Newtons,
+    /// Within-spring standard deviations, in the unit of the quantity.
+    pub repeatability: Vec<(&'static str, f64)>,
+}
+
+/// Opens the rig file at `path`, written as `as_written`.
+///
+/// # Errors
+/// A report of every fault in the file.
+pub fn open(path: &Path, as_written: &str) -> miette::Result<Rig> {
+    let source = Source::open(path, as_written)?;
+    let input = source.input("rig");
+    Ok(read_toml(&source, KEYS, |root| read(root, &input))?)
+}
+
+fn read(root: Table<'_>, input: &InputFile) -> Option<Rig> {
+    let units = read_units(root)?;
+    let head = root.table("rig");
+    let name = head.required_text("name", "write the rig's name under [rig]");
+    let export = read_export(root.table("export"), units);
+    let force = read_scale(root.table("force"), &FORCE_CLASSES, units.force());
+    let travel = read_scale(root.table("travel"), &TRAVEL_CLASSES, units.length());
+    let frame = read_frame(root.table("frame"), units);
+    let contact = root.table("contact");
+    let contact_load = contact
+        .positive("load")
+        .map(|load| load.value * units.force());
+    if contact_load.is_none() && !contact.has("load") {
+        contact.missing(
+            "load",
+            "write [contact] load = 1.0: the load at which the spring counts as touched",
+        );
+    }
+    let repeatability = read_repeatability(root, units);
+    let (dialect, means) = export?;
+    let zero = read_zero(root.table("travel"), means, units.length());
+    let number = |key| {
+        root.table("travel")
+            .number(key)
+            .map_or(0.0, |number| number.value)
+    };
+    Some(Rig {
+        input: input.clone(),
+        name: name?,
+        check_every: head.text("check_every"),
+        dialect,
+        means,
+        force: force?,
+        travel: travel?,
+        zero: zero?,
+        set_at_length: number("set_at_length") * units.length(),
+        zeroed_at_load: number("zeroed_at_load") * units.force(),
+        frame: frame?,
+        contact_load: Newtons::try_from(contact_load?).ok()?,
+        repeatability: repeatability?,
+    })
+}
+
+/// Relative half-width of the indication error by class, ISO 7500-1:2018 table 2 (from memory).
+const FORCE_CLASSES: [(&str, f64); 4] = [("0.5", 0.005), ("1", 0.01), ("2", 0.02), ("3", 0.03)];
+/// Relative half-width of the displacement error by class, ISO 9513 (0.5 published, 1 and 2 from memory).
+const TRAVEL_CLASSES: [(&str, f64); 3] = [("0.5", 0.005), ("1", 0.01), ("2", 0.02)];
+
+fn read_scale(table: Table<'_>, classes: &[(&str, f64)], unit: f64) -> Option<Scale> {
+    let accuracy = read_accuracy(table, classes);
+    let resolution = read_known(
+        table,
+        "resolution",
+        unit,
+        "write resolution = 0.01, or { unknown = \"declared negligible\" }",
+    );
+    let range = table.table("range");
+    let range = match (range.not_negative("from"), range.positive("to")) {
+        (Some(from), Some(to)) if from.value < to.value => {
+            Some((from.value * unit, to.value * unit))
+        }
+        (None, None) if !range.is_present() => None,
+        _ => {
+            range.fault(
+                &range.span(),
+                "the range does not run from a smaller to a larger figure",
+                "write range = { from = 4.0, to = 200.0 }",
+            );
+            None
+        }
+    };
+    let dates = table.table("calibrated");
+    let calibrated = match (dates.date("on"), dates.date("until")) {
+        (Some(on), Some(until)) if on.value < until.value => Some((on.value, until.value)),
+        (None, None) if !dates.is_present() => None,
+        _ => {
+            dates.fault(
+                &dates.span(),
+                "the calibration does not run from an earlier to a later date",
+                "write calibrated = { on = 2026-03-02, until = 2027-03-02 }",
+            );
+            None
+        }
+    };
+    Some(Scale {
+        accuracy: accuracy?,
+        resolution: resolution?,
+        range,
+        calibrated,
+    })
+}
+
+fn read_accuracy(table: Table<'_>, classes: &[(&str, f64)]) -> Option<Accuracy> {
+    let help = "write exactly one of class = \"1\", certificate = { relative = \"0.4 %\", k = 2 }, unknown = \"declared negligible\"";
+    let given = ["class", "certificate", "unknown"]
+        .iter()
+        .filter(|key| table.has(key))
+        .count();
+    if given != 1 {
+        table.fault(
+            &table.span(),
+            "the scale's accuracy is stated in no way or in two ways",
+            help,
+        );
+        return None;
+    }
+    if table.has("unknown") {
+        return declared_negligible(table).then_some(Accuracy::DeclaredNegligible);
+    }
+    if table.has("class") {
+        let half_width = table.word("class", classes)?;
+        return Some(Accuracy::Class {
+            class: table.text("class")?,
+            half_width,
+        });
+    }
+    let certificate = table.table("certificate");
+    for key in ["relative", "k"] {
+        if !certificate.has(key) {
+            certificate.missing(key, help);
+        }
+    }
+    let share = |key| certificate.share(key).map_or(0.0, |share| share.value);
+    let relative = certificate.share("relative")?.value;
+    Some(Accuracy::Certificate {
+        standard: relative / certificate.positive("k")?.value,
+        error: share("error"),
+        drift: share("drift"),
+    })
+}
+
+fn declared_negligible(table: Table<'_>) -> bool {
+    table
+        .word("unknown", &[("declared negligible", ())])
+        .is_some()
+}
+
+/// A figure under `key`, in the file's unit, or `{ unknown = "declared negligible" }`.
+fn read_known(table: Table<'_>, key: &str, unit: f64, help: &str) -> Option<Known> {
+    if !table.has(key) {
+        table.missing(key, help);
+        return None;
+    }
+    if table.is_table(key) {
+        return declared_negligible(table.table(key)).then_some(Known::DeclaredNegligible);
+    }
+    table
+        .positive(key)
+        .map(|number| Known::Stated(number.value * unit))
+}
+
+fn read_zero(table: Table<'_>, means: Means, unit: f64) -> Option<Known> {
+    let help =
+        "write zero = { uncertainty = 0.02, k = 2 }, or { unknown = \"declared negligible\" }";
+    if means == Means::Deflection {
+        return Some(Known::DeclaredNegligible);
+    }
+    if !table.has("zero") {
+        table.missing("zero", help);
+        return None;
+    }
+    let zero = table.table("zero");
+    if zero.has("unknown") {
+        return declared_negligible(zero).then_some(Known::DeclaredNegligible);
+    }
+    standard_of(zero, help).map(|standard| Known::Stated(standard * unit))
+}
+
+/// `uncertainty` over `k` of a table.
+pub fn standard_of(table: Table<'_>, help: &str) -> Option<f64> {
+    for key in ["uncertainty", "k"] {
+        if !table.has(key) {
+            table.missing(key, help);
+        }
+    }
+    Some(table.positive("uncertainty")?.value / table.positive("k")?.value)
+}
+
+fn read_frame(table: Table<'_>, units: System) -> Option<Compliance> {
+    if !table.has("compliance") {
+        // Nothing known of the frame: 0 to 1 % of the travel unless the file states another allowance.
+        let allowance = if table.has("allowance") {
+            table.share("allowance")?.value
+        } else {
+            0.01
+        };
+        return Some(Compliance::NotCorrected { allowance });
+    }
+    let compliance = table.table("compliance");
+    if compliance.has("unknown") {
+        return declared_negligible(compliance).then_some(Compliance::DeclaredNegligible);
+    }
+    let unit = units.length() / units.force();
+    if !compliance.has("value") {
+        compliance.missing(
+            "value",
+            "write compliance = { value = 0.00021, uncertainty = 0.00002, k = 2 }",
+        );
+    }
+    let value = compliance.not_negative("value")?.value * unit;
+    let standard = standard_of(
+        compliance,
+        "write compliance = { value = 0.00021, uncertainty = 0.00002, k = 2 }",
+    )? * unit;
+    Some(Compliance::Measured { value, standard })
+}
+
+fn read_repeatability(root: Table<'_>, units: System) -> Option<Vec<(&'static str, f64)>> {
+    let mut stated: Vec<(&'static str, f64)> = Vec::new();
+    let of = [
+        (Quantity::Rate.name(), units.rate()),
+        ("load", units.force()),
+        (Quantity::FreeLength.name(), units.length()),
+        (Quantity::SolidLength.name(), units.length()),
+        (Quantity::Hysteresis.name(), 1.0),
+        (Quantity::Set.name(), units.length()),
+        (Quantity::Straightness.name(), 1.0),
+    ];
+    let words = of.map(|(name, scale)| (name, (name, scale)));
+    for table in root.tables("repeatability") {
+        for key in ["of", "standard_deviation"] {
+            if !table.has(key) {
+                table.missing(key, "write of = \"rate\", standard_deviation = 0.02");
+            }
+        }
+        let (name, scale) = table.word("of", &words)?;
+        if stated.iter().any(|(known, _)| *known == name) {
+            table.fault(
+                &table.place("of"),
+                format!("the repeatability of {name} is stated twice"),
+                "state it once",
+            );
+            return None;
+        }
+        stated.push((name, table.positive("standard_deviation")?.value * scale));
+    }
+    Some(stated)
+}
