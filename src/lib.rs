@@ -29,3 +29,9 @@ pub mod verdict;
 pub mod lot;
 
 pub mod record;
+
+pub mod report;
+
+pub mod job;
+
+pub mod cli;

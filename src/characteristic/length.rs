@@ -1,6 +1,6 @@
 //! Free length and solid length.
 
-use crate::curve::{Curve, Frame, Path};
+use crate::curve::{Contact, Curve, Frame, Path};
 use crate::stats::StatsError;
 
 use super::budget::{Estimate, Line, Part, with_repeatability};
@@ -78,6 +78,13 @@ pub(super) enum Solid {
     Absent(Absence),
 }
 
+/// A place on the stroke, as a length.
+struct Place {
+    length: f64,
+    load: f64,
+    deflection: f64,
+}
+
 /// The solid length where the rise is seen on the last loading stroke, else the shortest length reached, mm.
 ///
 /// # Errors
@@ -93,70 +100,63 @@ pub(super) fn solid(
     let Some(origin) = load::origin(setup, curve, own) else {
         return Ok(Solid::Absent(Absence::NoAbsoluteLength));
     };
-    let gauge = origin.own.map(|(own, contact)| {
-        let common = Line::new("own free length", Part::Common, own.standard);
-        (
-            own.value,
-            [common, Line::new("contact", Part::Own, contact.scatter)],
-        )
-    });
-    if let Some(rise) = curve.rise(path, setup.rig.contact_load.get()) {
-        let shown = vec![
-            Line::new("tangent", Part::Own, rise.tangent_over / 3.0_f64.sqrt()),
-            Line::new(
-                "resolution of travel",
-                Part::Own,
-                setup.rig.travel.resolution.get() / 12.0_f64.sqrt(),
-            ),
-        ];
-        let lines = with_repeatability(shown, setup.repeatability("solid_length"));
-        let length = origin.u - rise.u;
-        return Estimate::new(length, length_lines(setup, lines, length, rise.load, gauge))
-            .map(Solid::Seen);
-    }
-    let shortest = shortest(path).map(|(u, load)| (origin.u - u, load));
-    let Some((length, load)) = shortest else {
-        return Ok(Solid::Absent(Absence::LengthNotReached));
+    let contact = setup.first_contact(curve).map_or(0.0, |contact| contact.u);
+    let place = |u: f64, load: f64| Place {
+        length: origin.u - u,
+        load,
+        deflection: u - contact,
     };
-    let own = vec![Line::new(
+    let resolution = Line::new(
         "resolution of travel",
         Part::Own,
         setup.rig.travel.resolution.get() / 12.0_f64.sqrt(),
-    )];
-    Estimate::new(length, length_lines(setup, own, length, load, gauge)).map(Solid::Below)
+    );
+    if let Some(rise) = curve.rise(path, setup.rig.contact_load.get()) {
+        let tangent = Line::new("tangent", Part::Own, rise.tangent_over / 3.0_f64.sqrt());
+        let shown = with_repeatability(
+            vec![tangent, resolution],
+            setup.repeatability("solid_length"),
+        );
+        let at = place(rise.u, rise.load);
+        return Estimate::new(at.length, length_lines(setup, shown, &at, origin.own))
+            .map(Solid::Seen);
+    }
+    let Some((u, load)) = furthest(path) else {
+        return Ok(Solid::Absent(Absence::LengthNotReached));
+    };
+    let at = place(u, load);
+    Estimate::new(
+        at.length,
+        length_lines(setup, vec![resolution], &at, origin.own),
+    )
+    .map(Solid::Below)
 }
 
-fn shortest(path: &Path) -> Option<(f64, f64)> {
-    path.nodes
-        .iter()
-        .map(|node| (node.u, node.load))
-        .max_by(|a, b| a.0.total_cmp(&b.0))
+/// Travel and load at the greatest compression of a stroke.
+fn furthest(path: &Path) -> Option<(f64, f64)> {
+    let places = path.nodes.iter().map(|node| (node.u, node.load));
+    places.max_by(|a, b| a.0.total_cmp(&b.0))
 }
 
 fn length_lines(
     setup: &Setup<'_>,
     mut lines: Vec<Line>,
-    length: f64,
-    load: f64,
-    gauge: Option<(f64, [Line; 2])>,
+    at: &Place,
+    own: Option<(OwnFree, Contact)>,
 ) -> Vec<Line> {
     let rig = setup.rig;
-    let (scaled, zeroed_at) = match gauge {
-        Some((free, gauge)) => {
-            lines.extend(gauge);
-            (length - free, 0.0)
+    let (scaled, zeroed_at) = match own {
+        Some((own, contact)) => {
+            lines.push(Line::new("own free length", Part::Common, own.standard));
+            lines.push(Line::new("contact", Part::Own, contact.scatter));
+            (at.length - own.value, 0.0)
         }
         None => {
             lines.push(Line::new("length zero", Part::Common, rig.zero.get()));
-            (length - rig.set_at_length, rig.zeroed_at_load)
+            (at.length - rig.set_at_length, rig.zeroed_at_load)
         }
     };
     lines.extend(scales::travel_scale(rig, scaled));
-    let free = setup
-        .drawing
-        .members
-        .first()
-        .map_or(0.0, |member| member.free.nominal);
-    lines.extend(scales::frame(rig, load - zeroed_at, free - length));
+    lines.extend(scales::frame(rig, at.load - zeroed_at, at.deflection));
     lines
 }

@@ -1,7 +1,7 @@
 //! Every characteristic of one spring, in the order of the drawing.
 
 use crate::curve::{Bounds, Contact, Curve, CurveError};
-use crate::drawing::Drawing;
+use crate::drawing::{Drawing, Method, Stroke};
 use crate::intake::Conditions;
 use crate::quantity::Quantity;
 use crate::rig::Rig;
@@ -15,16 +15,20 @@ use super::{load, loops};
 /// What measuring needs to know besides the curve: the same for the whole lot.
 #[derive(Clone, Copy, Debug)]
 pub struct Setup<'a> {
-    /// The drawing.
-    pub drawing: &'a Drawing,
     /// The rig.
     pub rig: &'a Rig,
     /// Conditions of the test.
     pub conditions: Conditions,
     /// The window.
     pub bounds: Bounds,
-    /// Fn, N.
-    pub full_load: f64,
+    /// The judged stroke.
+    pub stroke: Stroke,
+    /// How the rate is drawn from the window.
+    pub method: Method,
+    /// Fn, N; without a drawing each curve's own largest load stands in.
+    pub full_load: Option<f64>,
+    /// What is measured, in order.
+    pub wanted: &'a [Quantity],
     /// Standard uncertainty of the caliper by quantity, mm.
     pub caliper: &'a [(&'static str, f64)],
 }
@@ -42,6 +46,11 @@ impl Setup<'_> {
     pub(super) fn first_contact(&self, curve: &Curve) -> Option<Contact> {
         let preset = usize::try_from(self.conditions.presetting_recorded).ok()?;
         curve.contact(curve.loading.get(preset)?, self.rig.contact_load.get())
+    }
+
+    /// Fn, or the curve's own largest load.
+    pub(super) fn full_load_of(&self, curve: &Curve) -> f64 {
+        self.full_load.unwrap_or(curve.loads.1)
     }
 
     fn caliper(&self, of: Quantity) -> f64 {
@@ -157,7 +166,7 @@ pub fn measure(
         cause,
     };
     let mut characteristics = Vec::new();
-    for quantity in wanted(setup.drawing) {
+    for quantity in setup.wanted.iter().copied() {
         let measured = if quantity.by_caliper() {
             let lines = vec![Line::new("gauge", Part::Common, setup.caliper(quantity))];
             match by_caliper(quantity) {
@@ -177,8 +186,8 @@ pub fn measure(
     })
 }
 
-/// What is measured: the requirements in their order, then what informs.
-fn wanted(drawing: &Drawing) -> Vec<Quantity> {
+/// What is measured for a drawing: its requirements in their order, then what informs beside them.
+pub fn wanted(drawing: &Drawing) -> Vec<Quantity> {
     let mut wanted: Vec<Quantity> = drawing
         .requirements
         .iter()
@@ -254,7 +263,7 @@ impl Spring<'_> {
         let scatter = Line::new(
             "scatter",
             Part::Own,
-            100.0 * fit.line.residual_sd / self.setup.full_load,
+            100.0 * fit.line.residual_sd / self.setup.full_load_of(self.curve),
         );
         let lines = with_repeatability(vec![scatter], self.setup.repeatability("straightness"));
         Estimate::new(100.0 * fit.straightness, lines).map(Ok)
@@ -266,7 +275,7 @@ impl Spring<'_> {
 ///
 /// # Errors
 /// [`StatsError`] from the coverage factor.
-pub fn average(measurements: &[Measurement]) -> Result<Vec<Characteristic>, StatsError> {
+pub fn average(measurements: &[&Measurement]) -> Result<Vec<Characteristic>, StatsError> {
     let Some(first) = measurements.first() else {
         return Ok(Vec::new());
     };

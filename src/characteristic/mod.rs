@@ -13,6 +13,6 @@ mod scales;
 pub use budget::{Estimate, Line, Part, Uncertainty, combine};
 pub use length::OwnFree;
 pub use measure::{
-    Absence, Characteristic, MeasureError, Measured, Measurement, Setup, average, measure,
+    Absence, Characteristic, MeasureError, Measured, Measurement, Setup, average, measure, wanted,
 };
 pub use rate::RateFit;

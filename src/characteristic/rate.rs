@@ -36,7 +36,7 @@ pub struct RateFit {
 
 /// The judged stroke of a curve; `None` where the export does not hold it.
 pub(super) fn judged<'c>(setup: &Setup<'_>, curve: &'c Curve) -> Option<&'c Path> {
-    let stroke = setup.drawing.rate_test.stroke;
+    let stroke = setup.stroke;
     let strokes = match stroke.way {
         Way::Loading => &curve.loading,
         Way::Unloading => &curve.unloading,
@@ -94,7 +94,7 @@ pub(super) fn fit(
         lines: lines(&nodes),
         window: (from, to),
         type_a,
-        straightness: largest / setup.full_load,
+        straightness: largest / setup.full_load_of(curve),
         lack: lack_of_fit(&travel, &load, &line),
         two_point: two_point_slope(&travel, &load),
         robust: incomplete_theil_slope(&travel, &load),
@@ -122,7 +122,7 @@ pub(super) fn estimate(
     free: Option<f64>,
 ) -> Result<Estimate, StatsError> {
     let rig = setup.rig;
-    let rate = match setup.drawing.rate_test.method {
+    let rate = match setup.method {
         Method::Fit => fit.line.slope,
         Method::TwoPoint => fit.two_point.unwrap_or(fit.line.slope),
     };
@@ -191,7 +191,7 @@ fn scatter_lines(fit: &RateFit, strokes: &[f64]) -> Vec<Line> {
 /// The rates of all strokes of the judged way after presetting, N/mm.
 fn stroke_rates(setup: &Setup<'_>, curve: &Curve, free: Option<f64>) -> Vec<f64> {
     let preset = usize::try_from(setup.conditions.presetting_recorded).unwrap_or(usize::MAX);
-    let strokes = match setup.drawing.rate_test.stroke.way {
+    let strokes = match setup.stroke.way {
         Way::Loading => &curve.loading,
         Way::Unloading => &curve.unloading,
     };

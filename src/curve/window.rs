@@ -18,6 +18,8 @@ pub enum WindowOf {
     Deflection,
     /// Lengths in mm.
     Length,
+    /// Shares of the travel from contact to the greatest compression before solid (no drawing).
+    Travel,
 }
 
 /// The window with its bounds in N or mm.
@@ -114,6 +116,15 @@ impl Bounds {
                 (at(self.from)?, at(self.to)?)
             }
             WindowOf::Deflection => (contact()? + self.from, contact()? + self.to),
+            WindowOf::Travel => {
+                let end = path.reach().ok_or(WindowMiss::NotReached)?.1;
+                let end = curve
+                    .rise(path, contact_load)
+                    .map_or(end, |rise| rise.u.min(end));
+                let start = contact()?;
+                let at = |share: f64| start + share * (end - start);
+                (at(self.from), at(self.to))
+            }
             WindowOf::Length => {
                 let origin = match (curve.frame, free) {
                     (Frame::Absolute, _) => 0.0,

@@ -6,6 +6,7 @@ mod dialect;
 mod export;
 mod open;
 mod read_dialect;
+mod sketch;
 
 pub use dialect::{
     Decimal, Delimiter, Dialect, Encoding, LoadColumn, Pushing, SpringFrom, TravelColumn,
@@ -15,3 +16,4 @@ pub use export::{
     read_small,
 };
 pub use open::{Accuracy, Compliance, KEYS, Known, Means, Rig, Scale, open, standard_of};
+pub use sketch::{Columns, Look, look, sketch};

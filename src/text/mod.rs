@@ -13,5 +13,5 @@ pub use blocks::{Block, Blocks, Next, Tail};
 pub use excerpt::{Excerpt, Place};
 pub use fault::{Fault, Faults};
 pub use printable::{Alphabet, printable};
-pub use source::{Hasher, InputFile, Source, TextError, beside, hex};
+pub use source::{Hasher, Head, InputFile, Source, TextError, beside, hex};
 pub use toml::{At, Keys, Table, read_toml};

@@ -8,6 +8,8 @@ use sha2::Digest;
 
 /// Anything larger than this is no hand-written file; exports go by their own road.
 const LARGEST_HAND_WRITTEN: u64 = 4 << 20;
+/// Bytes of an export that are looked at to see how it is written.
+const LOOKED_AT: u64 = 64 << 10;
 
 /// What a judgement was made from: the path as it was written, and the SHA-256 of its bytes.
 #[derive(Clone, Debug, PartialEq, Eq, PartialOrd, Ord, Serialize, Deserialize)]
@@ -130,5 +132,58 @@ impl Hasher {
     /// The digest, lower-case hexadecimal.
     pub fn finish(self) -> String {
         hex(&self.0.finalize())
+    }
+}
+
+/// The first lines of an export of any size, for a look at how it is written.
+#[derive(Clone, Debug)]
+pub struct Head {
+    /// The path as written, made printable.
+    pub name: String,
+    /// The first 64 KB as text, whole lines only.
+    pub text: String,
+    /// Whether they are UTF-8; Windows-1252 otherwise.
+    pub is_utf8: bool,
+}
+
+impl Head {
+    /// Reads the first lines of `path`; `as_written` is the path as the user wrote it.
+    ///
+    /// # Errors
+    /// [`TextError`] where the file is missing or empty.
+    pub fn read(path: &Path, as_written: &str) -> Result<Self, TextError> {
+        let name = super::printable(as_written, &super::Alphabet::Any);
+        let read = |cause| TextError::Read {
+            name: name.clone(),
+            cause,
+        };
+        let mut bytes = Vec::new();
+        let file = std::fs::File::open(path).map_err(read)?;
+        std::io::Read::read_to_end(&mut std::io::Read::take(file, LOOKED_AT), &mut bytes)
+            .map_err(read)?;
+        if bytes.is_empty() {
+            return Err(TextError::Empty { name });
+        }
+        let whole = bytes
+            .iter()
+            .rposition(|byte| *byte == b'\n')
+            .map_or(bytes.len(), |end| end + 1);
+        let body = bytes.get(..whole).unwrap_or(&bytes);
+        let body = body.strip_prefix(b"\xEF\xBB\xBF").unwrap_or(body);
+        let (text, is_utf8) = match std::str::from_utf8(body) {
+            Ok(text) => (text.to_owned(), true),
+            Err(_) => (
+                encoding_rs::WINDOWS_1252
+                    .decode_without_bom_handling(body)
+                    .0
+                    .into_owned(),
+                false,
+            ),
+        };
+        Ok(Self {
+            name,
+            text,
+            is_utf8,
+        })
     }
 }

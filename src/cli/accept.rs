@@ -1,0 +1,168 @@
+//! `accept`: calls, writes, prints.
+
+use std::io::Write;
+use std::path::Path;
+
+use jiff::civil::Date;
+use miette::IntoDiagnostic;
+use sha2::{Digest, Sha256};
+
+use crate::job::{self, Accepted};
+use crate::record::{Decision, OutputFile};
+use crate::report::{self, OutFile, Template, Templates};
+use crate::text::{Source, hex};
+
+use super::args::AcceptArgs;
+use super::folder;
+
+pub(super) fn run(args: &AcceptArgs, quiet: bool, out: &mut impl Write) -> miette::Result<u8> {
+    if let Some(dir) = &args.out {
+        folder::check(dir)?;
+    }
+    let templates = templates(args.templates.as_deref())?;
+    let options = job::Options {
+        date: date(args.date)?,
+        units_confirmed: args.units_confirmed,
+        strict: args.strict,
+        drawn: args.out.is_some() && !args.no_report,
+        block_bytes: None,
+        flags: flags(args),
+    };
+    let mut accepted = job::accept(&args.lot, &args.lot.to_string_lossy(), &options)?;
+    let result = match &args.out {
+        Some(dir) => Some(write(dir, args, &mut accepted, &templates, quiet)?),
+        None => None,
+    };
+    if args.json {
+        let bytes = match result {
+            Some(bytes) => bytes,
+            None => json(&accepted)?,
+        };
+        out.write_all(&bytes).into_diagnostic()?;
+    } else {
+        write!(
+            out,
+            "{}",
+            report::summary(&accepted.record, args.show_in.into())
+        )
+        .into_diagnostic()?;
+    }
+    Ok(status(accepted.record.decision))
+}
+
+const fn status(decision: Decision) -> u8 {
+    match decision {
+        Decision::Accepted => 0,
+        Decision::Rejected => 1,
+        Decision::Undecided => 3,
+    }
+}
+
+/// The flags that bear on the result.
+fn flags(args: &AcceptArgs) -> Vec<String> {
+    let given = [
+        (args.strict, "--strict"),
+        (args.units_confirmed, "--units-confirmed"),
+    ];
+    given
+        .into_iter()
+        .filter(|(given, _)| *given)
+        .map(|(_, flag)| flag.to_owned())
+        .collect()
+}
+
+fn write(
+    dir: &Path,
+    args: &AcceptArgs,
+    accepted: &mut Accepted,
+    templates: &Templates,
+    quiet: bool,
+) -> miette::Result<Vec<u8>> {
+    let record = &accepted.record;
+    let mut files = if args.no_report {
+        Vec::new()
+    } else {
+        report::accept(record, &accepted.curves, args.show_in.into(), templates)?
+    };
+    files.push(OutFile {
+        path: "springs.csv".to_owned(),
+        bytes: report::springs_csv(record),
+    });
+    files.sort_by(|a, b| a.path.cmp(&b.path));
+    let listed = |file: &OutFile| OutputFile {
+        path: file.path.clone(),
+        sha256: hex(&Sha256::digest(&file.bytes)),
+    };
+    accepted.record.files = files.iter().map(listed).collect();
+    let result = json(accepted)?;
+    files.push(OutFile {
+        path: folder::RESULT.to_owned(),
+        bytes: result.clone(),
+    });
+    folder::write(dir, &files)?;
+    if !quiet {
+        // A notice; where stderr is gone there is nobody to read it.
+        let _ = writeln!(std::io::stderr(), "written: {}", dir.display());
+    }
+    Ok(result)
+}
+
+fn json(accepted: &Accepted) -> miette::Result<Vec<u8>> {
+    let mut bytes = serde_json::to_vec(&accepted.record).into_diagnostic()?;
+    bytes.push(b'\n');
+    Ok(bytes)
+}
+
+/// The date of the judgement: as given, else SOURCE_DATE_EPOCH, else today, in UTC.
+fn date(given: Option<Date>) -> miette::Result<Date> {
+    if let Some(date) = given {
+        return Ok(date);
+    }
+    let stamp = match std::env::var("SOURCE_DATE_EPOCH") {
+        Ok(seconds) => {
+            let stamp = seconds
+                .parse()
+                .ok()
+                .and_then(|seconds| jiff::Timestamp::from_second(seconds).ok());
+            stamp.ok_or_else(|| {
+                miette::miette!(
+                    help = "write seconds since 1970, or use --date",
+                    "SOURCE_DATE_EPOCH is `{seconds}`, which is no time"
+                )
+            })?
+        }
+        Err(_) => jiff::Timestamp::now(),
+    };
+    Ok(stamp.to_zoned_datetime(jiff::tz::TimeZone::UTC).date())
+}
+
+/// The built-in templates, each replaced where the user's folder holds one of its name.
+fn templates(folder: Option<&Path>) -> miette::Result<Templates> {
+    let mut templates = Templates::built_in();
+    let Some(folder) = folder else {
+        return Ok(templates);
+    };
+    let mut found = false;
+    for (name, template) in [
+        (Templates::HTML, &mut templates.html),
+        (Templates::TYPST, &mut templates.typst),
+    ] {
+        let path = folder.join(name);
+        if path.exists() {
+            let source = Source::open(&path, &path.to_string_lossy())?;
+            *template = Template {
+                name: source.name.clone(),
+                text: source.text.to_string(),
+            };
+            found = true;
+        }
+    }
+    if found {
+        return Ok(templates);
+    }
+    Err(miette::miette!(
+        help = "put report.html or report.typ there, starting from the built-in ones",
+        "`{}` holds no template",
+        folder.display()
+    ))
+}

@@ -1,0 +1,69 @@
+//! Flags, calls, printing, writing. No arithmetic, no rounding, no judgement.
+
+mod accept;
+mod args;
+mod expect;
+mod folder;
+mod rate;
+mod shell;
+mod show;
+
+use std::ffi::OsString;
+use std::io::{ErrorKind, Write};
+use std::process::ExitCode;
+
+use clap::Parser;
+use miette::IntoDiagnostic;
+
+use args::{Arguments, Command};
+
+pub use show::show;
+
+/// Exit status of a run that reached no judgement.
+const COULD_NOT: u8 = 2;
+
+/// Runs the command line `arguments`, the program's name first. Faults are shown here; the status says what came out.
+pub fn run(arguments: impl IntoIterator<Item = OsString>) -> ExitCode {
+    let arguments = match Arguments::try_parse_from(arguments) {
+        Ok(arguments) => arguments,
+        Err(fault) => {
+            let status = if fault.use_stderr() { COULD_NOT } else { 0 };
+            return match fault.print() {
+                Ok(()) => ExitCode::from(status),
+                Err(closed) => after_closed(closed.kind(), status),
+            };
+        }
+    };
+    let mut out = Vec::new();
+    let status = match dispatch(&arguments, &mut out) {
+        Ok(status) => status,
+        Err(fault) => {
+            show(&fault, arguments.color);
+            return ExitCode::from(COULD_NOT);
+        }
+    };
+    let mut stdout = std::io::stdout().lock();
+    match stdout.write_all(&out).and_then(|()| stdout.flush()) {
+        Ok(()) => ExitCode::from(status),
+        Err(closed) => after_closed(closed.kind(), status),
+    }
+}
+
+/// A closed stdout is no fault.
+fn after_closed(kind: ErrorKind, status: u8) -> ExitCode {
+    ExitCode::from(if kind == ErrorKind::BrokenPipe {
+        status
+    } else {
+        COULD_NOT
+    })
+}
+
+fn dispatch(arguments: &Arguments, out: &mut impl Write) -> miette::Result<u8> {
+    match &arguments.command {
+        Command::Accept(args) => accept::run(args, arguments.quiet, out),
+        Command::Rate(args) => rate::run(args, out),
+        Command::Expect(args) => expect::run(args, out),
+        Command::Completions { shell } => shell::completions(*shell, out).into_diagnostic(),
+        Command::Manual { dir } => shell::manual(dir),
+    }
+}

@@ -1,0 +1,359 @@
+//! What page one must say besides the decision.
+
+use jiff::civil::Date;
+
+use crate::doubt::{is_odd, reading};
+use crate::drawing::{Drawing, Requirement, Rule};
+use crate::quantity::Quantity;
+use crate::record::{Caution, CharacteristicResult, Reason};
+use crate::rig::{Accuracy, Compliance, Known, Means, Rig, Scale};
+use crate::stats::median;
+use crate::units::Finite;
+
+use super::super::facts::figure;
+use super::error::AcceptError;
+use super::springs::{Judged, value_of};
+use super::{Files, Options, expected_rate, guards};
+
+/// U over the half tolerance beyond which a requirement carries a caution: a third under the guarded rule, a quarter
+/// under simple acceptance.
+const LARGE: (f64, f64) = (1.0 / 3.0, 1.0 / 4.0);
+/// U over the half tolerance that `--strict` refuses.
+const REFUSED: f64 = 1.0 / 2.0;
+
+/// Every caution of a lot, gravest matters first.
+pub(super) fn cautions(
+    files: &Files,
+    rule: Rule,
+    judged: &[Judged],
+    finding: Option<String>,
+    sample_size: u64,
+    options: &Options,
+) -> Vec<Caution> {
+    let mut found: Vec<Caution> = finding
+        .into_iter()
+        .map(|finding| Caution::UnitsConfirmed { finding })
+        .collect();
+    found.extend(of_drawing(&files.drawing));
+    found.extend(odd_rates(&files.drawing, judged));
+    for requirement in &files.drawing.requirements {
+        found.extend(of_requirement(requirement, rule, judged));
+    }
+    found.extend(of_rig(&files.rig, options.date));
+    found.extend(of_curves(&files.rig, judged));
+    found.extend(of_measurements(files, judged));
+    let measured = judged.len() as u64;
+    if measured > sample_size {
+        found.push(Caution::BeyondSample {
+            springs: u32::try_from(measured - sample_size).unwrap_or(u32::MAX),
+        });
+    }
+    found
+}
+
+fn of_drawing(drawing: &Drawing) -> Vec<Caution> {
+    let mut found = Vec::new();
+    let theory = &drawing.theory;
+    let stated = drawing
+        .requirements
+        .iter()
+        .find(|one| one.quantity == Quantity::Rate)
+        .and_then(|one| one.limits.nominal);
+    let expanded = 2.0 * theory.standard_uncertainty;
+    if let Some(stated) = stated
+        && (stated - theory.rate.get()).abs() > expanded
+        && let (Ok(stated), Ok(expanded_uncertainty)) = (stated.try_into(), expanded.try_into())
+    {
+        found.push(Caution::RateNotFromGeometry {
+            stated,
+            theory: theory.rate,
+            expanded_uncertainty,
+        });
+    }
+    for at_length_mm in drawing
+        .requirements
+        .iter()
+        .filter_map(|one| one.quantity.at_length())
+    {
+        if at_length_mm < theory.smallest {
+            found.push(Caution::LengthBelowSmallest {
+                at_length_mm,
+                smallest_mm: theory.smallest,
+            });
+        }
+    }
+    let required = |quantity: Quantity| {
+        drawing
+            .requirements
+            .iter()
+            .any(|one| one.quantity == quantity)
+    };
+    let toleranced = drawing
+        .members
+        .iter()
+        .any(|member| member.free.tolerance > 0.0);
+    if toleranced && !required(Quantity::FreeLength) {
+        found.push(Caution::GeometryNotJudged {
+            what: Quantity::FreeLength.title().to_owned(),
+        });
+    }
+    found
+}
+
+fn ids<'a>(judged: impl Iterator<Item = &'a Judged>) -> Vec<String> {
+    judged.map(|spring| spring.result.id.clone()).collect()
+}
+
+fn odd_rates(drawing: &Drawing, judged: &[Judged]) -> Option<Caution> {
+    let expected = expected_rate(drawing);
+    let odd: Vec<&Judged> = judged
+        .iter()
+        .filter(|spring| rate_of(spring).is_some_and(|rate| is_odd(rate, expected)))
+        .collect();
+    let against_theory = odd
+        .iter()
+        .filter_map(|spring| rate_of(spring))
+        .map(|rate| rate / drawing.theory.rate.get())
+        .collect();
+    let against_stated = odd
+        .iter()
+        .filter_map(|spring| rate_of(spring))
+        .map(|rate| rate / expected)
+        .collect();
+    let ratio = median(against_stated).and_then(figure)?;
+    let reading = median(against_theory).and_then(|ratio| reading(drawing, ratio));
+    Some(Caution::OddRatio {
+        springs: ids(odd.into_iter()),
+        ratio,
+        reading,
+    })
+}
+
+/// The measured rate, or the first idea of it where the window was not reached. N/mm.
+fn rate_of(spring: &Judged) -> Option<f64> {
+    let measured = value_of(&spring.result, Quantity::Rate)
+        .and_then(|one| one.value)
+        .map(Finite::get);
+    measured.or(spring.plain_rate)
+}
+
+fn of_requirement(requirement: &Requirement, rule: Rule, judged: &[Judged]) -> Option<Caution> {
+    let quantity = requirement.quantity;
+    let (name, at_length_mm) = (quantity.name().to_owned(), quantity.at_length());
+    let results = || {
+        judged
+            .iter()
+            .filter_map(|spring| value_of(&spring.result, quantity))
+    };
+    if results().any(|one| one.reason == Some(Reason::GuardBandsMeet)) {
+        return Some(Caution::CannotProve { name, at_length_mm });
+    }
+    let half = requirement.limits.half_width()?;
+    let share = |one: &CharacteristicResult| {
+        one.expanded_uncertainty
+            .map(|expanded| expanded.get() / half)
+    };
+    let largest = results().filter_map(share).reduce(f64::max)?;
+    let bound = if guards(rule) { LARGE.0 } else { LARGE.1 };
+    if largest <= bound {
+        return None;
+    }
+    Some(Caution::UncertaintyLarge {
+        name,
+        at_length_mm,
+        share: figure(largest)?,
+    })
+}
+
+fn of_rig(rig: &Rig, date: Date) -> Vec<Caution> {
+    let mut found = Vec::new();
+    if matches!(rig.frame, Compliance::NotCorrected { .. }) {
+        found.push(Caution::ComplianceNotCorrected);
+    }
+    let mut negligible = |declared: bool, what: &str| {
+        if declared {
+            found.push(Caution::DeclaredNegligible {
+                what: what.to_owned(),
+            });
+        }
+    };
+    negligible(
+        rig.frame == Compliance::DeclaredNegligible,
+        "frame compliance",
+    );
+    negligible(
+        rig.force.accuracy == Accuracy::DeclaredNegligible,
+        "error of the force scale",
+    );
+    negligible(
+        rig.force.resolution == Known::DeclaredNegligible,
+        "resolution of the force scale",
+    );
+    negligible(
+        rig.travel.accuracy == Accuracy::DeclaredNegligible,
+        "error of the travel scale",
+    );
+    negligible(
+        rig.travel.resolution == Known::DeclaredNegligible,
+        "resolution of the travel scale",
+    );
+    negligible(
+        rig.means != Means::Deflection && rig.zero == Known::DeclaredNegligible,
+        "zero of the length scale",
+    );
+    for (scale, name) in [(&rig.force, "force"), (&rig.travel, "travel")] {
+        found.extend(calibration(scale, name, date));
+    }
+    found.extend(
+        rig.check_every
+            .iter()
+            .map(|every| Caution::NoCheckOnRecord {
+                every: every.clone(),
+            }),
+    );
+    found
+}
+
+fn calibration(scale: &Scale, name: &str, date: Date) -> Option<Caution> {
+    match scale.calibrated {
+        None => Some(Caution::CalibrationUnknown {
+            scale: name.to_owned(),
+        }),
+        Some((on, until)) if date < on || date > until => Some(Caution::CalibrationExpired {
+            scale: name.to_owned(),
+            until: until.to_string(),
+        }),
+        Some(_) => None,
+    }
+}
+
+fn of_curves(rig: &Rig, judged: &[Judged]) -> Vec<Caution> {
+    let named = |of: &dyn Fn(&Judged) -> bool| {
+        let springs = ids(judged.iter().filter(|spring| of(spring)));
+        if springs.is_empty() {
+            None
+        } else {
+            Some(springs)
+        }
+    };
+    let outside = |spring: &Judged| {
+        rig.force
+            .range
+            .is_some_and(|(_, most)| spring.loads.1 > most)
+    };
+    let below = |spring: &Judged| {
+        let least = rig.force.range.map(|(least, _)| least);
+        let judged_loads = spring
+            .result
+            .characteristics
+            .iter()
+            .filter(|one| one.at_length_mm.is_some())
+            .filter_map(|one| one.value);
+        least.is_some_and(|least| judged_loads.map(Finite::get).any(|load| load < least))
+    };
+    [
+        named(&|spring| outside(spring) || below(spring))
+            .map(|springs| Caution::LoadOutsideRange { springs }),
+        named(&robust_differs).map(|springs| Caution::RobustDiffers { springs }),
+        named(&bends).map(|springs| Caution::LackOfFit { springs }),
+        named(&|spring| !spring.zero_read).map(|springs| Caution::NoZeroReading { springs }),
+    ]
+    .into_iter()
+    .flatten()
+    .collect()
+}
+
+/// Robust and fitted rate differ by more than 0.5 % and more than three standard uncertainties of the fit.
+fn robust_differs(spring: &Judged) -> bool {
+    let Some(fit) = &spring.result.fit else {
+        return false;
+    };
+    let rate = value_of(&spring.result, Quantity::Rate);
+    let line = |one: &CharacteristicResult| {
+        one.budget
+            .iter()
+            .find(|line| line.source == "fit")
+            .map(|line| line.contribution.get())
+    };
+    let (Some(rate), Some(robust)) = (rate, fit.robust_rate) else {
+        return false;
+    };
+    let type_a = line(rate).unwrap_or(fit.standard_error.get());
+    rate.value.is_some_and(|value| {
+        (value.get() - robust.get()).abs() > (0.005 * value.get()).max(3.0 * type_a)
+    })
+}
+
+fn bends(spring: &Judged) -> bool {
+    spring
+        .result
+        .fit
+        .as_ref()
+        .and_then(|fit| fit.lack_of_fit.as_ref())
+        .is_some_and(|lack| lack.warns)
+}
+
+fn of_measurements(files: &Files, judged: &[Judged]) -> Vec<Caution> {
+    let mut found = Vec::new();
+    for spring in judged {
+        for one in &spring.result.measurements {
+            if let Some(why) = &one.invalid {
+                found.push(Caution::SetAsideInvalid {
+                    spring: spring.result.id.clone(),
+                    export: one.export.clone(),
+                    why: why.clone(),
+                });
+            }
+        }
+    }
+    let repeated = ids(judged
+        .iter()
+        .filter(|spring| spring.result.measurements.len() > 1));
+    if !repeated.is_empty() {
+        found.push(Caution::Repeated { springs: repeated });
+    }
+    let what: Vec<String> = files
+        .lot
+        .not_inspected
+        .iter()
+        .map(super::super::facts::not_inspected)
+        .collect();
+    if !what.is_empty() {
+        found.push(Caution::NotInspected { what });
+    }
+    found
+}
+
+/// Under `--strict` a warning on the rig ends the run.
+///
+/// # Errors
+/// Naming the first such caution.
+pub(super) fn refuse(cautions: &[Caution]) -> Result<(), AcceptError> {
+    let refused = |caution: &Caution| match caution {
+        Caution::CalibrationExpired { scale, until } => Some(format!(
+            "the calibration of the {scale} scale does not cover the day of the judgement (valid until {until})"
+        )),
+        Caution::CalibrationUnknown { scale } => Some(format!(
+            "the rig file states no calibration of the {scale} scale"
+        )),
+        Caution::NoCheckOnRecord { every } => Some(format!(
+            "the rig file wants a check every {every}, and none is on record"
+        )),
+        Caution::LoadOutsideRange { springs } => Some(format!(
+            "loads outside the range of the force scale: springs {}",
+            springs.join(", ")
+        )),
+        Caution::CannotProve { name, .. } => Some(format!(
+            "this bench cannot prove the requirement on {name}: the guard bands meet"
+        )),
+        Caution::UncertaintyLarge { name, share, .. } if share.get() > REFUSED => Some(format!(
+            "U of {name} is {:.0} % of the half tolerance, more than half of it",
+            100.0 * share.get()
+        )),
+        _ => None,
+    };
+    cautions
+        .iter()
+        .find_map(refused)
+        .map_or(Ok(()), |what| Err(AcceptError::Strict { what }))
+}

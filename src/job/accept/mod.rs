@@ -1,0 +1,276 @@
+//! `accept`: a lot file in, a decided and documented lot out.
+
+mod cautions;
+mod error;
+mod group;
+mod plan;
+mod requirements;
+mod springs;
+
+use std::path::Path;
+
+use jiff::civil::Date;
+use rayon::prelude::*;
+
+use crate::characteristic::{Setup, wanted};
+use crate::curve::{Reduced, full_load, window_of};
+use crate::doubt::doubt;
+use crate::drawing::{Drawing, Rule};
+use crate::intake::{Caliper, Lot, read_findings};
+use crate::lot::{Outcome, class_terms, decide};
+use crate::quantity::{Class, Quantity};
+use crate::record::{AcceptRecord, FORMAT, Kind, LedgerFacts, Provenance, SimpleAcceptance, TOOL};
+use crate::rig::Rig;
+use crate::text::InputFile;
+use crate::{drawing, intake, rig};
+
+use super::facts;
+use super::read::{Batch, How, Reading, read};
+use error::AcceptError;
+use group::Spring;
+
+/// What the command line adds to the files.
+#[derive(Clone, Debug)]
+pub struct Options {
+    /// Date of the judgement.
+    pub date: Date,
+    /// Someone stands for the units although they look mixed up.
+    pub units_confirmed: bool,
+    /// A warning on the rig ends the run.
+    pub strict: bool,
+    /// Whether curves are kept for charts.
+    pub drawn: bool,
+    /// Bytes read at once, where a test wants other blocks.
+    pub block_bytes: Option<usize>,
+    /// Flags that bear on the result, as given.
+    pub flags: Vec<String>,
+}
+
+/// A judged lot.
+#[derive(Debug)]
+pub struct Accepted {
+    /// The result.
+    pub record: AcceptRecord,
+    /// The curves for the charts, in the order of the springs; empty where they were not wanted.
+    pub curves: Vec<Reduced>,
+}
+
+/// The files of a lot, opened.
+struct Files {
+    lot: Lot,
+    drawing: Drawing,
+    rig: Rig,
+    caliper: Caliper,
+}
+
+/// Judges the lot of the file at `path`, written as `as_written`.
+///
+/// # Errors
+/// A report that names file, line and column where a file or an export cannot be used, or why nothing is judged.
+pub fn accept(path: &Path, as_written: &str, options: &Options) -> miette::Result<Accepted> {
+    let files = open(path, as_written)?;
+    let wanted = wanted(&files.drawing);
+    let setup = Setup {
+        rig: &files.rig,
+        conditions: files.lot.conditions,
+        bounds: window_of(&files.drawing),
+        stroke: files.drawing.rate_test.stroke,
+        method: files.drawing.rate_test.method,
+        full_load: Some(full_load(&files.drawing)),
+        wanted: &wanted,
+        caliper: &files.lot.caliper,
+    };
+    let how = How {
+        setup: &setup,
+        caliper: &files.caliper.springs,
+        drawn: options.drawn,
+        block_bytes: options.block_bytes,
+    };
+    let (readings, sources) = read_all(&files, how)?;
+    let finding = plausible(&files.drawing, &readings, options.units_confirmed)?;
+    let readings = readings
+        .into_iter()
+        .collect::<Result<Vec<Reading>, _>>()
+        .map_err(|fault| AcceptError::Measure(Box::new(fault)))?;
+    let springs = group::springs(&files.lot, readings)?;
+    judge(&files, springs, sources, finding, options)
+}
+
+fn open(path: &Path, as_written: &str) -> miette::Result<Files> {
+    let lot = intake::open(path, as_written)?;
+    let drawing = drawing::open(&lot.drawing.1, &lot.drawing.0)?;
+    let rig = rig::open(&lot.rig.1, &lot.rig.0)?;
+    if drawing.acceptance.is_none() {
+        return Err(AcceptError::NoTerms {
+            drawing: drawing.input.path,
+        }
+        .into());
+    }
+    if drawing.requirements.is_empty() {
+        return Err(AcceptError::NoRequirements {
+            drawing: drawing.input.path,
+        }
+        .into());
+    }
+    let caliper = match &lot.findings_file {
+        Some((written, path)) => read_findings(path, written, &lot.caliper)?,
+        None => Caliper::default(),
+    };
+    Ok(Files {
+        lot,
+        drawing,
+        rig,
+        caliper,
+    })
+}
+
+struct Sources {
+    inputs: Vec<InputFile>,
+    ledgers: Vec<LedgerFacts>,
+}
+
+type Readings = Vec<Result<Reading, crate::characteristic::MeasureError>>;
+
+fn read_all(files: &Files, how: How<'_>) -> miette::Result<(Readings, Sources)> {
+    let repeats = files.lot.repeats.iter().map(|repeat| &repeat.export);
+    let exports: Vec<_> = files.lot.exports.iter().chain(repeats).collect();
+    let batches: Vec<Result<Batch, _>> = exports
+        .into_par_iter()
+        .map(|export| read(export, how))
+        .collect();
+    let mut inputs = vec![
+        files.lot.input(),
+        files.drawing.input.clone(),
+        files.rig.input.clone(),
+    ];
+    inputs.extend(files.caliper.input.clone());
+    let mut sources = Sources {
+        inputs,
+        ledgers: Vec::new(),
+    };
+    let mut readings = Vec::new();
+    for batch in batches {
+        let batch = batch?;
+        readings.extend(batch.readings);
+        sources.inputs.push(batch.input);
+        sources.ledgers.push(batch.ledger);
+    }
+    Ok((readings, sources))
+}
+
+/// The rate that springs should have: stated, or else theory's. N/mm.
+fn expected_rate(drawing: &Drawing) -> f64 {
+    let stated = drawing
+        .requirements
+        .iter()
+        .find(|one| one.quantity == Quantity::Rate)
+        .and_then(|one| one.limits.nominal);
+    stated.unwrap_or(drawing.theory.rate.get())
+}
+
+/// Withholds judgement from a lot whose units look mixed up; the finding, where someone stands for the units.
+fn plausible(
+    drawing: &Drawing,
+    readings: &[Result<Reading, crate::characteristic::MeasureError>],
+    confirmed: bool,
+) -> Result<Option<String>, crate::doubt::DoubtError> {
+    let rates: Vec<f64> = readings
+        .iter()
+        .filter_map(|one| one.as_ref().ok()?.plain_rate)
+        .collect();
+    let expected = expected_rate(drawing);
+    match doubt(&rates, expected) {
+        None => Ok(None),
+        Some(found) if confirmed => Ok(Some(found.finding)),
+        Some(found) => Err(found.into_error(expected)),
+    }
+}
+
+fn judge(
+    files: &Files,
+    springs: Vec<Spring>,
+    sources: Sources,
+    finding: Option<String>,
+    options: &Options,
+) -> miette::Result<Accepted> {
+    let Files {
+        lot,
+        drawing,
+        rig,
+        caliper: _,
+    } = files;
+    let Some(terms) = &drawing.acceptance else {
+        return Err(AcceptError::NoTerms {
+            drawing: drawing.input.path.clone(),
+        }
+        .into());
+    };
+    let mut judged = Vec::new();
+    for spring in springs {
+        judged.push(springs::judge(files, terms, spring)?);
+    }
+    let order = group::sample_order(lot, &judged)?;
+    let plans = class_terms(&terms.plan, lot.size.value, &classes(drawing, lot))?;
+    let outcome = decide(&plans, &order, terms.undecided);
+    let widest = plans.iter().map(|plan| plan.sample_size).max().unwrap_or(0);
+    springs::mark_sample(&mut judged, &order, widest);
+    let cautions = cautions::cautions(files, terms.rule, &judged, finding, widest, options);
+    if options.strict {
+        cautions::refuse(&cautions)?;
+    }
+    let curves = judged
+        .iter_mut()
+        .filter_map(|spring| spring.reduced.take())
+        .collect();
+    let requirements = requirements::facts(drawing, &judged);
+    let record = AcceptRecord {
+        format: FORMAT,
+        kind: Kind::Accept,
+        decision: outcome.decision,
+        simple: SimpleAcceptance {
+            decision: outcome.simple,
+            failing: outcome.simple_failing,
+        },
+        cautions,
+        lot: facts::lot(lot),
+        drawing: facts::drawing(drawing, terms, requirements),
+        theory: facts::theory(drawing, full_load(drawing))?,
+        window: facts::window(drawing, window_of(drawing)),
+        rig: facts::rig(rig),
+        plan: plan::facts(&terms.plan, &outcome)?,
+        reasons: reasons(outcome),
+        springs: judged.into_iter().map(|spring| spring.result).collect(),
+        provenance: provenance(sources, options),
+        files: Vec::new(),
+    };
+    Ok(Accepted { record, curves })
+}
+
+fn reasons(outcome: Outcome) -> Vec<crate::lot::LotReason> {
+    outcome.reasons
+}
+
+fn provenance(sources: Sources, options: &Options) -> Provenance {
+    Provenance {
+        tool: TOOL.to_owned(),
+        version: env!("CARGO_PKG_VERSION").to_owned(),
+        date: options.date.to_string(),
+        flags: options.flags.clone(),
+        inputs: sources.inputs,
+        ledgers: sources.ledgers,
+    }
+}
+
+/// The classes that requirements and findings use, gravest first.
+fn classes(drawing: &Drawing, lot: &Lot) -> Vec<Class> {
+    let used = |class: &Class| {
+        drawing.requirements.iter().any(|one| one.class == *class)
+            || lot.findings.iter().any(|one| one.class == *class)
+    };
+    Class::ALL.into_iter().filter(used).collect()
+}
+
+/// Whether the rule guards.
+const fn guards(rule: Rule) -> bool {
+    matches!(rule, Rule::Guarded)
+}

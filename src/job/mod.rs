@@ -1,0 +1,11 @@
+//! One folder or file per command: the only places that string rooms together.
+
+mod accept;
+mod expect;
+mod facts;
+mod rate;
+mod read;
+
+pub use accept::{Accepted, Options, accept};
+pub use expect::{Ask, Expected, MemberAnswer, StressAnswer, expect};
+pub use rate::{Bench, Guess, LoadAt, RateOptions, RateResult, rate};

@@ -1,0 +1,165 @@
+//! Reads exports and measures their springs as they come, in parallel; only figures and reduced curves are kept.
+
+use std::collections::BTreeMap;
+use std::path::Path;
+
+use rayon::prelude::*;
+
+use crate::characteristic::{MeasureError, Measurement, Setup, measure};
+use crate::curve::{Axis, Curve, Path as Stroke, Reduced, Zero, correct, thin};
+use crate::intake::Export;
+use crate::quantity::Quantity;
+use crate::record::{LedgerFacts, SetAside};
+use crate::rig::{BLOCK_BYTES, ExportError, Ledger, RawCurve};
+use crate::text::InputFile;
+
+/// Points a stroke keeps for drawing.
+const DRAWN: usize = 400;
+
+/// One measurement of one spring.
+#[derive(Debug)]
+pub(super) struct Reading {
+    /// The spring's id, printable.
+    pub(super) id: String,
+    /// The export, as written.
+    pub(super) export: String,
+    /// First and last line in the export.
+    pub(super) lines: (u64, u64),
+    /// A first idea of the rate, N/mm, for plausibility.
+    pub(super) plain_rate: Option<f64>,
+    /// Whether the empty platen was read.
+    pub(super) zero_read: bool,
+    /// Smallest and largest load, N.
+    pub(super) loads: (f64, f64),
+    /// Loading strokes.
+    pub(super) strokes: usize,
+    /// What was measured.
+    pub(super) measurement: Measurement,
+    /// The curve for the charts, where they are wanted.
+    pub(super) reduced: Option<Reduced>,
+}
+
+/// One export, read.
+pub(super) struct Batch {
+    pub(super) readings: Vec<Result<Reading, MeasureError>>,
+    pub(super) ledger: LedgerFacts,
+    pub(super) input: InputFile,
+}
+
+/// How exports are read.
+#[derive(Clone, Copy)]
+pub(super) struct How<'a> {
+    pub(super) setup: &'a Setup<'a>,
+    pub(super) caliper: &'a BTreeMap<String, Vec<(Quantity, f64)>>,
+    pub(super) drawn: bool,
+    pub(super) block_bytes: Option<usize>,
+}
+
+/// Reads one export and measures its springs.
+///
+/// # Errors
+/// [`ExportError`] at the first line that is not as the rig file says.
+pub(super) fn read(export: &Export, how: How<'_>) -> Result<Batch, ExportError> {
+    read_at(&export.path, &export.written, how)
+}
+
+fn read_at(path: &Path, written: &str, how: How<'_>) -> Result<Batch, ExportError> {
+    let mut readings = Vec::new();
+    let block = how.block_bytes.unwrap_or(BLOCK_BYTES);
+    let mut each = |curves: Vec<RawCurve>| {
+        let done: Vec<_> = curves
+            .into_par_iter()
+            .map(|raw| reading(&raw, how))
+            .collect();
+        readings.extend(done);
+    };
+    let read = crate::rig::read(path, written, &how.setup.rig.dialect, block, &mut each)?;
+    let shown = crate::text::printable(written, &crate::text::Alphabet::Any);
+    let input = InputFile {
+        role: "export".to_owned(),
+        path: shown.clone(),
+        sha256: read.sha256,
+    };
+    Ok(Batch {
+        readings,
+        ledger: ledger(shown, &read.ledger),
+        input,
+    })
+}
+
+fn ledger(export: String, ledger: &Ledger) -> LedgerFacts {
+    let aside = |one: &crate::rig::Aside| SetAside {
+        reason: one.reason.as_str().to_owned(),
+        first_line: one.first_line,
+        last_line: one.last_line,
+    };
+    LedgerFacts {
+        export,
+        lines: ledger.lines,
+        points: ledger.points,
+        set_aside: ledger.set_aside.iter().map(aside).collect(),
+    }
+}
+
+fn reading(raw: &RawCurve, how: How<'_>) -> Result<Reading, MeasureError> {
+    let setup = how.setup;
+    let curve = correct(raw, setup.rig)?;
+    let plain_rate = curve.plain_rate(setup.rig.contact_load.get());
+    let caliper = how
+        .caliper
+        .get(&raw.identity)
+        .map_or(&[][..], Vec::as_slice);
+    let measurement = measure(setup, &curve, caliper)?;
+    let reduced = how.drawn.then(|| reduce(setup, &curve, &measurement));
+    Ok(Reading {
+        id: raw.id.clone(),
+        export: curve.export,
+        lines: curve.lines,
+        plain_rate,
+        zero_read: matches!(curve.zero, Zero::Read { .. }),
+        loads: curve.loads,
+        strokes: curve.loading.len(),
+        measurement,
+        reduced,
+    })
+}
+
+/// The judged strokes thinned for drawing; abscissae are lengths where there are any, else deflections from contact.
+fn reduce(setup: &Setup<'_>, curve: &Curve, measurement: &Measurement) -> Reduced {
+    let contact = curve
+        .loading
+        .last()
+        .and_then(|path| curve.contact(path, setup.rig.contact_load.get()));
+    let shown = |u: f64| match measurement.origin {
+        Some(origin) => origin - u,
+        None => u - contact.map_or(0.0, |contact| contact.u),
+    };
+    let stroke = |path: Option<&Stroke>| {
+        let points: Vec<(f64, f64)> = path
+            .iter()
+            .flat_map(|path| &path.nodes)
+            .map(|node| (shown(node.u), node.load))
+            .collect();
+        thin(&points, DRAWN)
+    };
+    let residuals = measurement.fit.as_ref().map_or(Vec::new(), |fit| {
+        let points: Vec<(f64, f64)> = fit
+            .travel
+            .iter()
+            .zip(&fit.line.residuals)
+            .map(|(u, residual)| (shown(*u), *residual))
+            .collect();
+        thin(&points, DRAWN)
+    });
+    Reduced {
+        id: curve.id.clone(),
+        axis: if measurement.origin.is_some() {
+            Axis::Length
+        } else {
+            Axis::Deflection
+        },
+        loading: stroke(curve.loading.last()),
+        unloading: stroke(curve.unloading.last()),
+        residuals,
+    }
+}

@@ -1,0 +1,84 @@
+//! The report's charts as SVG. Here: what is drawn. Elsewhere: figures (`figure`), words (`wording`).
+//! Marks differ by shape as well as by colour, so that a black-and-white print says the same.
+
+mod curves;
+mod field;
+mod histogram;
+mod plot;
+mod share;
+mod sheet;
+mod values;
+
+use super::{ReportError, font};
+use crate::curve::{Axis, Reduced};
+use crate::record::{AcceptRecord, Verdict};
+use crate::units::System;
+
+/// Curves drawn one by one; above this the conforming ones are a band.
+const SINGLE: usize = 40;
+
+/// A chart.
+#[derive(Clone, Debug, PartialEq, Eq)]
+pub(super) struct Chart {
+    /// Path inside the output folder.
+    pub file: String,
+    /// Title.
+    pub title: String,
+    /// What to see.
+    pub caption: String,
+    /// The drawing.
+    pub svg: String,
+}
+
+/// Every chart of the report, in its order.
+///
+/// # Errors
+/// [`ReportError::Chart`] where the drawing library refuses.
+pub(super) fn all(
+    record: &AcceptRecord,
+    curves: &[Reduced],
+    show_in: System,
+) -> Result<Vec<Chart>, ReportError> {
+    let mut charts = Vec::new();
+    for axis in [Axis::Length, Axis::Deflection] {
+        let some: Vec<&Reduced> = curves.iter().filter(|curve| curve.axis == axis).collect();
+        if some.is_empty() {
+            continue;
+        }
+        let only = some.len() == curves.len();
+        charts.push(curves::loads(record, &some, only, show_in)?);
+        charts.extend(curves::residuals(record, &some, only, show_in)?);
+    }
+    charts.extend(values::all(record, show_in)?);
+    charts.extend(share::chart_of(record, show_in)?);
+    Ok(charts)
+}
+
+/// A chart of the drawing `draw` makes.
+fn chart(
+    file: &str,
+    title: &str,
+    caption: String,
+    height: f64,
+    draw: impl FnOnce(&mut sheet::Sheet<'_>) -> sheet::Drawn,
+) -> Result<Chart, ReportError> {
+    let file = format!("charts/{file}.svg");
+    match sheet::drawn(&font::fitting(title), height, draw) {
+        Ok(svg) => Ok(Chart {
+            file,
+            title: title.to_owned(),
+            caption,
+            svg,
+        }),
+        Err(cause) => Err(ReportError::Chart {
+            chart: file,
+            message: cause.to_string(),
+        }),
+    }
+}
+
+/// A spring's verdict by its id.
+fn verdict_of(record: &AcceptRecord, id: &str) -> Verdict {
+    let found = record.springs.iter().find(|spring| spring.id == id);
+    found.map_or(Verdict::Undecided, |spring| spring.verdict)
+}

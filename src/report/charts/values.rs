@@ -1,0 +1,319 @@
+//! One characteristic over the springs: each value with its interval against the limits, and the distribution beside it.
+
+use super::histogram;
+use super::plot::{self, EDGE, Entry, LEADING, Plot, Sample, Scale};
+use super::sheet::{Anchor, Drawn, FAINT, INK, LIMIT, Sheet, THEORY, TYPE, WIDTH, colour};
+use super::{Chart, chart};
+use crate::quantity::{Quantity, Unit};
+use crate::record::{AcceptRecord, CharacteristicResult, Verdict};
+use crate::report::figure::{Place, per_unit, symbol, with_unit};
+use crate::report::model::{find, occurring};
+use crate::report::{ReportError, font, wording};
+use crate::units::System;
+
+/// Height of the plot.
+const TALL: f64 = 182.0;
+/// Width of the distribution.
+const SIDE: f64 = 104.0;
+/// The longest label of a spring.
+const LONGEST: f64 = 64.0;
+/// Springs whose every label is drawn.
+const LABELLED: usize = 44;
+
+/// A spring's value, in the units of the plot.
+struct Value<'a> {
+    id: &'a str,
+    verdict: Option<Verdict>,
+    value: f64,
+    expanded: f64,
+}
+
+/// What the plot compares with.
+struct Lines {
+    lower: Option<f64>,
+    upper: Option<f64>,
+    theory: Option<(f64, f64, f64)>,
+}
+
+/// A chart for every characteristic with limits, and for the rate.
+///
+/// # Errors
+/// [`ReportError::Chart`].
+pub(super) fn all(record: &AcceptRecord, show_in: System) -> Result<Vec<Chart>, ReportError> {
+    let mut charts = Vec::new();
+    for ((name, at), unit) in occurring(record) {
+        let key = (name, at);
+        let found: Vec<&CharacteristicResult> = record
+            .springs
+            .iter()
+            .filter_map(|spring| find(spring, &key))
+            .collect();
+        let limited = found
+            .iter()
+            .any(|of| of.lower.is_some() || of.upper.is_some());
+        let measured = found.iter().any(|of| of.value.is_some());
+        if measured && (limited || key.0 == Quantity::Rate.name()) {
+            charts.push(one(record, &key, unit, show_in)?);
+        }
+    }
+    Ok(charts)
+}
+
+fn one(
+    record: &AcceptRecord,
+    key: &(String, Option<crate::units::Millimetres>),
+    unit: Unit,
+    show_in: System,
+) -> Result<Chart, ReportError> {
+    let scale = per_unit(unit, show_in);
+    let values: Vec<Value<'_>> = record
+        .springs
+        .iter()
+        .filter_map(|spring| {
+            let of = find(spring, key)?;
+            Some(Value {
+                id: &spring.id,
+                verdict: of.verdict,
+                value: of.value?.get() / scale,
+                expanded: of
+                    .expanded_uncertainty
+                    .map_or(0.0, |value| value.get() / scale),
+            })
+        })
+        .collect();
+    let first = record
+        .springs
+        .iter()
+        .filter_map(|spring| find(spring, key))
+        .find(|of| of.lower.is_some() || of.upper.is_some());
+    let shown = |value: Option<crate::units::Finite>| value.map(|value| value.get() / scale);
+    let theory = &record.theory;
+    let lines = Lines {
+        lower: first.and_then(|of| shown(of.lower)),
+        upper: first.and_then(|of| shown(of.upper)),
+        theory: (key.0 == Quantity::Rate.name()).then(|| {
+            (
+                theory.rate_lowest.get() / scale,
+                theory.rate_n_per_mm.get() / scale,
+                theory.rate_highest.get() / scale,
+            )
+        }),
+    };
+    let name = wording::characteristic(&key.0, key.1, show_in);
+    let file = match key.1 {
+        Some(at) => format!("{}-at-{}-mm", key.0, at.get()),
+        None => key.0.clone(),
+    };
+    let against = if lines.theory.is_some() {
+        "limits and theory"
+    } else {
+        "limits"
+    };
+    let caption = format!(
+        "Each spring’s value with its interval ± U (95.45 %) against {against}; to the right the distribution over the springs."
+    );
+    let entries = entries(&values, &lines, first, theory, show_in);
+    let bottom = labels_height(&values);
+    let height = plot::legend_height(&entries) + LEADING * 1.6 + TALL + bottom;
+    let title = format!("{} of each spring", wording::sentence(&name));
+    chart(&file, &title, caption, height, |sheet| {
+        draw(
+            sheet,
+            &values,
+            &lines,
+            &entries,
+            &format!("{name} in {}", symbol(unit, show_in)),
+        )
+    })
+}
+
+fn entries(
+    values: &[Value<'_>],
+    lines: &Lines,
+    first: Option<&CharacteristicResult>,
+    theory: &crate::record::TheoryFacts,
+    show_in: System,
+) -> Vec<Entry> {
+    let mut entries = Vec::new();
+    for (verdict, word) in [
+        (Verdict::Conforms, "conforms"),
+        (Verdict::Fails, "fails"),
+        (Verdict::Undecided, "undecided"),
+    ] {
+        if values
+            .iter()
+            .any(|value| value.verdict.unwrap_or(Verdict::Conforms) == verdict)
+        {
+            let word = if values.iter().all(|value| value.verdict.is_none()) {
+                "measured"
+            } else {
+                word
+            };
+            entries.push((Sample::Mark(verdict), word.to_owned()));
+        }
+    }
+    if let Some(of) = first {
+        let stated = |value| with_unit(value, of.unit, Place::Stated, show_in);
+        let words = match (of.lower, of.upper) {
+            (Some(_), Some(_)) => format!("limits {} and {}", stated(of.lower), stated(of.upper)),
+            (Some(_), None) => format!("lower limit {}", stated(of.lower)),
+            _ => format!("upper limit {}", stated(of.upper)),
+        };
+        entries.push((Sample::Line(LIMIT, 1.8), words));
+    }
+    if lines.theory.is_some() {
+        let rate = |value| {
+            with_unit(
+                Some(value),
+                Unit::NewtonPerMillimetre,
+                Place::Significant(4),
+                show_in,
+            )
+        };
+        entries.push((
+            Sample::Dashes(THEORY),
+            format!(
+                "theory {} (tolerances {} to {})",
+                rate(theory.rate_n_per_mm),
+                rate(theory.rate_lowest),
+                rate(theory.rate_highest)
+            ),
+        ));
+    }
+    entries
+}
+
+fn widest(values: &[Value<'_>]) -> f64 {
+    let width = |value: &Value<'_>| font::width(&shown_id(value.id), TYPE, false);
+    values.iter().map(width).fold(0.0, f64::max)
+}
+
+fn shown_id(id: &str) -> String {
+    font::shortened(&font::fitting(id), TYPE, LONGEST)
+}
+
+fn labels_height(values: &[Value<'_>]) -> f64 {
+    widest(values) + LEADING * 1.6 + EDGE
+}
+
+fn draw(
+    sheet: &mut Sheet<'_>,
+    values: &[Value<'_>],
+    lines: &Lines,
+    entries: &[Entry],
+    title: &str,
+) -> Drawn {
+    let bounds = [lines.lower, lines.upper].into_iter().flatten();
+    let intervals = values
+        .iter()
+        .flat_map(|value| [value.value - value.expanded, value.value + value.expanded]);
+    let tight = plot::range(intervals.chain(bounds), 0.06);
+    let reach = (tight.1 - tight.0) * 0.6;
+    let near = lines
+        .theory
+        .into_iter()
+        .flat_map(|(low, middle, high)| [low, middle, high])
+        .filter(|value| *value > tight.0 - reach && *value < tight.1 + reach);
+    let y = plot::range(near.chain([tight.0, tight.1]), 0.0);
+    let top = plot::legend_height(entries) + LEADING * 1.6;
+    let left = EDGE + plot::labels_width(y, 6) + 10.0;
+    let side = if values.len() >= histogram::FEWEST {
+        SIDE
+    } else {
+        0.0
+    };
+    let last = values.len() as f64;
+    let plot = Plot {
+        x: Scale {
+            value: (0.0, last.max(1.0)),
+            paper: (left, WIDTH - EDGE - side),
+        },
+        y: Scale {
+            value: y,
+            paper: (top + TALL, top),
+        },
+    };
+    plot::legend(sheet, entries)?;
+    plot::upward_axis(sheet, &plot, 6, title)?;
+    let right = WIDTH - EDGE;
+    if let Some((low, middle, high)) = lines.theory {
+        let held = |value: f64| plot.y.at(value.clamp(y.0, y.1));
+        sheet.block((left, held(low)), (right, held(high)), THEORY, 0.10)?;
+        if middle > y.0 && middle < y.1 {
+            sheet.dashes(
+                (left, plot.y.at(middle)),
+                (right, plot.y.at(middle)),
+                THEORY,
+                1.4,
+            )?;
+        }
+    }
+    for bound in [lines.lower, lines.upper].into_iter().flatten() {
+        sheet.line(
+            &[(left, plot.y.at(bound)), (right, plot.y.at(bound))],
+            LIMIT,
+            1.8,
+        )?;
+    }
+    marks(sheet, &plot, values)?;
+    labels(sheet, &plot, values)?;
+    if side > 0.0 {
+        let all: Vec<f64> = values.iter().map(|value| value.value).collect();
+        histogram::draw(sheet, &plot.y, (plot.x.paper.1 + 10.0, right), &all)?;
+    }
+    plot::frame(sheet, &plot)
+}
+
+fn marks(sheet: &mut Sheet<'_>, plot: &Plot, values: &[Value<'_>]) -> Drawn {
+    let crowded = values.len() > 80;
+    for (number, value) in values.iter().enumerate() {
+        let verdict = value.verdict.unwrap_or(Verdict::Conforms);
+        let x = plot.x.at(number as f64 + 0.5);
+        if value.expanded > 0.0 {
+            let ends = [
+                (x, plot.y.at(value.value - value.expanded)),
+                (x, plot.y.at(value.value + value.expanded)),
+            ];
+            sheet.line(&ends, colour(verdict), if crowded { 0.8 } else { 1.3 })?;
+        }
+        let size = match (verdict, crowded) {
+            (Verdict::Conforms, true) => 2.0,
+            (_, true) => 3.2,
+            (_, false) => 4.0,
+        };
+        sheet.mark(verdict, (x, plot.y.at(value.value)), size)?;
+    }
+    Ok(())
+}
+
+/// Labels of the springs under the plot: all while they are few, else those that do not conform and every so many.
+fn labels(sheet: &mut Sheet<'_>, plot: &Plot, values: &[Value<'_>]) -> Drawn {
+    let all = values.len() <= LABELLED;
+    let every = values.len().div_ceil(20).max(1);
+    let apart = TYPE + 2.0;
+    let mut taken: Vec<f64> = Vec::new();
+    let conforms = |value: &Value<'_>| {
+        value
+            .verdict
+            .is_none_or(|verdict| verdict == Verdict::Conforms)
+    };
+    for first in [true, false] {
+        for (number, value) in values.iter().enumerate() {
+            let wanted = if first {
+                !conforms(value)
+            } else {
+                conforms(value) && (all || number % every == 0)
+            };
+            let x = plot.x.at(number as f64 + 0.5);
+            if !wanted || taken.iter().any(|other| (other - x).abs() < apart) {
+                continue;
+            }
+            taken.push(x);
+            let ink = if conforms(value) { FAINT } else { INK };
+            sheet.upward(&shown_id(value.id), (x, plot.y.paper.0 + 6.0), ink)?;
+        }
+    }
+    let under = plot.y.paper.0 + widest(values) + LEADING * 1.2;
+    let middle = f64::midpoint(plot.x.paper.0, plot.x.paper.1);
+    sheet.bold("spring", (middle, under), Anchor::Middle, INK)
+}

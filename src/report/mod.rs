@@ -1,0 +1,116 @@
+//! A record as finished strings: charts, HTML, PDF, CSV, the terminal's summary.
+//! Here: how a figure is written (`figure`), the words (`wording`), what stands where (`model`), and the pages made from it.
+//! Elsewhere: what was concluded (`record`), reading a user's templates and writing files (`cli`).
+
+mod charts;
+mod csv;
+mod error;
+mod figure;
+mod font;
+mod gate;
+mod html;
+pub mod model;
+mod pdf;
+mod summary;
+mod wording;
+
+pub use csv::springs_csv;
+pub use error::ReportError;
+pub use figure::{
+    ABSENT, Place, figure, number, per_unit, percent, symbol, with_uncertainty, with_unit,
+};
+pub use model::Model;
+pub use summary::summary;
+
+use crate::curve::Reduced;
+use crate::record::AcceptRecord;
+use crate::units::System;
+
+/// A template and the name of its file, for faults.
+#[derive(Clone, Debug)]
+pub struct Template {
+    /// The file's name as written.
+    pub name: String,
+    /// Its text.
+    pub text: String,
+}
+
+/// The templates of the report's pages.
+#[derive(Clone, Debug)]
+pub struct Templates {
+    /// Of `report.html`, for minijinja.
+    pub html: Template,
+    /// Of `report.pdf`, for typst.
+    pub typst: Template,
+}
+
+impl Templates {
+    /// The file name of the HTML template in a user's folder.
+    pub const HTML: &'static str = "report.html";
+    /// The file name of the PDF template in a user's folder.
+    pub const TYPST: &'static str = "report.typ";
+
+    /// The templates that come with the tool.
+    pub fn built_in() -> Self {
+        let template = |name: &str, text: &str| Template {
+            name: format!("templates/{name}"),
+            text: text.to_owned(),
+        };
+        Self {
+            html: template(Self::HTML, include_str!("../../templates/report.html")),
+            typst: template(Self::TYPST, include_str!("../../templates/report.typ")),
+        }
+    }
+}
+
+/// A file of the output folder.
+#[derive(Clone, Debug, PartialEq, Eq)]
+pub struct OutFile {
+    /// Path inside the folder, with `/`.
+    pub path: String,
+    /// Contents.
+    pub bytes: Vec<u8>,
+}
+
+/// `report.html`, `report.pdf` and `charts/*.svg` of one lot, figures in the units of `show_in`; byte-identical for equal arguments.
+///
+/// # Errors
+/// [`ReportError`] where a template does not fit the model, or a page cannot be made.
+pub fn accept(
+    record: &AcceptRecord,
+    curves: &[Reduced],
+    show_in: System,
+    templates: &Templates,
+) -> Result<Vec<OutFile>, ReportError> {
+    let (model, charts) = rayon::join(
+        || Model::new(record, show_in),
+        || charts::all(record, curves, show_in),
+    );
+    let charts = charts?;
+    let data = || serde_json::to_value(&model).map_err(ReportError::Model);
+    let (html, pdf) = rayon::join(
+        || {
+            let r = html::page(data()?, &charts, &templates.html);
+            r
+        },
+        || {
+            let r = pdf::document(data()?, &charts, &templates.typst);
+            r
+        },
+    );
+    let mut files = vec![
+        OutFile {
+            path: "report.html".to_owned(),
+            bytes: html?.into_bytes(),
+        },
+        OutFile {
+            path: "report.pdf".to_owned(),
+            bytes: pdf?,
+        },
+    ];
+    files.extend(charts.into_iter().map(|chart| OutFile {
+        path: chart.file,
+        bytes: chart.svg.into_bytes(),
+    }));
+    Ok(files)
+}

@@ -1,0 +1,207 @@
+//! The facts of page one: lot, drawing, rig, plan.
+
+use serde::Serialize;
+
+use crate::quantity::Unit;
+use crate::record::{AcceptRecord, WindowOf};
+use crate::report::figure::{ABSENT, Place, number, with_unit};
+use crate::report::wording::count;
+use crate::units::System;
+
+/// A named fact.
+#[derive(Clone, Debug, PartialEq, Eq, Serialize)]
+pub struct Fact {
+    /// Name.
+    pub name: String,
+    /// Value.
+    pub value: String,
+}
+
+/// Facts about one thing.
+#[derive(Clone, Debug, PartialEq, Eq, Serialize)]
+pub struct Facts {
+    /// What they are about.
+    pub title: String,
+    /// The facts.
+    pub rows: Vec<Fact>,
+}
+
+fn fact(name: &str, value: impl Into<String>) -> Fact {
+    Fact {
+        name: name.to_owned(),
+        value: value.into(),
+    }
+}
+
+fn stated(name: &str, value: Option<&String>) -> Option<Fact> {
+    value.map(|value| fact(name, value.clone()))
+}
+
+/// `GV-118 rev. B`.
+pub(crate) fn labelled(number: &str, revision: Option<&str>) -> String {
+    revision.map_or_else(
+        || number.to_owned(),
+        |revision| format!("{number} rev. {revision}"),
+    )
+}
+
+/// All facts of page one.
+pub(super) fn all(record: &AcceptRecord, show_in: System) -> Vec<Facts> {
+    vec![
+        lot(record),
+        drawing(record, show_in),
+        rig(record),
+        plan(record),
+    ]
+}
+
+fn lot(record: &AcceptRecord) -> Facts {
+    let lot = &record.lot;
+    let conditions = &lot.conditions;
+    let measured = record.springs.len();
+    let strokes = match conditions.presetting_strokes {
+        Some(strokes) => format!(
+            "{} before the recording, {} in it",
+            strokes, conditions.presetting_recorded
+        ),
+        None => format!(
+            "not stated; {} in the recording",
+            conditions.presetting_recorded
+        ),
+    };
+    let mut rows = vec![
+        fact("Lot", lot.number.clone()),
+        fact("Size", count(lot.size, "spring")),
+        fact(
+            "Measured",
+            count(u64::try_from(measured).unwrap_or(u64::MAX), "spring"),
+        ),
+    ];
+    rows.extend(
+        [
+            stated("Supplier", lot.supplier.as_ref()),
+            stated("Received", lot.received.as_ref()),
+            stated("Inspector", lot.inspector.as_ref()),
+            stated("Sample drawn", lot.sample_drawn.as_ref()),
+            stated("Supplier’s values", lot.supplier_values.as_ref()),
+        ]
+        .into_iter()
+        .flatten(),
+    );
+    rows.push(fact(
+        "Temperature",
+        conditions.temperature_c.map_or_else(
+            || "not stated".to_owned(),
+            |value| format!("{}\u{a0}°C", number(Some(value), 4)),
+        ),
+    ));
+    rows.push(fact("Presetting strokes", strokes));
+    rows.extend(
+        lot.tags
+            .iter()
+            .map(|(name, value)| fact(name, value.clone())),
+    );
+    Facts {
+        title: "Lot".to_owned(),
+        rows,
+    }
+}
+
+fn drawing(record: &AcceptRecord, show_in: System) -> Facts {
+    let drawing = &record.drawing;
+    let window = &record.window;
+    let unit = match window.of {
+        WindowOf::Load => Unit::Newton,
+        WindowOf::Deflection | WindowOf::Length | WindowOf::Travel => Unit::Millimetre,
+    };
+    let of = match window.of {
+        WindowOf::Load => "load",
+        WindowOf::Deflection | WindowOf::Travel => "deflection",
+        WindowOf::Length => "length",
+    };
+    let bound = |value| with_unit(Some(value), unit, Place::Significant(4), show_in);
+    let mut rows = vec![fact(
+        "Drawing",
+        labelled(&drawing.number, drawing.revision.as_deref()),
+    )];
+    rows.extend(stated("Title", drawing.title.as_ref()));
+    let members: Vec<String> = record
+        .theory
+        .members
+        .iter()
+        .map(|member| format!("{}: {}", member.name, member.material))
+        .collect();
+    rows.push(fact(
+        "Springs",
+        if members.is_empty() {
+            ABSENT.to_owned()
+        } else {
+            members.join("; ")
+        },
+    ));
+    rows.push(fact(
+        "Rate window",
+        format!(
+            "{} ({of} {} to {})",
+            window.stated,
+            bound(window.from),
+            bound(window.to)
+        ),
+    ));
+    rows.push(fact(
+        "Stroke, method",
+        format!("{}, {}", window.stroke, window.method),
+    ));
+    rows.push(fact("Decision rule", drawing.rule.clone()));
+    Facts {
+        title: "Drawing".to_owned(),
+        rows,
+    }
+}
+
+fn rig(record: &AcceptRecord) -> Facts {
+    let rig = &record.rig;
+    let dates = |dates: &Option<String>| {
+        dates
+            .clone()
+            .unwrap_or_else(|| "no dates stated".to_owned())
+    };
+    let rows = vec![
+        fact("Rig", rig.name.clone()),
+        fact("Force", rig.force.clone()),
+        fact("Force calibrated", dates(&rig.force_calibrated)),
+        fact("Travel", rig.travel.clone()),
+        fact("Travel calibrated", dates(&rig.travel_calibrated)),
+        fact("Frame compliance", rig.compliance.clone()),
+        fact("Travel means", rig.travel_means.clone()),
+    ];
+    Facts {
+        title: "Rig and calibration".to_owned(),
+        rows,
+    }
+}
+
+fn plan(record: &AcceptRecord) -> Facts {
+    let plan = &record.plan;
+    let mut rows = vec![fact("By", plan.by.clone())];
+    rows.extend(stated("Inspection level", plan.level.as_ref()));
+    rows.extend(stated("Code letter", plan.code_letter.as_ref()));
+    rows.push(fact("Sample size", count(plan.sample_size, "spring")));
+    rows.push(fact(
+        "Accept, reject",
+        format!("Ac {}, Re {}", plan.accept, plan.reject),
+    ));
+    let counted = record
+        .springs
+        .iter()
+        .filter(|spring| spring.in_sample)
+        .count();
+    rows.push(fact(
+        "Counted",
+        count(u64::try_from(counted).unwrap_or(u64::MAX), "spring"),
+    ));
+    Facts {
+        title: "Plan".to_owned(),
+        rows,
+    }
+}

@@ -1,0 +1,205 @@
+//! The decision, the notes, the plan and the requirements.
+
+use serde::Serialize;
+
+use super::facts::labelled;
+use super::table::{Cell, Column, Row, Table};
+use crate::quantity::Unit;
+use crate::record::{AcceptRecord, Decision, RequirementFacts, Verdict};
+use crate::report::figure::{Place, figure, number, percent, symbol};
+use crate::report::wording;
+use crate::units::{Finite, System};
+
+/// The decision and why.
+#[derive(Clone, Debug, PartialEq, Eq, Serialize)]
+pub struct Deciding {
+    /// `accepted`, `rejected`, `undecided`.
+    pub code: &'static str,
+    /// The word, large.
+    pub word: &'static str,
+    /// How many springs conform, fail, are undecided.
+    pub counts: String,
+    /// The grounds.
+    pub why: Vec<String>,
+    /// What simple acceptance would have said.
+    pub simple: String,
+    /// The rule, and how undecided springs count.
+    pub terms: Vec<String>,
+}
+
+/// A labelled note.
+#[derive(Clone, Debug, PartialEq, Eq, Serialize)]
+pub struct Note {
+    /// Label.
+    pub label: String,
+    /// Text.
+    pub text: String,
+}
+
+/// What was inspected, in one line.
+pub(super) fn subject(record: &AcceptRecord) -> String {
+    let drawing = &record.drawing;
+    let label = labelled(&drawing.number, drawing.revision.as_deref());
+    match &drawing.title {
+        Some(title) => format!("{title}, drawing {label}, lot {}", record.lot.number),
+        None => format!("Drawing {label}, lot {}", record.lot.number),
+    }
+}
+
+/// How many of the springs have a verdict.
+pub(crate) fn with_verdict(record: &AcceptRecord, verdict: Verdict) -> usize {
+    record
+        .springs
+        .iter()
+        .filter(|spring| spring.verdict == verdict)
+        .count()
+}
+
+/// The decision.
+pub(super) fn deciding(record: &AcceptRecord) -> Deciding {
+    let of = |verdict| with_verdict(record, verdict);
+    Deciding {
+        code: wording::decided(record.decision),
+        word: wording::decision_word(record.decision),
+        counts: format!(
+            "Of {} measured {} conform, {} fail, {} undecided.",
+            wording::count(
+                u64::try_from(record.springs.len()).unwrap_or(u64::MAX),
+                "spring"
+            ),
+            of(Verdict::Conforms),
+            of(Verdict::Fails),
+            of(Verdict::Undecided)
+        ),
+        why: record.reasons.iter().map(wording::why).collect(),
+        simple: wording::simple_line(record),
+        terms: wording::terms(&record.drawing),
+    }
+}
+
+/// The lot's note, the concession, what was not inspected.
+pub(super) fn notes(record: &AcceptRecord) -> Vec<Note> {
+    let note = |label: &str, text: &str| Note {
+        label: label.to_owned(),
+        text: text.to_owned(),
+    };
+    let lot = &record.lot;
+    let mut notes = Vec::new();
+    notes.extend(lot.note.as_deref().map(|text| note("Note", text)));
+    notes.extend(
+        lot.concession
+            .as_deref()
+            .map(|text| note("Concession (does not change the decision)", text)),
+    );
+    if !lot.not_inspected.is_empty() {
+        notes.push(note("Not inspected", &lot.not_inspected.join("; ")));
+    }
+    if record.decision == Decision::Undecided {
+        notes.push(note(
+            "What would settle it",
+            "The table of the springs says for each undecided spring what would settle it.",
+        ));
+    }
+    notes
+}
+
+/// The plan of each class.
+pub(super) fn plan(record: &AcceptRecord) -> Table {
+    let columns = vec![
+        Column::words("Class"),
+        Column::figures("AQL", "%"),
+        Column::words("Letter"),
+        Column::figures("Sample", ""),
+        Column::figures("Ac", ""),
+        Column::figures("Re", ""),
+        Column::figures("Failing", ""),
+        Column::figures("Undecided", ""),
+        Column::figures("Accepted at AQL", ""),
+    ];
+    let rows = record.plan.classes.iter().map(|class| {
+        let letter = match (&class.code_letter, &class.used_letter) {
+            (Some(code), Some(used)) if code != used => format!("{code}, by the arrow {used}"),
+            (Some(code), _) => code.clone(),
+            (None, _) => crate::report::figure::ABSENT.to_owned(),
+        };
+        Row::from([
+            class.class.word().into(),
+            number(class.aql, 4).into(),
+            letter.into(),
+            class.sample_size.to_string().into(),
+            class.accept.to_string().into(),
+            class.reject.to_string().into(),
+            class.failing.to_string().into(),
+            class.undecided.to_string().into(),
+            percent(class.accepted_at_aql).into(),
+        ])
+    });
+    let mut table = Table::new("Plan by class", columns, rows.collect());
+    "Accepted at AQL: the probability that a lot exactly at the AQL is accepted (binomial)."
+        .clone_into(&mut table.note);
+    table
+}
+
+/// The requirements with limits, counts and what was measured.
+pub(super) fn requirements(record: &AcceptRecord, show_in: System) -> Table {
+    let columns = vec![
+        Column::words("Requirement"),
+        Column::words("Unit"),
+        Column::words("Class"),
+        Column::figures("Nominal", ""),
+        Column::figures("Lower", ""),
+        Column::figures("Upper", ""),
+        Column::figures("Conform", ""),
+        Column::figures("Fail", ""),
+        Column::figures("Undecided", ""),
+        Column::figures("Mean", ""),
+        Column::figures("s", ""),
+        Column::figures("Smallest", ""),
+        Column::figures("Largest", ""),
+        Column::figures("Largest U", ""),
+    ];
+    let rows = record
+        .drawing
+        .requirements
+        .iter()
+        .map(|of| requirement(of, show_in));
+    let mut table = Table::new(
+        "Requirements, and what was measured",
+        columns,
+        rows.collect(),
+    );
+    "Lower, upper: the limits of the drawing. Mean, s, smallest, largest: of the measured values. U: expanded uncertainty, 95.45 %."
+        .clone_into(&mut table.note);
+    table
+}
+
+fn requirement(of: &RequirementFacts, show_in: System) -> Row {
+    let unit: Unit = of.unit;
+    let stated = |value: Option<Finite>| figure(value, unit, Place::Stated, show_in);
+    let place = Place::Uncertainty(of.largest_expanded_uncertainty);
+    let measured = |value: Option<Finite>| figure(value, unit, place, show_in);
+    let emphasised = |number: u32, verdict: Verdict| {
+        if number == 0 {
+            Cell::from("0")
+        } else {
+            Cell::marked(number.to_string(), verdict)
+        }
+    };
+    let name = wording::characteristic(&of.name, of.at_length_mm, show_in);
+    Row::from([
+        wording::sentence(&name).into(),
+        symbol(unit, show_in).into(),
+        of.class.word().into(),
+        stated(of.nominal).into(),
+        stated(of.lower).into(),
+        stated(of.upper).into(),
+        of.conforming.to_string().into(),
+        emphasised(of.failing, Verdict::Fails),
+        emphasised(of.undecided, Verdict::Undecided),
+        measured(of.mean).into(),
+        measured(of.standard_deviation).into(),
+        measured(of.smallest).into(),
+        measured(of.largest).into(),
+        measured(of.largest_expanded_uncertainty).into(),
+    ])
+}

@@ -1,0 +1,122 @@
+//! The judgement for the terminal: the decision first, then why. About thirty lines for any number of springs.
+
+use crate::record::{AcceptRecord, RequirementFacts, SpringResult, Verdict};
+use crate::report::figure::{Place, figure, symbol};
+use crate::report::model::labelled;
+use crate::report::wording;
+use crate::text::{Alphabet, printable};
+use crate::units::{Finite, System};
+
+/// Springs named one by one, failing and undecided each.
+const NAMED: usize = 4;
+/// Cautions written out.
+const CAUTIONS: usize = 5;
+/// Requirements written out.
+const REQUIREMENTS: usize = 6;
+/// Letters of a line; what is longer is cut and marked.
+const LINE: usize = 300;
+
+/// The summary, each foreign string made printable; it ends with a line end.
+pub fn summary(record: &AcceptRecord, show_in: System) -> String {
+    let mut lines = vec![format!(
+        "{}: lot {}, drawing {}",
+        wording::decision_word(record.decision),
+        record.lot.number,
+        labelled(&record.drawing.number, record.drawing.revision.as_deref())
+    )];
+    lines.extend(
+        record
+            .reasons
+            .iter()
+            .take(4)
+            .map(|reason| format!("  {}", wording::why(reason))),
+    );
+    lines.push(format!("  {}", wording::simple_line(record)));
+    lines.extend(record.lot.note.iter().map(|note| format!("  Note: {note}")));
+    let requirements = &record.drawing.requirements;
+    lines.extend(
+        requirements
+            .iter()
+            .take(REQUIREMENTS)
+            .map(|of| requirement(of, show_in)),
+    );
+    if requirements.len() > REQUIREMENTS {
+        lines.push(format!(
+            "  and {} more requirements",
+            requirements.len() - REQUIREMENTS
+        ));
+    }
+    lines.extend(named(record, Verdict::Fails, "failing", show_in));
+    lines.extend(named(record, Verdict::Undecided, "undecided", show_in));
+    lines.extend(
+        record
+            .cautions
+            .iter()
+            .take(CAUTIONS)
+            .map(|of| format!("  Caution: {}", wording::caution(of, show_in))),
+    );
+    if record.cautions.len() > CAUTIONS {
+        lines.push(format!(
+            "  and {} more in the report",
+            wording::count(rest(record.cautions.len(), CAUTIONS), "caution")
+        ));
+    }
+    lines.into_iter().map(|line| cut(&line) + "\n").collect()
+}
+
+fn rest(all: usize, shown: usize) -> u64 {
+    u64::try_from(all.saturating_sub(shown)).unwrap_or(u64::MAX)
+}
+
+fn cut(line: &str) -> String {
+    let line = printable(&line.replace(['\n', '\r', '\t'], " "), &Alphabet::Any);
+    if line.chars().count() <= LINE {
+        return line;
+    }
+    line.chars().take(LINE - 1).chain(['…']).collect()
+}
+
+fn requirement(of: &RequirementFacts, show_in: System) -> String {
+    let stated = |value: Option<Finite>| figure(value, of.unit, Place::Stated, show_in);
+    let place = Place::Uncertainty(of.largest_expanded_uncertainty);
+    format!(
+        "  {}: {} conform, {} fail, {} undecided; {} … {}, limits {} … {} {}",
+        wording::characteristic(&of.name, of.at_length_mm, show_in),
+        of.conforming,
+        of.failing,
+        of.undecided,
+        figure(of.smallest, of.unit, place, show_in),
+        figure(of.largest, of.unit, place, show_in),
+        stated(of.lower),
+        stated(of.upper),
+        symbol(of.unit, show_in)
+    )
+}
+
+fn named(record: &AcceptRecord, verdict: Verdict, word: &str, show_in: System) -> Vec<String> {
+    let of: Vec<&SpringResult> = record
+        .springs
+        .iter()
+        .filter(|spring| spring.verdict == verdict)
+        .collect();
+    let mut lines: Vec<String> = of
+        .iter()
+        .take(NAMED)
+        .map(|spring| {
+            format!(
+                "  {word}: spring {}: {}",
+                spring.id,
+                super::model::remarks(spring, show_in)
+            )
+        })
+        .collect();
+    let left: Vec<String> = of
+        .iter()
+        .skip(NAMED)
+        .map(|spring| spring.id.clone())
+        .collect();
+    if !left.is_empty() {
+        lines.push(format!("  {word} too: {}", wording::springs(&left)));
+    }
+    lines
+}

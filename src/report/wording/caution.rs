@@ -1,0 +1,174 @@
+//! Words for what page one must say besides the decision.
+
+use super::{characteristic, count, length, list, sentence, springs};
+use crate::quantity::{Quantity, Unit};
+use crate::record::Caution;
+use crate::report::figure::{Place, number, percent, with_uncertainty, with_unit};
+use crate::units::{Finite, System};
+
+/// The cautions every report carries.
+pub(crate) const STANDING: [&str; 3] = [
+    "Compressed springs store energy and can be thrown: guard them while they are tested, handled and opened.",
+    "The stresses in this report are theoretical; no stress was measured.",
+    "Safety-related use is decided by the responsible engineer under the applicable codes, not by this page.",
+];
+
+/// One caution as a sentence.
+pub(crate) fn caution(of: &Caution, show_in: System) -> String {
+    match of {
+        Caution::SetAsideInvalid { .. }
+        | Caution::Repeated { .. }
+        | Caution::NotInspected { .. }
+        | Caution::LengthBelowSmallest { .. }
+        | Caution::UnitsConfirmed { .. }
+        | Caution::BeyondSample { .. }
+        | Caution::GeometryNotJudged { .. } => about_the_sample(of, show_in),
+        Caution::RobustDiffers { .. }
+        | Caution::LackOfFit { .. }
+        | Caution::NoZeroReading { .. }
+        | Caution::LoadOutsideRange { .. }
+        | Caution::OddRatio { .. }
+        | Caution::RateNotFromGeometry { .. } => about_the_curves(of, show_in),
+        Caution::ComplianceNotCorrected
+        | Caution::DeclaredNegligible { .. }
+        | Caution::CalibrationExpired { .. }
+        | Caution::CalibrationUnknown { .. }
+        | Caution::NoCheckOnRecord { .. }
+        | Caution::UncertaintyLarge { .. }
+        | Caution::CannotProve { .. } => about_the_bench(of, show_in),
+    }
+}
+
+fn about_the_bench(of: &Caution, show_in: System) -> String {
+    match of {
+        Caution::ComplianceNotCorrected => {
+            "The frame compliance of the rig is not known and not corrected; an allowance for it stands in the budget.".to_owned()
+        }
+        Caution::DeclaredNegligible { what } => format!("Declared negligible in the rig file, not measured: {what}."),
+        Caution::CalibrationExpired { scale, until } => {
+            format!("The calibration of the {scale} scale does not cover this measurement; it was valid until {until}.")
+        }
+        Caution::CalibrationUnknown { scale } => format!("The rig file gives no calibration dates for the {scale} scale."),
+        Caution::NoCheckOnRecord { every } => {
+            format!("The rig file asks for a check every {every}; no passed check is on record.")
+        }
+        Caution::UncertaintyLarge { name, at_length_mm, share } => format!(
+            "{}: the expanded uncertainty is {} of the half tolerance; many springs will stay undecided.",
+            sentence(&characteristic(name, *at_length_mm, show_in)),
+            percent(Some(*share))
+        ),
+        Caution::CannotProve { name, at_length_mm } => format!(
+            "{}: this bench cannot prove this requirement; the guard bands leave no room between the limits.",
+            sentence(&characteristic(name, *at_length_mm, show_in))
+        ),
+        _ => String::new(),
+    }
+}
+
+fn about_the_curves(of: &Caution, show_in: System) -> String {
+    let verb = |names: &[String], one: &str, more: &str| {
+        if names.len() == 1 {
+            one.to_owned()
+        } else {
+            more.to_owned()
+        }
+    };
+    match of {
+        Caution::RateNotFromGeometry {
+            stated,
+            theory,
+            expanded_uncertainty,
+        } => {
+            let finite = |value: f64| Finite::try_from(value).ok();
+            let unit = Unit::NewtonPerMillimetre;
+            format!(
+                "The drawing states a rate of {}, its geometry gives {} {} (k = 2).",
+                with_unit(Some(*stated), unit, Place::Stated, show_in),
+                with_uncertainty(
+                    finite(theory.get()),
+                    finite(expanded_uncertainty.get()),
+                    unit,
+                    show_in
+                ),
+                crate::report::figure::symbol(unit, show_in)
+            )
+        }
+        Caution::OddRatio {
+            springs: names,
+            ratio,
+            reading,
+        } => format!(
+            "The measured rate of {} is {} times what is expected{}.",
+            springs(names),
+            number(Some(*ratio), 3),
+            reading.as_ref().map_or_else(String::new, |text| format!(
+                "; {text} would give such a ratio"
+            ))
+        ),
+        Caution::LoadOutsideRange { springs: names } => {
+            format!(
+                "Loads outside the range the rig file states: {}.",
+                springs(names)
+            )
+        }
+        Caution::RobustDiffers { springs: names } => format!(
+            "{}: the robust rate differs from the fitted one; look at {} residuals.",
+            sentence(&springs(names)),
+            verb(names, "its", "their")
+        ),
+        Caution::LackOfFit { springs: names } => format!(
+            "{}: the curve bends within the window; the rate is the mean over it.",
+            sentence(&springs(names))
+        ),
+        Caution::NoZeroReading { springs: names } => format!(
+            "{}: no readings before contact; the load zero is a line of the budget.",
+            sentence(&springs(names))
+        ),
+        _ => String::new(),
+    }
+}
+
+fn about_the_sample(of: &Caution, show_in: System) -> String {
+    match of {
+        Caution::SetAsideInvalid {
+            spring,
+            export,
+            why,
+        } => {
+            format!("Spring {spring}: the measurement {export} is set aside as invalid: {why}.")
+        }
+        Caution::Repeated { springs: names } => {
+            format!("Measured more than once and averaged: {}.", springs(names))
+        }
+        Caution::NotInspected { what } => {
+            format!("Not inspected, as the lot file says: {}.", list(what))
+        }
+        Caution::LengthBelowSmallest {
+            at_length_mm,
+            smallest_mm,
+        } => format!(
+            "The test length {} lies below the smallest permitted length Ln = {}.",
+            length(Some(*at_length_mm), show_in),
+            with_unit(
+                Some(*smallest_mm),
+                Unit::Millimetre,
+                Place::Significant(4),
+                show_in
+            )
+        ),
+        Caution::UnitsConfirmed { finding } => {
+            format!("The units were confirmed by hand over this finding: {finding}.")
+        }
+        Caution::BeyondSample { springs } => format!(
+            "{} measured beyond the sample; they do not count for the decision.",
+            count(*springs, "spring")
+        ),
+        Caution::GeometryNotJudged { what } => {
+            let name = Quantity::from_name(what, None).map_or(what.as_str(), |of| of.title());
+            format!(
+                "The drawing tolerances the {name}, but does not list it under the requirements: it is not judged."
+            )
+        }
+        _ => String::new(),
+    }
+}
