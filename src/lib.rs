@@ -14,6 +14,8 @@ pub mod drawing;
 
 pub mod rig;
 
+pub mod export;
+
 pub mod intake;
 
 pub mod curve;

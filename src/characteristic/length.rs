@@ -40,7 +40,7 @@ pub(super) fn free(
         return Ok(Err(Absence::NoAbsoluteLength));
     }
     let Some(contact) = setup.first_contact(curve) else {
-        return Ok(Err(Absence::StrokeNotRecorded));
+        return Ok(Err(Absence::ContactNotRecorded));
     };
     let length = -contact.u;
     let seating = setup.rig.contact_load.get() / contact.slope;
@@ -145,16 +145,13 @@ fn length_lines(
     own: Option<(OwnFree, Contact)>,
 ) -> Vec<Line> {
     let rig = setup.rig;
-    let (scaled, zeroed_at) = match own {
-        Some((own, contact)) => {
-            lines.push(Line::new("own free length", Part::Common, own.standard));
-            lines.push(Line::new("contact", Part::Own, contact.scatter));
-            (at.length - own.value, 0.0)
-        }
-        None => {
-            lines.push(Line::new("length zero", Part::Common, rig.zero.get()));
-            (at.length - rig.set_at_length, rig.zeroed_at_load)
-        }
+    let (scaled, zeroed_at) = if let Some((own, contact)) = own {
+        lines.push(Line::new("own free length", Part::Common, own.standard));
+        lines.push(Line::new("contact", Part::Own, contact.scatter));
+        (at.length - own.value, 0.0)
+    } else {
+        lines.push(Line::new("length zero", Part::Common, rig.zero.get()));
+        (at.length - rig.set_at_length, rig.zeroed_at_load)
     };
     lines.extend(scales::travel_scale(rig, scaled));
     lines.extend(scales::frame(rig, at.load - zeroed_at, at.deflection));

@@ -163,8 +163,8 @@ fn local(path: &Path, u: f64, residual_sd: Option<f64>) -> Option<Local> {
     }
     let load = path.load_at(u)?;
     let wider = path.between(u - 10.0 * near, u + 10.0 * near);
-    let (first, last) = (wider.first()?, wider.last()?);
-    let slope = (last.load - first.load) / (last.u - first.u);
+    let (start, end) = (wider.first()?, wider.last()?);
+    let slope = (end.load - start.load) / (end.u - start.u);
     let scatter = Line::new("local fit", Part::Own, residual_sd?);
     (slope > 0.0 && slope.is_finite()).then_some(Local {
         load,

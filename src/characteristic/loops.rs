@@ -27,8 +27,7 @@ pub(super) fn hysteresis(
     };
     let common = || {
         let from = curve
-            .contact(loading, contact_load)?
-            .u
+            .touched(loading, contact_load)?
             .max(unloading.reach()?.0);
         let end = loading.reach()?.1.min(unloading.reach()?.1);
         let to = curve
@@ -77,7 +76,7 @@ pub(super) fn set(
         .contact(first, contact_load)
         .zip(curve.contact(last, contact_load));
     let Some((first, last)) = contacts else {
-        return Ok(Err(Absence::WindowNotReached));
+        return Ok(Err(Absence::ContactNotRecorded));
     };
     let set = last.u - first.u;
     let shown = vec![

@@ -70,6 +70,8 @@ pub enum Absence {
     WindowNotReached,
     /// The curve does not reach the length.
     LengthNotReached,
+    /// The stroke starts on a loaded spring.
+    ContactNotRecorded,
     /// The stroke is not in the export.
     StrokeNotRecorded,
     /// No full cycle.

@@ -34,6 +34,14 @@ pub struct RateFit {
     pub robust: Option<f64>,
 }
 
+impl RateFit {
+    /// Lets go of the points, once they are drawn: a lot of ten thousand springs keeps figures only.
+    pub fn forget_points(&mut self) {
+        self.travel = Vec::new();
+        self.line.residuals = Vec::new();
+    }
+}
+
 /// The judged stroke of a curve; `None` where the export does not hold it.
 pub(super) fn judged<'c>(setup: &Setup<'_>, curve: &'c Curve) -> Option<&'c Path> {
     let stroke = setup.stroke;

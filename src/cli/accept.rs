@@ -29,17 +29,8 @@ pub(super) fn run(args: &AcceptArgs, quiet: bool, out: &mut impl Write) -> miett
         flags: flags(args),
     };
     let mut accepted = job::accept(&args.lot, &args.lot.to_string_lossy(), &options)?;
-    let result = match &args.out {
-        Some(dir) => Some(write(dir, args, &mut accepted, &templates, quiet)?),
-        None => None,
-    };
-    if args.json {
-        let bytes = match result {
-            Some(bytes) => bytes,
-            None => json(&accepted)?,
-        };
-        out.write_all(&bytes).into_diagnostic()?;
-    } else {
+    let decision = accepted.record.decision;
+    if !args.json {
         write!(
             out,
             "{}",
@@ -47,7 +38,15 @@ pub(super) fn run(args: &AcceptArgs, quiet: bool, out: &mut impl Write) -> miett
         )
         .into_diagnostic()?;
     }
-    Ok(status(accepted.record.decision))
+    let result = match &args.out {
+        Some(dir) => write(dir, args, &mut accepted, &templates, quiet)?,
+        None if args.json => json(&accepted)?,
+        None => Vec::new(),
+    };
+    if args.json {
+        out.write_all(&result).into_diagnostic()?;
+    }
+    Ok(status(decision))
 }
 
 const fn status(decision: Decision) -> u8 {
@@ -97,14 +96,14 @@ fn write(
     let result = json(accepted)?;
     files.push(OutFile {
         path: folder::RESULT.to_owned(),
-        bytes: result.clone(),
+        bytes: result,
     });
     folder::write(dir, &files)?;
     if !quiet {
         // A notice; where stderr is gone there is nobody to read it.
         let _ = writeln!(std::io::stderr(), "written: {}", dir.display());
     }
-    Ok(result)
+    Ok(files.pop().map_or(Vec::new(), |result| result.bytes))
 }
 
 fn json(accepted: &Accepted) -> miette::Result<Vec<u8>> {

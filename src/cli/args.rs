@@ -53,6 +53,10 @@ pub(super) enum Command {
 }
 
 #[derive(Debug, Args)]
+#[expect(
+    clippy::struct_excessive_bools,
+    reason = "each is a flag of the command line"
+)]
 pub(super) struct AcceptArgs {
     /// The lot file
     #[arg(value_name = "LOT.toml")]

@@ -15,7 +15,6 @@ pub(super) const RESULT: &str = "result.json";
 
 /// Why an output folder cannot be written.
 #[derive(Debug, thiserror::Error, miette::Diagnostic)]
-#[expect(missing_docs, reason = "the messages say it")]
 pub(super) enum FolderError {
     #[error("`{}` holds `{}`, which is not part of a result", dir.display(), foreign.display())]
     #[diagnostic(

@@ -13,7 +13,6 @@ use std::io::{ErrorKind, Write};
 use std::process::ExitCode;
 
 use clap::Parser;
-use miette::IntoDiagnostic;
 
 use args::{Arguments, Command};
 
@@ -63,7 +62,7 @@ fn dispatch(arguments: &Arguments, out: &mut impl Write) -> miette::Result<u8> {
         Command::Accept(args) => accept::run(args, arguments.quiet, out),
         Command::Rate(args) => rate::run(args, out),
         Command::Expect(args) => expect::run(args, out),
-        Command::Completions { shell } => shell::completions(*shell, out).into_diagnostic(),
+        Command::Completions { shell } => Ok(shell::completions(*shell, out)),
         Command::Manual { dir } => shell::manual(dir),
     }
 }

@@ -4,10 +4,11 @@ use std::io::Write;
 
 use miette::IntoDiagnostic;
 
+use crate::export::Columns;
 use crate::job::{self, Bench, RateOptions, RateResult};
 use crate::quantity::Unit;
 use crate::report::{Place, figure, with_uncertainty};
-use crate::rig::{Columns, Means};
+use crate::rig::Means;
 use crate::units::{ForceUnit, LengthUnit, Millimetres, System};
 
 use super::args::RateArgs;
@@ -96,7 +97,12 @@ fn print(result: &RateResult, out: &mut impl Write) -> std::io::Result<()> {
         "    last loading, 30 % to 70 % of the travel from contact to the greatest compression: {} points{lines}",
         result.points
     )?;
-    let largest = figure(result.largest_load_n, Unit::Newton, Place::Significant(4), shown);
+    let largest = figure(
+        result.largest_load_n,
+        Unit::Newton,
+        Place::Significant(4),
+        shown,
+    );
     let straightness = figure(
         result.straightness_percent,
         Unit::Percent,

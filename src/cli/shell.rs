@@ -8,13 +8,9 @@ use miette::{IntoDiagnostic, WrapErr};
 
 use super::args::Arguments;
 
-pub(super) fn completions(
-    shell: clap_complete::Shell,
-    out: &mut impl Write,
-) -> std::io::Result<u8> {
-    let mut command = Arguments::command();
-    clap_complete::generate(shell, &mut command, "coilassay", out);
-    Ok(0)
+pub(super) fn completions(shell: clap_complete::Shell, out: &mut impl Write) -> u8 {
+    clap_complete::generate(shell, &mut Arguments::command(), "coilassay", out);
+    0
 }
 
 pub(super) fn manual(dir: &Path) -> miette::Result<u8> {

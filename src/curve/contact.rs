@@ -14,11 +14,10 @@ pub struct Contact {
 }
 
 /// Finds contact on `path`: a straight line through the nodes from the contact load `contact` (N) to three
-/// times of it (at least three nodes), taken back to zero load.
+/// times of it (at least three nodes), taken back to zero load. `None` where the stroke does not start below the contact
+/// load: then contact was not recorded.
 pub(super) fn find(path: &Path, contact: f64) -> Option<Contact> {
-    let start = path
-        .crossing(contact)
-        .or_else(|| path.nodes.first().map(|node| node.u))?;
+    let start = path.crossing(contact)?;
     let after: Vec<&Node> = path.nodes.iter().filter(|node| node.u >= start).collect();
     let low = after
         .iter()

@@ -1,7 +1,8 @@
 //! From what the tester wrote to one spring's curve: empty-platen zero, frame compliance, strokes.
 
 use crate::drawing::Way;
-use crate::rig::{Compliance, Means, RawCurve, Rig};
+use crate::export::RawCurve;
+use crate::rig::{Compliance, Means, Rig};
 
 use super::contact::{self, Contact};
 use super::error::CurveError;
@@ -64,14 +65,20 @@ impl Curve {
     /// A first idea of the rate, N/mm, for plausibility only: no window, no uncertainty.
     pub fn plain_rate(&self, contact_load: f64) -> Option<f64> {
         let path = self.loading.last()?;
-        solid::plain_rate(path, self.contact(path, contact_load)?.u)
+        solid::plain_rate(path, self.touched(path, contact_load)?)
+    }
+
+    /// Where a stroke has the spring in hand: from contact on, or from its start where contact was not recorded.
+    pub fn touched(&self, path: &Path, contact_load: f64) -> Option<f64> {
+        let contact = self.contact(path, contact_load).map(|contact| contact.u);
+        contact.or_else(|| path.reach().map(|(start, _)| start))
     }
 
     /// The rise to solid on a loading stroke.
     pub fn rise(&self, path: &Path, contact_load: f64) -> Option<Rise> {
-        let contact = self.contact(path, contact_load)?;
-        let rate = solid::plain_rate(path, contact.u)?;
-        solid::rise(path, contact.u, rate)
+        let start = self.touched(path, contact_load)?;
+        let rate = solid::plain_rate(path, start)?;
+        solid::rise(path, start, rate)
     }
 }
 
@@ -216,8 +223,8 @@ impl Site<'_> {
             .zip(u)
             .max_by(|a, b| a.0.total_cmp(b.0))
             .unwrap_or((start, from));
-        let least = loads.iter().copied().fold(*start, f64::min);
-        let (rise, fall) = (most.0 - start, start - least);
+        let lowest = loads.iter().copied().fold(*start, f64::min);
+        let (rise, fall) = (most.0 - start, start - lowest);
         let (spring, export, first, last) = self.names();
         if fall > rise.max(contact) {
             return Err(CurveError::LoadFalls {

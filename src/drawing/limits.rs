@@ -102,7 +102,7 @@ fn spread(table: Table<'_>, nominal: f64, scale: f64) -> Option<(f64, f64)> {
         }?;
         return Some((tolerance, tolerance));
     }
-    let mut side = |key: &str| {
+    let side = |key: &str| {
         if !table.has(key) {
             table.missing(key, "write both plus and minus");
         }

@@ -5,14 +5,17 @@
 
 mod limits;
 mod material;
+mod member;
 mod open;
+mod read_terms;
 mod requirements;
 mod terms;
 mod theory;
 
 pub use limits::{CLASSES, Limits, Requirement, read_limits};
 pub use material::{FAMILIES, Family, Shear, family};
-pub use open::{Arrangement, Coil, Drawing, Ends, KEYS, Member, Sized, open, read_units};
+pub use member::{Coil, Ends, Member, Sized};
+pub use open::{Arrangement, Drawing, KEYS, open, read_units};
 pub use terms::{
     AQLS, Acceptance, Aqls, Guard, Level, Method, PlanTerms, Policy, RateTest, Rule, Stroke, Way,
     Window,

@@ -2,7 +2,7 @@
 
 use crate::units::{Megapascals, Millimetres, Newtons, NewtonsPerMillimetre};
 
-use super::open::{Coil, Ends, Member};
+use super::member::{Coil, Ends, Member};
 
 /// Why theory has no answer.
 #[derive(Clone, Debug, PartialEq, thiserror::Error, miette::Diagnostic)]

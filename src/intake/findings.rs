@@ -3,8 +3,8 @@
 use std::collections::BTreeMap;
 use std::path::Path;
 
+use crate::export::{ExportError, SmallTable, Spot, read_small};
 use crate::quantity::Quantity;
-use crate::rig::{ExportError, SmallTable, Spot, read_small};
 use crate::text::InputFile;
 use crate::units::LengthUnit;
 
@@ -96,10 +96,17 @@ pub fn read_findings(
 ) -> Result<Caliper, FindingsError> {
     let table = read_small(path, as_written)?;
     let columns = columns(&table)?;
-    for (_, quantity, _) in &columns {
-        if !uncertainties
+    let filled = |column: usize| {
+        table
+            .rows
             .iter()
-            .any(|(known, _)| *known == quantity.name())
+            .any(|(_, cells)| cells.get(column).is_some_and(|cell| !cell.is_empty()))
+    };
+    for (column, quantity, _) in &columns {
+        if filled(*column)
+            && !uncertainties
+                .iter()
+                .any(|(known, _)| *known == quantity.name())
         {
             return Err(FindingsError::NoUncertainty {
                 name: table.name,

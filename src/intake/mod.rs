@@ -4,7 +4,9 @@
 mod exports;
 mod findings;
 mod open;
+mod parts;
 
 pub use exports::{Export, natural_order, resolve};
 pub use findings::{Caliper, FindingsError, read_findings};
-pub use open::{Conditions, Finding, KEYS, Lot, NotInspected, Repeat, open};
+pub use open::{KEYS, Lot, open};
+pub use parts::{Conditions, Finding, NotInspected, Repeat};

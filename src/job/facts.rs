@@ -5,7 +5,6 @@ use crate::drawing::{
     Acceptance, Drawing, Guard, Member, MemberTheory, Method, Rule, TheoryError, Window, stress,
 };
 use crate::intake::{Lot, NotInspected};
-use crate::quantity::Quantity;
 use crate::record::{
     ConditionFacts, DrawingFacts, LotFacts, MemberFacts, RequirementFacts, RigFacts, StressFacts,
     TheoryFacts, WindowFacts,

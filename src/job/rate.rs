@@ -8,9 +8,10 @@ use serde::Serialize;
 use crate::characteristic::{Measured, Setup};
 use crate::curve::{Bounds, WindowOf};
 use crate::drawing::{Method, Stroke, Way};
+use crate::export::{Columns, Look, look, sketch};
 use crate::intake::{Conditions, Export};
 use crate::quantity::Quantity;
-use crate::rig::{self, Accuracy, Columns, Compliance, Known, Means, Rig, Scale, look, sketch};
+use crate::rig::{self, Accuracy, Compliance, Known, Means, Rig, Scale};
 use crate::text::{Head, InputFile};
 use crate::units::{Finite, Millimetres, Newtons};
 
@@ -197,7 +198,7 @@ fn bench(export: &str, bench: &Bench) -> miette::Result<Rig> {
     }
 }
 
-fn found(look: &rig::Look) -> String {
+fn found(look: &Look) -> String {
     let Some(line) = look.header_line else {
         return "; no table was recognised in its first lines".to_owned();
     };

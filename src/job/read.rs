@@ -7,10 +7,10 @@ use rayon::prelude::*;
 
 use crate::characteristic::{MeasureError, Measurement, Setup, measure};
 use crate::curve::{Axis, Curve, Path as Stroke, Reduced, Zero, correct, thin};
+use crate::export::{BLOCK_BYTES, ExportError, Ledger, RawCurve};
 use crate::intake::Export;
 use crate::quantity::Quantity;
 use crate::record::{LedgerFacts, SetAside};
-use crate::rig::{BLOCK_BYTES, ExportError, Ledger, RawCurve};
 use crate::text::InputFile;
 
 /// Points a stroke keeps for drawing.
@@ -73,7 +73,7 @@ fn read_at(path: &Path, written: &str, how: How<'_>) -> Result<Batch, ExportErro
             .collect();
         readings.extend(done);
     };
-    let read = crate::rig::read(path, written, &how.setup.rig.dialect, block, &mut each)?;
+    let read = crate::export::read(path, written, &how.setup.rig.dialect, block, &mut each)?;
     let shown = crate::text::printable(written, &crate::text::Alphabet::Any);
     let input = InputFile {
         role: "export".to_owned(),
@@ -88,7 +88,7 @@ fn read_at(path: &Path, written: &str, how: How<'_>) -> Result<Batch, ExportErro
 }
 
 fn ledger(export: String, ledger: &Ledger) -> LedgerFacts {
-    let aside = |one: &crate::rig::Aside| SetAside {
+    let aside = |one: &crate::export::Aside| SetAside {
         reason: one.reason.as_str().to_owned(),
         first_line: one.first_line,
         last_line: one.last_line,
@@ -109,8 +109,11 @@ fn reading(raw: &RawCurve, how: How<'_>) -> Result<Reading, MeasureError> {
         .caliper
         .get(&raw.identity)
         .map_or(&[][..], Vec::as_slice);
-    let measurement = measure(setup, &curve, caliper)?;
+    let mut measurement = measure(setup, &curve, caliper)?;
     let reduced = how.drawn.then(|| reduce(setup, &curve, &measurement));
+    if let Some(fit) = &mut measurement.fit {
+        fit.forget_points();
+    }
     Ok(Reading {
         id: raw.id.clone(),
         export: curve.export,

@@ -1,95 +1,10 @@
 //! The decision on a lot.
 
-use serde::{Deserialize, Serialize};
-
 use crate::drawing::Policy;
-use crate::quantity::Class;
 use crate::verdict::{Overall, Verdict};
 
+use super::reason::{Decision, LotReason};
 use super::terms::ClassTerms;
-
-/// The decision on a lot.
-#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize)]
-#[serde(rename_all = "lowercase")]
-pub enum Decision {
-    /// The plan accepts the lot.
-    Accepted,
-    /// The plan rejects the lot.
-    Rejected,
-    /// The measurements do not settle it.
-    Undecided,
-}
-
-/// Why the lot has the decision it has.
-#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
-#[serde(tag = "code", rename_all = "snake_case")]
-pub enum LotReason {
-    /// Proven failing springs reach the rejection number of a class.
-    ProvenFailures {
-        /// Class.
-        class: Class,
-        /// Springs proven failing.
-        failing: u64,
-        /// Rejection number.
-        reject: u64,
-    },
-    /// Even all undecided springs failing, the acceptance number holds.
-    WithinAcceptance {
-        /// Class.
-        class: Class,
-        /// Springs proven failing.
-        failing: u64,
-        /// Springs undecided.
-        undecided: u64,
-        /// Acceptance number.
-        accept: u64,
-    },
-    /// Undecided springs could turn the decision.
-    UndecidedMatter {
-        /// Class.
-        class: Class,
-        /// Springs proven failing.
-        failing: u64,
-        /// Springs undecided.
-        undecided: u64,
-        /// Acceptance number.
-        accept: u64,
-    },
-    /// Undecided springs count as conforming, as agreed.
-    UndecidedPass {
-        /// Class.
-        class: Class,
-        /// Springs undecided.
-        undecided: u64,
-    },
-    /// Undecided springs count as failing, as agreed; this rejection proves nothing.
-    UndecidedFail {
-        /// Class.
-        class: Class,
-        /// Springs proven failing.
-        failing: u64,
-        /// Springs undecided.
-        undecided: u64,
-        /// Rejection number.
-        reject: u64,
-    },
-    /// Fewer springs measured than the plan asks for.
-    Missing {
-        /// Class.
-        class: Class,
-        /// Springs measured.
-        measured: u64,
-        /// Springs the plan asks for.
-        wanted: u64,
-    },
-    /// A spring beyond the sample is proven failing.
-    FailureBeyondSample {
-        /// The spring.
-        spring: String,
-        /// Class of the failure.
-        class: Class,
-    },
-}
 
 /// How one class stands.
 #[derive(Clone, Debug, PartialEq)]
@@ -300,6 +215,7 @@ mod tests {
     use std::collections::BTreeSet;
 
     use super::*;
+    use crate::quantity::Class;
 
     fn spring(failing: Option<Class>, undecided: &[Class]) -> (String, Overall) {
         let verdict = if failing.is_some() {

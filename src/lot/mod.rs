@@ -5,13 +5,15 @@ mod advice;
 mod decide;
 mod plan;
 mod plan_table;
+mod reason;
 mod terms;
 
 pub use advice::{Advice, advise};
-pub use decide::{Decision, LotReason, Outcome, Standing, decide};
+pub use decide::{Outcome, Standing, decide};
 pub use plan::{
     Aql, Arrow, CodeLetter, PlanError, SinglePlan, normal_single, probability_of_acceptance,
 };
+pub use reason::{Decision, LotReason};
 pub use terms::{ClassTerms, class_terms};
 
 pub use crate::drawing::Level;

@@ -4,13 +4,14 @@ use std::collections::BTreeMap;
 
 use serde::{Deserialize, Serialize};
 
+use super::caution::Caution;
+use super::facts::{RigFacts, TheoryFacts, WindowFacts};
 use super::spring::{LedgerFacts, SpringResult};
-use crate::curve::WindowOf;
 use crate::drawing::Policy;
 use crate::lot::{Decision, LotReason};
 use crate::quantity::{Class, Unit};
 use crate::text::InputFile;
-use crate::units::{Finite, Megapascals, Millimetres, Newtons, NewtonsPerMillimetre};
+use crate::units::{Finite, Millimetres};
 
 /// Which job wrote a result.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize)]
@@ -123,117 +124,6 @@ pub struct DrawingFacts {
     pub undecided_springs: Policy,
 }
 
-/// Stresses at a load or length; theory, see the formulas in the report.
-#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
-pub struct StressFacts {
-    /// Where: a test length, or the solid length.
-    pub at_length_mm: Millimetres,
-    /// Deflection from the nominal free length.
-    pub deflection_mm: Millimetres,
-    /// Load of this member there.
-    pub load_n: Newtons,
-    /// 8FD/(πd³).
-    pub uncorrected_mpa: Megapascals,
-    /// With the direct-shear factor 1 + 1/(2w).
-    pub static_mpa: Megapascals,
-    /// With the factor (w + 0.5)/(w − 0.75) of EN 13906-1.
-    pub dynamic_mpa: Megapascals,
-    /// With Wahl's factor.
-    pub wahl_mpa: Megapascals,
-}
-
-/// One spring of the set, in theory.
-#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
-pub struct MemberFacts {
-    /// Its name.
-    pub name: String,
-    /// Material as written, or `stated G`.
-    pub material: String,
-    /// Source of G.
-    pub shear_modulus_source: String,
-    /// G.
-    pub shear_modulus_mpa: Megapascals,
-    /// Wire diameter d.
-    pub wire_mm: Millimetres,
-    /// Mean coil diameter D.
-    pub coil_mm: Millimetres,
-    /// Active coils n.
-    pub active_coils: Finite,
-    /// Total coils nt.
-    pub total_coils: Finite,
-    /// Index w = D/d.
-    pub index: Finite,
-    /// G·d⁴/(8·D³·n).
-    pub rate_n_per_mm: NewtonsPerMillimetre,
-    /// Its share of the set's rate, 0 … 1.
-    pub share: Finite,
-    /// Solid length Lc.
-    pub solid_length_mm: Millimetres,
-    /// Smallest permitted test length Ln.
-    pub smallest_length_mm: Millimetres,
-    /// Stress at each test length and at solid.
-    pub stress: Vec<StressFacts>,
-}
-
-/// What the drawn spring should do.
-#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
-pub struct TheoryFacts {
-    /// Rate of the whole set.
-    pub rate_n_per_mm: NewtonsPerMillimetre,
-    /// Standard uncertainty of it from the drawing's tolerances.
-    pub rate_standard_uncertainty: NewtonsPerMillimetre,
-    /// The worst case of the drawing's tolerances: lowest rate.
-    pub rate_lowest: NewtonsPerMillimetre,
-    /// Highest rate.
-    pub rate_highest: NewtonsPerMillimetre,
-    /// Nominal free length L0.
-    pub free_length_mm: Millimetres,
-    /// Solid length of the set (its longest member's).
-    pub solid_length_mm: Millimetres,
-    /// Smallest permitted test length of the set.
-    pub smallest_length_mm: Millimetres,
-    /// Fn, the load at Ln.
-    pub full_load_n: Newtons,
-    /// The members.
-    pub members: Vec<MemberFacts>,
-}
-
-/// The window of the rate, one for the whole lot.
-#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
-pub struct WindowFacts {
-    /// What the bounds are.
-    pub of: WindowOf,
-    /// Start, in N or mm.
-    pub from: Finite,
-    /// End, in N or mm.
-    pub to: Finite,
-    /// How the drawing says it, in words.
-    pub stated: String,
-    /// The stroke that is judged, in words.
-    pub stroke: String,
-    /// `fit` or `two-point`.
-    pub method: String,
-}
-
-/// The rig, as its file states it.
-#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
-pub struct RigFacts {
-    /// Name.
-    pub name: String,
-    /// What is known of the force scale, in words.
-    pub force: String,
-    /// Its calibration, `YYYY-MM-DD … YYYY-MM-DD`.
-    pub force_calibrated: Option<String>,
-    /// What is known of the travel scale.
-    pub travel: String,
-    /// Its calibration.
-    pub travel_calibrated: Option<String>,
-    /// Frame compliance, in words.
-    pub compliance: String,
-    /// What the export's travel means: `deflection`, `length`, `platen position`.
-    pub travel_means: String,
-}
-
 /// The plan of one class.
 #[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
 pub struct ClassPlan {
@@ -276,131 +166,6 @@ pub struct PlanFacts {
     pub reject: u64,
     /// The plan of each class.
     pub classes: Vec<ClassPlan>,
-}
-
-/// Something the reader of page one must know.
-#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
-#[serde(tag = "code", rename_all = "snake_case")]
-pub enum Caution {
-    /// The stated rate is not what the geometry gives.
-    RateNotFromGeometry {
-        /// Stated nominal rate.
-        stated: NewtonsPerMillimetre,
-        /// Rate from the geometry.
-        theory: NewtonsPerMillimetre,
-        /// Expanded uncertainty (k = 2) of the theory.
-        expanded_uncertainty: NewtonsPerMillimetre,
-    },
-    /// Springs whose rate is far from what is stated, and what would give such a rate.
-    OddRatio {
-        /// The springs.
-        springs: Vec<String>,
-        /// Median of measured over expected rate.
-        ratio: Finite,
-        /// What would give such a ratio, in words; `null` where nothing known does.
-        reading: Option<String>,
-    },
-    /// No frame compliance in the rig file.
-    ComplianceNotCorrected,
-    /// A budget input was declared negligible.
-    DeclaredNegligible {
-        /// Which.
-        what: String,
-    },
-    /// Calibration is past its date, or was made after the measurement.
-    CalibrationExpired {
-        /// `force` or `travel`.
-        scale: String,
-        /// Valid until.
-        until: String,
-    },
-    /// The rig file gives no calibration dates.
-    CalibrationUnknown {
-        /// `force` or `travel`.
-        scale: String,
-    },
-    /// The rig file wants checks and no check is on record.
-    NoCheckOnRecord {
-        /// How often the rig file wants one.
-        every: String,
-    },
-    /// Loads outside the range the rig file states.
-    LoadOutsideRange {
-        /// The springs.
-        springs: Vec<String>,
-    },
-    /// U exceeds a third of the half tolerance (a quarter under simple acceptance).
-    UncertaintyLarge {
-        /// The characteristic.
-        name: String,
-        /// Length of a load.
-        at_length_mm: Option<Millimetres>,
-        /// Largest U over the half tolerance.
-        share: Finite,
-    },
-    /// The bench cannot prove this requirement.
-    CannotProve {
-        /// The characteristic.
-        name: String,
-        /// Length of a load.
-        at_length_mm: Option<Millimetres>,
-    },
-    /// The robust rate differs from the fitted one.
-    RobustDiffers {
-        /// The springs.
-        springs: Vec<String>,
-    },
-    /// The curve bends within the window.
-    LackOfFit {
-        /// The springs.
-        springs: Vec<String>,
-    },
-    /// No readings before contact.
-    NoZeroReading {
-        /// The springs.
-        springs: Vec<String>,
-    },
-    /// Measurements set aside as invalid.
-    SetAsideInvalid {
-        /// Spring.
-        spring: String,
-        /// Export.
-        export: String,
-        /// Why.
-        why: String,
-    },
-    /// Springs measured more than once.
-    Repeated {
-        /// The springs.
-        springs: Vec<String>,
-    },
-    /// Requirements that were not inspected.
-    NotInspected {
-        /// Which.
-        what: Vec<String>,
-    },
-    /// A test length below the smallest permitted length.
-    LengthBelowSmallest {
-        /// The test length.
-        at_length_mm: Millimetres,
-        /// Ln.
-        smallest_mm: Millimetres,
-    },
-    /// The units were confirmed by hand over a plausibility finding.
-    UnitsConfirmed {
-        /// What had been found.
-        finding: String,
-    },
-    /// Springs measured beyond the sample.
-    BeyondSample {
-        /// How many.
-        springs: u32,
-    },
-    /// A requirement on the geometry that is stated but not listed under the requirements.
-    GeometryNotJudged {
-        /// Which quantity.
-        what: String,
-    },
 }
 
 /// A file of the output folder.

@@ -2,13 +2,16 @@
 //! Every figure is finite or absent (`null`), in mm, N, N/mm, MPa or %; there is no bare `f64`.
 
 mod accept;
+mod caution;
+mod facts;
 mod spring;
 
 pub use accept::{
-    AcceptRecord, Caution, ClassPlan, ConditionFacts, DrawingFacts, Kind, LotFacts, MemberFacts,
-    OutputFile, PlanFacts, Provenance, RequirementFacts, RigFacts, SimpleAcceptance, StressFacts,
-    TheoryFacts, WindowFacts,
+    AcceptRecord, ClassPlan, ConditionFacts, DrawingFacts, Kind, LotFacts, OutputFile, PlanFacts,
+    Provenance, RequirementFacts, SimpleAcceptance,
 };
+pub use caution::Caution;
+pub use facts::{MemberFacts, RigFacts, StressFacts, TheoryFacts, WindowFacts};
 pub use spring::{
     BudgetFigure, CharacteristicResult, FindingResult, FitFacts, LackFacts, LedgerFacts,
     RepeatFacts, SetAside, SpringResult,

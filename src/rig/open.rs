@@ -2,8 +2,6 @@
 
 use std::path::Path;
 
-use jiff::civil::Date;
-
 use crate::drawing::read_units;
 use crate::quantity::Quantity;
 use crate::text::{InputFile, Keys, Source, Table, read_toml};
@@ -11,6 +9,9 @@ use crate::units::{Newtons, System};
 
 use super::dialect::Dialect;
 use super::read_dialect::read_export;
+use super::scale::{
+    FORCE_CLASSES, Known, Scale, TRAVEL_CLASSES, declared_negligible, read_scale, standard_of,
+};
 
 const SCALE: &[&str] = &[
     "class",
@@ -64,61 +65,6 @@ pub enum Means {
         /// Reading with the platens touching, mm.
         at_zero_gap: f64,
     },
-}
-
-/// What is known of a scale's error.
-#[derive(Clone, Debug, PartialEq)]
-pub enum Accuracy {
-    /// A class of ISO 7500-1 or ISO 9513: the relative error is within ± `half_width`.
-    Class {
-        /// The class as written.
-        class: String,
-        /// Relative half-width.
-        half_width: f64,
-    },
-    /// A calibration certificate.
-    Certificate {
-        /// Relative standard uncertainty, U/k.
-        standard: f64,
-        /// Found relative error, not corrected.
-        error: f64,
-        /// Relative half-width of the drift since.
-        drift: f64,
-    },
-    /// Declared negligible by whoever wrote the rig file; the report repeats it.
-    DeclaredNegligible,
-}
-
-/// A figure that is stated, or declared negligible.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub enum Known {
-    /// Stated.
-    Stated(f64),
-    /// Declared negligible; the report repeats it.
-    DeclaredNegligible,
-}
-
-impl Known {
-    /// The figure; 0 where it was declared negligible.
-    pub const fn get(self) -> f64 {
-        match self {
-            Self::Stated(figure) => figure,
-            Self::DeclaredNegligible => 0.0,
-        }
-    }
-}
-
-/// A scale: its accuracy, resolution and calibration.
-#[derive(Clone, Debug, PartialEq)]
-pub struct Scale {
-    /// Accuracy.
-    pub accuracy: Accuracy,
-    /// Resolution in N or mm.
-    pub resolution: Known,
-    /// Usable range in N or mm.
-    pub range: Option<(f64, f64)>,
-    /// Calibrated on, and until.
-    pub calibrated: Option<(Date, Date)>,
 }
 
 /// Compliance of the frame.
@@ -224,114 +170,6 @@ fn read(root: Table<'_>, input: &InputFile) -> Option<Rig> {
     })
 }
 
-/// Relative half-width of the indication error by class, ISO 7500-1:2018 table 2 (from memory).
-const FORCE_CLASSES: [(&str, f64); 4] = [("0.5", 0.005), ("1", 0.01), ("2", 0.02), ("3", 0.03)];
-/// Relative half-width of the displacement error by class, ISO 9513 (0.5 published, 1 and 2 from memory).
-const TRAVEL_CLASSES: [(&str, f64); 3] = [("0.5", 0.005), ("1", 0.01), ("2", 0.02)];
-
-fn read_scale(table: Table<'_>, classes: &[(&str, f64)], unit: f64) -> Option<Scale> {
-    let accuracy = read_accuracy(table, classes);
-    let resolution = read_known(
-        table,
-        "resolution",
-        unit,
-        "write resolution = 0.01, or { unknown = \"declared negligible\" }",
-    );
-    let range = table.table("range");
-    let range = match (range.not_negative("from"), range.positive("to")) {
-        (Some(from), Some(to)) if from.value < to.value => {
-            Some((from.value * unit, to.value * unit))
-        }
-        (None, None) if !range.is_present() => None,
-        _ => {
-            range.fault(
-                &range.span(),
-                "the range does not run from a smaller to a larger figure",
-                "write range = { from = 4.0, to = 200.0 }",
-            );
-            None
-        }
-    };
-    let dates = table.table("calibrated");
-    let calibrated = match (dates.date("on"), dates.date("until")) {
-        (Some(on), Some(until)) if on.value < until.value => Some((on.value, until.value)),
-        (None, None) if !dates.is_present() => None,
-        _ => {
-            dates.fault(
-                &dates.span(),
-                "the calibration does not run from an earlier to a later date",
-                "write calibrated = { on = 2026-03-02, until = 2027-03-02 }",
-            );
-            None
-        }
-    };
-    Some(Scale {
-        accuracy: accuracy?,
-        resolution: resolution?,
-        range,
-        calibrated,
-    })
-}
-
-fn read_accuracy(table: Table<'_>, classes: &[(&str, f64)]) -> Option<Accuracy> {
-    let help = "write exactly one of class = \"1\", certificate = { relative = \"0.4 %\", k = 2 }, unknown = \"declared negligible\"";
-    let given = ["class", "certificate", "unknown"]
-        .iter()
-        .filter(|key| table.has(key))
-        .count();
-    if given != 1 {
-        table.fault(
-            &table.span(),
-            "the scale's accuracy is stated in no way or in two ways",
-            help,
-        );
-        return None;
-    }
-    if table.has("unknown") {
-        return declared_negligible(table).then_some(Accuracy::DeclaredNegligible);
-    }
-    if table.has("class") {
-        let half_width = table.word("class", classes)?;
-        return Some(Accuracy::Class {
-            class: table.text("class")?,
-            half_width,
-        });
-    }
-    let certificate = table.table("certificate");
-    for key in ["relative", "k"] {
-        if !certificate.has(key) {
-            certificate.missing(key, help);
-        }
-    }
-    let share = |key| certificate.share(key).map_or(0.0, |share| share.value);
-    let relative = certificate.share("relative")?.value;
-    Some(Accuracy::Certificate {
-        standard: relative / certificate.positive("k")?.value,
-        error: share("error"),
-        drift: share("drift"),
-    })
-}
-
-fn declared_negligible(table: Table<'_>) -> bool {
-    table
-        .word("unknown", &[("declared negligible", ())])
-        .is_some()
-}
-
-/// A figure under `key`, in the file's unit, or `{ unknown = "declared negligible" }`.
-fn read_known(table: Table<'_>, key: &str, unit: f64, help: &str) -> Option<Known> {
-    if !table.has(key) {
-        table.missing(key, help);
-        return None;
-    }
-    if table.is_table(key) {
-        return declared_negligible(table.table(key)).then_some(Known::DeclaredNegligible);
-    }
-    table
-        .positive(key)
-        .map(|number| Known::Stated(number.value * unit))
-}
-
 fn read_zero(table: Table<'_>, means: Means, unit: f64) -> Option<Known> {
     let help =
         "write zero = { uncertainty = 0.02, k = 2 }, or { unknown = \"declared negligible\" }";
@@ -347,16 +185,6 @@ fn read_zero(table: Table<'_>, means: Means, unit: f64) -> Option<Known> {
         return declared_negligible(zero).then_some(Known::DeclaredNegligible);
     }
     standard_of(zero, help).map(|standard| Known::Stated(standard * unit))
-}
-
-/// `uncertainty` over `k` of a table.
-pub fn standard_of(table: Table<'_>, help: &str) -> Option<f64> {
-    for key in ["uncertainty", "k"] {
-        if !table.has(key) {
-            table.missing(key, help);
-        }
-    }
-    Some(table.positive("uncertainty")?.value / table.positive("k")?.value)
 }
 
 fn read_frame(table: Table<'_>, units: System) -> Option<Compliance> {

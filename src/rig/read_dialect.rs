@@ -63,7 +63,7 @@ pub(super) fn read_export(table: Table<'_>, units: System) -> Option<(Dialect, M
     };
     let (travel, means) = travel?;
     let (delimiter, decimal) = (delimiter?, decimal?);
-    if delimiter == Delimiter::Comma && decimal == Decimal::Comma {
+    if delimiter == Delimiter::Comma && decimal == Decimal::Comma && !table.flag("quoted") {
         table.fault(
             &table.place("decimal"),
             "the decimal mark is also the delimiter",

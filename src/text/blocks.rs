@@ -86,7 +86,7 @@ impl Blocks {
     ///
     /// # Errors
     /// [`TextError::Read`] where the file stops being readable.
-    pub fn next(&mut self) -> Result<Next, TextError> {
+    pub fn next_lines(&mut self) -> Result<Next, TextError> {
         let cause = match self.from.recv() {
             Ok(Message::Next(next)) => return Ok(next),
             Ok(Message::Failed(cause)) => cause,
@@ -151,7 +151,7 @@ mod tests {
         let mut blocks = Blocks::open(file.path(), "x", block_bytes, longest).unwrap();
         let mut seen = Vec::new();
         loop {
-            match blocks.next() {
+            match blocks.next_lines() {
                 Ok(Next::Block(block)) => seen.push((block.bytes, block.tail)),
                 Ok(Next::End { sha256 }) => return (seen, sha256),
                 Err(_) => return (seen, String::new()),
@@ -204,7 +204,7 @@ mod tests {
         let Ok(mut blocks) = Blocks::open(folder.path(), "folder", 8, 8) else {
             return; // some systems refuse to open a folder at all
         };
-        let Err(TextError::Read { name, .. }) = blocks.next() else {
+        let Err(TextError::Read { name, .. }) = blocks.next_lines() else {
             panic!("a folder was read");
         };
         assert_eq!(name, "folder");

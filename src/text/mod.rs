@@ -7,6 +7,7 @@ mod excerpt;
 mod fault;
 mod printable;
 mod source;
+mod table;
 mod toml;
 
 pub use blocks::{Block, Blocks, Next, Tail};
@@ -14,4 +15,5 @@ pub use excerpt::{Excerpt, Place};
 pub use fault::{Fault, Faults};
 pub use printable::{Alphabet, printable};
 pub use source::{Hasher, Head, InputFile, Source, TextError, beside, hex};
-pub use toml::{At, Keys, Table, read_toml};
+pub use table::{At, Table};
+pub use toml::{Keys, read_toml};

@@ -1,5 +1,7 @@
 //! The one function that makes a foreign string safe to print, whatever it is printed on.
 
+use std::fmt::Write;
+
 /// What the page at hand can show.
 pub enum Alphabet<'a> {
     /// Every character that is no control: terminals and browsers bring their own fonts.
@@ -20,7 +22,8 @@ pub fn printable(text: &str, alphabet: &Alphabet<'_>) -> String {
         };
         match alphabet {
             Alphabet::Only(has) if !has(shown) => {
-                out.push_str(&format!("[U+{:04X}]", u32::from(character)))
+                // Writing into a string cannot fail.
+                let _ = write!(out, "[U+{:04X}]", u32::from(character));
             }
             _ => out.push(shown),
         }

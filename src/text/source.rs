@@ -1,5 +1,6 @@
 //! Reading a file whole: path as written, SHA-256, UTF-8 text.
 
+use std::fmt::Write;
 use std::path::{Path, PathBuf};
 use std::sync::Arc;
 
@@ -116,7 +117,12 @@ pub fn beside(file: &Path, path: &str) -> PathBuf {
 
 /// Lower-case hexadecimal of some bytes.
 pub fn hex(bytes: &[u8]) -> String {
-    bytes.iter().map(|byte| format!("{byte:02x}")).collect()
+    bytes
+        .iter()
+        .fold(String::with_capacity(2 * bytes.len()), |mut text, byte| {
+            let _ = write!(text, "{byte:02x}"); // writing into a string cannot fail
+            text
+        })
 }
 
 /// A running SHA-256 for files that are read block by block.

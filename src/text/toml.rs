@@ -1,39 +1,21 @@
-//! The one place that opens TOML: a table whose every value knows its line and column, whose unknown
-//! keys are refused with the nearest known one, and which collects all faults of meaning of a file.
+//! The one place that opens TOML: unknown keys are refused with the nearest known one, and all faults of meaning of
+//! a file are collected. Elsewhere: what a table answers (`table`).
 
 use std::cell::RefCell;
 use std::ops::Range;
 
 use toml::de::{DeTable, DeValue};
 
+use super::table::Table;
 use super::{Alphabet, Fault, Faults, Place, Source, printable};
 
 /// The keys each table of a file may hold; the table's path as the first entry, `""` for the root.
 pub type Keys = &'static [(&'static str, &'static [&'static str])];
 
-/// A value and where it stands in the text.
-#[derive(Clone, Debug)]
-pub struct At<T> {
-    /// The value.
-    pub value: T,
-    /// Bytes of the text it was read from.
-    pub span: Range<usize>,
-}
-
-struct Reader<'a> {
+pub(super) struct Reader<'a> {
     source: &'a Source,
-    keys: Keys,
+    pub(super) keys: Keys,
     faults: RefCell<Vec<Fault>>,
-}
-
-/// One table of a file being read; a missing table reads as an empty one.
-#[derive(Clone, Copy)]
-pub struct Table<'a> {
-    reader: &'a Reader<'a>,
-    items: Option<&'a DeTable<'a>>,
-    path: &'static str,
-    start: usize,
-    end: usize,
 }
 
 /// Reads a TOML file by `build`, which asks the root table for what it needs and notes every fault there.
@@ -61,26 +43,19 @@ pub fn read_toml<T>(
         faults: RefCell::default(),
     };
     reader.refuse_unknown(root.get_ref(), "");
-    let table = Table {
-        reader: &reader,
-        items: Some(root.get_ref()),
-        path: "",
-        start: 0,
-        end: 0,
-    };
-    let built = build(table);
+    let answer = build(Table::root(&reader, root.get_ref()));
     let faults = reader.faults.into_inner();
-    match built {
-        Some(built) if faults.is_empty() => Ok(built),
+    match answer {
+        Some(whole) if faults.is_empty() => Ok(whole),
         _ => Err(Faults::new(&source.name, faults)),
     }
 }
 
 impl Reader<'_> {
-    fn fault(&self, span: Range<usize>, message: String, help: String) {
+    pub(super) fn fault(&self, span: Range<usize>, message: &str, help: String) {
         let place = Place::in_text(&self.source.name, &self.source.text, span);
         self.faults.borrow_mut().push(Fault::new(
-            printable(&message, &Alphabet::Any),
+            printable(message, &Alphabet::Any),
             help,
             Some(place),
         ));
@@ -95,7 +70,7 @@ impl Reader<'_> {
             if !known.contains(&name) && !known.contains(&"*") {
                 self.fault(
                     key.span(),
-                    format!("unknown key `{name}`{}", within(path)),
+                    &format!("unknown key `{name}`{}", within(path)),
                     self.advice(name, path, known),
                 );
                 continue;
@@ -139,7 +114,7 @@ impl Reader<'_> {
     }
 }
 
-fn within(path: &str) -> String {
+pub(super) fn within(path: &str) -> String {
     if path.is_empty() {
         String::new()
     } else {
@@ -147,7 +122,7 @@ fn within(path: &str) -> String {
     }
 }
 
-fn nearest<'k>(name: &str, known: &[&'k str]) -> Option<&'k str> {
+pub(super) fn nearest<'k>(name: &str, known: &[&'k str]) -> Option<&'k str> {
     let scored = known
         .iter()
         .map(|key| (strsim::damerau_levenshtein(name, key), *key));
@@ -155,351 +130,4 @@ fn nearest<'k>(name: &str, known: &[&'k str]) -> Option<&'k str> {
         .min_by_key(|(distance, _)| *distance)
         .filter(|(distance, key)| *distance <= 1 + key.len() / 3)
         .map(|(_, key)| key)
-}
-
-impl<'a> Table<'a> {
-    /// Notes a fault at `span`.
-    pub fn fault(&self, span: &Range<usize>, message: impl Into<String>, help: impl Into<String>) {
-        self.reader.fault(span.clone(), message.into(), help.into());
-    }
-
-    /// Notes that `key` is missing from this table.
-    pub fn missing(&self, key: &str, help: impl Into<String>) {
-        self.fault(
-            &self.span(),
-            format!("`{key}` is missing{}", within(self.path)),
-            help,
-        );
-    }
-
-    /// Where this table begins.
-    pub fn span(&self) -> Range<usize> {
-        self.start..self.end
-    }
-
-    /// Whether the file holds this table at all.
-    pub fn is_present(&self) -> bool {
-        self.items.is_some()
-    }
-
-    /// Whether the table holds `key`.
-    pub fn has(&self, key: &str) -> bool {
-        self.value(key).is_some()
-    }
-
-    fn value(&self, key: &str) -> Option<(&'a DeValue<'a>, Range<usize>)> {
-        debug_assert!(
-            self.reader
-                .keys
-                .iter()
-                .any(|(place, keys)| *place == self.path && keys.contains(&key)),
-            "`{key}` is asked of `{}` but not listed there",
-            self.path
-        );
-        let value = self.items?.get(key)?;
-        Some((value.get_ref(), value.span()))
-    }
-
-    /// Where the value of `key` stands; this table's own place where it is missing.
-    pub fn place(&self, key: &str) -> Range<usize> {
-        self.value(key)
-            .map_or_else(|| self.span(), |(_, span)| span)
-    }
-
-    fn wrong(&self, key: &str, span: &Range<usize>, found: &DeValue<'_>, wanted: &str) {
-        self.fault(
-            span,
-            format!("`{key}` is {} where {wanted} is wanted", article(found)),
-            format!("write {wanted}"),
-        );
-    }
-
-    fn sub_path(&self, key: &str) -> &'static str {
-        let path = if self.path.is_empty() {
-            key.to_owned()
-        } else {
-            format!("{}.{key}", self.path)
-        };
-        self.reader
-            .keys
-            .iter()
-            .find(|(place, _)| *place == path)
-            .map_or("?", |(place, _)| place)
-    }
-
-    /// The table under `key`; empty where it is missing.
-    pub fn table(&self, key: &str) -> Table<'a> {
-        let path = self.sub_path(key);
-        let (items, span) = match self.value(key) {
-            Some((DeValue::Table(items), span)) => (Some(items), span),
-            Some((other, span)) => {
-                self.wrong(key, &span, other, "a table");
-                (None, span)
-            }
-            None => (None, self.span()),
-        };
-        Table {
-            reader: self.reader,
-            items,
-            path,
-            start: span.start,
-            end: span.end,
-        }
-    }
-
-    /// The tables under `[[key]]`.
-    pub fn tables(&self, key: &str) -> Vec<Table<'a>> {
-        let path = self.sub_path(key);
-        let Some((value, span)) = self.value(key) else {
-            return Vec::new();
-        };
-        let DeValue::Array(items) = value else {
-            self.wrong(key, &span, value, "a list of tables");
-            return Vec::new();
-        };
-        let mut tables = Vec::new();
-        for item in items {
-            match item.get_ref() {
-                DeValue::Table(table) => tables.push(Table {
-                    reader: self.reader,
-                    items: Some(table),
-                    path,
-                    start: item.span().start,
-                    end: item.span().end,
-                }),
-                other => self.wrong(key, &item.span(), other, "a table"),
-            }
-        }
-        tables
-    }
-
-    /// Every key of this table with its text value (for free tags).
-    pub fn all_texts(&self) -> Vec<(String, String)> {
-        let mut texts = Vec::new();
-        for (key, value) in self.items.into_iter().flatten() {
-            match value.get_ref().as_str() {
-                Some(text) => texts.push((
-                    printable(key.get_ref(), &Alphabet::Any),
-                    printable(text, &Alphabet::Any),
-                )),
-                None => self.wrong(
-                    key.get_ref(),
-                    &value.span(),
-                    value.get_ref(),
-                    "text in quotes",
-                ),
-            }
-        }
-        texts.sort();
-        texts
-    }
-
-    /// Text as written, for paths and column names, which must match byte for byte.
-    pub fn raw_text(&self, key: &str) -> Option<At<String>> {
-        let (value, span) = self.value(key)?;
-        if let Some(text) = value.as_str() {
-            return Some(At {
-                value: text.to_owned(),
-                span,
-            });
-        }
-        self.wrong(key, &span, value, "text in quotes");
-        None
-    }
-
-    /// Text made printable.
-    pub fn text(&self, key: &str) -> Option<String> {
-        self.raw_text(key)
-            .map(|text| printable(&text.value, &Alphabet::Any))
-    }
-
-    /// Text made printable; a fault where it is missing.
-    pub fn required_text(&self, key: &str, help: &str) -> Option<String> {
-        if !self.has(key) {
-            self.missing(key, help);
-        }
-        self.text(key)
-    }
-
-    /// A list of texts as written.
-    pub fn raw_texts(&self, key: &str) -> Vec<At<String>> {
-        let Some((value, span)) = self.value(key) else {
-            return Vec::new();
-        };
-        let Some(items) = value.as_array() else {
-            self.wrong(key, &span, value, "a list of texts");
-            return Vec::new();
-        };
-        let mut texts = Vec::new();
-        for item in items {
-            match item.get_ref().as_str() {
-                Some(text) => texts.push(At {
-                    value: text.to_owned(),
-                    span: item.span(),
-                }),
-                None => self.wrong(key, &item.span(), item.get_ref(), "text in quotes"),
-            }
-        }
-        texts
-    }
-
-    /// A finite number, whole or not.
-    pub fn number(&self, key: &str) -> Option<At<f64>> {
-        let (value, span) = self.value(key)?;
-        let number = match value {
-            DeValue::Integer(whole) => i64::from_str_radix(whole.as_str(), whole.radix())
-                .ok()
-                .map(|whole| whole as f64),
-            DeValue::Float(float) => float
-                .as_str()
-                .parse()
-                .ok()
-                .filter(|number: &f64| number.is_finite()),
-            other => {
-                self.wrong(key, &span, other, "a number");
-                return None;
-            }
-        };
-        if number.is_none() {
-            self.fault(
-                &span,
-                format!("`{key}` is not a finite number"),
-                "write a plain number",
-            );
-        }
-        Some(At {
-            value: number?,
-            span,
-        })
-    }
-
-    /// A number above zero.
-    pub fn positive(&self, key: &str) -> Option<At<f64>> {
-        self.number(key)
-            .and_then(|number| self.above(key, number, f64::MIN_POSITIVE, "above zero"))
-    }
-
-    /// A number of zero or more.
-    pub fn not_negative(&self, key: &str) -> Option<At<f64>> {
-        self.number(key)
-            .and_then(|number| self.above(key, number, 0.0, "zero or more"))
-    }
-
-    fn above(&self, key: &str, number: At<f64>, least: f64, wanted: &str) -> Option<At<f64>> {
-        if number.value >= least {
-            return Some(number);
-        }
-        self.fault(
-            &number.span,
-            format!("`{key}` is {}, not {wanted}", number.value),
-            format!("write a number {wanted}"),
-        );
-        None
-    }
-
-    /// A whole number of zero or more.
-    pub fn whole(&self, key: &str) -> Option<At<u64>> {
-        let (value, span) = self.value(key)?;
-        if let DeValue::Integer(whole) = value
-            && let Ok(number) = u64::from_str_radix(whole.as_str(), whole.radix())
-        {
-            return Some(At {
-                value: number,
-                span,
-            });
-        }
-        self.wrong(key, &span, value, "a whole number of zero or more");
-        None
-    }
-
-    /// `true` or `false`; `false` where it is missing.
-    pub fn flag(&self, key: &str) -> bool {
-        let Some((value, span)) = self.value(key) else {
-            return false;
-        };
-        value.as_bool().unwrap_or_else(|| {
-            self.wrong(key, &span, value, "true or false");
-            false
-        })
-    }
-
-    /// A calendar date, written bare as 2026-03-02.
-    pub fn date(&self, key: &str) -> Option<At<jiff::civil::Date>> {
-        let (value, span) = self.value(key)?;
-        let date = value
-            .as_datetime()
-            .filter(|stamp| stamp.time.is_none())
-            .and_then(|stamp| stamp.to_string().parse().ok());
-        if date.is_none() {
-            self.wrong(
-                key,
-                &span,
-                value,
-                "a date such as 2026-03-02 without quotes",
-            );
-        }
-        Some(At { value: date?, span })
-    }
-
-    /// One of a few words; a fault naming the nearest where it is none of them.
-    pub fn word<T: Copy>(&self, key: &str, words: &[(&str, T)]) -> Option<T> {
-        let written = self.raw_text(key)?;
-        if let Some((_, meaning)) = words.iter().find(|(word, _)| *word == written.value) {
-            return Some(*meaning);
-        }
-        let known: Vec<&str> = words.iter().map(|(word, _)| *word).collect();
-        let near = nearest(&written.value, &known)
-            .map_or(String::new(), |near| format!("did you mean \"{near}\"? "));
-        self.fault(
-            &written.span,
-            format!("`{key}` is \"{}\"", written.value),
-            format!("{near}one of: {}", known.join(", ")),
-        );
-        None
-    }
-
-    /// Whether the value under `key` is a table (as against a number or text).
-    pub fn is_table(&self, key: &str) -> bool {
-        matches!(self.value(key), Some((DeValue::Table(_), _)))
-    }
-
-    /// Whether the value under `key` is text.
-    pub fn is_text(&self, key: &str) -> bool {
-        matches!(self.value(key), Some((DeValue::String(_), _)))
-    }
-
-    /// A share written as text, `"5 %"`, as a fraction (0.05).
-    pub fn share(&self, key: &str) -> Option<At<f64>> {
-        let written = self.raw_text(key)?;
-        let number = written
-            .value
-            .trim()
-            .strip_suffix('%')
-            .and_then(|number| number.trim().parse::<f64>().ok());
-        match number.filter(|percent| percent.is_finite() && *percent >= 0.0) {
-            Some(percent) => Some(At {
-                value: percent / 100.0,
-                span: written.span,
-            }),
-            None => {
-                self.fault(
-                    &written.span,
-                    format!("`{key}` is \"{}\", not a share", written.value),
-                    "write a share such as \"5 %\"",
-                );
-                None
-            }
-        }
-    }
-}
-
-fn article(value: &DeValue<'_>) -> &'static str {
-    match value {
-        DeValue::String(_) => "text",
-        DeValue::Integer(_) | DeValue::Float(_) => "a number",
-        DeValue::Boolean(_) => "true or false",
-        DeValue::Datetime(_) => "a date",
-        DeValue::Array(_) => "a list",
-        DeValue::Table(_) => "a table",
-    }
 }

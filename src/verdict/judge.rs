@@ -1,70 +1,14 @@
 //! One characteristic against its limits.
 
-use serde::{Deserialize, Serialize};
-
-use crate::characteristic::{Absence, Estimate, Measured, Uncertainty};
+use crate::characteristic::{Estimate, Measured, Uncertainty};
 use crate::drawing::{Guard, Limits, Rule};
 use crate::stats::{StatsError, student_cdf, student_quantile};
 use crate::units::Millimetres;
 
+use super::reason::{Reason, Verdict};
+
 /// Probability of conformance (or of failure) that counts as proof: ISO 14253-1:2017 (from memory).
 const PROOF: f64 = 0.95;
-
-/// The verdict on a spring or on one of its characteristics.
-#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize)]
-#[serde(rename_all = "lowercase")]
-pub enum Verdict {
-    /// Proven inside the limits.
-    Conforms,
-    /// Proven outside a limit.
-    Fails,
-    /// Neither is proven.
-    Undecided,
-}
-
-/// Why a characteristic has the verdict it has, or no value.
-#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
-#[serde(tag = "code", rename_all = "snake_case")]
-pub enum Reason {
-    /// The value lies below the lower limit by more than the guard band.
-    BelowLower,
-    /// The value lies above the upper limit by more than the guard band.
-    AboveUpper,
-    /// The lower limit lies inside the guard band of the value.
-    LowerWithinUncertainty,
-    /// The upper limit lies inside the guard band of the value.
-    UpperWithinUncertainty,
-    /// The guard bands leave no room between the limits: this bench cannot prove the requirement.
-    GuardBandsMeet,
-    /// The export gives deflections only and this spring has no measured free length.
-    NoAbsoluteLength,
-    /// The curve does not span the window of the rate.
-    WindowNotReached,
-    /// The curve does not reach the test length.
-    LengthNotReached,
-    /// The drawing's stroke is not in the export.
-    StrokeNotRecorded,
-    /// There is no full cycle of loading and unloading.
-    NoFullCycle,
-    /// There is only one loading stroke.
-    OneLoadingStroke,
-    /// The rise to solid was not reached; the shortest length reached is given.
-    SolidNotReached {
-        /// The shortest length the curve reached.
-        shortest_mm: Millimetres,
-    },
-    /// The solid length is below the shortest length reached, which is inside the limit.
-    SolidBelowShortest {
-        /// The shortest length the curve reached.
-        shortest_mm: Millimetres,
-    },
-    /// Too few independent points to give an uncertainty, and the rig file states no repeatability.
-    UncertaintyUnknown,
-    /// The spring was not measured for this.
-    NotMeasured,
-    /// Listed under `not_inspected` in the lot file.
-    NotInspected,
-}
 
 /// A characteristic judged. The limits of proof are those at this value's uncertainty.
 #[derive(Clone, Debug, PartialEq)]
@@ -108,20 +52,6 @@ const fn undecided(reason: Reason) -> Judged {
         reason: Some(reason),
         guard: None,
         probability: None,
-    }
-}
-
-impl From<&Absence> for Reason {
-    fn from(why: &Absence) -> Self {
-        match why {
-            Absence::NoAbsoluteLength => Self::NoAbsoluteLength,
-            Absence::WindowNotReached => Self::WindowNotReached,
-            Absence::LengthNotReached => Self::LengthNotReached,
-            Absence::StrokeNotRecorded => Self::StrokeNotRecorded,
-            Absence::NoFullCycle => Self::NoFullCycle,
-            Absence::OneLoadingStroke => Self::OneLoadingStroke,
-            Absence::NotMeasured => Self::NotMeasured,
-        }
     }
 }
 

@@ -3,7 +3,9 @@
 //! Elsewhere: the value and its uncertainty (`characteristic`), what verdicts do to a lot (`lot`).
 
 mod judge;
+mod reason;
 mod spring;
 
-pub use judge::{Judged, Reason, Verdict, judge};
+pub use judge::{Judged, judge};
+pub use reason::{Reason, Verdict};
 pub use spring::{Overall, overall};

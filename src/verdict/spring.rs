@@ -4,7 +4,8 @@ use std::collections::BTreeSet;
 
 use crate::quantity::Class;
 
-use super::judge::{Judged, Verdict};
+use super::judge::Judged;
+use super::reason::Verdict;
 
 /// What holds for a whole spring.
 #[derive(Clone, Debug, PartialEq, Eq)]

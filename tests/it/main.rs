@@ -6,8 +6,10 @@
     reason = "tests"
 )]
 
+mod export;
 mod fit_published;
 mod plan_published;
 mod published;
+mod rooms;
 mod stats_published;
 mod type_a_coverage;

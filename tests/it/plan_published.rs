@@ -44,7 +44,7 @@ fn every_code_letter_at_both_ends_of_its_row() {
                 let got = CodeLetter::of(lot, level).unwrap();
                 if got.to_string() != *letter {
                     wrong.push(format!(
-                        "lot {lot}, level {level}: got {got}, want {letter}"
+                        "lot {lot}, level {level:?}: got {got}, want {letter}"
                     ));
                 }
             }

@@ -1,5 +1,4 @@
 //! Why a lot is not judged.
-#![expect(missing_docs, reason = "the messages say it")]
 
 use crate::characteristic::MeasureError;
 

@@ -2,9 +2,11 @@
 
 mod cautions;
 mod error;
+mod figures;
 mod group;
 mod plan;
 mod requirements;
+mod rig_cautions;
 mod springs;
 
 use std::path::Path;
@@ -216,7 +218,7 @@ fn judge(
     springs::mark_sample(&mut judged, &order, widest);
     let cautions = cautions::cautions(files, terms.rule, &judged, finding, widest, options);
     if options.strict {
-        cautions::refuse(&cautions)?;
+        rig_cautions::refuse(&cautions)?;
     }
     let curves = judged
         .iter_mut()

@@ -6,7 +6,8 @@ use crate::stats::{mean, standard_deviation};
 use crate::verdict::Verdict;
 
 use super::super::facts::figure;
-use super::springs::{Judged, value_of};
+use super::figures::value_of;
+use super::springs::Judged;
 
 /// The requirements of `drawing` with what the springs gave.
 pub(super) fn facts(drawing: &Drawing, judged: &[Judged]) -> Vec<RequirementFacts> {

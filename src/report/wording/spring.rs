@@ -38,6 +38,7 @@ pub(crate) fn verdict_reason(of: &CharacteristicResult, show_in: System) -> Opti
         Reason::NoAbsoluteLength => "no absolute length: the export gives deflections and the spring has no measured free length".to_owned(),
         Reason::WindowNotReached => "the curve does not span the window of the rate".to_owned(),
         Reason::LengthNotReached => "the curve does not reach the test length".to_owned(),
+        Reason::ContactNotRecorded => "the stroke starts on a loaded spring, contact was not recorded".to_owned(),
         Reason::StrokeNotRecorded => "the stroke the drawing asks for is not in the export".to_owned(),
         Reason::NoFullCycle => "no full cycle of loading and unloading".to_owned(),
         Reason::OneLoadingStroke => "only one loading stroke".to_owned(),

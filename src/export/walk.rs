@@ -5,9 +5,10 @@ use std::collections::HashMap;
 use std::ops::Range;
 
 use super::curves::Progress;
-use super::error::{ExportError, show};
+use super::error::ExportError;
 use super::layout::Layout;
 use super::lines::{Context, Line, content, is_blank, lines};
+use super::spot::show;
 
 /// What the search knows when it comes to a line.
 struct Walk<'w> {
@@ -104,10 +105,9 @@ impl Walk<'_> {
     }
 
     fn spring(&mut self, line: u64, text: &str, cells: &[Range<usize>]) -> Result<(), ExportError> {
-        let Some(column) = self.layout.spring else {
-            return Ok(());
-        };
-        let Some(cell) = cells.get(column) else {
+        let column = self.layout.spring;
+        let Some((column, cell)) = column.and_then(|column| Some((column, cells.get(column)?)))
+        else {
             return Ok(());
         };
         let quoted = self.context.dialect.quoted;

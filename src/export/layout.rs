@@ -2,10 +2,11 @@
 
 use std::ops::Range;
 
-use super::error::{ExportError, show};
+use super::error::ExportError;
 use super::labels::{Units, Wanted};
 use super::lines::{Context, content};
-use crate::rig::dialect::{Dialect, Pushing, SpringFrom};
+use super::spot::show;
+use crate::rig::{Dialect, Pushing, SpringFrom};
 
 /// A line above the table, kept for what it says.
 #[derive(Clone, Debug)]
@@ -40,11 +41,11 @@ impl Layout {
         header: &HeadLine,
         units: Option<&HeadLine>,
     ) -> Result<Self, ExportError> {
-        let header = Cells::of(context, header)?;
+        let header = Row::of(context, header)?;
         let layout = Self::find(context, &header)?;
         layout.check_header_units(context, &header)?;
         if let Some(units) = units {
-            layout.check_units_line(context, &Cells::of(context, units)?)?;
+            layout.check_units_line(context, &Row::of(context, units)?)?;
         }
         Ok(layout)
     }
@@ -58,17 +59,17 @@ impl Layout {
         first: &HeadLine,
         units: Option<&HeadLine>,
     ) -> Result<Self, ExportError> {
-        let mut header = Cells::of(context, first)?;
+        let mut header = Row::of(context, first)?;
         let count = header.cells.len();
         header.names = (1..=count).map(|number| number.to_string()).collect();
         let layout = Self::find(context, &header)?;
         if let Some(units) = units {
-            layout.check_units_line(context, &Cells::of(context, units)?)?;
+            layout.check_units_line(context, &Row::of(context, units)?)?;
         }
         Ok(layout)
     }
 
-    fn find(context: &Context<'_>, header: &Cells<'_>) -> Result<Self, ExportError> {
+    fn find(context: &Context<'_>, header: &Row<'_>) -> Result<Self, ExportError> {
         let dialect = context.dialect;
         let spring = match &dialect.spring {
             SpringFrom::FileName => None,
@@ -94,7 +95,7 @@ impl Layout {
             .filter_map(|(role, column)| Some((role, column?)))
     }
 
-    fn refuse_shared(&self, header: &Cells<'_>) -> Result<(), ExportError> {
+    fn refuse_shared(&self, header: &Row<'_>) -> Result<(), ExportError> {
         let mut taken: Vec<(&'static str, usize)> = Vec::new();
         for (role, column) in self.roles() {
             if let Some((first, _)) = taken.iter().find(|(_, other)| *other == column) {
@@ -146,7 +147,7 @@ impl Layout {
     fn check_header_units(
         &self,
         context: &Context<'_>,
-        header: &Cells<'_>,
+        header: &Row<'_>,
     ) -> Result<(), ExportError> {
         for (column, wanted) in self.units(context) {
             let name = self.name(column);
@@ -161,11 +162,7 @@ impl Layout {
         Ok(())
     }
 
-    fn check_units_line(
-        &self,
-        context: &Context<'_>,
-        units: &Cells<'_>,
-    ) -> Result<(), ExportError> {
+    fn check_units_line(&self, context: &Context<'_>, units: &Row<'_>) -> Result<(), ExportError> {
         for (column, wanted) in self.units(context) {
             let cell = units.names.get(column).map_or("", String::as_str);
             let at = || units.spot(column, self.name(column));
@@ -193,14 +190,14 @@ impl Layout {
 }
 
 /// A line above the table, cut into cells.
-struct Cells<'c> {
+struct Row<'c> {
     context: &'c Context<'c>,
     line: &'c HeadLine,
     cells: Vec<Range<usize>>,
     names: Vec<String>,
 }
 
-impl<'c> Cells<'c> {
+impl<'c> Row<'c> {
     fn of(context: &'c Context<'c>, line: &'c HeadLine) -> Result<Self, ExportError> {
         let cells = context.cells(line.number, &line.text)?;
         let quoted = context.dialect.quoted;
@@ -216,7 +213,7 @@ impl<'c> Cells<'c> {
         })
     }
 
-    fn spot(&self, column: usize, name: &str) -> super::error::Spot {
+    fn spot(&self, column: usize, name: &str) -> super::spot::Spot {
         let end = self.line.text.len();
         let cell = self.cells.get(column).cloned().unwrap_or(end..end);
         self.context
@@ -246,17 +243,17 @@ impl<'c> Cells<'c> {
             .iter()
             .map(|cell| format!("`{}`", show(cell)))
             .collect();
-        let advice =
-            if self.names.iter().any(|cell| cell.contains('"')) && !self.context.dialect.quoted {
-                "the header is in quotes: write quoted = true in the rig file".to_owned()
-            } else if let Some(near) = nearest(name, &self.names) {
-                format!("did you mean `{}`?", show(near))
-            } else if self.names.len() == 1 {
-                "the line has one cell only: mend `delimiter` or `header_line` in the rig file"
-                    .to_owned()
-            } else {
-                "mend the column's name or `header_line` in the rig file".to_owned()
-            };
+        let quotes = self.names.iter().any(|cell| cell.contains('"'));
+        let advice = if self.names.len() == 1 {
+            "the line has one cell only: mend `delimiter` or `header_line` in the rig file"
+                .to_owned()
+        } else if quotes && !self.context.dialect.quoted {
+            "the header is in quotes: write quoted = true in the rig file".to_owned()
+        } else if let Some(near) = nearest(name, &self.names) {
+            format!("did you mean `{}`?", show(near))
+        } else {
+            "mend the column's name or `header_line` in the rig file".to_owned()
+        };
         ExportError::UnknownColumn {
             at: self.context.spot(
                 self.line.number,

@@ -2,9 +2,10 @@
 
 use std::ops::Range;
 
-use super::error::{ExportError, show};
+use super::error::ExportError;
 use super::lines::{Context, content};
-use crate::rig::dialect::Decimal;
+use super::spot::show;
+use crate::rig::Decimal;
 use crate::units::Finite;
 
 /// Marks that separate thousands somewhere in the world, beside point and comma.
@@ -129,7 +130,6 @@ mod tests {
     use super::*;
 
     #[test]
-    #[expect(clippy::float_cmp, reason = "reading is exact")]
     fn numbers() {
         for (cell, value) in [("12.5", 12.5), ("  +1e-3", 1e-3), (".5", 0.5), ("5.", 5.0)] {
             assert_eq!(number(cell, Decimal::Point, 1.0), Ok(value));

@@ -2,9 +2,10 @@
 
 use std::path::Path;
 
-use super::error::{ExportError, show};
+use super::error::ExportError;
 use super::lines::{Context, Line, content, is_blank, lines};
-use crate::rig::dialect::{
+use super::spot::show;
+use crate::rig::{
     Decimal, Delimiter, Dialect, Encoding, LoadColumn, Pushing, SpringFrom, TravelColumn,
 };
 use crate::text::Source;
@@ -92,6 +93,26 @@ fn hand_written() -> Dialect {
     }
 }
 
+/// Refuses a header with two columns of one name.
+fn refuse_doubled(
+    context: &Context<'_>,
+    text: &str,
+    cells: &[std::ops::Range<usize>],
+    names: &[String],
+) -> Result<(), ExportError> {
+    for (second, (name, cell)) in names.iter().zip(cells).enumerate() {
+        if let Some(first) = names.iter().take(second).position(|other| other == name) {
+            return Err(ExportError::DoubledColumn {
+                at: context.spot(1, text, cell.clone(), Some(name)),
+                role: "figure",
+                first: first + 1,
+                second: second + 1,
+            });
+        }
+    }
+    Ok(())
+}
+
 impl SmallTable {
     fn line(&mut self, context: &Context<'_>, line: &Line<'_>) -> Result<(), ExportError> {
         let text = context.text(line)?;
@@ -109,17 +130,7 @@ impl SmallTable {
         let held: Vec<String> = cells.iter().map(held).collect();
         let (found, wanted) = (held.len(), self.header.len());
         if number == 1 {
-            for (second, name) in held.iter().enumerate() {
-                if let Some(first) = held.iter().take(second).position(|other| other == name) {
-                    let cell = cells.get(second).cloned().unwrap_or(0..0);
-                    return Err(ExportError::DoubledColumn {
-                        at: context.spot(number, &text, cell, Some(name)),
-                        role: "figure",
-                        first: first + 1,
-                        second: second + 1,
-                    });
-                }
-            }
+            refuse_doubled(context, &text, &cells, &held)?;
             self.header = held;
         } else if found < wanted {
             let at = spot(text.len()..text.len());

@@ -4,8 +4,9 @@
 use std::borrow::Cow;
 use std::ops::Range;
 
-use super::error::{ExportError, Spot};
-use crate::rig::dialect::{Delimiter, Dialect, Encoding};
+use super::error::ExportError;
+use super::spot::Spot;
+use crate::rig::{Delimiter, Dialect, Encoding};
 
 /// Bytes in a line beyond which a file is no table of measurements: far above any tester's, small beside memory.
 pub(super) const LONGEST_LINE: usize = 1 << 20;
@@ -169,10 +170,11 @@ pub(super) fn cells(
             _ => plain(),
         };
         let cell = rest.get(..length).unwrap_or_default();
-        if quoted && cell.first() != Some(&b'"') {
-            if let Some(at) = cell.iter().position(|byte| *byte == b'"') {
-                return Err((start + at, "a quote inside a cell that is not in quotes"));
-            }
+        if quoted
+            && cell.first() != Some(&b'"')
+            && let Some(at) = cell.iter().position(|byte| *byte == b'"')
+        {
+            return Err((start + at, "a quote inside a cell that is not in quotes"));
         }
         found.push(start..start + length);
         match rest.get(length) {

@@ -9,7 +9,9 @@ mod labels;
 mod layout;
 mod ledger;
 mod lines;
+mod sketch;
 mod small;
+mod spot;
 mod table;
 mod walk;
 
@@ -19,7 +21,7 @@ use polars::prelude::SchemaRef;
 
 use crate::text::{Alphabet, Block, Blocks, Next, Tail, printable};
 
-use super::dialect::{Decimal, Delimiter, Dialect, Encoding, SpringFrom};
+use crate::rig::{Decimal, Delimiter, Dialect, Encoding, SpringFrom};
 use curves::Progress;
 use head::Head;
 use layout::Layout;
@@ -27,9 +29,11 @@ use lines::{Context, LONGEST_LINE};
 use table::Suspect;
 
 pub use curves::RawCurve;
-pub use error::{ExportError, Spot};
+pub use error::ExportError;
 pub use ledger::{Aside, Ledger, WhyAside};
+pub use sketch::{Columns, Look, look, sketch};
 pub use small::{SmallTable, read_small};
+pub use spot::Spot;
 
 /// Bytes read at once unless a test wants otherwise: large enough to keep every core busy, a few fit any memory.
 pub const BLOCK_BYTES: usize = 8 << 20;
@@ -60,7 +64,7 @@ pub fn read(
     let mut reading = Reading::begin(as_written, dialect)?;
     let mut blocks = Blocks::open(path, as_written, block_bytes, LONGEST_LINE + 1)?;
     loop {
-        match blocks.next()? {
+        match blocks.next_lines()? {
             Next::Block(block) => {
                 let done = reading.take(&block)?;
                 if !done.is_empty() {
@@ -200,6 +204,25 @@ impl<'d> Reading<'d> {
         Ok(done)
     }
 
+    /// Refuses a file that ends above its own header or units.
+    fn check_head(&self) -> Result<(), ExportError> {
+        let (dialect, lines) = (self.context.dialect, self.ledger.lines);
+        let units_line = dialect.units_line.unwrap_or(0);
+        let head = [
+            ("header_line", dialect.header_line),
+            ("units_line", units_line),
+        ];
+        match head.into_iter().find(|(_, line)| *line > lines) {
+            Some((key, line)) => Err(ExportError::HeadBeyondEnd {
+                name: self.shown_name(),
+                key,
+                line,
+                lines,
+            }),
+            None => Ok(()),
+        }
+    }
+
     /// The last spring and the ledger, at the end of the file.
     fn finish(mut self) -> Result<(RawCurve, Ledger), ExportError> {
         let name = self.shown_name();
@@ -207,21 +230,7 @@ impl<'d> Reading<'d> {
         if lines == 0 {
             return Err(ExportError::Empty { name });
         }
-        let dialect = self.context.dialect;
-        let head = [
-            ("header_line", dialect.header_line),
-            ("units_line", dialect.units_line.unwrap_or(0)),
-        ];
-        for (key, line) in head {
-            if line > lines {
-                return Err(ExportError::HeadBeyondEnd {
-                    name,
-                    key,
-                    line,
-                    lines,
-                });
-            }
-        }
+        self.check_head()?;
         if let Some(blank) = self.progress.blank_since() {
             for line in blank..=lines {
                 self.ledger.set_aside(WhyAside::BlankAtTheEnd, line);

@@ -3,6 +3,8 @@
 use std::collections::HashMap;
 use std::collections::hash_map::Entry;
 
+use polars::prelude::StringChunked;
+
 use super::table::{Columns, Suspect};
 use crate::text::{Alphabet, printable};
 
@@ -118,39 +120,55 @@ impl Progress {
         Ok(done)
     }
 
+    /// The rows of a piece, parted by spring.
     fn segments(
         &mut self,
         columns: &Columns,
         first_line: u64,
         quoted: bool,
     ) -> Result<Vec<Segment>, Suspect> {
-        let rows = columns.load.len();
-        let Some(springs) = &columns.springs else {
-            let begins = match &self.open {
-                Some(_) => None,
-                None => self.whole_file.clone(),
-            };
-            return Ok(vec![Segment {
-                start: 0,
-                end: rows,
-                begins,
-            }]);
+        let begins = match (&columns.springs, &self.open, &self.whole_file) {
+            (Some(springs), ..) => self.begins(springs, first_line, quoted)?,
+            (None, None, Some(name)) => vec![(0, name.clone())],
+            (None, ..) => Vec::new(),
         };
+        let mut segments = vec![Segment {
+            start: 0,
+            end: columns.load.len(),
+            begins: None,
+        }];
+        for (start, name) in begins {
+            let end = columns.load.len();
+            if let Some(before) = segments.last_mut() {
+                before.end = start;
+            }
+            segments.push(Segment {
+                start,
+                end,
+                begins: Some(name),
+            });
+        }
+        segments.retain(|segment| segment.start < segment.end);
+        Ok(segments)
+    }
+
+    /// The rows on which a spring begins, and its name.
+    fn begins(
+        &mut self,
+        springs: &StringChunked,
+        first_line: u64,
+        quoted: bool,
+    ) -> Result<Vec<(usize, String)>, Suspect> {
         if springs.null_count() > 0 {
             return Err(Suspect);
         }
         let mut current = self.current_name().unwrap_or("").to_owned();
-        let mut segments = vec![Segment {
-            start: 0,
-            end: rows,
-            begins: None,
-        }];
+        let mut begins = Vec::new();
         let mut last = None;
-        for (row, cell) in springs
+        let cells = springs
             .downcast_iter()
-            .flat_map(|chunk| chunk.values_iter())
-            .enumerate()
-        {
+            .flat_map(|chunk| chunk.values_iter());
+        for (row, cell) in cells.enumerate() {
             if last.replace(cell) == Some(cell) {
                 continue;
             }
@@ -161,23 +179,14 @@ impl Progress {
             if name == current {
                 continue;
             }
-            let line = first_line + row as u64;
             match self.begun.entry(name.to_owned()) {
                 Entry::Occupied(_) => return Err(Suspect),
-                Entry::Vacant(place) => place.insert(line),
+                Entry::Vacant(place) => place.insert(first_line + row as u64),
             };
             name.clone_into(&mut current);
-            if let Some(segment) = segments.last_mut() {
-                segment.end = row;
-            }
-            segments.push(Segment {
-                start: row,
-                end: rows,
-                begins: Some(name.to_owned()),
-            });
+            begins.push((row, name.to_owned()));
         }
-        segments.retain(|segment| segment.start < segment.end);
-        Ok(segments)
+        Ok(begins)
     }
 
     fn check_time(&self, columns: &Columns, segments: &[Segment]) -> Result<(), Suspect> {

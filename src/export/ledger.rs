@@ -48,11 +48,11 @@ pub struct Ledger {
 }
 
 impl Ledger {
-    /// Sets a line aside; lines come in the order of the file.
+    /// Sets a line aside; lines come in the order of the file, so that two of one reason in a row are neighbours.
     pub(super) fn set_aside(&mut self, reason: WhyAside, line: u64) {
         match self.set_aside.last_mut() {
-            Some(last) if last.reason == reason && last.last_line + 1 == line => {
-                last.last_line = line
+            Some(last) if last.reason == reason => {
+                last.last_line = line;
             }
             _ => self.set_aside.push(Aside {
                 reason,

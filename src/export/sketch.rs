@@ -4,7 +4,7 @@
 use crate::text::Head;
 use crate::units::{ForceUnit, LengthUnit};
 
-use super::dialect::{
+use crate::rig::{
     Decimal, Delimiter, Dialect, Encoding, LoadColumn, Pushing, SpringFrom, TravelColumn,
 };
 

@@ -12,7 +12,7 @@ use polars::prelude::{
 
 use super::layout::Layout;
 use super::lines::{Context, LONGEST_LINE, UNDEFINED_1252, cells, decode_1252, is_blank, lines};
-use crate::rig::dialect::{Decimal, Dialect, Encoding};
+use crate::rig::{Decimal, Dialect, Encoding};
 use crate::units::Finite;
 
 /// Something in this piece is not as it must be.
@@ -171,8 +171,12 @@ pub(super) fn parse(
 }
 
 fn frame(dialect: &Dialect, schema: &SchemaRef, text: &str) -> Result<DataFrame, Suspect> {
-    // These two bytes would pass for a zlib file; a line in front, skipped again, keeps them from it.
-    let shielded = matches!(text.as_bytes(), [b'x', 0x01 | b'^', ..]);
+    // A piece that begins like a zlib file would be unpacked, one that begins with the mark of UTF-8 would lose it;
+    // a row of zeros in front, taken off again, keeps them from it.
+    let shielded = matches!(
+        text.as_bytes(),
+        [b'x', 0x01 | b'^', ..] | [0xEF, 0xBB, 0xBF, ..]
+    );
     let parse = CsvParseOptions::default()
         .with_separator(dialect.delimiter.byte())
         .with_quote_char(dialect.quoted.then_some(b'"'))
@@ -181,20 +185,21 @@ fn frame(dialect: &Dialect, schema: &SchemaRef, text: &str) -> Result<DataFrame,
         .with_has_header(false)
         .with_schema(Some(schema.clone()))
         .with_infer_schema_length(Some(0))
-        .with_skip_lines(usize::from(shielded))
         .with_rechunk(false)
         .with_parse_options(parse);
-    let read = if shielded {
-        let text = format!("\n{text}");
-        options
-            .into_reader_with_file_handle(Cursor::new(text.as_bytes()))
-            .finish()
-    } else {
-        options
-            .into_reader_with_file_handle(Cursor::new(text.as_bytes()))
-            .finish()
+    let read = |text: &str| {
+        let reader = options
+            .clone()
+            .into_reader_with_file_handle(Cursor::new(text.as_bytes()));
+        reader.finish().map_err(|_| Suspect)
     };
-    read.map_err(|_| Suspect)
+    if !shielded {
+        return read(text);
+    }
+    let delimiter = char::from(dialect.delimiter.byte()).to_string();
+    let zeros = vec!["0"; schema.len()].join(&delimiter);
+    let frame = read(&format!("{zeros}\n{text}"))?;
+    Ok(frame.slice(1, frame.height()))
 }
 
 /// The numbers of a column times `factor`; none may be missing, infinite or of no usable size.

@@ -1,0 +1,130 @@
+//! What the reader of page one must know besides the decision.
+
+use serde::{Deserialize, Serialize};
+
+use crate::units::{Finite, Millimetres, NewtonsPerMillimetre};
+
+/// Something the reader of page one must know.
+#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
+#[serde(tag = "code", rename_all = "snake_case")]
+pub enum Caution {
+    /// The stated rate is not what the geometry gives.
+    RateNotFromGeometry {
+        /// Stated nominal rate.
+        stated: NewtonsPerMillimetre,
+        /// Rate from the geometry.
+        theory: NewtonsPerMillimetre,
+        /// Expanded uncertainty (k = 2) of the theory.
+        expanded_uncertainty: NewtonsPerMillimetre,
+    },
+    /// Springs whose rate is far from what is stated, and what would give such a rate.
+    OddRatio {
+        /// The springs.
+        springs: Vec<String>,
+        /// Median of measured over expected rate.
+        ratio: Finite,
+        /// What would give such a ratio, in words; `null` where nothing known does.
+        reading: Option<String>,
+    },
+    /// No frame compliance in the rig file.
+    ComplianceNotCorrected,
+    /// A budget input was declared negligible.
+    DeclaredNegligible {
+        /// Which.
+        what: String,
+    },
+    /// Calibration is past its date, or was made after the measurement.
+    CalibrationExpired {
+        /// `force` or `travel`.
+        scale: String,
+        /// Valid until.
+        until: String,
+    },
+    /// The rig file gives no calibration dates.
+    CalibrationUnknown {
+        /// `force` or `travel`.
+        scale: String,
+    },
+    /// The rig file wants checks and no check is on record.
+    NoCheckOnRecord {
+        /// How often the rig file wants one.
+        every: String,
+    },
+    /// Loads outside the range the rig file states.
+    LoadOutsideRange {
+        /// The springs.
+        springs: Vec<String>,
+    },
+    /// U exceeds a third of the half tolerance (a quarter under simple acceptance).
+    UncertaintyLarge {
+        /// The characteristic.
+        name: String,
+        /// Length of a load.
+        at_length_mm: Option<Millimetres>,
+        /// Largest U over the half tolerance.
+        share: Finite,
+    },
+    /// The bench cannot prove this requirement.
+    CannotProve {
+        /// The characteristic.
+        name: String,
+        /// Length of a load.
+        at_length_mm: Option<Millimetres>,
+    },
+    /// The robust rate differs from the fitted one.
+    RobustDiffers {
+        /// The springs.
+        springs: Vec<String>,
+    },
+    /// The curve bends within the window.
+    LackOfFit {
+        /// The springs.
+        springs: Vec<String>,
+    },
+    /// No readings before contact.
+    NoZeroReading {
+        /// The springs.
+        springs: Vec<String>,
+    },
+    /// Measurements set aside as invalid.
+    SetAsideInvalid {
+        /// Spring.
+        spring: String,
+        /// Export.
+        export: String,
+        /// Why.
+        why: String,
+    },
+    /// Springs measured more than once.
+    Repeated {
+        /// The springs.
+        springs: Vec<String>,
+    },
+    /// Requirements that were not inspected.
+    NotInspected {
+        /// Which.
+        what: Vec<String>,
+    },
+    /// A test length below the smallest permitted length.
+    LengthBelowSmallest {
+        /// The test length.
+        at_length_mm: Millimetres,
+        /// Ln.
+        smallest_mm: Millimetres,
+    },
+    /// The units were confirmed by hand over a plausibility finding.
+    UnitsConfirmed {
+        /// What had been found.
+        finding: String,
+    },
+    /// Springs measured beyond the sample.
+    BeyondSample {
+        /// How many.
+        springs: u32,
+    },
+    /// A requirement on the geometry that is stated but not listed under the requirements.
+    GeometryNotJudged {
+        /// Which quantity.
+        what: String,
+    },
+}

@@ -1,0 +1,79 @@
+//! The words of a verdict and its grounds.
+
+use serde::{Deserialize, Serialize};
+
+use crate::characteristic::Absence;
+use crate::units::Millimetres;
+
+/// The verdict on a spring or on one of its characteristics.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize)]
+#[serde(rename_all = "lowercase")]
+pub enum Verdict {
+    /// Proven inside the limits.
+    Conforms,
+    /// Proven outside a limit.
+    Fails,
+    /// Neither is proven.
+    Undecided,
+}
+
+/// Why a characteristic has the verdict it has, or no value.
+#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
+#[serde(tag = "code", rename_all = "snake_case")]
+pub enum Reason {
+    /// The value lies below the lower limit by more than the guard band.
+    BelowLower,
+    /// The value lies above the upper limit by more than the guard band.
+    AboveUpper,
+    /// The lower limit lies inside the guard band of the value.
+    LowerWithinUncertainty,
+    /// The upper limit lies inside the guard band of the value.
+    UpperWithinUncertainty,
+    /// The guard bands leave no room between the limits: this bench cannot prove the requirement.
+    GuardBandsMeet,
+    /// The export gives deflections only and this spring has no measured free length.
+    NoAbsoluteLength,
+    /// The curve does not span the window of the rate.
+    WindowNotReached,
+    /// The curve does not reach the test length.
+    LengthNotReached,
+    /// The stroke starts on a loaded spring: contact was not recorded.
+    ContactNotRecorded,
+    /// The drawing's stroke is not in the export.
+    StrokeNotRecorded,
+    /// There is no full cycle of loading and unloading.
+    NoFullCycle,
+    /// There is only one loading stroke.
+    OneLoadingStroke,
+    /// The rise to solid was not reached; the shortest length reached is given.
+    SolidNotReached {
+        /// The shortest length the curve reached.
+        shortest_mm: Millimetres,
+    },
+    /// The solid length is below the shortest length reached, which is inside the limit.
+    SolidBelowShortest {
+        /// The shortest length the curve reached.
+        shortest_mm: Millimetres,
+    },
+    /// Too few independent points to give an uncertainty, and the rig file states no repeatability.
+    UncertaintyUnknown,
+    /// The spring was not measured for this.
+    NotMeasured,
+    /// Listed under `not_inspected` in the lot file.
+    NotInspected,
+}
+
+impl From<&Absence> for Reason {
+    fn from(why: &Absence) -> Self {
+        match why {
+            Absence::NoAbsoluteLength => Self::NoAbsoluteLength,
+            Absence::WindowNotReached => Self::WindowNotReached,
+            Absence::LengthNotReached => Self::LengthNotReached,
+            Absence::ContactNotRecorded => Self::ContactNotRecorded,
+            Absence::StrokeNotRecorded => Self::StrokeNotRecorded,
+            Absence::NoFullCycle => Self::NoFullCycle,
+            Absence::OneLoadingStroke => Self::OneLoadingStroke,
+            Absence::NotMeasured => Self::NotMeasured,
+        }
+    }
+}
