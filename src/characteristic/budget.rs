@@ -107,10 +107,8 @@ impl Estimate {
 fn sum(lines: &[Line]) -> Result<Uncertainty, StatsError> {
     let counted = || lines.iter().filter(|line| line.counted);
     let of = |part: Part| {
-        counted()
-            .filter(|line| line.part == part)
-            .map(|line| line.contribution.powi(2))
-            .sum::<f64>()
+        let lines = counted().filter(|line| line.part == part);
+        lines.fold(0.0, |sum, line| sum + line.contribution.powi(2)) // an empty `sum()` is −0
     };
     let (own, common) = (of(Part::Own), of(Part::Common));
     let variance = own + common;

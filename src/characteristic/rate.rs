@@ -198,11 +198,14 @@ fn scatter_lines(fit: &RateFit, strokes: &[f64]) -> Vec<Line> {
 
 /// The rates of all strokes of the judged way after presetting, N/mm.
 fn stroke_rates(setup: &Setup<'_>, curve: &Curve, free: Option<f64>) -> Vec<f64> {
-    let preset = usize::try_from(setup.conditions.presetting_recorded).unwrap_or(usize::MAX);
+    let preset = usize::try_from(setup.conditions.presetting_recorded).unwrap_or(usize::MAX - 1);
     let strokes = match setup.stroke.way {
         Way::Loading => &curve.loading,
         Way::Unloading => &curve.unloading,
     };
+    if strokes.len() <= preset + 1 {
+        return Vec::new(); // one stroke has no spread
+    }
     let rate = |path: &Path| {
         let (from, to) = setup
             .bounds

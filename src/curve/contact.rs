@@ -1,61 +1,38 @@
 //! Where a stroke touches the spring: the travel at zero load, contact load put back.
 
-use super::path::{Node, Path};
+use super::path::Path;
+
+/// The local slope is the secant from the contact load to this many times of it.
+const BEYOND: f64 = 3.0;
 
 /// Where a stroke meets the spring.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct Contact {
-    /// Travel at which the load vanishes: the local line through the first loads, taken back to zero. mm.
+    /// Travel at which the load vanishes, mm: the travel at the contact load, less contact load over local slope.
     pub u: f64,
-    /// Slope of the local line, N/mm.
+    /// Local slope, N/mm.
     pub slope: f64,
-    /// Standard uncertainty of `u` from the scatter about the local line, mm.
+    /// Standard uncertainty of `u` from the scatter of single loads, mm.
     pub scatter: f64,
 }
 
-/// Finds contact on `path`: a straight line through the nodes from the contact load `contact` (N) to three
-/// times of it (at least three nodes), taken back to zero load. `None` where the stroke does not start below the contact
-/// load: then contact was not recorded.
+/// Finds contact on `path`: with u₁ and u₃ the travels at which the load first reaches the contact load `contact` (N) and
+/// three times of it, the local slope is 2·F_c/(u₃ − u₁) and the load vanishes at u₁ − (u₃ − u₁)/2. `None` where the
+/// stroke does not start below the contact load (contact was not recorded) or does not go on to three times of it.
 pub(super) fn find(path: &Path, contact: f64) -> Option<Contact> {
-    let start = path.crossing(contact)?;
-    let after: Vec<&Node> = path.nodes.iter().filter(|node| node.u >= start).collect();
-    let low = after
-        .iter()
-        .take_while(|node| node.load <= 3.0 * contact)
-        .count()
-        .max(3);
-    let near = after.get(..low.min(after.len()))?;
-    let count = near.len() as f64;
-    if near.len() < 2 {
-        return None;
-    }
-    let mean_u = near.iter().map(|node| node.u).sum::<f64>() / count;
-    let mean_load = near.iter().map(|node| node.load).sum::<f64>() / count;
-    let sxx = near
-        .iter()
-        .map(|node| (node.u - mean_u).powi(2))
-        .sum::<f64>();
-    let sxy = near
-        .iter()
-        .map(|node| (node.u - mean_u) * (node.load - mean_load))
-        .sum::<f64>();
-    let slope = sxy / sxx;
+    let first = path.reached(contact)?;
+    let third = path.reached(BEYOND * contact)?;
+    let apart = third - first;
+    let slope = (BEYOND - 1.0) * contact / apart;
     if !(slope > 0.0 && slope.is_finite()) {
         return None;
     }
-    let u = mean_u - mean_load / slope;
-    let sse = near
-        .iter()
-        .map(|node| (node.load - mean_load - slope * (node.u - mean_u)).powi(2))
-        .sum::<f64>();
-    let sd = if near.len() > 2 {
-        (sse / (count - 2.0)).sqrt()
-    } else {
-        0.0
-    };
+    let back = apart / (BEYOND - 1.0);
+    // u = 1.5 u₁ − 0.5 u₃, each read off with the scatter of one load over the slope.
+    let scatter = path.scatter()? / slope * 1.5_f64.hypot(0.5);
     Some(Contact {
-        u,
+        u: first - back,
         slope,
-        scatter: sd / slope * (1.0 / count + (u - mean_u).powi(2) / sxx).sqrt(),
+        scatter,
     })
 }

@@ -106,6 +106,35 @@ impl Path {
         None
     }
 
+    /// The travel at which the load itself first reaches `level`, between that node and the one before, in mm. For the
+    /// kink at contact, which smoothing would round. `None` where the stroke starts above the level or never reaches it.
+    pub fn reached(&self, level: f64) -> Option<f64> {
+        let place = self.nodes.iter().position(|node| node.load >= level)?;
+        let (before, node) = (
+            self.nodes.get(place.checked_sub(1)?)?,
+            self.nodes.get(place)?,
+        );
+        Some(before.u + (level - before.load) / (node.load - before.load) * (node.u - before.u))
+    }
+
+    /// Standard deviation of a single load about a smooth curve, N: from the median distance of a node from the chord
+    /// between its neighbours, which a line does not have and a bend hardly. `None` under three nodes.
+    pub fn scatter(&self) -> Option<f64> {
+        let off = |three: &[Node]| match three {
+            [a, b, c] if c.u > a.u => {
+                let share = (b.u - a.u) / (c.u - a.u);
+                let chord = a.load + share * (c.load - a.load);
+                // The variance of the distance, over that of one load.
+                let variance = 1.0 + share * share + (1.0 - share) * (1.0 - share);
+                Some((b.load - chord).abs() / variance.sqrt())
+            }
+            _ => None,
+        };
+        let sizes: Vec<f64> = self.nodes.windows(3).filter_map(off).collect();
+        // For normal scatter the median size is 0.6745 standard deviations.
+        Some(crate::stats::median(sizes)? / 0.674_489_75)
+    }
+
     /// Mean travel and load of the nodes around `place`; fewer near the ends, always as many on either side.
     fn smoothed(&self, place: usize) -> Option<(f64, f64)> {
         let reach = SMOOTH

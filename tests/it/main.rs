@@ -11,5 +11,6 @@ mod fit_published;
 mod plan_published;
 mod published;
 mod rooms;
+mod springs_published;
 mod stats_published;
 mod type_a_coverage;

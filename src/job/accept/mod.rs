@@ -207,10 +207,11 @@ fn judge(
         }
         .into());
     };
-    let mut judged = Vec::new();
-    for spring in springs {
-        judged.push(springs::judge(files, terms, spring)?);
-    }
+    let judge = |spring| springs::judge(files, terms, spring);
+    let mut judged = springs
+        .into_par_iter()
+        .map(judge)
+        .collect::<Result<Vec<_>, _>>()?;
     let order = group::sample_order(lot, &judged)?;
     let plans = class_terms(&terms.plan, lot.size.value, &classes(drawing, lot))?;
     let outcome = decide(&plans, &order, terms.undecided);

@@ -2,7 +2,7 @@
 
 use std::collections::HashSet;
 
-use crate::characteristic::{Characteristic, Measurement, average};
+use crate::characteristic::{Characteristic, Measured, Measurement, average};
 use crate::curve::Reduced;
 use crate::drawing::{Acceptance, Requirement};
 use crate::lot::{Advice, advise};
@@ -156,6 +156,10 @@ impl<'a> Verdicts<'a> {
                 .push(advise(quantity, measured, &requirement.limits, times)?);
         }
         let judged = found.as_ref().map(|(_, judged)| judged);
+        let silent = requirement.is_none() && !matches!(measured, Measured::Value(_));
+        if silent {
+            return Ok(()); // nobody asked for it, and there is nothing to say
+        }
         self.results.push(result(
             characteristic,
             requirement,
