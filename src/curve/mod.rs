@@ -16,7 +16,7 @@ pub use contact::Contact;
 pub use correct::{Curve, Frame, Zero, correct};
 pub use error::CurveError;
 pub use path::{Node, Path, Side};
-pub use reduced::{Axis, Reduced, thin};
+pub use reduced::{Axis, MOST_POINTS, Reduced, thin};
 pub use solid::Rise;
 pub use strokes::{Stroke, split};
 pub use window::{Bounds, WindowMiss, WindowOf, full_load, window_of};

@@ -6,15 +6,12 @@ use std::path::Path;
 use rayon::prelude::*;
 
 use crate::characteristic::{MeasureError, Measurement, Setup, measure};
-use crate::curve::{Axis, Curve, Path as Stroke, Reduced, Zero, correct, thin};
+use crate::curve::{Axis, Curve, MOST_POINTS, Path as Stroke, Reduced, Zero, correct, thin};
 use crate::export::{BLOCK_BYTES, ExportError, Ledger, RawCurve};
 use crate::intake::Export;
 use crate::quantity::Quantity;
 use crate::record::{LedgerFacts, SetAside};
 use crate::text::InputFile;
-
-/// Points a stroke keeps for drawing.
-const DRAWN: usize = 400;
 
 /// One measurement of one spring.
 #[derive(Debug)]
@@ -143,7 +140,7 @@ fn reduce(setup: &Setup<'_>, curve: &Curve, measurement: &Measurement) -> Reduce
             .flat_map(|path| &path.nodes)
             .map(|node| (shown(node.u), node.load))
             .collect();
-        thin(&points, DRAWN)
+        thin(&points, MOST_POINTS)
     };
     let residuals = measurement.fit.as_ref().map_or(Vec::new(), |fit| {
         let points: Vec<(f64, f64)> = fit
@@ -152,7 +149,7 @@ fn reduce(setup: &Setup<'_>, curve: &Curve, measurement: &Measurement) -> Reduce
             .zip(&fit.line.residuals)
             .map(|(u, residual)| (shown(*u), *residual))
             .collect();
-        thin(&points, DRAWN)
+        thin(&points, MOST_POINTS)
     });
     Reduced {
         id: curve.id.clone(),

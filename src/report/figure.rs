@@ -10,6 +10,9 @@ pub const ABSENT: &str = "–";
 /// Places after the point beyond which nothing is printed.
 const MOST_PLACES: i32 = 12;
 
+/// Degrees of freedom beyond which they are not counted out: the coverage factor is then within 0.1 % of the normal one.
+const MANY_DEGREES: f64 = 1000.0;
+
 /// How far a figure is written out.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub enum Place {
@@ -37,6 +40,7 @@ pub fn figure(value: Option<impl Into<f64>>, unit: Unit, place: Place, show_in: 
             }
         }
         Place::Stated => trimmed(value, 6),
+        Place::Significant(_) if value.abs() <= 0.0 => "0".to_owned(),
         Place::Significant(digits) => rounded(value, last_place(value, digits)),
     }
 }
@@ -72,19 +76,35 @@ pub fn with_uncertainty(
     }
 }
 
-/// A share 0 … 1 as a percentage; figures that would round to 0 or 100 without being it are written as a bound.
+/// A share 0 … 1 as a percentage.
 pub fn percent(share: Option<impl Into<f64>>) -> String {
-    let Some(share) = share else {
+    share.map_or_else(
+        || ABSENT.to_owned(),
+        |share| format!("{}\u{a0}%", rounded(share.into() * 100.0, -1)),
+    )
+}
+
+/// A probability 0 … 1 as a percentage, never rounded to certainty.
+pub fn probability(of: Option<impl Into<f64>>) -> String {
+    let Some(of) = of.map(Into::<f64>::into) else {
         return ABSENT.to_owned();
     };
-    let percent = share.into() * 100.0;
-    if percent > 99.9 && percent < 100.0 {
-        return ">\u{a0}99.9\u{a0}%".to_owned();
+    if of > 0.999 {
+        ">\u{a0}99.9\u{a0}%".to_owned()
+    } else if of < 0.001 {
+        "<\u{a0}0.1\u{a0}%".to_owned()
+    } else {
+        percent(Some(of))
     }
-    if percent > 0.0 && percent < 0.1 {
-        return "<\u{a0}0.1\u{a0}%".to_owned();
+}
+
+/// Degrees of freedom; `None` is infinite, and more than a thousand makes no difference that could be read.
+pub fn freedom(of: Option<Finite>) -> String {
+    match of {
+        None => "∞".to_owned(),
+        Some(of) if of.get() > MANY_DEGREES => format!(">\u{a0}{MANY_DEGREES:.0}"),
+        Some(of) => number(Some(of), 3),
     }
-    format!("{}\u{a0}%", rounded(percent, -1))
 }
 
 /// A pure number to `digits` significant digits, trailing zeros cut.
@@ -157,7 +177,7 @@ fn signed(text: &str) -> String {
 
 #[cfg(test)]
 mod tests {
-    #![expect(clippy::unwrap_used, reason = "tests")]
+    #![expect(clippy::unwrap_used, clippy::unnecessary_wraps, reason = "tests")]
     use super::*;
 
     fn of(value: f64) -> Option<Finite> {
@@ -223,9 +243,16 @@ mod tests {
 
     #[test]
     fn a_probability_is_never_rounded_to_certainty() {
-        assert_eq!(percent(Some(0.999_99)), ">\u{a0}99.9\u{a0}%");
-        assert_eq!(percent(Some(0.000_01)), "<\u{a0}0.1\u{a0}%");
-        assert_eq!(percent(Some(0.5)), "50.0\u{a0}%");
+        assert_eq!(probability(Some(0.999_99)), ">\u{a0}99.9\u{a0}%");
+        assert_eq!(probability(Some(0.0)), "<\u{a0}0.1\u{a0}%");
+        assert_eq!(probability(Some(0.5)), "50.0\u{a0}%");
         assert_eq!(percent(Some(1.0)), "100.0\u{a0}%");
+    }
+
+    #[test]
+    fn degrees_of_freedom() {
+        assert_eq!(freedom(None), "∞");
+        assert_eq!(freedom(of(43_200_000.0)), ">\u{a0}1000");
+        assert_eq!(freedom(of(86.44)), "86.4");
     }
 }

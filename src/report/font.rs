@@ -10,8 +10,8 @@ use crate::text::{Alphabet, printable};
 pub(super) const REGULAR: &[u8] = include_bytes!("../../templates/fonts/OpenSans-Regular.ttf");
 /// The bold face.
 pub(super) const BOLD: &[u8] = include_bytes!("../../templates/fonts/OpenSans-Bold.ttf");
-/// The family's name, as charts and templates ask for it.
-pub(super) const FAMILY: &str = "Open Sans";
+/// The family, as charts ask for it; a page without it takes what it has.
+pub(super) const FAMILIES: &str = "Open Sans, sans-serif";
 
 /// Width taken for a character that a face does not know, in ems.
 const UNKNOWN_EM: f64 = 0.6;
@@ -119,11 +119,12 @@ mod tests {
 
     #[test]
     fn figures_are_tabular() {
-        let one = width("1", 1000.0, false);
-        assert!(one > 400.0);
-        for digit in "023456789".chars() {
-            assert!((width(&digit.to_string(), 1000.0, false) - one).abs() < 1e-9);
-            assert!((width(&digit.to_string(), 1000.0, true) - one).abs() < 1e-9);
+        for heavy in [false, true] {
+            let one = width("1", 1000.0, heavy);
+            assert!(one > 400.0);
+            for digit in "023456789".chars() {
+                assert!((width(&digit.to_string(), 1000.0, heavy) - one).abs() < 1e-9);
+            }
         }
     }
 

@@ -43,8 +43,8 @@ pub(super) fn page(
         .collect();
     gate::for_browser(&mut model);
     let report = Value::from(Serde(model));
-    let fonts =
-        context! { regular => STANDARD.encode(font::REGULAR), bold => STANDARD.encode(font::BOLD) };
+    let encoded = |face: &[u8]| Value::from_safe_string(STANDARD.encode(face));
+    let fonts = context! { regular => encoded(font::REGULAR), bold => encoded(font::BOLD) };
     page.render(context! { report, charts, fonts })
         .map_err(|error| fault(&error))
 }

@@ -17,7 +17,8 @@ mod wording;
 pub use csv::springs_csv;
 pub use error::ReportError;
 pub use figure::{
-    ABSENT, Place, figure, number, per_unit, percent, symbol, with_uncertainty, with_unit,
+    ABSENT, Place, figure, freedom, number, per_unit, percent, probability, symbol,
+    with_uncertainty, with_unit,
 };
 pub use model::Model;
 pub use summary::summary;
@@ -89,14 +90,8 @@ pub fn accept(
     let charts = charts?;
     let data = || serde_json::to_value(&model).map_err(ReportError::Model);
     let (html, pdf) = rayon::join(
-        || {
-            let r = html::page(data()?, &charts, &templates.html);
-            r
-        },
-        || {
-            let r = pdf::document(data()?, &charts, &templates.typst);
-            r
-        },
+        || html::page(data()?, &charts, &templates.html),
+        || pdf::document(data()?, &charts, &templates.typst),
     );
     let mut files = vec![
         OutFile {

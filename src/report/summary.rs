@@ -1,7 +1,7 @@
 //! The judgement for the terminal: the decision first, then why. About thirty lines for any number of springs.
 
 use crate::record::{AcceptRecord, RequirementFacts, SpringResult, Verdict};
-use crate::report::figure::{Place, figure, symbol};
+use crate::report::figure::{Place, figure, with_unit};
 use crate::report::model::labelled;
 use crate::report::wording;
 use crate::text::{Alphabet, printable};
@@ -41,10 +41,8 @@ pub fn summary(record: &AcceptRecord, show_in: System) -> String {
             .map(|of| requirement(of, show_in)),
     );
     if requirements.len() > REQUIREMENTS {
-        lines.push(format!(
-            "  and {} more requirements",
-            requirements.len() - REQUIREMENTS
-        ));
+        let more = rest(requirements.len(), REQUIREMENTS);
+        lines.push(format!("  and {more} more in the report"));
     }
     lines.extend(named(record, Verdict::Fails, "failing", show_in));
     lines.extend(named(record, Verdict::Undecided, "undecided", show_in));
@@ -77,19 +75,26 @@ fn cut(line: &str) -> String {
 }
 
 fn requirement(of: &RequirementFacts, show_in: System) -> String {
-    let stated = |value: Option<Finite>| figure(value, of.unit, Place::Stated, show_in);
+    let stated = |value: Option<Finite>| with_unit(value, of.unit, Place::Stated, show_in);
     let place = Place::Uncertainty(of.largest_expanded_uncertainty);
+    let limits = match (of.lower, of.upper) {
+        (Some(_), Some(_)) => format!(
+            "limits {} to {}",
+            figure(of.lower, of.unit, Place::Stated, show_in),
+            stated(of.upper)
+        ),
+        (Some(_), None) => format!("at least {}", stated(of.lower)),
+        (None, Some(_)) => format!("at most {}", stated(of.upper)),
+        (None, None) => "no limit".to_owned(),
+    };
     format!(
-        "  {}: {} conform, {} fail, {} undecided; {} … {}, limits {} … {} {}",
+        "  {}: {} conform, {} fail, {} undecided; measured {} to {}, {limits}",
         wording::characteristic(&of.name, of.at_length_mm, show_in),
         of.conforming,
         of.failing,
         of.undecided,
         figure(of.smallest, of.unit, place, show_in),
         figure(of.largest, of.unit, place, show_in),
-        stated(of.lower),
-        stated(of.upper),
-        symbol(of.unit, show_in)
     )
 }
 

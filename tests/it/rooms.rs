@@ -74,9 +74,11 @@ impl Paths<'_> {
                 self.take(&path);
             }
             syn::UseTree::Group(group) => {
-                group.items.iter().for_each(|item| self.tree(&path, item))
+                for item in &group.items {
+                    self.tree(&path, item);
+                }
             }
-            _ => self.take(&path),
+            syn::UseTree::Glob(_) => self.take(&path),
         }
     }
 }

@@ -1,39 +1,24 @@
 //! All curves with the window and the limits at the test lengths, and the residuals about the fits.
 
+use super::bounds;
 use super::field::{self, Line};
 use super::plot::{self, EDGE, Entry, LEADING, Plot, Sample, Scale};
-use super::sheet::{Anchor, Drawn, INK, LIMIT, Sheet, TYPE, WIDTH, WINDOW};
+use super::sheet::{INK, LIMIT, WIDTH, WINDOW};
 use super::{Chart, chart, verdict_of};
 use crate::curve::{Axis, Reduced, thin};
 use crate::quantity::Unit;
-use crate::record::{AcceptRecord, RequirementFacts, WindowOf};
-use crate::report::figure::{Place, figure, per_unit, symbol};
-use crate::report::{ReportError, font};
-use crate::units::{Finite, System};
+use crate::record::AcceptRecord;
+use crate::report::ReportError;
+use crate::report::figure::{per_unit, symbol};
+use crate::units::System;
 
 /// Height of the plot of loads, and of residuals.
-const TALL: f64 = 290.0;
-const LOW: f64 = 150.0;
+const TALL: f64 = 235.0;
+const LOW: f64 = 115.0;
 
 /// Residuals drawn over all springs, and at least of one spring.
 const MOST_RESIDUALS: usize = 4000;
 const FEWEST_RESIDUALS: usize = 60;
-
-/// The window, in the values of the plot.
-#[derive(Clone, Copy)]
-enum Window {
-    Across(f64, f64),
-    Up(f64, f64),
-    Unknown,
-}
-
-/// The limits of a load at a test length, in the values of the plot.
-struct Bar {
-    at: f64,
-    lower: Option<f64>,
-    upper: Option<f64>,
-    words: String,
-}
 
 /// All curves.
 ///
@@ -50,13 +35,13 @@ pub(super) fn loads(
         (&curve.loading, &curve.unloading)
     });
     let bars = if axis == Axis::Length {
-        bars(record, show_in)
+        bounds::bars(record, show_in)
     } else {
         Vec::new()
     };
-    let window = window(record, curves, axis, show_in);
+    let window = bounds::window(record, curves, axis, show_in);
     let mut entries = field::entries(&lines);
-    if !matches!(window, Window::Unknown) {
+    if !matches!(window, bounds::Window::Unknown) {
         entries.push((Sample::Patch(WINDOW, 0.22), "window of the rate".to_owned()));
     }
     if !bars.is_empty() {
@@ -109,12 +94,12 @@ pub(super) fn loads(
                 sheet,
                 &plot,
                 7,
-                &format!("load F in {}", symbol(Unit::Newton, show_in)),
+                &format!("load F ({})", symbol(Unit::Newton, show_in)),
             )?;
             plot::across_axis(sheet, &plot, 9, &across(axis, show_in))?;
-            draw_window(sheet, &plot, window)?;
+            bounds::draw_window(sheet, &plot, window)?;
             field::draw(sheet, &plot, &lines)?;
-            draw_bars(sheet, &plot, &bars)?;
+            bounds::draw_bars(sheet, &plot, &bars)?;
             plot::frame(sheet, &plot)
         },
     )
@@ -166,7 +151,7 @@ pub(super) fn residuals(
                 sheet,
                 &plot,
                 5,
-                &format!("residual in {}", symbol(Unit::Newton, show_in)),
+                &format!("residual ({})", symbol(Unit::Newton, show_in)),
             )?;
             plot::across_axis(sheet, &plot, 9, &across(axis, show_in))?;
             field::draw(sheet, &plot, &lines)?;
@@ -209,8 +194,8 @@ fn lines<'a>(
 fn across(axis: Axis, show_in: System) -> String {
     let unit = symbol(Unit::Millimetre, show_in);
     match axis {
-        Axis::Length => format!("length L in {unit}"),
-        Axis::Deflection => format!("deflection s in {unit}"),
+        Axis::Length => format!("length L ({unit})"),
+        Axis::Deflection => format!("deflection s ({unit})"),
     }
 }
 
@@ -231,107 +216,4 @@ fn laid_out(entries: &[Entry], tall: f64, x: (f64, f64), y: (f64, f64)) -> Plot 
             paper: (top + tall, top),
         },
     }
-}
-
-fn window(record: &AcceptRecord, curves: &[&Reduced], axis: Axis, show_in: System) -> Window {
-    let of = &record.window;
-    if of.of == WindowOf::Load {
-        let scale = per_unit(Unit::Newton, show_in);
-        return Window::Up(of.from.get() / scale, of.to.get() / scale);
-    }
-    let scale = per_unit(Unit::Millimetre, show_in);
-    let same = matches!(
-        (of.of, axis),
-        (WindowOf::Length, Axis::Length) | (WindowOf::Deflection, Axis::Deflection)
-    );
-    if same {
-        return Window::Across(of.from.get() / scale, of.to.get() / scale);
-    }
-    let fits: Vec<(f64, f64)> = record
-        .springs
-        .iter()
-        .filter(|spring| curves.iter().any(|curve| curve.id == spring.id))
-        .filter_map(|spring| spring.fit.as_ref())
-        .map(|fit| (fit.from_mm.get() / scale, fit.to_mm.get() / scale))
-        .collect();
-    let middle = |take: fn(&(f64, f64)) -> f64| {
-        let mut values: Vec<f64> = fits.iter().map(take).collect();
-        values.sort_by(f64::total_cmp);
-        values.get(values.len() / 2).copied()
-    };
-    match (middle(|fit| fit.0), middle(|fit| fit.1)) {
-        (Some(from), Some(to)) => Window::Across(from, to),
-        _ => Window::Unknown,
-    }
-}
-
-fn draw_window(sheet: &mut Sheet<'_>, plot: &Plot, window: Window) -> Drawn {
-    let ((left, right), (bottom, top)) = (plot.x.paper, plot.y.paper);
-    match window {
-        Window::Up(from, to) => {
-            let (low, high) = (
-                plot.y.at(from).clamp(top, bottom),
-                plot.y.at(to).clamp(top, bottom),
-            );
-            sheet.block((left, low), (right, high), WINDOW, 0.22)
-        }
-        Window::Across(from, to) => {
-            let (start, end) = (
-                plot.x.at(from).clamp(left, right),
-                plot.x.at(to).clamp(left, right),
-            );
-            sheet.block((start, bottom), (end, top), WINDOW, 0.22)
-        }
-        Window::Unknown => Ok(()),
-    }
-}
-
-fn bars(record: &AcceptRecord, show_in: System) -> Vec<Bar> {
-    let force = per_unit(Unit::Newton, show_in);
-    let bar = |of: &RequirementFacts| {
-        let at = of
-            .at_length_mm
-            .filter(|_| of.lower.is_some() || of.upper.is_some())?;
-        let stated = |value: Option<Finite>| figure(value, Unit::Newton, Place::Stated, show_in);
-        let shown = |value: Option<Finite>| value.map(|value| value.get() / force);
-        let length = figure(Some(at), Unit::Millimetre, Place::Stated, show_in);
-        Some(Bar {
-            at: at.get() / per_unit(Unit::Millimetre, show_in),
-            lower: shown(of.lower),
-            upper: shown(of.upper),
-            words: format!("L {length}: {} … {}", stated(of.lower), stated(of.upper)),
-        })
-    };
-    record.drawing.requirements.iter().filter_map(bar).collect()
-}
-
-fn draw_bars(sheet: &mut Sheet<'_>, plot: &Plot, bars: &[Bar]) -> Drawn {
-    let (bottom, top) = plot.y.paper;
-    let ends = |bar: &Bar| {
-        let high = bar.upper.map_or(top, |value| plot.y.at(value));
-        let low = bar.lower.map_or(bottom, |value| plot.y.at(value));
-        (high, low)
-    };
-    let wanted: Vec<f64> = bars.iter().map(|bar| ends(bar).0 - 4.0).collect();
-    let heights = plot::spread(&wanted, LEADING, top + LEADING * 0.5, bottom - LEADING);
-    for (bar, height) in bars.iter().zip(heights) {
-        let x = plot.x.at(bar.at);
-        let (high, low) = ends(bar);
-        sheet.line(&[(x, high), (x, low)], LIMIT, 2.4)?;
-        for (value, y) in [(bar.upper, high), (bar.lower, low)] {
-            if value.is_some() {
-                sheet.line(&[(x - 6.0, y), (x + 6.0, y)], LIMIT, 2.4)?;
-            }
-        }
-        let wide = font::width(&bar.words, TYPE, false);
-        let right = (x - 10.0).max(plot.x.paper.0 + wide + 4.0);
-        sheet.block(
-            (right - wide - 3.0, height - 8.0),
-            (right + 3.0, height + 8.0),
-            plotters::style::WHITE,
-            0.8,
-        )?;
-        sheet.text(&bar.words, (right, height), Anchor::End, LIMIT)?;
-    }
-    Ok(())
 }

@@ -10,10 +10,14 @@ use crate::report::{font, wording};
 const INVISIBLE: f64 = 0.3;
 /// Places across at which the band is taken.
 const ACROSS: u32 = 120;
+/// Lines that do not conform before they are drawn thinner.
+const CROWD: usize = 6;
+/// Marks along a line that does not conform.
+const MARKS: usize = 4;
 /// Labels at the ends of curves.
 const LABELS: usize = 12;
 /// Width of such a label.
-pub(super) const LABEL_WIDTH: f64 = 76.0;
+pub(super) const LABEL_WIDTH: f64 = 66.0;
 
 /// One spring's curve, in the values of the plot.
 pub(super) struct Line<'a> {
@@ -82,7 +86,8 @@ pub(super) fn draw(sheet: &mut Sheet<'_>, plot: &Plot, lines: &[Line<'_>]) -> Dr
         if !banded(lines.len()) {
             sheet.line(&visible(plot, &line.back), colour(line.verdict), 0.7)?;
         }
-        sheet.line(&visible(plot, &line.points), colour(line.verdict), 1.4)?;
+        let width = if others.len() > CROWD { 0.7 } else { 1.3 };
+        sheet.line(&visible(plot, &line.points), colour(line.verdict), width)?;
         marks(sheet, plot, line, number)?;
     }
     labels(sheet, plot, &others)
@@ -90,20 +95,24 @@ pub(super) fn draw(sheet: &mut Sheet<'_>, plot: &Plot, lines: &[Line<'_>]) -> Dr
 
 fn marks(sheet: &mut Sheet<'_>, plot: &Plot, line: &Line<'_>, number: usize) -> Drawn {
     let count = line.points.len();
-    for place in 0..5_usize {
-        let at = count * (2 * place + 1 + number % 2) / 11;
+    for place in 0..MARKS {
+        let at = count * (2 * place + 1 + number % 2) / (2 * MARKS + 1);
         if let Some(point) = line.points.get(at) {
-            sheet.mark(line.verdict, plot.at(*point), 3.2)?;
+            sheet.mark(line.verdict, plot.at(*point), 2.8)?;
         }
     }
     Ok(())
 }
 
 fn labels(sheet: &mut Sheet<'_>, plot: &Plot, lines: &[&Line<'_>]) -> Drawn {
-    let right = plot.x.paper.1;
+    let (right, (bottom, top)) = (plot.x.paper.1, plot.y.paper);
+    let apart = LEADING * 0.85;
+    let fitting = (0..LABELS)
+        .take_while(|number| (*number as f64 + 1.0) * apart < bottom - top)
+        .count();
     let ends: Vec<(f64, f64)> = lines
         .iter()
-        .take(LABELS)
+        .take(fitting)
         .filter_map(|line| {
             line.points
                 .iter()
@@ -113,22 +122,17 @@ fn labels(sheet: &mut Sheet<'_>, plot: &Plot, lines: &[&Line<'_>]) -> Drawn {
         })
         .collect();
     let wanted: Vec<f64> = ends.iter().map(|end| end.1).collect();
-    let heights = spread(
-        &wanted,
-        LEADING * 0.85,
-        plot.y.paper.1 + 4.0,
-        plot.y.paper.0 - LEADING,
-    );
+    let heights = spread(&wanted, apart, top, bottom - apart);
     for ((line, end), y) in lines.iter().zip(&ends).zip(heights) {
         sheet.line(&[*end, (right + 4.0, y)], FAINT, 0.5)?;
         let words = font::shortened(&font::fitting(line.id), TYPE, LABEL_WIDTH - 12.0);
         sheet.text(&words, (right + 8.0, y), Anchor::Start, INK)?;
     }
-    if lines.len() > LABELS {
-        let more = format!("+ {} more", lines.len() - LABELS);
+    if lines.len() > fitting {
+        let more = format!("+ {} more", lines.len() - fitting);
         sheet.text(
             &more,
-            (right + 8.0, plot.y.paper.0 + LEADING * 0.2),
+            (right + 8.0, top - LEADING * 0.9),
             Anchor::Start,
             FAINT,
         )?;
@@ -233,7 +237,7 @@ fn distance(point: (f64, f64), start: (f64, f64), end: (f64, f64)) -> f64 {
 
 #[cfg(test)]
 mod tests {
-    #![expect(clippy::float_cmp, reason = "points are copied, never computed")]
+    #![expect(clippy::indexing_slicing, reason = "tests")]
     use super::*;
 
     #[test]

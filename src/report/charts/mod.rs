@@ -1,9 +1,11 @@
 //! The report's charts as SVG. Here: what is drawn. Elsewhere: figures (`figure`), words (`wording`).
 //! Marks differ by shape as well as by colour, so that a black-and-white print says the same.
 
+mod bounds;
 mod curves;
 mod field;
 mod histogram;
+mod ids;
 mod plot;
 mod share;
 mod sheet;
@@ -49,8 +51,8 @@ pub(super) fn all(
         charts.push(curves::loads(record, &some, only, show_in)?);
         charts.extend(curves::residuals(record, &some, only, show_in)?);
     }
-    charts.extend(values::all(record, show_in)?);
     charts.extend(share::chart_of(record, show_in)?);
+    charts.extend(values::all(record, show_in)?);
     Ok(charts)
 }
 

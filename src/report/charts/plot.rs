@@ -64,7 +64,7 @@ pub(super) fn ticks(range: (f64, f64), wanted: u8) -> (Vec<f64>, usize) {
     let base = 10_f64.powf(power);
     let factor = [1.0, 2.0, 5.0, 10.0]
         .into_iter()
-        .find(|factor| factor * base >= rough)
+        .find(|factor| factor * base >= rough * (1.0 - 1e-9))
         .unwrap_or(10.0);
     let step = factor * base;
     let places = (0_u8..=12).find(|places| {
@@ -192,7 +192,7 @@ pub(super) fn legend(sheet: &mut Sheet<'_>, entries: &[Entry]) -> Drawn {
             Sample::Line(colour, width) => sheet.line(&[(x, y), (x + 20.0, y)], colour, width)?,
             Sample::Dashes(colour) => sheet.dashes((x, y), (x + 20.0, y), colour, 1.6)?,
             Sample::Patch(colour, alpha) => {
-                sheet.block((x, y - 5.0), (x + 20.0, y + 5.0), colour, alpha)?
+                sheet.block((x, y - 5.0), (x + 20.0, y + 5.0), colour, alpha)?;
             }
         }
         sheet.text(words, (x + 26.0, y), Anchor::Start, INK)?;
@@ -220,6 +220,7 @@ pub(super) fn spread(wanted: &[f64], apart: f64, top: f64, bottom: f64) -> Vec<f
 
 #[cfg(test)]
 mod tests {
+    #![expect(clippy::indexing_slicing, reason = "tests")]
     use super::*;
 
     #[test]

@@ -106,7 +106,7 @@ fn bar(
     show_in: System,
 ) -> Drawn {
     let total: f64 = parts.iter().map(|part| part.max(0.0)).sum();
-    let (left, right) = (EDGE + 118.0, WIDTH - EDGE - 104.0);
+    let (left, right) = (EDGE + 112.0, WIDTH - EDGE - 96.0);
     sheet.text(words, (EDGE, y + BAR / 2.0), Anchor::Start, INK)?;
     let sum = with_unit(
         crate::units::Finite::try_from(total).ok(),
@@ -141,9 +141,10 @@ fn bar(
             symbol(unit, show_in),
             percent(Some(share))
         );
+        let middle = format!("{}  {}", letter(number), percent(Some(share)));
         let short = letter(number).to_string();
         let fits = |text: &str| font::width(text, TYPE, false) + 6.0 <= to - from;
-        if let Some(text) = [long, short].into_iter().find(|text| fits(text)) {
+        if let Some(text) = [long, middle, short].into_iter().find(|text| fits(text)) {
             sheet.text(
                 &text,
                 (f64::midpoint(from, to), y + BAR / 2.0),

@@ -12,7 +12,7 @@ use crate::report::font;
 /// Whole coordinates per unit of the drawing.
 const SCALE: f64 = 10.0;
 /// Width of every chart.
-pub(super) const WIDTH: f64 = 720.0;
+pub(super) const WIDTH: f64 = 560.0;
 /// Size of labels.
 pub(super) const TYPE: f64 = 12.0;
 /// plotters divides sizes by this before it writes them.
@@ -221,7 +221,7 @@ impl Sheet<'_> {
             Anchor::End => HPos::Right,
         };
         let size = TYPE * SCALE * PLOTTERS_TYPE;
-        let face = (FontFamily::Name(font::FAMILY), size, weight)
+        let face = (FontFamily::Name(font::FAMILIES), size, weight)
             .into_font()
             .transform(turn);
         let style = TextStyle::from(face)

@@ -1,29 +1,27 @@
 //! One characteristic over the springs: each value with its interval against the limits, and the distribution beside it.
 
-use super::histogram;
 use super::plot::{self, EDGE, Entry, LEADING, Plot, Sample, Scale};
-use super::sheet::{Anchor, Drawn, FAINT, INK, LIMIT, Sheet, THEORY, TYPE, WIDTH, colour};
+use super::sheet::{Drawn, LIMIT, Sheet, THEORY, WIDTH, colour};
 use super::{Chart, chart};
+use super::{histogram, ids};
 use crate::quantity::{Quantity, Unit};
 use crate::record::{AcceptRecord, CharacteristicResult, Verdict};
 use crate::report::figure::{Place, per_unit, symbol, with_unit};
 use crate::report::model::{find, occurring};
-use crate::report::{ReportError, font, wording};
+use crate::report::{ReportError, wording};
 use crate::units::System;
 
 /// Height of the plot.
-const TALL: f64 = 182.0;
+const TALL: f64 = 150.0;
 /// Width of the distribution.
-const SIDE: f64 = 104.0;
-/// The longest label of a spring.
-const LONGEST: f64 = 64.0;
-/// Springs whose every label is drawn.
-const LABELLED: usize = 44;
+const SIDE: f64 = 108.0;
 
 /// A spring's value, in the units of the plot.
-struct Value<'a> {
-    id: &'a str,
-    verdict: Option<Verdict>,
+pub(super) struct Measured<'a> {
+    /// The spring.
+    pub id: &'a str,
+    /// The verdict on this value; `None` where it informs.
+    pub verdict: Option<Verdict>,
     value: f64,
     expanded: f64,
 }
@@ -66,12 +64,12 @@ fn one(
     show_in: System,
 ) -> Result<Chart, ReportError> {
     let scale = per_unit(unit, show_in);
-    let values: Vec<Value<'_>> = record
+    let values: Vec<Measured<'_>> = record
         .springs
         .iter()
         .filter_map(|spring| {
             let of = find(spring, key)?;
-            Some(Value {
+            Some(Measured {
                 id: &spring.id,
                 verdict: of.verdict,
                 value: of.value?.get() / scale,
@@ -109,11 +107,15 @@ fn one(
     } else {
         "limits"
     };
-    let caption = format!(
-        "Each spring’s value with its interval ± U (95.45 %) against {against}; to the right the distribution over the springs."
-    );
+    let beside = if values.len() >= histogram::FEWEST {
+        "; to the right the distribution over the springs"
+    } else {
+        ""
+    };
+    let caption =
+        format!("Each spring’s value with its interval ± U (95.45 %) against {against}{beside}.");
     let entries = entries(&values, &lines, first, theory, show_in);
-    let bottom = labels_height(&values);
+    let bottom = ids::labels_height(&values);
     let height = plot::legend_height(&entries) + LEADING * 1.6 + TALL + bottom;
     let title = format!("{} of each spring", wording::sentence(&name));
     chart(&file, &title, caption, height, |sheet| {
@@ -122,13 +124,13 @@ fn one(
             &values,
             &lines,
             &entries,
-            &format!("{name} in {}", symbol(unit, show_in)),
+            &format!("{name} ({})", symbol(unit, show_in)),
         )
     })
 }
 
 fn entries(
-    values: &[Value<'_>],
+    values: &[Measured<'_>],
     lines: &Lines,
     first: Option<&CharacteristicResult>,
     theory: &crate::record::TheoryFacts,
@@ -183,22 +185,9 @@ fn entries(
     entries
 }
 
-fn widest(values: &[Value<'_>]) -> f64 {
-    let width = |value: &Value<'_>| font::width(&shown_id(value.id), TYPE, false);
-    values.iter().map(width).fold(0.0, f64::max)
-}
-
-fn shown_id(id: &str) -> String {
-    font::shortened(&font::fitting(id), TYPE, LONGEST)
-}
-
-fn labels_height(values: &[Value<'_>]) -> f64 {
-    widest(values) + LEADING * 1.6 + EDGE
-}
-
 fn draw(
     sheet: &mut Sheet<'_>,
-    values: &[Value<'_>],
+    values: &[Measured<'_>],
     lines: &Lines,
     entries: &[Entry],
     title: &str,
@@ -256,7 +245,7 @@ fn draw(
         )?;
     }
     marks(sheet, &plot, values)?;
-    labels(sheet, &plot, values)?;
+    ids::labels(sheet, &plot, values)?;
     if side > 0.0 {
         let all: Vec<f64> = values.iter().map(|value| value.value).collect();
         histogram::draw(sheet, &plot.y, (plot.x.paper.1 + 10.0, right), &all)?;
@@ -264,7 +253,7 @@ fn draw(
     plot::frame(sheet, &plot)
 }
 
-fn marks(sheet: &mut Sheet<'_>, plot: &Plot, values: &[Value<'_>]) -> Drawn {
+fn marks(sheet: &mut Sheet<'_>, plot: &Plot, values: &[Measured<'_>]) -> Drawn {
     let crowded = values.len() > 80;
     for (number, value) in values.iter().enumerate() {
         let verdict = value.verdict.unwrap_or(Verdict::Conforms);
@@ -284,36 +273,4 @@ fn marks(sheet: &mut Sheet<'_>, plot: &Plot, values: &[Value<'_>]) -> Drawn {
         sheet.mark(verdict, (x, plot.y.at(value.value)), size)?;
     }
     Ok(())
-}
-
-/// Labels of the springs under the plot: all while they are few, else those that do not conform and every so many.
-fn labels(sheet: &mut Sheet<'_>, plot: &Plot, values: &[Value<'_>]) -> Drawn {
-    let all = values.len() <= LABELLED;
-    let every = values.len().div_ceil(20).max(1);
-    let apart = TYPE + 2.0;
-    let mut taken: Vec<f64> = Vec::new();
-    let conforms = |value: &Value<'_>| {
-        value
-            .verdict
-            .is_none_or(|verdict| verdict == Verdict::Conforms)
-    };
-    for first in [true, false] {
-        for (number, value) in values.iter().enumerate() {
-            let wanted = if first {
-                !conforms(value)
-            } else {
-                conforms(value) && (all || number % every == 0)
-            };
-            let x = plot.x.at(number as f64 + 0.5);
-            if !wanted || taken.iter().any(|other| (other - x).abs() < apart) {
-                continue;
-            }
-            taken.push(x);
-            let ink = if conforms(value) { FAINT } else { INK };
-            sheet.upward(&shown_id(value.id), (x, plot.y.paper.0 + 6.0), ink)?;
-        }
-    }
-    let under = plot.y.paper.0 + widest(values) + LEADING * 1.2;
-    let middle = f64::midpoint(plot.x.paper.0, plot.x.paper.1);
-    sheet.bold("spring", (middle, under), Anchor::Middle, INK)
 }

@@ -3,7 +3,7 @@
 use super::springs::{find, occurring};
 use super::table::{Column, Row, Section, Table};
 use crate::record::{AcceptRecord, BudgetFigure, CharacteristicResult, Part, SpringResult};
-use crate::report::figure::{Place, figure, number, percent, symbol, with_uncertainty};
+use crate::report::figure::{Place, figure, freedom, number, percent, symbol, with_uncertainty};
 use crate::report::wording;
 use crate::units::{Finite, System};
 
@@ -91,9 +91,7 @@ fn row(line: &BudgetFigure, of: &CharacteristicResult, total: f64, show_in: Syst
             show_in,
         )
         .into(),
-        line.degrees_of_freedom
-            .map_or_else(|| "∞".to_owned(), |value| number(Some(value), 3))
-            .into(),
+        freedom(line.degrees_of_freedom).into(),
         share.into(),
     ])
 }

@@ -3,6 +3,7 @@
 
 mod budget;
 mod facts;
+mod fits;
 mod page_one;
 mod provenance;
 mod springs;
@@ -102,7 +103,7 @@ impl Model {
             standing: wording::STANDING.map(str::to_owned).to_vec(),
             springs: springs::verdicts(record, show_in),
             details: springs::details(record, show_in),
-            fits: springs::fits(record, show_in),
+            fits: fits::section(record, show_in),
             budget: budget::section(record, show_in),
             theory: theory::section(record, show_in),
             provenance: provenance::section(record),

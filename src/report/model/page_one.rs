@@ -6,7 +6,7 @@ use super::facts::labelled;
 use super::table::{Cell, Column, Row, Table};
 use crate::quantity::Unit;
 use crate::record::{AcceptRecord, Decision, RequirementFacts, Verdict};
-use crate::report::figure::{Place, figure, number, percent, symbol};
+use crate::report::figure::{Place, figure, number, probability, symbol};
 use crate::report::wording;
 use crate::units::{Finite, System};
 
@@ -131,7 +131,7 @@ pub(super) fn plan(record: &AcceptRecord) -> Table {
             class.reject.to_string().into(),
             class.failing.to_string().into(),
             class.undecided.to_string().into(),
-            percent(class.accepted_at_aql).into(),
+            probability(class.accepted_at_aql).into(),
         ])
     });
     let mut table = Table::new("Plan by class", columns, rows.collect());

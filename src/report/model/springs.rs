@@ -1,9 +1,11 @@
-//! Every spring: its disposition, what is behind its figures, its fit.
+//! Every spring: its disposition, and what is behind its figures.
 
 use super::table::{Cell, Column, Row, Section, Table, mark};
 use crate::quantity::Unit;
-use crate::record::{AcceptRecord, CharacteristicResult, FitFacts, SpringResult, Verdict};
-use crate::report::figure::{ABSENT, Place, figure, number, percent, symbol, with_uncertainty};
+use crate::record::{AcceptRecord, CharacteristicResult, SpringResult, Verdict};
+use crate::report::figure::{
+    ABSENT, Place, figure, freedom, probability, symbol, with_uncertainty,
+};
 use crate::report::wording;
 use crate::units::{Finite, Millimetres, System};
 
@@ -13,7 +15,7 @@ const ABREAST: usize = 5;
 /// A characteristic as a key: its name and the length of a load.
 type Key = (String, Option<Millimetres>);
 
-/// Every characteristic that occurs, in the order of the drawing.
+/// Every characteristic that has a value or a verdict on some spring, in the order of the drawing.
 pub(crate) fn occurring(record: &AcceptRecord) -> Vec<(Key, Unit)> {
     let mut keys: Vec<(Key, Unit)> = Vec::new();
     for of in record
@@ -22,7 +24,8 @@ pub(crate) fn occurring(record: &AcceptRecord) -> Vec<(Key, Unit)> {
         .flat_map(|spring| &spring.characteristics)
     {
         let key = (of.name.clone(), of.at_length_mm);
-        if !keys.iter().any(|(known, _)| *known == key) {
+        let says = of.value.is_some() || of.verdict.is_some();
+        if says && !keys.iter().any(|(known, _)| *known == key) {
             keys.push((key, of.unit));
         }
     }
@@ -49,7 +52,9 @@ pub(super) fn verdicts(record: &AcceptRecord, show_in: System) -> Section {
         columns.extend(some.iter().map(|((name, at), unit)| {
             Column::figures(wording::symbol(name, *at, show_in), symbol(*unit, show_in))
         }));
-        columns.push(Column::words("Remarks"));
+        if part == 0 {
+            columns.push(Column::words("Remarks"));
+        }
         let rows = record.springs.iter().map(|spring| Row {
             mark: mark(spring.verdict),
             cells: cells(spring, some, part == 0, show_in),
@@ -81,11 +86,9 @@ fn cells(spring: &SpringResult, keys: &[(Key, Unit)], remark: bool, show_in: Sys
         keys.iter()
             .map(|(key, _)| find(spring, key).map_or_else(Cell::default, |of| value(of, show_in))),
     );
-    cells.push(if remark {
-        remarks(spring, show_in).into()
-    } else {
-        Cell::default()
-    });
+    if remark {
+        cells.push(remarks(spring, show_in).into());
+    }
     cells
 }
 
@@ -105,8 +108,8 @@ fn value(of: &CharacteristicResult, show_in: System) -> Cell {
 pub(crate) fn remarks(spring: &SpringResult, show_in: System) -> String {
     let mut said: Vec<String> = Vec::new();
     for of in &spring.characteristics {
-        let conforms = of.verdict == Some(Verdict::Conforms);
-        if let (false, Some(reason)) = (conforms, wording::verdict_reason(of, show_in)) {
+        let settled = matches!(of.verdict, None | Some(Verdict::Conforms));
+        if let (false, Some(reason)) = (settled, wording::verdict_reason(of, show_in)) {
             let name = wording::symbol(&of.name, of.at_length_mm, show_in);
             said.push(format!("{name}: {reason}"));
         }
@@ -200,12 +203,9 @@ fn detail(spring: &SpringResult, of: &CharacteristicResult, show_in: System) -> 
         (None, high @ Some(_)) => format!("> {}", shown(high)),
         (low, high) => format!("< {}, > {}", shown(low), shown(high)),
     };
-    let freedom = of
-        .degrees_of_freedom
-        .map_or_else(|| "∞".to_owned(), |value| number(Some(value), 3));
     let coverage = of.coverage_factor.map_or_else(
         || ABSENT.to_owned(),
-        |k| format!("{:.2} ({freedom})", k.get()),
+        |k| format!("{:.2} ({})", k.get(), freedom(of.degrees_of_freedom)),
     );
     Row::from([
         spring.id.clone().into(),
@@ -215,93 +215,7 @@ fn detail(spring: &SpringResult, of: &CharacteristicResult, show_in: System) -> 
         coverage.into(),
         bounds(of.accept_lower, of.accept_upper).into(),
         beyond.into(),
-        percent(of.conformance_probability).into(),
-    ])
-    .about(spring.verdict)
-}
-
-/// The fits of the rate.
-pub(super) fn fits(record: &AcceptRecord, show_in: System) -> Section {
-    let rate = symbol(Unit::NewtonPerMillimetre, show_in);
-    let columns = vec![
-        Column::words("Spring"),
-        Column::words("Export, lines"),
-        Column::figures("Window", symbol(Unit::Millimetre, show_in)),
-        Column::figures("Points (eff.)", ""),
-        Column::figures("Lag 1", ""),
-        Column::figures("SE", rate),
-        Column::figures("Residual SD", symbol(Unit::Newton, show_in)),
-        Column::figures("Straightness", "%"),
-        Column::figures("F (p)", ""),
-        Column::figures("Bend", "%"),
-        Column::figures("Two-point", rate),
-        Column::figures("Robust", rate),
-    ];
-    let rows = record.springs.iter().filter_map(|spring| {
-        let of = spring.fit.as_ref()?;
-        Some(fit(spring, of, show_in))
-    });
-    Section {
-        title: "Fits of the rate".to_owned(),
-        text: vec![
-            "Load regressed on travel within the window. SE: standard error of the slope as least squares gives it; lag 1: autocorrelation \
-             of the residuals; straightness: largest residual over Fn; F (p): lack of fit; bend: change of the local rate across the window."
-                .to_owned(),
-        ],
-        tables: vec![Table::new("Fits", columns, rows.collect())],
-    }
-}
-
-fn fit(spring: &SpringResult, of: &FitFacts, show_in: System) -> Row {
-    let rate = |value| {
-        figure(
-            value,
-            Unit::NewtonPerMillimetre,
-            Place::Significant(5),
-            show_in,
-        )
-    };
-    let travel = |value| {
-        figure(
-            Some(value),
-            Unit::Millimetre,
-            Place::Significant(4),
-            show_in,
-        )
-    };
-    let effective = of
-        .effective_points
-        .map_or_else(|| ABSENT.to_owned(), |value| number(Some(value), 3));
-    let lack = of.lack_of_fit.as_ref();
-    Row::from([
-        spring.id.clone().into(),
-        format!("{}, {}–{}", of.export, of.first_line, of.last_line).into(),
-        format!("{} … {}", travel(of.from_mm), travel(of.to_mm)).into(),
-        format!("{} ({effective})", of.points).into(),
-        number(of.lag1, 2).into(),
-        figure(
-            Some(of.standard_error),
-            Unit::NewtonPerMillimetre,
-            Place::Significant(2),
-            show_in,
-        )
-        .into(),
-        figure(
-            Some(of.residual_sd_n),
-            Unit::Newton,
-            Place::Significant(2),
-            show_in,
-        )
-        .into(),
-        number(of.straightness_percent, 2).into(),
-        lack.map_or_else(
-            || ABSENT.to_owned(),
-            |lack| format!("{} ({})", number(Some(lack.f), 3), number(Some(lack.p), 2)),
-        )
-        .into(),
-        number(lack.map(|lack| lack.bend_percent), 2).into(),
-        rate(of.two_point_rate).into(),
-        rate(of.robust_rate).into(),
+        probability(of.conformance_probability).into(),
     ])
     .about(spring.verdict)
 }

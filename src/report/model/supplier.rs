@@ -34,7 +34,7 @@ pub(super) fn page(record: &AcceptRecord, show_in: System) -> Option<Section> {
     let mut rows: Vec<Row> = record
         .springs
         .iter()
-        .filter(|spring| spring.in_sample)
+        .filter(|spring| spring.in_sample && spring.verdict == Verdict::Fails)
         .flat_map(|spring| failures(spring, record, show_in))
         .collect();
     let left_out = rows.len().saturating_sub(FITTING);

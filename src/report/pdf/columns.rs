@@ -17,6 +17,8 @@ const WORD: f64 = 9.0;
 
 /// What a column needs, in ems.
 struct Need {
+    /// Type size against the table's.
+    scale: f64,
     /// So that nothing breaks.
     whole: f64,
     /// So that no word breaks (or only a long one).
@@ -28,7 +30,7 @@ pub(super) fn fit(value: &mut Value) {
     match value {
         Value::Array(items) => items.iter_mut().for_each(fit),
         Value::Object(fields) if fields.contains_key("columns") && fields.contains_key("rows") => {
-            table(fields)
+            table(fields);
         }
         Value::Object(fields) => fields.values_mut().for_each(fit),
         _ => {}
@@ -68,8 +70,8 @@ fn table(fields: &mut Map<String, Value>) {
             .and_then(Value::as_array_mut)
             .into_iter()
             .flatten();
-        for (cell, width) in cells.zip(&widths) {
-            break_words(cell, (width * stretch - PADDING) / size);
+        for ((cell, width), need) in cells.zip(&widths).zip(&needs) {
+            break_words(cell, (width * stretch - PADDING) / (size * need.scale));
         }
     }
     let rounded: Vec<f64> = widths
@@ -96,6 +98,7 @@ fn need(fields: &Map<String, Value>, column: &Value, number: usize) -> Need {
     let holds = text(column, "holds");
     let scale = if holds == "hash" { HASH } else { 1.0 };
     let mut need = Need {
+        scale,
         whole: 0.0,
         least: 0.0,
     };

@@ -53,7 +53,7 @@ fn about_the_bench(of: &Caution, show_in: System) -> String {
             format!("The rig file asks for a check every {every}; no passed check is on record.")
         }
         Caution::UncertaintyLarge { name, at_length_mm, share } => format!(
-            "{}: the expanded uncertainty is {} of the half tolerance; many springs will stay undecided.",
+            "{}: the expanded uncertainty is {} of the half tolerance; springs near a limit stay undecided.",
             sentence(&characteristic(name, *at_length_mm, show_in)),
             percent(Some(*share))
         ),
@@ -170,5 +170,86 @@ fn about_the_sample(of: &Caution, show_in: System) -> String {
             )
         }
         _ => String::new(),
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    #![expect(clippy::unwrap_used, reason = "tests")]
+    use super::*;
+    use crate::units::{Millimetres, NewtonsPerMillimetre};
+
+    fn every() -> Vec<Caution> {
+        let (name, text) = (|| "load".to_owned(), || "x".to_owned());
+        let (some, at) = (
+            || vec!["7".to_owned()],
+            Millimetres::try_from(48.0).unwrap(),
+        );
+        let rate = NewtonsPerMillimetre::try_from(10.0).unwrap();
+        let share = Finite::try_from(0.4).unwrap();
+        vec![
+            Caution::RateNotFromGeometry {
+                stated: rate,
+                theory: rate,
+                expanded_uncertainty: rate,
+            },
+            Caution::OddRatio {
+                springs: some(),
+                ratio: share,
+                reading: Some(text()),
+            },
+            Caution::ComplianceNotCorrected,
+            Caution::DeclaredNegligible { what: text() },
+            Caution::CalibrationExpired {
+                scale: text(),
+                until: text(),
+            },
+            Caution::CalibrationUnknown { scale: text() },
+            Caution::NoCheckOnRecord { every: text() },
+            Caution::LoadOutsideRange { springs: some() },
+            Caution::UncertaintyLarge {
+                name: name(),
+                at_length_mm: Some(at),
+                share,
+            },
+            Caution::CannotProve {
+                name: name(),
+                at_length_mm: Some(at),
+            },
+            Caution::RobustDiffers { springs: some() },
+            Caution::LackOfFit { springs: some() },
+            Caution::NoZeroReading { springs: some() },
+            Caution::SetAsideInvalid {
+                spring: text(),
+                export: text(),
+                why: text(),
+            },
+            Caution::Repeated { springs: some() },
+            Caution::NotInspected { what: some() },
+            Caution::LengthBelowSmallest {
+                at_length_mm: at,
+                smallest_mm: at,
+            },
+            Caution::UnitsConfirmed { finding: text() },
+            Caution::BeyondSample { springs: 3 },
+            Caution::GeometryNotJudged {
+                what: "free_length".to_owned(),
+            },
+        ]
+    }
+
+    #[test]
+    fn every_caution_is_a_sentence_of_its_own() {
+        let said: Vec<String> = every().iter().map(|of| caution(of, System::MmN)).collect();
+        for (number, sentence) in said.iter().enumerate() {
+            assert!(
+                sentence.ends_with('.') && sentence.len() > 20,
+                "{sentence:?}"
+            );
+            assert!(
+                !said.iter().skip(number + 1).any(|other| other == sentence),
+                "{sentence:?}"
+            );
+        }
     }
 }

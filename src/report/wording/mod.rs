@@ -94,7 +94,7 @@ pub(super) fn sentence(text: &str) -> String {
 
 #[cfg(test)]
 mod tests {
-    #![expect(clippy::unwrap_used, reason = "tests")]
+    #![expect(clippy::unwrap_used, clippy::indexing_slicing, reason = "tests")]
     use super::*;
 
     #[test]

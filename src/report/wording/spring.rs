@@ -26,14 +26,16 @@ pub(crate) fn disposition(spring: &SpringResult) -> String {
 pub(crate) fn verdict_reason(of: &CharacteristicResult, show_in: System) -> Option<String> {
     let limit = |value: Option<Finite>| with_unit(value, of.unit, Place::Stated, show_in);
     let text = match of.reason.as_ref()? {
-        Reason::BelowLower => format!("below the lower limit {} by more than the guard band", limit(of.lower)),
-        Reason::AboveUpper => format!("above the upper limit {} by more than the guard band", limit(of.upper)),
-        Reason::LowerWithinUncertainty => {
-            format!("the lower limit {} lies inside the guard band of the value", limit(of.lower))
-        }
-        Reason::UpperWithinUncertainty => {
-            format!("the upper limit {} lies inside the guard band of the value", limit(of.upper))
-        }
+        Reason::BelowLower => format!("below the lower limit {}", limit(of.lower)),
+        Reason::AboveUpper => format!("above the upper limit {}", limit(of.upper)),
+        Reason::LowerWithinUncertainty => format!(
+            "the lower limit {} lies inside the guard band",
+            limit(of.lower)
+        ),
+        Reason::UpperWithinUncertainty => format!(
+            "the upper limit {} lies inside the guard band",
+            limit(of.upper)
+        ),
         Reason::GuardBandsMeet => "the guard bands leave no room between the limits".to_owned(),
         Reason::NoAbsoluteLength => "no absolute length: the export gives deflections and the spring has no measured free length".to_owned(),
         Reason::WindowNotReached => "the curve does not span the window of the rate".to_owned(),
