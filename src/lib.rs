@@ -32,6 +32,14 @@ pub mod lot;
 
 pub mod record;
 
+pub mod wording;
+
+pub mod sheet;
+
+pub mod charts;
+
+pub mod model;
+
 pub mod report;
 
 pub mod job;

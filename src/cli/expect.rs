@@ -7,8 +7,8 @@ use miette::IntoDiagnostic;
 use crate::job::{self, Ask, Expected};
 use crate::quantity::Unit;
 use crate::record::{MemberFacts, StressFacts};
-use crate::report::{Place, figure};
 use crate::units::{Millimetres, Newtons, System};
+use crate::wording::{Place, figure};
 
 use super::args::ExpectArgs;
 

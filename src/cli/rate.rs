@@ -7,9 +7,9 @@ use miette::IntoDiagnostic;
 use crate::export::Columns;
 use crate::job::{self, Bench, RateOptions, RateResult};
 use crate::quantity::Unit;
-use crate::report::{Place, figure, with_uncertainty};
 use crate::rig::Means;
 use crate::units::{ForceUnit, LengthUnit, Millimetres, System};
+use crate::wording::{Place, figure, with_uncertainty};
 
 use super::args::RateArgs;
 

@@ -4,6 +4,7 @@
 mod accept;
 mod caution;
 mod facts;
+mod find;
 mod spring;
 
 pub use accept::{
@@ -12,6 +13,7 @@ pub use accept::{
 };
 pub use caution::Caution;
 pub use facts::{MemberFacts, RigFacts, StressFacts, TheoryFacts, WindowFacts};
+pub use find::{Key, find, occurring};
 pub use spring::{
     BudgetFigure, CharacteristicResult, FindingResult, FitFacts, LackFacts, LedgerFacts,
     RepeatFacts, SetAside, SpringResult,

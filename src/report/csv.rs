@@ -2,8 +2,8 @@
 
 use crate::quantity::{Class, Unit};
 use crate::record::{AcceptRecord, CharacteristicResult, SpringResult, Verdict};
-use crate::report::wording;
 use crate::units::{Finite, Millimetres, System};
+use crate::wording;
 
 /// The columns; the unit of a row's figures stands in `unit`.
 const HEADER: [&str; 32] = [

@@ -7,6 +7,7 @@ use std::sync::Arc;
 use miette::SourceSpan;
 
 use super::Template;
+use crate::sheet::ChartError;
 use crate::text::{Excerpt, Place};
 
 /// Why a report could not be made.
@@ -33,9 +34,9 @@ pub enum ReportError {
         help("compare it with the built-in template, or leave out --templates")
     )]
     TemplateWhole { name: String, message: String },
-    #[error("cannot draw `{chart}`: {message}")]
-    #[diagnostic(code(coilassay::report::chart))]
-    Chart { chart: String, message: String },
+    #[error(transparent)]
+    #[diagnostic(transparent)]
+    Chart(#[from] ChartError),
     #[error("cannot write the report's data")]
     #[diagnostic(code(coilassay::report::model))]
     Model(#[source] serde_json::Error),

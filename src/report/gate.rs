@@ -2,8 +2,8 @@
 
 use serde_json::Value;
 
-use super::font;
 use crate::text::{Alphabet, printable};
+use crate::wording::font;
 
 /// Letters a PDF line is sure to hold; a longer word gets places to break.
 const LONGEST_WORD: usize = 64;

@@ -6,8 +6,9 @@ use minijinja::syntax::SyntaxConfig;
 use minijinja::value::Serde;
 use minijinja::{AutoEscape, Environment, UndefinedBehavior, Value, context};
 
-use super::charts::Chart;
-use super::{ReportError, Template, font, gate};
+use super::{ReportError, Template, gate};
+use crate::charts::Chart;
+use crate::wording::font;
 
 /// The page; charts and fonts stand inside it, so that it is one file.
 ///

@@ -1,29 +1,20 @@
-//! A record as finished strings: charts, HTML, PDF, CSV, the terminal's summary.
-//! Here: how a figure is written (`figure`), the words (`wording`), what stands where (`model`), and the pages made from it.
-//! Elsewhere: what was concluded (`record`), reading a user's templates and writing files (`cli`).
+//! A record as files: HTML, PDF, charts, CSV, and the terminal's summary.
+//! Elsewhere: what stands where (`model`), charts (`charts`), figures and words (`wording`), writing files (`cli`).
 
-mod charts;
 mod csv;
 mod error;
-mod figure;
-mod font;
 mod gate;
 mod html;
-pub mod model;
 mod pdf;
 mod summary;
-mod wording;
 
 pub use csv::springs_csv;
 pub use error::ReportError;
-pub use figure::{
-    ABSENT, Place, figure, freedom, number, per_unit, percent, probability, symbol,
-    with_uncertainty, with_unit,
-};
-pub use model::Model;
 pub use summary::summary;
 
+use crate::charts;
 use crate::curve::Reduced;
+use crate::model::Model;
 use crate::record::AcceptRecord;
 use crate::units::System;
 

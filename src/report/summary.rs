@@ -1,11 +1,11 @@
 //! The judgement for the terminal: the decision first, then why. About thirty lines for any number of springs.
 
+use crate::model::labelled;
 use crate::record::{AcceptRecord, RequirementFacts, SpringResult, Verdict};
-use crate::report::figure::{Place, figure, with_unit};
-use crate::report::model::labelled;
-use crate::report::wording;
 use crate::text::{Alphabet, printable};
 use crate::units::{Finite, System};
+use crate::wording;
+use crate::wording::{Place, figure, with_unit};
 
 /// Springs named one by one, failing and undecided each.
 const NAMED: usize = 4;
@@ -111,7 +111,7 @@ fn named(record: &AcceptRecord, verdict: Verdict, word: &str, show_in: System) -
             format!(
                 "  {word}: spring {}: {}",
                 spring.id,
-                super::model::remarks(spring, show_in)
+                crate::model::remarks(spring, show_in)
             )
         })
         .collect();

@@ -2,7 +2,7 @@
 
 use serde_json::{Map, Value, json};
 
-use crate::report::font;
+use crate::wording::font;
 
 /// Width between the margins of A4, in points: 210 mm less twice 16 mm.
 const PAPER: f64 = 178.0 / 25.4 * 72.0;

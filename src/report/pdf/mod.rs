@@ -10,8 +10,9 @@ use typst_as_lib::{TypstAsLibError, TypstEngine};
 use typst_layout::PagedDocument;
 use typst_pdf::{PdfOptions, PdfStandard, PdfStandards};
 
-use crate::report::charts::Chart;
-use crate::report::{ReportError, Template, font, gate};
+use crate::charts::Chart;
+use crate::report::{ReportError, Template, gate};
+use crate::wording::font;
 
 /// The document. Its date is the record's; data goes in as JSON, never as markup.
 ///

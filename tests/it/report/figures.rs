@@ -2,8 +2,9 @@
 
 use coilassay::quantity::Unit;
 use coilassay::record::AcceptRecord;
-use coilassay::report::{Place, figure, springs_csv};
+use coilassay::report::springs_csv;
 use coilassay::units::{Finite, System};
+use coilassay::wording::{Place, figure};
 
 use super::lots;
 use super::pages::{file, read};

@@ -1,7 +1,8 @@
 //! Model, HTML, PDF, CSV, summary.
 
+use coilassay::model::Model;
 use coilassay::record::AcceptRecord;
-use coilassay::report::{self, Model, ReportError, Template, Templates, springs_csv, summary};
+use coilassay::report::{self, ReportError, Template, Templates, springs_csv, summary};
 use coilassay::units::System;
 
 use super::{lots, springs::curves};

@@ -1,14 +1,14 @@
 //! Uncertainty budgets, each in full for the spring with the largest U.
 
-use super::springs::{find, occurring};
 use super::table::{Column, Row, Section, Table};
 use crate::record::{AcceptRecord, BudgetFigure, CharacteristicResult, Part, SpringResult};
-use crate::report::figure::{Place, figure, freedom, number, percent, symbol, with_uncertainty};
-use crate::report::wording;
+use crate::record::{find, occurring};
 use crate::units::{Finite, System};
+use crate::wording;
+use crate::wording::{Place, figure, freedom, number, percent, unit_symbol, with_uncertainty};
 
 /// The section.
-pub(super) fn section(record: &AcceptRecord, show_in: System) -> Section {
+pub(crate) fn section(record: &AcceptRecord, show_in: System) -> Section {
     let tables = occurring(record).into_iter().filter_map(|(key, _)| {
         let largest = record
             .springs
@@ -43,7 +43,7 @@ fn table(spring: &SpringResult, of: &CharacteristicResult, show_in: System) -> T
     let columns = vec![
         Column::words("Source"),
         Column::words("Part"),
-        Column::figures("Contribution", symbol(of.unit, show_in)),
+        Column::figures("Contribution", unit_symbol(of.unit, show_in)),
         Column::figures("ν", ""),
         Column::figures("Share of u²", ""),
     ];
@@ -58,7 +58,7 @@ fn table(spring: &SpringResult, of: &CharacteristicResult, show_in: System) -> T
     table.note = format!(
         "Value {} {}; u = {}, k = {}.",
         with_uncertainty(of.value, of.expanded_uncertainty, of.unit, show_in),
-        symbol(of.unit, show_in),
+        unit_symbol(of.unit, show_in),
         figure(
             of.standard_uncertainty,
             of.unit,

@@ -1,8 +1,8 @@
 //! The distribution of a characteristic, lying on its side along the axis of the values.
 
-use super::plot::{LEADING, Scale};
-use super::sheet::{Anchor, Drawn, FAINT, FIELD, INK, Sheet, TYPE};
-use crate::report::font;
+use crate::sheet::canvas::{Anchor, Drawn, FAINT, FIELD, INK, Sheet, TYPE};
+use crate::sheet::plot::{LEADING, Scale};
+use crate::wording::font;
 
 /// Fewer values show no distribution.
 pub(super) const FEWEST: usize = 5;

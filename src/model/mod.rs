@@ -13,15 +13,15 @@ mod theory;
 
 use serde::Serialize;
 
-pub(super) use facts::labelled;
+pub(crate) use facts::labelled;
 pub use facts::{Fact, Facts};
 pub use page_one::{Deciding, Note};
-pub(super) use springs::{find, occurring, remarks};
+pub(crate) use springs::remarks;
 pub use table::{Cell, Column, Holds, Row, Section, Table};
 
-use super::wording;
 use crate::record::AcceptRecord;
 use crate::units::System;
+use crate::wording;
 
 /// Letters of a foreign name that a title or a page's foot shows; page one has it in full.
 const SHORT: usize = 40;

@@ -7,11 +7,11 @@ use ttf_parser::Face;
 use crate::text::{Alphabet, printable};
 
 /// The regular face; see `templates/fonts/README.md`.
-pub(super) const REGULAR: &[u8] = include_bytes!("../../templates/fonts/OpenSans-Regular.ttf");
+pub(crate) const REGULAR: &[u8] = include_bytes!("../../templates/fonts/OpenSans-Regular.ttf");
 /// The bold face.
-pub(super) const BOLD: &[u8] = include_bytes!("../../templates/fonts/OpenSans-Bold.ttf");
+pub(crate) const BOLD: &[u8] = include_bytes!("../../templates/fonts/OpenSans-Bold.ttf");
 /// The family, as charts ask for it; a page without it takes what it has.
-pub(super) const FAMILIES: &str = "Open Sans, sans-serif";
+pub(crate) const FAMILIES: &str = "Open Sans, sans-serif";
 
 /// Width taken for a character that a face does not know, in ems.
 const UNKNOWN_EM: f64 = 0.6;
@@ -67,12 +67,12 @@ fn bold() -> &'static Known {
 }
 
 /// Whether both faces can show the character.
-pub(super) fn has(character: char) -> bool {
+pub(crate) fn has(character: char) -> bool {
     regular().advance(character).is_some() && bold().advance(character).is_some()
 }
 
 /// A text fit for the embedded fonts: line ends become blanks, the rest goes through [`printable`].
-pub(super) fn fitting(text: &str) -> String {
+pub(crate) fn fitting(text: &str) -> String {
     if text.bytes().all(|byte| matches!(byte, b' '..=b'~')) {
         return text.to_owned();
     }
@@ -81,7 +81,7 @@ pub(super) fn fitting(text: &str) -> String {
 }
 
 /// The width of a text in the unit of `size`.
-pub(super) fn width(text: &str, size: f64, heavy: bool) -> f64 {
+pub(crate) fn width(text: &str, size: f64, heavy: bool) -> f64 {
     let known = if heavy { bold() } else { regular() };
     size * text
         .chars()
@@ -90,7 +90,7 @@ pub(super) fn width(text: &str, size: f64, heavy: bool) -> f64 {
 }
 
 /// The text, or its beginning and `…` where it is wider than `most`.
-pub(super) fn shortened(text: &str, size: f64, most: f64) -> String {
+pub(crate) fn shortened(text: &str, size: f64, most: f64) -> String {
     if width(text, size, false) <= most {
         return text.to_owned();
     }

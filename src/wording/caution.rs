@@ -3,8 +3,8 @@
 use super::{characteristic, count, length, list, sentence, springs};
 use crate::quantity::{Quantity, Unit};
 use crate::record::Caution;
-use crate::report::figure::{Place, number, percent, with_uncertainty, with_unit};
 use crate::units::{Finite, System};
+use crate::wording::{Place, number, percent, with_uncertainty, with_unit};
 
 /// The cautions every report carries.
 pub(crate) const STANDING: [&str; 3] = [
@@ -90,7 +90,7 @@ fn about_the_curves(of: &Caution, show_in: System) -> String {
                     unit,
                     show_in
                 ),
-                crate::report::figure::symbol(unit, show_in)
+                super::unit_symbol(unit, show_in)
             )
         }
         Caution::OddRatio {

@@ -57,7 +57,7 @@ pub fn with_unit(
     if absent {
         text
     } else {
-        format!("{text}\u{a0}{}", symbol(unit, show_in))
+        format!("{text}\u{a0}{}", unit_symbol(unit, show_in))
     }
 }
 
@@ -113,7 +113,7 @@ pub fn number(value: Option<impl Into<f64>>, digits: i32) -> String {
 }
 
 /// The symbol of `unit` in the units of `show_in`.
-pub const fn symbol(unit: Unit, show_in: System) -> &'static str {
+pub const fn unit_symbol(unit: Unit, show_in: System) -> &'static str {
     match (show_in, unit) {
         (System::InLbf, Unit::Newton) => "lbf",
         (System::InLbf, Unit::Millimetre) => "in",

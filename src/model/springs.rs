@@ -3,45 +3,16 @@
 use super::table::{Cell, Column, Row, Section, Table, mark};
 use crate::quantity::Unit;
 use crate::record::{AcceptRecord, CharacteristicResult, SpringResult, Verdict};
-use crate::report::figure::{
-    ABSENT, Place, figure, freedom, probability, symbol, with_uncertainty,
-};
-use crate::report::wording;
-use crate::units::{Finite, Millimetres, System};
+use crate::record::{Key, find, occurring};
+use crate::units::{Finite, System};
+use crate::wording;
+use crate::wording::{ABSENT, Place, figure, freedom, probability, unit_symbol, with_uncertainty};
 
 /// Characteristics side by side in the table of the springs.
 const ABREAST: usize = 5;
 
-/// A characteristic as a key: its name and the length of a load.
-type Key = (String, Option<Millimetres>);
-
-/// Every characteristic that has a value or a verdict on some spring, in the order of the drawing.
-pub(crate) fn occurring(record: &AcceptRecord) -> Vec<(Key, Unit)> {
-    let mut keys: Vec<(Key, Unit)> = Vec::new();
-    for of in record
-        .springs
-        .iter()
-        .flat_map(|spring| &spring.characteristics)
-    {
-        let key = (of.name.clone(), of.at_length_mm);
-        let says = of.value.is_some() || of.verdict.is_some();
-        if says && !keys.iter().any(|(known, _)| *known == key) {
-            keys.push((key, of.unit));
-        }
-    }
-    keys
-}
-
-/// A spring's characteristic of that name.
-pub(crate) fn find<'a>(spring: &'a SpringResult, key: &Key) -> Option<&'a CharacteristicResult> {
-    spring
-        .characteristics
-        .iter()
-        .find(|of| of.name == key.0 && of.at_length_mm == key.1)
-}
-
 /// The table per spring with its disposition.
-pub(super) fn verdicts(record: &AcceptRecord, show_in: System) -> Section {
+pub(crate) fn verdicts(record: &AcceptRecord, show_in: System) -> Section {
     let keys = occurring(record);
     let parts = keys.len().div_ceil(ABREAST).max(1);
     let tables = (0..parts).map(|part| {
@@ -50,7 +21,10 @@ pub(super) fn verdicts(record: &AcceptRecord, show_in: System) -> Section {
         let some = keys.get(from..to).unwrap_or(&[]);
         let mut columns = vec![Column::words("Spring"), Column::words("Disposition")];
         columns.extend(some.iter().map(|((name, at), unit)| {
-            Column::figures(wording::symbol(name, *at, show_in), symbol(*unit, show_in))
+            Column::figures(
+                wording::symbol(name, *at, show_in),
+                unit_symbol(*unit, show_in),
+            )
         }));
         if part == 0 {
             columns.push(Column::words("Remarks"));
@@ -149,9 +123,9 @@ pub(crate) fn remarks(spring: &SpringResult, show_in: System) -> String {
 }
 
 /// What is behind the figures: one table per characteristic.
-pub(super) fn details(record: &AcceptRecord, show_in: System) -> Section {
+pub(crate) fn details(record: &AcceptRecord, show_in: System) -> Section {
     let tables = occurring(record).into_iter().map(|(key, unit)| {
-        let unit_text = symbol(unit, show_in);
+        let unit_text = unit_symbol(unit, show_in);
         let columns = vec![
             Column::words("Spring"),
             Column::figures("u", unit_text),

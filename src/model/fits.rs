@@ -3,20 +3,20 @@
 use super::table::{Column, Row, Section, Table};
 use crate::quantity::Unit;
 use crate::record::{AcceptRecord, FitFacts, SpringResult};
-use crate::report::figure::{ABSENT, Place, figure, number, symbol};
 use crate::units::System;
+use crate::wording::{ABSENT, Place, figure, number, unit_symbol};
 
 /// The fits of the rate.
-pub(super) fn section(record: &AcceptRecord, show_in: System) -> Section {
-    let rate = symbol(Unit::NewtonPerMillimetre, show_in);
+pub(crate) fn section(record: &AcceptRecord, show_in: System) -> Section {
+    let rate = unit_symbol(Unit::NewtonPerMillimetre, show_in);
     let columns = vec![
         Column::words("Spring"),
         Column::words("Export, lines"),
-        Column::figures("Window", symbol(Unit::Millimetre, show_in)),
+        Column::figures("Window", unit_symbol(Unit::Millimetre, show_in)),
         Column::figures("Points (eff.)", ""),
         Column::figures("Lag 1", ""),
         Column::figures("SE", rate),
-        Column::figures("Residual SD", symbol(Unit::Newton, show_in)),
+        Column::figures("Residual SD", unit_symbol(Unit::Newton, show_in)),
         Column::figures("Straightness", "%"),
         Column::figures("F (p)", ""),
         Column::figures("Bend", "%"),

@@ -1,13 +1,13 @@
 //! What the curves are held against: the window of the rate, the limits at the test lengths.
 
-use super::plot::{self, LEADING, Plot};
-use super::sheet::{Anchor, Drawn, LIMIT, Sheet, TYPE, WINDOW};
 use crate::curve::{Axis, Reduced};
 use crate::quantity::Unit;
 use crate::record::{AcceptRecord, RequirementFacts, WindowOf};
-use crate::report::figure::{Place, figure, per_unit};
-use crate::report::font;
+use crate::sheet::canvas::{Anchor, Drawn, LIMIT, Sheet, TYPE, WINDOW};
+use crate::sheet::plot::{self, LEADING, Plot};
 use crate::units::{Finite, System};
+use crate::wording::font;
+use crate::wording::{Place, figure, per_unit};
 
 /// The window, in the values of the plot.
 #[derive(Clone, Copy)]

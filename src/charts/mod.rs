@@ -6,22 +6,22 @@ mod curves;
 mod field;
 mod histogram;
 mod ids;
-mod plot;
 mod share;
-mod sheet;
 mod values;
 
-use super::{ReportError, font};
 use crate::curve::{Axis, Reduced};
 use crate::record::{AcceptRecord, Verdict};
+use crate::sheet::ChartError;
+use crate::sheet::canvas::{Drawn, Sheet, drawn};
 use crate::units::System;
+use crate::wording::font;
 
 /// Curves drawn one by one; above this the conforming ones are a band.
 const SINGLE: usize = 40;
 
 /// A chart.
 #[derive(Clone, Debug, PartialEq, Eq)]
-pub(super) struct Chart {
+pub(crate) struct Chart {
     /// Path inside the output folder.
     pub file: String,
     /// Title.
@@ -35,12 +35,12 @@ pub(super) struct Chart {
 /// Every chart of the report, in its order.
 ///
 /// # Errors
-/// [`ReportError::Chart`] where the drawing library refuses.
-pub(super) fn all(
+/// [`ChartError`] where the drawing library refuses.
+pub(crate) fn all(
     record: &AcceptRecord,
     curves: &[Reduced],
     show_in: System,
-) -> Result<Vec<Chart>, ReportError> {
+) -> Result<Vec<Chart>, ChartError> {
     let mut charts = Vec::new();
     for axis in [Axis::Length, Axis::Deflection] {
         let some: Vec<&Reduced> = curves.iter().filter(|curve| curve.axis == axis).collect();
@@ -62,17 +62,17 @@ fn chart(
     title: &str,
     caption: String,
     height: f64,
-    draw: impl FnOnce(&mut sheet::Sheet<'_>) -> sheet::Drawn,
-) -> Result<Chart, ReportError> {
+    draw: impl FnOnce(&mut Sheet<'_>) -> Drawn,
+) -> Result<Chart, ChartError> {
     let file = format!("charts/{file}.svg");
-    match sheet::drawn(&font::fitting(title), height, draw) {
+    match drawn(&font::fitting(title), height, draw) {
         Ok(svg) => Ok(Chart {
             file,
             title: title.to_owned(),
             caption,
             svg,
         }),
-        Err(cause) => Err(ReportError::Chart {
+        Err(cause) => Err(ChartError {
             chart: file,
             message: cause.to_string(),
         }),

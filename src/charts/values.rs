@@ -1,15 +1,16 @@
 //! One characteristic over the springs: each value with its interval against the limits, and the distribution beside it.
 
-use super::plot::{self, EDGE, Entry, LEADING, Plot, Sample, Scale};
-use super::sheet::{Drawn, LIMIT, Sheet, THEORY, WIDTH, colour};
 use super::{Chart, chart};
 use super::{histogram, ids};
 use crate::quantity::{Quantity, Unit};
 use crate::record::{AcceptRecord, CharacteristicResult, Verdict};
-use crate::report::figure::{Place, per_unit, symbol, with_unit};
-use crate::report::model::{find, occurring};
-use crate::report::{ReportError, wording};
+use crate::record::{find, occurring};
+use crate::sheet::ChartError;
+use crate::sheet::canvas::{Drawn, LIMIT, Sheet, THEORY, WIDTH, colour};
+use crate::sheet::plot::{self, EDGE, Entry, LEADING, Plot, Sample, Scale};
 use crate::units::System;
+use crate::wording;
+use crate::wording::{Place, per_unit, unit_symbol, with_unit};
 
 /// Height of the plot.
 const TALL: f64 = 150.0;
@@ -36,8 +37,8 @@ struct Lines {
 /// A chart for every characteristic with limits, and for the rate.
 ///
 /// # Errors
-/// [`ReportError::Chart`].
-pub(super) fn all(record: &AcceptRecord, show_in: System) -> Result<Vec<Chart>, ReportError> {
+/// [`ChartError`].
+pub(super) fn all(record: &AcceptRecord, show_in: System) -> Result<Vec<Chart>, ChartError> {
     let mut charts = Vec::new();
     for ((name, at), unit) in occurring(record) {
         let key = (name, at);
@@ -62,7 +63,7 @@ fn one(
     key: &(String, Option<crate::units::Millimetres>),
     unit: Unit,
     show_in: System,
-) -> Result<Chart, ReportError> {
+) -> Result<Chart, ChartError> {
     let scale = per_unit(unit, show_in);
     let values: Vec<Measured<'_>> = record
         .springs
@@ -124,7 +125,7 @@ fn one(
             &values,
             &lines,
             &entries,
-            &format!("{name} ({})", symbol(unit, show_in)),
+            &format!("{name} ({})", unit_symbol(unit, show_in)),
         )
     })
 }

@@ -5,15 +5,15 @@ use super::table::{Cell, Column, Row, Section, Table};
 use crate::record::{
     AcceptRecord, CharacteristicResult, Decision, LotReason, SpringResult, Verdict,
 };
-use crate::report::figure::{ABSENT, Place, figure, symbol, with_uncertainty};
-use crate::report::wording;
 use crate::units::{Finite, System};
+use crate::wording;
+use crate::wording::{ABSENT, Place, figure, unit_symbol, with_uncertainty};
 
 /// Failures that still fit on one page.
 const FITTING: usize = 34;
 
 /// The page, where the rejection is proven.
-pub(super) fn page(record: &AcceptRecord, show_in: System) -> Option<Section> {
+pub(crate) fn page(record: &AcceptRecord, show_in: System) -> Option<Section> {
     let proven = record
         .reasons
         .iter()
@@ -92,7 +92,7 @@ fn failures(spring: &SpringResult, record: &AcceptRecord, show_in: System) -> Ve
                 with_uncertainty(of.value, of.expanded_uncertainty, of.unit, show_in),
                 Verdict::Fails,
             ),
-            symbol(of.unit, show_in).into(),
+            unit_symbol(of.unit, show_in).into(),
             stated(of.lower).into(),
             stated(of.upper).into(),
             wording::rule_used(of, &record.drawing, show_in).into(),

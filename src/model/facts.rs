@@ -4,9 +4,9 @@ use serde::Serialize;
 
 use crate::quantity::Unit;
 use crate::record::{AcceptRecord, WindowOf};
-use crate::report::figure::{ABSENT, Place, number, with_unit};
-use crate::report::wording::count;
 use crate::units::System;
+use crate::wording::count;
+use crate::wording::{ABSENT, Place, number, with_unit};
 
 /// A named fact.
 #[derive(Clone, Debug, PartialEq, Eq, Serialize)]
@@ -46,7 +46,7 @@ pub(crate) fn labelled(number: &str, revision: Option<&str>) -> String {
 }
 
 /// All facts of page one.
-pub(super) fn all(record: &AcceptRecord, show_in: System) -> Vec<Facts> {
+pub(crate) fn all(record: &AcceptRecord, show_in: System) -> Vec<Facts> {
     vec![
         lot(record),
         drawing(record, show_in),

@@ -6,9 +6,9 @@ use super::facts::labelled;
 use super::table::{Cell, Column, Row, Table};
 use crate::quantity::Unit;
 use crate::record::{AcceptRecord, Decision, RequirementFacts, Verdict};
-use crate::report::figure::{Place, figure, number, probability, symbol};
-use crate::report::wording;
 use crate::units::{Finite, System};
+use crate::wording;
+use crate::wording::{Place, figure, number, probability, unit_symbol};
 
 /// The decision and why.
 #[derive(Clone, Debug, PartialEq, Eq, Serialize)]
@@ -37,7 +37,7 @@ pub struct Note {
 }
 
 /// What was inspected, in one line.
-pub(super) fn subject(record: &AcceptRecord) -> String {
+pub(crate) fn subject(record: &AcceptRecord) -> String {
     let drawing = &record.drawing;
     let label = labelled(&drawing.number, drawing.revision.as_deref());
     match &drawing.title {
@@ -56,7 +56,7 @@ pub(crate) fn with_verdict(record: &AcceptRecord, verdict: Verdict) -> usize {
 }
 
 /// The decision.
-pub(super) fn deciding(record: &AcceptRecord) -> Deciding {
+pub(crate) fn deciding(record: &AcceptRecord) -> Deciding {
     let of = |verdict| with_verdict(record, verdict);
     Deciding {
         code: wording::decided(record.decision),
@@ -78,7 +78,7 @@ pub(super) fn deciding(record: &AcceptRecord) -> Deciding {
 }
 
 /// The lot's note, the concession, what was not inspected.
-pub(super) fn notes(record: &AcceptRecord) -> Vec<Note> {
+pub(crate) fn notes(record: &AcceptRecord) -> Vec<Note> {
     let note = |label: &str, text: &str| Note {
         label: label.to_owned(),
         text: text.to_owned(),
@@ -104,7 +104,7 @@ pub(super) fn notes(record: &AcceptRecord) -> Vec<Note> {
 }
 
 /// The plan of each class.
-pub(super) fn plan(record: &AcceptRecord) -> Table {
+pub(crate) fn plan(record: &AcceptRecord) -> Table {
     let columns = vec![
         Column::words("Class"),
         Column::figures("AQL", "%"),
@@ -120,7 +120,7 @@ pub(super) fn plan(record: &AcceptRecord) -> Table {
         let letter = match (&class.code_letter, &class.used_letter) {
             (Some(code), Some(used)) if code != used => format!("{code}, by the arrow {used}"),
             (Some(code), _) => code.clone(),
-            (None, _) => crate::report::figure::ABSENT.to_owned(),
+            (None, _) => crate::wording::ABSENT.to_owned(),
         };
         Row::from([
             class.class.word().into(),
@@ -141,7 +141,7 @@ pub(super) fn plan(record: &AcceptRecord) -> Table {
 }
 
 /// The requirements with limits, counts and what was measured.
-pub(super) fn requirements(record: &AcceptRecord, show_in: System) -> Table {
+pub(crate) fn requirements(record: &AcceptRecord, show_in: System) -> Table {
     let columns = vec![
         Column::words("Requirement"),
         Column::words("Unit"),
@@ -188,7 +188,7 @@ fn requirement(of: &RequirementFacts, show_in: System) -> Row {
     let name = wording::characteristic(&of.name, of.at_length_mm, show_in);
     Row::from([
         wording::sentence(&name).into(),
-        symbol(unit, show_in).into(),
+        unit_symbol(unit, show_in).into(),
         of.class.word().into(),
         stated(of.nominal).into(),
         stated(of.lower).into(),

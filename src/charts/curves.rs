@@ -2,15 +2,15 @@
 
 use super::bounds;
 use super::field::{self, Line};
-use super::plot::{self, EDGE, Entry, LEADING, Plot, Sample, Scale};
-use super::sheet::{INK, LIMIT, WIDTH, WINDOW};
 use super::{Chart, chart, verdict_of};
 use crate::curve::{Axis, Reduced, thin};
 use crate::quantity::Unit;
 use crate::record::AcceptRecord;
-use crate::report::ReportError;
-use crate::report::figure::{per_unit, symbol};
+use crate::sheet::ChartError;
+use crate::sheet::canvas::{INK, LIMIT, WIDTH, WINDOW};
+use crate::sheet::plot::{self, EDGE, Entry, LEADING, Plot, Sample, Scale};
 use crate::units::System;
+use crate::wording::{per_unit, unit_symbol};
 
 /// Height of the plot of loads, and of residuals.
 const TALL: f64 = 235.0;
@@ -23,13 +23,13 @@ const FEWEST_RESIDUALS: usize = 60;
 /// All curves.
 ///
 /// # Errors
-/// [`ReportError::Chart`].
+/// [`ChartError`].
 pub(super) fn loads(
     record: &AcceptRecord,
     curves: &[&Reduced],
     only: bool,
     show_in: System,
-) -> Result<Chart, ReportError> {
+) -> Result<Chart, ChartError> {
     let axis = curves.first().map_or(Axis::Length, |curve| curve.axis);
     let lines = lines(record, curves, show_in, |curve| {
         (&curve.loading, &curve.unloading)
@@ -94,7 +94,7 @@ pub(super) fn loads(
                 sheet,
                 &plot,
                 7,
-                &format!("load F ({})", symbol(Unit::Newton, show_in)),
+                &format!("load F ({})", unit_symbol(Unit::Newton, show_in)),
             )?;
             plot::across_axis(sheet, &plot, 9, &across(axis, show_in))?;
             bounds::draw_window(sheet, &plot, window)?;
@@ -108,13 +108,13 @@ pub(super) fn loads(
 /// The residuals about the fits; `None` where there are none.
 ///
 /// # Errors
-/// [`ReportError::Chart`].
+/// [`ChartError`].
 pub(super) fn residuals(
     record: &AcceptRecord,
     curves: &[&Reduced],
     only: bool,
     show_in: System,
-) -> Result<Option<Chart>, ReportError> {
+) -> Result<Option<Chart>, ChartError> {
     let axis = curves.first().map_or(Axis::Length, |curve| curve.axis);
     let none = Vec::new();
     let mut lines = lines(record, curves, show_in, |curve| (&curve.residuals, &none));
@@ -151,7 +151,7 @@ pub(super) fn residuals(
                 sheet,
                 &plot,
                 5,
-                &format!("residual ({})", symbol(Unit::Newton, show_in)),
+                &format!("residual ({})", unit_symbol(Unit::Newton, show_in)),
             )?;
             plot::across_axis(sheet, &plot, 9, &across(axis, show_in))?;
             field::draw(sheet, &plot, &lines)?;
@@ -192,7 +192,7 @@ fn lines<'a>(
 }
 
 fn across(axis: Axis, show_in: System) -> String {
-    let unit = symbol(Unit::Millimetre, show_in);
+    let unit = unit_symbol(Unit::Millimetre, show_in);
     match axis {
         Axis::Length => format!("length L ({unit})"),
         Axis::Deflection => format!("deflection s ({unit})"),

@@ -3,8 +3,8 @@
 use super::table::{Cell, Column, Row, Section, Table};
 use crate::quantity::Unit;
 use crate::record::{AcceptRecord, MemberFacts, StressFacts, TheoryFacts};
-use crate::report::figure::{Place, figure, number, percent, symbol, with_uncertainty, with_unit};
 use crate::units::{Finite, System};
+use crate::wording::{Place, figure, number, percent, unit_symbol, with_uncertainty, with_unit};
 
 /// Where the formulas come from, as the section prints it.
 const FORMULAS: [&str; 3] = [
@@ -16,7 +16,7 @@ const FORMULAS: [&str; 3] = [
 ];
 
 /// The section.
-pub(super) fn section(record: &AcceptRecord, show_in: System) -> Section {
+pub(crate) fn section(record: &AcceptRecord, show_in: System) -> Section {
     let theory = &record.theory;
     let mut text = vec![summary(theory, show_in)];
     text.extend(FORMULAS.map(str::to_owned));
@@ -51,7 +51,7 @@ fn summary(theory: &TheoryFacts, show_in: System) -> String {
         "R = {} {} (k = 2, from the drawing’s tolerances; worst case {} to {}). Free length L0 = {}, solid length Lc = {}, smallest permitted \
          test length Ln = {}, load there Fn = {}.",
         with_uncertainty(finite(theory.rate_n_per_mm.get()), expanded, rate, show_in),
-        symbol(rate, show_in),
+        unit_symbol(rate, show_in),
         bound(theory.rate_lowest),
         bound(theory.rate_highest),
         millimetres(theory.free_length_mm),
@@ -67,18 +67,18 @@ fn summary(theory: &TheoryFacts, show_in: System) -> String {
 }
 
 fn members(theory: &TheoryFacts, show_in: System) -> Table {
-    let length = symbol(Unit::Millimetre, show_in);
+    let length = unit_symbol(Unit::Millimetre, show_in);
     let columns = vec![
         Column::words("Spring"),
         Column::words("Material"),
         Column::words("Source of G"),
-        Column::figures("G", symbol(Unit::Megapascal, show_in)),
+        Column::figures("G", unit_symbol(Unit::Megapascal, show_in)),
         Column::figures("d", length),
         Column::figures("D", length),
         Column::figures("n", ""),
         Column::figures("nt", ""),
         Column::figures("w", ""),
-        Column::figures("R", symbol(Unit::NewtonPerMillimetre, show_in)),
+        Column::figures("R", unit_symbol(Unit::NewtonPerMillimetre, show_in)),
         Column::figures("Share", ""),
         Column::figures("Lc", length),
         Column::figures("Ln", length),
@@ -137,13 +137,13 @@ fn members(theory: &TheoryFacts, show_in: System) -> Table {
 
 fn stresses(member: &MemberFacts, show_in: System) -> Table {
     let (length, stress) = (
-        symbol(Unit::Millimetre, show_in),
-        symbol(Unit::Megapascal, show_in),
+        unit_symbol(Unit::Millimetre, show_in),
+        unit_symbol(Unit::Megapascal, show_in),
     );
     let columns = vec![
         Column::figures("At length", length),
         Column::figures("Deflection", length),
-        Column::figures("Load", symbol(Unit::Newton, show_in)),
+        Column::figures("Load", unit_symbol(Unit::Newton, show_in)),
         Column::figures("τ", stress),
         Column::figures("τ static", stress),
         Column::figures("τ dynamic", stress),

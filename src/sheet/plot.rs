@@ -1,17 +1,17 @@
 //! Axes, scales, the legend, labels that keep clear of each other.
 
-use super::sheet::{Anchor, At, Drawn, FAINT, GRID, INK, Sheet, TYPE, WIDTH};
+use super::canvas::{Anchor, At, Drawn, FAINT, GRID, INK, Sheet, TYPE, WIDTH};
 use crate::record::Verdict;
-use crate::report::font;
+use crate::wording::font;
 
 /// Height of a line of type.
-pub(super) const LEADING: f64 = 17.0;
+pub(crate) const LEADING: f64 = 17.0;
 /// Space kept at the edges of a sheet.
-pub(super) const EDGE: f64 = 8.0;
+pub(crate) const EDGE: f64 = 8.0;
 
 /// A stretch of values along a stretch of paper.
 #[derive(Clone, Copy, Debug)]
-pub(super) struct Scale {
+pub(crate) struct Scale {
     /// Value at the start and the end.
     pub value: (f64, f64),
     /// Paper at the start and the end.
@@ -20,7 +20,7 @@ pub(super) struct Scale {
 
 impl Scale {
     /// Where a value lies on the paper.
-    pub(super) fn at(&self, value: f64) -> f64 {
+    pub(crate) fn at(&self, value: f64) -> f64 {
         let part = (value - self.value.0) / (self.value.1 - self.value.0);
         self.paper.0 + part * (self.paper.1 - self.paper.0)
     }
@@ -28,7 +28,7 @@ impl Scale {
 
 /// A plot: two scales.
 #[derive(Clone, Copy, Debug)]
-pub(super) struct Plot {
+pub(crate) struct Plot {
     /// Across.
     pub x: Scale,
     /// Up.
@@ -37,13 +37,13 @@ pub(super) struct Plot {
 
 impl Plot {
     /// Where a point lies on the paper.
-    pub(super) fn at(&self, (x, y): (f64, f64)) -> At {
+    pub(crate) fn at(&self, (x, y): (f64, f64)) -> At {
         (self.x.at(x), self.y.at(y))
     }
 }
 
 /// The range of some values, widened by a share of itself on both sides; never empty.
-pub(super) fn range(values: impl Iterator<Item = f64>, share: f64) -> (f64, f64) {
+pub(crate) fn range(values: impl Iterator<Item = f64>, share: f64) -> (f64, f64) {
     let (low, high) = values
         .filter(|value| value.is_finite())
         .fold((f64::INFINITY, f64::NEG_INFINITY), |(low, high), value| {
@@ -57,7 +57,7 @@ pub(super) fn range(values: impl Iterator<Item = f64>, share: f64) -> (f64, f64)
 }
 
 /// Round values in a range, about `wanted` of them, and the places after the point they need.
-pub(super) fn ticks(range: (f64, f64), wanted: u8) -> (Vec<f64>, usize) {
+pub(crate) fn ticks(range: (f64, f64), wanted: u8) -> (Vec<f64>, usize) {
     let (low, high) = (range.0.min(range.1), range.0.max(range.1));
     let rough = (high - low) / f64::from(wanted.max(1));
     let power = rough.log10().floor();
@@ -79,7 +79,7 @@ pub(super) fn ticks(range: (f64, f64), wanted: u8) -> (Vec<f64>, usize) {
 }
 
 /// A tick's label.
-pub(super) fn label(value: f64, places: usize) -> String {
+pub(crate) fn label(value: f64, places: usize) -> String {
     let text = format!("{value:.places$}");
     match text.strip_prefix('-') {
         Some(rest) if rest.chars().any(|c| matches!(c, '1'..='9')) => format!("−{rest}"),
@@ -89,7 +89,7 @@ pub(super) fn label(value: f64, places: usize) -> String {
 }
 
 /// The width the labels of an upward axis need.
-pub(super) fn labels_width(range: (f64, f64), wanted: u8) -> f64 {
+pub(crate) fn labels_width(range: (f64, f64), wanted: u8) -> f64 {
     let (values, places) = ticks(range, wanted);
     values
         .iter()
@@ -98,7 +98,7 @@ pub(super) fn labels_width(range: (f64, f64), wanted: u8) -> f64 {
 }
 
 /// Grid and labels of the upward axis, its title above it.
-pub(super) fn upward_axis(sheet: &mut Sheet<'_>, plot: &Plot, wanted: u8, title: &str) -> Drawn {
+pub(crate) fn upward_axis(sheet: &mut Sheet<'_>, plot: &Plot, wanted: u8, title: &str) -> Drawn {
     let (values, places) = ticks(plot.y.value, wanted);
     for value in values {
         let y = plot.y.at(value);
@@ -119,7 +119,7 @@ pub(super) fn upward_axis(sheet: &mut Sheet<'_>, plot: &Plot, wanted: u8, title:
 }
 
 /// Grid and labels of the axis across, its title under it.
-pub(super) fn across_axis(sheet: &mut Sheet<'_>, plot: &Plot, wanted: u8, title: &str) -> Drawn {
+pub(crate) fn across_axis(sheet: &mut Sheet<'_>, plot: &Plot, wanted: u8, title: &str) -> Drawn {
     let (values, places) = ticks(plot.x.value, wanted);
     for value in values {
         let x = plot.x.at(value);
@@ -141,7 +141,7 @@ pub(super) fn across_axis(sheet: &mut Sheet<'_>, plot: &Plot, wanted: u8, title:
 }
 
 /// The frame: the two axes.
-pub(super) fn frame(sheet: &mut Sheet<'_>, plot: &Plot) -> Drawn {
+pub(crate) fn frame(sheet: &mut Sheet<'_>, plot: &Plot) -> Drawn {
     let (left, right) = plot.x.paper;
     let (bottom, top) = plot.y.paper;
     sheet.line(&[(left, top), (left, bottom), (right, bottom)], INK, 1.0)
@@ -149,7 +149,7 @@ pub(super) fn frame(sheet: &mut Sheet<'_>, plot: &Plot) -> Drawn {
 
 /// What an entry of a legend shows before its words.
 #[derive(Clone, Copy, Debug)]
-pub(super) enum Sample {
+pub(crate) enum Sample {
     /// A verdict's mark.
     Mark(Verdict),
     /// A line of a colour and width.
@@ -161,7 +161,7 @@ pub(super) enum Sample {
 }
 
 /// An entry of a legend.
-pub(super) type Entry = (Sample, String);
+pub(crate) type Entry = (Sample, String);
 
 /// Where the entries of a legend stand, and how many lines they fill.
 fn placed(entries: &[Entry]) -> (Vec<At>, u8) {
@@ -180,12 +180,12 @@ fn placed(entries: &[Entry]) -> (Vec<At>, u8) {
 }
 
 /// The height a legend needs.
-pub(super) fn legend_height(entries: &[Entry]) -> f64 {
+pub(crate) fn legend_height(entries: &[Entry]) -> f64 {
     EDGE + LEADING * f64::from(placed(entries).1)
 }
 
 /// Draws a legend at the head of the sheet.
-pub(super) fn legend(sheet: &mut Sheet<'_>, entries: &[Entry]) -> Drawn {
+pub(crate) fn legend(sheet: &mut Sheet<'_>, entries: &[Entry]) -> Drawn {
     for ((sample, words), (x, y)) in entries.iter().zip(placed(entries).0) {
         match *sample {
             Sample::Mark(verdict) => sheet.mark(verdict, (x + 10.0, y), 4.0)?,
@@ -201,7 +201,7 @@ pub(super) fn legend(sheet: &mut Sheet<'_>, entries: &[Entry]) -> Drawn {
 }
 
 /// Heights moved apart until none is nearer than `apart` to the next, inside `top` to `bottom`; the order is kept.
-pub(super) fn spread(wanted: &[f64], apart: f64, top: f64, bottom: f64) -> Vec<f64> {
+pub(crate) fn spread(wanted: &[f64], apart: f64, top: f64, bottom: f64) -> Vec<f64> {
     let mut order: Vec<(usize, f64)> = wanted.iter().copied().enumerate().collect();
     order.sort_by(|a, b| a.1.total_cmp(&b.1));
     let mut free = top;

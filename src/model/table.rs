@@ -29,7 +29,7 @@ pub struct Column {
 
 impl Column {
     /// A column of words.
-    pub(super) fn words(title: &str) -> Self {
+    pub(crate) fn words(title: &str) -> Self {
         Self {
             title: title.to_owned(),
             unit: String::new(),
@@ -38,7 +38,7 @@ impl Column {
     }
 
     /// A column of figures in one unit.
-    pub(super) fn figures(title: impl Into<String>, unit: &str) -> Self {
+    pub(crate) fn figures(title: impl Into<String>, unit: &str) -> Self {
         Self {
             title: title.into(),
             unit: unit.to_owned(),
@@ -47,7 +47,7 @@ impl Column {
     }
 
     /// A column of hashes.
-    pub(super) fn hash(title: &str) -> Self {
+    pub(crate) fn hash(title: &str) -> Self {
         Self {
             title: title.to_owned(),
             unit: String::new(),
@@ -69,7 +69,7 @@ pub struct Cell {
 
 impl Cell {
     /// The cell with a verdict's emphasis.
-    pub(super) fn marked(text: impl Into<String>, verdict: Verdict) -> Self {
+    pub(crate) fn marked(text: impl Into<String>, verdict: Verdict) -> Self {
         Self {
             text: text.into(),
             below: String::new(),
@@ -88,7 +88,7 @@ impl<T: Into<String>> From<T> for Cell {
 }
 
 /// The name of a verdict's emphasis.
-pub(super) const fn mark(verdict: Verdict) -> &'static str {
+pub(crate) const fn mark(verdict: Verdict) -> &'static str {
     match verdict {
         Verdict::Conforms => "conforms",
         Verdict::Fails => "fails",
@@ -107,7 +107,7 @@ pub struct Row {
 
 impl Row {
     /// The row as one about a spring of this verdict.
-    pub(super) fn about(self, verdict: Verdict) -> Self {
+    pub(crate) fn about(self, verdict: Verdict) -> Self {
         Self {
             mark: mark(verdict),
             ..self
@@ -139,7 +139,7 @@ pub struct Table {
 
 impl Table {
     /// A table without a note.
-    pub(super) fn new(caption: impl Into<String>, columns: Vec<Column>, rows: Vec<Row>) -> Self {
+    pub(crate) fn new(caption: impl Into<String>, columns: Vec<Column>, rows: Vec<Row>) -> Self {
         Self {
             caption: caption.into(),
             columns,

@@ -2,10 +2,10 @@
 
 use super::table::{Column, Row, Section, Table};
 use crate::record::{AcceptRecord, LedgerFacts, SetAside};
-use crate::report::figure::ABSENT;
+use crate::wording::ABSENT;
 
 /// The section.
-pub(super) fn section(record: &AcceptRecord) -> Section {
+pub(crate) fn section(record: &AcceptRecord) -> Section {
     let provenance = &record.provenance;
     let flags = if provenance.flags.is_empty() {
         "none".to_owned()

@@ -2,14 +2,15 @@
 
 use plotters::style::RGBColor;
 
-use super::plot::{EDGE, LEADING};
-use super::sheet::{Anchor, Drawn, INK, Sheet, TYPE, WIDTH};
 use super::{Chart, chart};
 use crate::quantity::Unit;
 use crate::record::{AcceptRecord, MemberFacts};
-use crate::report::figure::{Place, figure, per_unit, percent, symbol, with_unit};
-use crate::report::{ReportError, font};
+use crate::sheet::ChartError;
+use crate::sheet::canvas::{Anchor, Drawn, INK, Sheet, TYPE, WIDTH};
+use crate::sheet::plot::{EDGE, LEADING};
 use crate::units::System;
+use crate::wording::font;
+use crate::wording::{Place, figure, per_unit, percent, unit_symbol, with_unit};
 
 /// Fills of the members, light enough for dark letters; each part also carries its member's letter.
 const FILLS: [RGBColor; 4] = [
@@ -25,11 +26,11 @@ const ROW: f64 = 36.0;
 /// The chart; `None` for a single spring.
 ///
 /// # Errors
-/// [`ReportError::Chart`].
+/// [`ChartError`].
 pub(super) fn chart_of(
     record: &AcceptRecord,
     show_in: System,
-) -> Result<Option<Chart>, ReportError> {
+) -> Result<Option<Chart>, ChartError> {
     let members = &record.theory.members;
     let Some(first) = members.first().filter(|_| members.len() > 1) else {
         return Ok(None);
@@ -138,7 +139,7 @@ fn bar(
         let long = format!(
             "{}  {shown} {} · {}",
             letter(number),
-            symbol(unit, show_in),
+            unit_symbol(unit, show_in),
             percent(Some(share))
         );
         let middle = format!("{}  {}", letter(number), percent(Some(share)));

@@ -1,23 +1,28 @@
-//! The words for what a record holds as data: reasons, cautions, advice, names of characteristics.
-//! Here: wording. Elsewhere: how a figure is written (`figure`), what a record means (`verdict`, `lot`).
+//! A record's data as finished text: figures with their rounding, reasons, cautions, advice, names; and the fonts it is
+//! printed in. Elsewhere: what a record means (`verdict`, `lot`), what stands where (`model`).
 
 mod caution;
+mod figure;
+pub(crate) mod font;
 mod lot;
 mod spring;
 
-pub(super) use caution::{STANDING, caution};
-pub(super) use lot::{decided, decision_word, simple_line, terms, why};
-pub(super) use spring::{advice, disposition, rule_used, verdict_reason, verdict_word};
+pub(crate) use caution::{STANDING, caution};
+pub use figure::{
+    ABSENT, Place, figure, freedom, number, per_unit, percent, probability, unit_symbol,
+    with_uncertainty, with_unit,
+};
+pub(crate) use lot::{decided, decision_word, simple_line, terms, why};
+pub(crate) use spring::{advice, disposition, rule_used, verdict_reason, verdict_word};
 
 use crate::quantity::{Quantity, Unit};
-use crate::report::figure::{Place, figure, with_unit};
 use crate::units::{Millimetres, System};
 
 /// Names listed in a sentence before the rest is counted.
 const LISTED: usize = 8;
 
 /// The full name of a characteristic: `rate R`, `load F at 48 mm`, `free length L0`.
-pub(super) fn characteristic(name: &str, at: Option<Millimetres>, show_in: System) -> String {
+pub(crate) fn characteristic(name: &str, at: Option<Millimetres>, show_in: System) -> String {
     match Quantity::from_name(name, at) {
         Some(Quantity::LoadAt(length)) => {
             let at = with_unit(Some(length), Unit::Millimetre, Place::Stated, show_in);
@@ -35,7 +40,7 @@ pub(super) fn characteristic(name: &str, at: Option<Millimetres>, show_in: Syste
 }
 
 /// The short name for a column head: `R`, `F at 48`, `L0`.
-pub(super) fn symbol(name: &str, at: Option<Millimetres>, show_in: System) -> String {
+pub(crate) fn symbol(name: &str, at: Option<Millimetres>, show_in: System) -> String {
     match Quantity::from_name(name, at) {
         Some(Quantity::LoadAt(length)) => format!(
             "F at {}",
@@ -47,12 +52,12 @@ pub(super) fn symbol(name: &str, at: Option<Millimetres>, show_in: System) -> St
 }
 
 /// A length as stated, with its unit.
-pub(super) fn length(value: Option<Millimetres>, show_in: System) -> String {
+pub(crate) fn length(value: Option<Millimetres>, show_in: System) -> String {
     with_unit(value, Unit::Millimetre, Place::Stated, show_in)
 }
 
 /// `3 springs`, `1 spring`.
-pub(super) fn count(number: impl Into<u64>, thing: &str) -> String {
+pub(crate) fn count(number: impl Into<u64>, thing: &str) -> String {
     let number = number.into();
     if number == 1 {
         format!("1 {thing}")
@@ -62,7 +67,7 @@ pub(super) fn count(number: impl Into<u64>, thing: &str) -> String {
 }
 
 /// Some names, the first eight of them in full: `3, 7 and 12`, `1, 2, … and 40 more`.
-pub(super) fn list(names: &[String]) -> String {
+pub(crate) fn list(names: &[String]) -> String {
     let (shown, rest) = names.split_at(names.len().min(LISTED));
     if !rest.is_empty() {
         return format!("{} and {} more", shown.join(", "), rest.len());
@@ -75,7 +80,7 @@ pub(super) fn list(names: &[String]) -> String {
 }
 
 /// `spring 7`, `springs 3, 7 and 12`.
-pub(super) fn springs(names: &[String]) -> String {
+pub(crate) fn springs(names: &[String]) -> String {
     let word = if names.len() == 1 {
         "spring"
     } else {
@@ -85,7 +90,7 @@ pub(super) fn springs(names: &[String]) -> String {
 }
 
 /// The text with its first letter in upper case.
-pub(super) fn sentence(text: &str) -> String {
+pub(crate) fn sentence(text: &str) -> String {
     let mut characters = text.chars();
     characters.next().map_or_else(String::new, |first| {
         first.to_uppercase().chain(characters).collect()

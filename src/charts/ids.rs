@@ -1,10 +1,10 @@
 //! The springs' ids under a plot of values.
 
-use super::plot::{EDGE, LEADING, Plot};
-use super::sheet::{Anchor, Drawn, FAINT, INK, Sheet, TYPE, WIDTH};
 use super::values::Measured;
 use crate::record::Verdict;
-use crate::report::font;
+use crate::sheet::canvas::{Anchor, Drawn, FAINT, INK, Sheet, TYPE, WIDTH};
+use crate::sheet::plot::{EDGE, LEADING, Plot};
+use crate::wording::font;
 
 /// The longest label of a spring.
 const LONGEST: f64 = 64.0;

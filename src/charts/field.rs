@@ -1,10 +1,10 @@
 //! Many curves on one plot: lines while they are few, a band with the springs that do not conform when they are many.
 
 use super::SINGLE;
-use super::plot::{Entry, LEADING, Plot, Sample, spread};
-use super::sheet::{Anchor, Drawn, FAINT, FIELD, INK, Sheet, TYPE, colour};
 use crate::record::Verdict;
-use crate::report::{font, wording};
+use crate::sheet::canvas::{Anchor, Drawn, FAINT, FIELD, INK, Sheet, TYPE, colour};
+use crate::sheet::plot::{Entry, LEADING, Plot, Sample, spread};
+use crate::wording::{self, font};
 
 /// Departure from a line through neighbours, on paper, below which a point is not drawn.
 const INVISIBLE: f64 = 0.3;

@@ -7,34 +7,34 @@ use plotters::style::text_anchor::{HPos, Pos, VPos};
 use plotters::style::{FontFamily, FontStyle, FontTransform};
 
 use crate::record::Verdict;
-use crate::report::font;
+use crate::wording::font;
 
 /// Whole coordinates per unit of the drawing.
 const SCALE: f64 = 10.0;
 /// Width of every chart.
-pub(super) const WIDTH: f64 = 560.0;
+pub(crate) const WIDTH: f64 = 560.0;
 /// Size of labels.
-pub(super) const TYPE: f64 = 12.0;
+pub(crate) const TYPE: f64 = 12.0;
 /// plotters divides sizes by this before it writes them.
 const PLOTTERS_TYPE: f64 = 1.24;
 
-pub(super) const INK: RGBColor = RGBColor(0x1d, 0x26, 0x2c);
-pub(super) const FAINT: RGBColor = RGBColor(0x5b, 0x66, 0x6d);
-pub(super) const GRID: RGBColor = RGBColor(0xdd, 0xe1, 0xe4);
-pub(super) const FIELD: RGBColor = RGBColor(0x2f, 0x5f, 0x8a);
-pub(super) const LIMIT: RGBColor = RGBColor(0x8f, 0x2d, 0x14);
-pub(super) const FAILS: RGBColor = RGBColor(0xb0, 0x1e, 0x23);
-pub(super) const OPEN: RGBColor = RGBColor(0x7d, 0x5a, 0x00);
-pub(super) const THEORY: RGBColor = RGBColor(0x55, 0x3f, 0x8c);
-pub(super) const WINDOW: RGBColor = RGBColor(0x6c, 0x8f, 0x5a);
+pub(crate) const INK: RGBColor = RGBColor(0x1d, 0x26, 0x2c);
+pub(crate) const FAINT: RGBColor = RGBColor(0x5b, 0x66, 0x6d);
+pub(crate) const GRID: RGBColor = RGBColor(0xdd, 0xe1, 0xe4);
+pub(crate) const FIELD: RGBColor = RGBColor(0x2f, 0x5f, 0x8a);
+pub(crate) const LIMIT: RGBColor = RGBColor(0x8f, 0x2d, 0x14);
+pub(crate) const FAILS: RGBColor = RGBColor(0xb0, 0x1e, 0x23);
+pub(crate) const OPEN: RGBColor = RGBColor(0x7d, 0x5a, 0x00);
+pub(crate) const THEORY: RGBColor = RGBColor(0x55, 0x3f, 0x8c);
+pub(crate) const WINDOW: RGBColor = RGBColor(0x6c, 0x8f, 0x5a);
 
 /// What the backend refuses, in its words.
 #[derive(Debug, thiserror::Error)]
 #[error("{0}")]
-pub(super) struct Refused(String);
+pub(crate) struct Refused(String);
 
 /// What drawing gives.
-pub(super) type Drawn = Result<(), Refused>;
+pub(crate) type Drawn = Result<(), Refused>;
 
 fn told<E: std::fmt::Display>(result: Result<(), E>) -> Drawn {
     result.map_err(|cause| Refused(cause.to_string()))
@@ -42,17 +42,17 @@ fn told<E: std::fmt::Display>(result: Result<(), E>) -> Drawn {
 
 /// Where a text's position lies in it.
 #[derive(Clone, Copy, Debug)]
-pub(super) enum Anchor {
+pub(crate) enum Anchor {
     Start,
     Middle,
     End,
 }
 
 /// A point of the drawing, from its upper left corner.
-pub(super) type At = (f64, f64);
+pub(crate) type At = (f64, f64);
 
 /// A drawing in the making.
-pub(super) struct Sheet<'a> {
+pub(crate) struct Sheet<'a> {
     backend: SVGBackend<'a>,
 }
 
@@ -60,7 +60,7 @@ pub(super) struct Sheet<'a> {
 ///
 /// # Errors
 /// What the backend reports.
-pub(super) fn drawn(
+pub(crate) fn drawn(
     title: &str,
     height: f64,
     draw: impl FnOnce(&mut Sheet<'_>) -> Drawn,
@@ -114,7 +114,7 @@ fn style(colour: RGBColor, alpha: f64, width: f64, filled: bool) -> ShapeStyle {
 
 impl Sheet<'_> {
     /// A line through points.
-    pub(super) fn line(&mut self, points: &[At], colour: RGBColor, width: f64) -> Drawn {
+    pub(crate) fn line(&mut self, points: &[At], colour: RGBColor, width: f64) -> Drawn {
         let points: Vec<(i32, i32)> = points.iter().copied().map(place).collect();
         told(
             self.backend
@@ -123,7 +123,7 @@ impl Sheet<'_> {
     }
 
     /// A line that lets what lies under it shine through.
-    pub(super) fn faint_line(&mut self, points: &[At], colour: RGBColor, width: f64) -> Drawn {
+    pub(crate) fn faint_line(&mut self, points: &[At], colour: RGBColor, width: f64) -> Drawn {
         let points: Vec<(i32, i32)> = points.iter().copied().map(place).collect();
         told(
             self.backend
@@ -132,7 +132,7 @@ impl Sheet<'_> {
     }
 
     /// A straight line broken into dashes.
-    pub(super) fn dashes(&mut self, from: At, to: At, colour: RGBColor, width: f64) -> Drawn {
+    pub(crate) fn dashes(&mut self, from: At, to: At, colour: RGBColor, width: f64) -> Drawn {
         let length = (to.0 - from.0).hypot(to.1 - from.1);
         let step = 9.0;
         let mut done = 0.0;
@@ -151,7 +151,7 @@ impl Sheet<'_> {
     }
 
     /// A filled area.
-    pub(super) fn area(&mut self, points: &[At], colour: RGBColor, alpha: f64) -> Drawn {
+    pub(crate) fn area(&mut self, points: &[At], colour: RGBColor, alpha: f64) -> Drawn {
         let points: Vec<(i32, i32)> = points.iter().copied().map(place).collect();
         told(
             self.backend
@@ -160,7 +160,7 @@ impl Sheet<'_> {
     }
 
     /// A filled rectangle between two corners.
-    pub(super) fn block(&mut self, from: At, to: At, colour: RGBColor, alpha: f64) -> Drawn {
+    pub(crate) fn block(&mut self, from: At, to: At, colour: RGBColor, alpha: f64) -> Drawn {
         let (left, right) = (from.0.min(to.0), from.0.max(to.0));
         let (top, bottom) = (from.1.min(to.1), from.1.max(to.1));
         let style = style(colour, alpha, 0.0, true);
@@ -171,7 +171,7 @@ impl Sheet<'_> {
     }
 
     /// A text; its position is its vertical middle.
-    pub(super) fn text(&mut self, text: &str, at: At, anchor: Anchor, colour: RGBColor) -> Drawn {
+    pub(crate) fn text(&mut self, text: &str, at: At, anchor: Anchor, colour: RGBColor) -> Drawn {
         self.letters(
             text,
             at,
@@ -183,7 +183,7 @@ impl Sheet<'_> {
     }
 
     /// A bold text.
-    pub(super) fn bold(&mut self, text: &str, at: At, anchor: Anchor, colour: RGBColor) -> Drawn {
+    pub(crate) fn bold(&mut self, text: &str, at: At, anchor: Anchor, colour: RGBColor) -> Drawn {
         self.letters(
             text,
             at,
@@ -195,7 +195,7 @@ impl Sheet<'_> {
     }
 
     /// A text that reads upwards and ends at its position.
-    pub(super) fn upward(&mut self, text: &str, at: At, colour: RGBColor) -> Drawn {
+    pub(crate) fn upward(&mut self, text: &str, at: At, colour: RGBColor) -> Drawn {
         self.letters(
             text,
             at,
@@ -234,7 +234,7 @@ impl Sheet<'_> {
     }
 
     /// The mark of a verdict: a dot, a cross, a diamond.
-    pub(super) fn mark(&mut self, verdict: Verdict, (x, y): At, size: f64) -> Drawn {
+    pub(crate) fn mark(&mut self, verdict: Verdict, (x, y): At, size: f64) -> Drawn {
         match verdict {
             Verdict::Conforms => {
                 let style = style(FIELD, 1.0, 0.0, true);
@@ -266,7 +266,7 @@ impl Sheet<'_> {
 }
 
 /// The colour of a verdict; its mark's shape says the same.
-pub(super) const fn colour(verdict: Verdict) -> RGBColor {
+pub(crate) const fn colour(verdict: Verdict) -> RGBColor {
     match verdict {
         Verdict::Conforms => FIELD,
         Verdict::Fails => FAILS,

@@ -2,8 +2,8 @@
 
 use super::{characteristic, length};
 use crate::record::{Advice, CharacteristicResult, DrawingFacts, Reason, SpringResult, Verdict};
-use crate::report::figure::{Place, with_unit};
 use crate::units::{Finite, System};
+use crate::wording::{Place, with_unit};
 
 /// The word of a verdict; a failure is written in capitals so that it stands out without colour.
 pub(crate) const fn verdict_word(verdict: Verdict) -> &'static str {
