@@ -3,7 +3,7 @@
 
 use serde::{Deserialize, Serialize};
 
-use crate::stats::{Dof, StatsError, student_quantile};
+use crate::stats::{Dof, StatsError, standard_deviation, student_quantile};
 
 /// The probability below +2 standard deviations of a normal distribution: k is 2 where ν is infinite.
 const BELOW_TWO_SIGMA: f64 = 0.977_249_868_051_820_8;
@@ -189,10 +189,36 @@ pub fn combine(estimates: &[Estimate]) -> Result<Option<Estimate>, StatsError> {
     for line in &mut lines {
         line.contribution /= count;
     }
+    add_spread(&mut lines, estimates);
     if estimates.iter().any(|one| one.uncertainty.is_none()) {
         return Ok(Some(Estimate::without_uncertainty(value, lines)));
     }
     Estimate::new(value, lines).map(Some)
+}
+
+/// Repeats that differ by more than their own lines say: then their spread is counted instead, never both.
+fn add_spread(lines: &mut Vec<Line>, estimates: &[Estimate]) {
+    let values: Vec<f64> = estimates.iter().map(|one| one.value).collect();
+    let Some(sd) = standard_deviation(&values) else {
+        return;
+    };
+    let count = values.len() as f64;
+    let own = |line: &&mut Line| line.part == Part::Own && line.counted;
+    let stated: f64 = lines
+        .iter_mut()
+        .filter(own)
+        .map(|line| line.contribution.powi(2))
+        .sum();
+    let spread = Line::new("repeat to repeat", Part::Own, sd / count.sqrt())
+        .with_dof(Dof::Finite(count - 1.0));
+    let larger = spread.contribution.powi(2) > stated;
+    for line in lines.iter_mut().filter(own) {
+        line.counted = !larger;
+    }
+    lines.push(Line {
+        counted: larger,
+        ..spread
+    });
 }
 
 #[cfg(test)]

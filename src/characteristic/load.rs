@@ -124,6 +124,9 @@ pub(super) fn estimate(
         setup.conditions.temperature,
         local.load,
     ));
+    if curve.starts_loaded {
+        return Ok(Ok(Estimate::without_uncertainty(local.load, lines))); // the zero may be anything
+    }
     Estimate::new(local.load, lines).map(Ok)
 }
 

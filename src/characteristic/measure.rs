@@ -12,6 +12,9 @@ use super::length::{self, OwnFree, Solid};
 use super::rate::{self, RateFit};
 use super::{load, loops};
 
+/// Work gained up to this is never called a reversal, %: drift of a load cell between strokes may look like it.
+const LEAST_GAIN: f64 = 0.5;
+
 /// What measuring needs to know besides the curve: the same for the whole lot.
 #[derive(Clone, Copy, Debug)]
 pub struct Setup<'a> {
@@ -178,6 +181,7 @@ pub fn measure(
         } else {
             spring.measure(quantity).map_err(failed)?
         };
+        refuse_reversed(curve, quantity, &measured)?;
         characteristics.push(Characteristic { quantity, measured });
     }
     let origin = load::origin(setup, curve, own).map(|origin| origin.u);
@@ -185,6 +189,30 @@ pub fn measure(
         fit: fit.ok(),
         characteristics,
         origin,
+    })
+}
+
+/// A spring gives back less than it takes: work gained beyond the uncertainty means rows out of order.
+fn refuse_reversed(
+    curve: &Curve,
+    quantity: Quantity,
+    measured: &Measured,
+) -> Result<(), CurveError> {
+    let Measured::Value(estimate) = measured else {
+        return Ok(());
+    };
+    let expanded = estimate
+        .uncertainty
+        .map_or(0.0, |uncertainty| uncertainty.expanded);
+    if quantity != Quantity::Hysteresis || estimate.value + expanded.max(LEAST_GAIN) >= 0.0 {
+        return Ok(());
+    }
+    Err(CurveError::Reversed {
+        spring: curve.id.clone(),
+        export: curve.export.clone(),
+        first: curve.lines.0,
+        last: curve.lines.1,
+        percent: -estimate.value,
     })
 }
 

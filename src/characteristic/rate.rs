@@ -42,14 +42,21 @@ impl RateFit {
     }
 }
 
-/// The judged stroke of a curve; `None` where the export does not hold it.
-pub(super) fn judged<'c>(setup: &Setup<'_>, curve: &'c Curve) -> Option<&'c Path> {
-    let stroke = setup.stroke;
-    let strokes = match stroke.way {
+/// The strokes of the judged way, those of presetting left out.
+fn strokes<'c>(setup: &Setup<'_>, curve: &'c Curve) -> &'c [Path] {
+    let all = match setup.stroke.way {
         Way::Loading => &curve.loading,
         Way::Unloading => &curve.unloading,
     };
-    stroke
+    let preset = usize::try_from(setup.conditions.presetting_recorded).unwrap_or(usize::MAX);
+    all.get(preset..).unwrap_or(&[])
+}
+
+/// The judged stroke of a curve, counted after the presetting strokes; `None` where the export does not hold it.
+pub(super) fn judged<'c>(setup: &Setup<'_>, curve: &'c Curve) -> Option<&'c Path> {
+    let strokes = strokes(setup, curve);
+    setup
+        .stroke
         .index
         .map_or(strokes.last(), |index| strokes.get(index))
 }
@@ -196,25 +203,21 @@ fn scatter_lines(fit: &RateFit, strokes: &[f64]) -> Vec<Line> {
     lines
 }
 
-/// The rates of all strokes of the judged way after presetting, N/mm.
+/// The rates of all strokes of the judged way after presetting, N/mm; none where there is only one.
 fn stroke_rates(setup: &Setup<'_>, curve: &Curve, free: Option<f64>) -> Vec<f64> {
-    let preset = usize::try_from(setup.conditions.presetting_recorded).unwrap_or(usize::MAX - 1);
-    let strokes = match setup.stroke.way {
-        Way::Loading => &curve.loading,
-        Way::Unloading => &curve.unloading,
-    };
-    if strokes.len() <= preset + 1 {
-        return Vec::new(); // one stroke has no spread
+    let strokes = strokes(setup, curve);
+    if strokes.len() < 2 {
+        return Vec::new();
     }
     let rate = |path: &Path| {
-        let (from, to) = setup
+        let window = setup
             .bounds
-            .on(curve, path, setup.rig.contact_load.get(), free)
-            .ok()?;
+            .on(curve, path, setup.rig.contact_load.get(), free);
+        let (from, to) = window.ok()?;
         let nodes = path.between(from, to);
         let travel: Vec<f64> = nodes.iter().map(|node| node.u).collect();
         let load: Vec<f64> = nodes.iter().map(|node| node.load).collect();
         LineFit::through(&travel, &load).ok().map(|line| line.slope)
     };
-    strokes.iter().skip(preset).filter_map(rate).collect()
+    strokes.iter().filter_map(rate).collect()
 }

@@ -54,6 +54,10 @@ pub struct Curve {
     pub unloading: Vec<Path>,
     /// Smallest and largest load, N.
     pub loads: (f64, f64),
+    /// Strokes too short to be strokes of the test, left out.
+    pub short_strokes: usize,
+    /// Whether the export starts above the contact load without an empty reading: then no load has a known zero.
+    pub starts_loaded: bool,
 }
 
 impl Curve {
@@ -112,7 +116,8 @@ pub fn correct(raw: &RawCurve, rig: &Rig) -> Result<Curve, CurveError> {
     }
     let resolution = rig.travel.resolution.get();
     let (mut loading, mut unloading) = (Vec::new(), Vec::new());
-    for stroke in split(&u, resolution) {
+    let strokes = split(&u, resolution);
+    for stroke in strokes.full {
         let path = Path::new(
             &u,
             &load,
@@ -134,7 +139,8 @@ pub fn correct(raw: &RawCurve, rig: &Rig) -> Result<Curve, CurveError> {
     if loading.is_empty() {
         return Err(site.no_contact(loads.1 - loads.0, contact_load));
     }
-    Ok(Curve {
+    let first = raw.load.first().copied().unwrap_or(0.0);
+    let curve = Curve {
         id: raw.id.clone(),
         export: raw.export.clone(),
         lines: (raw.first_line, site.last),
@@ -147,7 +153,11 @@ pub fn correct(raw: &RawCurve, rig: &Rig) -> Result<Curve, CurveError> {
         loading,
         unloading,
         loads,
-    })
+        short_strokes: strokes.short,
+        starts_loaded: zero == Zero::NotRead && first > contact_load,
+    };
+    site.check_rising(&curve, contact_load)?;
+    Ok(curve)
 }
 
 struct Site<'a> {
@@ -175,6 +185,28 @@ impl Site<'_> {
             rise,
             contact,
         }
+    }
+
+    /// Refuses a loading stroke in which the load stands still while the platen goes on.
+    fn check_rising(&self, curve: &Curve, contact: f64) -> Result<(), CurveError> {
+        for path in &curve.loading {
+            let start = curve.touched(path, contact).unwrap_or(0.0);
+            let still = solid::plain_rate(path, start)
+                .and_then(|rate| solid::standstill(path, start, rate));
+            if let Some(still) = still {
+                let (spring, export, ..) = self.names();
+                let (first, last) = still.lines;
+                return Err(CurveError::StandsStill {
+                    spring,
+                    export,
+                    first,
+                    last,
+                    load: still.load,
+                    travel: still.travel,
+                });
+            }
+        }
+        Ok(())
     }
 
     /// Travel as `u`, growing with compression.

@@ -106,4 +106,35 @@ pub enum CurveError {
         window: f64,
         resolution: f64,
     },
+    #[error(
+        "spring `{spring}` in `{export}` (lines {first}–{last}): the load stands at {load:.2} N while the platen goes on by {travel:.3} mm"
+    )]
+    #[diagnostic(
+        code(coilassay::curve::standstill),
+        help(
+            "a load cell at its end, a slipping grip or a buckling spring: mend the set-up and measure again"
+        )
+    )]
+    StandsStill {
+        spring: String,
+        export: String,
+        first: u64,
+        last: u64,
+        load: f64,
+        travel: f64,
+    },
+    #[error(
+        "spring `{spring}` in `{export}` (lines {first}–{last}): the unloading work is larger than the loading work by {percent:.2} %, more than the uncertainty of the difference"
+    )]
+    #[diagnostic(
+        code(coilassay::curve::reversed),
+        help("a spring gives back less than it takes: are the rows in reverse order, or sorted?")
+    )]
+    Reversed {
+        spring: String,
+        export: String,
+        first: u64,
+        last: u64,
+        percent: f64,
+    },
 }

@@ -18,5 +18,5 @@ pub use error::CurveError;
 pub use path::{Node, Path, Side};
 pub use reduced::{Axis, MOST_POINTS, Reduced, thin};
 pub use solid::Rise;
-pub use strokes::{Stroke, split};
+pub use strokes::{Stroke, Strokes, split};
 pub use window::{Bounds, WindowMiss, WindowOf, full_load, window_of};

@@ -85,19 +85,18 @@ impl Path {
         Self { nodes, side }
     }
 
-    /// The travel at which the smoothed load first reaches `level`, in mm: loads averaged over five nodes and
-    /// made monotone, then interpolated. `None` where the stroke starts above the level or never reaches it.
+    /// The travel at which the smoothed load first reaches `level`, in mm: loads averaged over five nodes and made
+    /// monotone, then interpolated. `None` where the stroke starts above the level or never reaches it; the first and
+    /// last two nodes cannot reach it alone, so that a single reading opens no window.
     pub fn crossing(&self, level: f64) -> Option<f64> {
         let mut before: Option<(f64, f64)> = None;
-        for place in 0..self.nodes.len() {
-            let (u, load) = self.smoothed(place)?;
+        for five in self.nodes.windows(2 * SMOOTH + 1) {
+            let count = five.len() as f64;
+            let u = five.iter().map(|node| node.u).sum::<f64>() / count;
+            let load = five.iter().map(|node| node.load).sum::<f64>() / count;
             if load >= level {
                 let (u0, load0) = before?;
-                return Some(if load > load0 {
-                    u0 + (level - load0) / (load - load0) * (u - u0)
-                } else {
-                    u
-                });
+                return Some(u0 + (level - load0) / (load - load0) * (u - u0));
             }
             if before.is_none_or(|(_, highest)| load > highest) {
                 before = Some((u, load));
@@ -133,19 +132,6 @@ impl Path {
         let sizes: Vec<f64> = self.nodes.windows(3).filter_map(off).collect();
         // For normal scatter the median size is 0.6745 standard deviations.
         Some(crate::stats::median(sizes)? / 0.674_489_75)
-    }
-
-    /// Mean travel and load of the nodes around `place`; fewer near the ends, always as many on either side.
-    fn smoothed(&self, place: usize) -> Option<(f64, f64)> {
-        let reach = SMOOTH
-            .min(place)
-            .min(self.nodes.len().checked_sub(place + 1)?);
-        let around = self.nodes.get(place - reach..=place + reach)?;
-        let count = around.len() as f64;
-        Some((
-            around.iter().map(|node| node.u).sum::<f64>() / count,
-            around.iter().map(|node| node.load).sum::<f64>() / count,
-        ))
     }
 
     /// The nodes with `from ≤ u ≤ to`.

@@ -7,6 +7,14 @@ const STEEP: f64 = 5.0;
 /// The travel over which a tangent is taken, as a share of the stroke.
 const TANGENT: f64 = 1.0 / 200.0;
 
+/// Nodes a rise is made of at least: one reading is no rise.
+const LEAST: usize = 3;
+/// The travel over which the load must have risen, as a share of the stroke, and the least rise over it, as a share of
+/// what the stroke's rate would give.
+const STILL: (f64, f64) = (0.03, 0.05);
+/// Loads below this share of the largest may belong to the ends' seating.
+const SEATED: f64 = 0.2;
+
 /// Where the rise to solid begins.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub struct Rise {
@@ -57,6 +65,9 @@ pub(super) fn rise(path: &Path, contact_u: f64, rate: f64) -> Option<Rise> {
             }
             break;
         }
+        if nodes.len() - place < LEAST {
+            continue;
+        }
         begin = Some(Rise {
             u: here.u,
             load: here.load,
@@ -64,4 +75,43 @@ pub(super) fn rise(path: &Path, contact_u: f64, rate: f64) -> Option<Rise> {
         });
     }
     begin
+}
+
+/// A stretch of a loading stroke in which the load stands still while the platen goes on: a load cell at its end, or a
+/// spring that gives way.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub(super) struct Standstill {
+    pub(super) load: f64,
+    pub(super) travel: f64,
+    pub(super) lines: (u64, u64),
+}
+
+/// The first standstill of `path` from `start` on; `rate` is the stroke's own, N/mm.
+pub(super) fn standstill(path: &Path, start: f64, rate: f64) -> Option<Standstill> {
+    let (_, end) = path.reach()?;
+    let largest = path.nodes.iter().map(|node| node.load).fold(0.0, f64::max);
+    let over = STILL.0 * (end - start);
+    let mut ahead = 0;
+    for (place, here) in path.nodes.iter().enumerate() {
+        if here.u < start || here.load < SEATED * largest {
+            continue;
+        }
+        ahead = ahead.max(place);
+        while path
+            .nodes
+            .get(ahead)
+            .is_some_and(|there| there.u - here.u < over)
+        {
+            ahead += 1;
+        }
+        let there = path.nodes.get(ahead)?;
+        if there.load - here.load < STILL.1 * rate * (there.u - here.u) && ahead - place >= LEAST {
+            return Some(Standstill {
+                load: here.load,
+                travel: there.u - here.u,
+                lines: (here.first_line, there.last_line),
+            });
+        }
+    }
+    None
 }

@@ -18,10 +18,19 @@ pub struct Stroke {
     pub points: Range<usize>,
 }
 
+/// The strokes of a travel record.
+#[derive(Clone, Debug, Default, PartialEq, Eq)]
+pub struct Strokes {
+    /// The full ones, in order.
+    pub full: Vec<Stroke>,
+    /// Short ones left out (a jog, a stroke cut off).
+    pub short: usize,
+}
+
 /// The full strokes of a travel record `u` (mm, growing with compression), split where it turns back by
 /// more than 2 % of the travel or five steps of its `resolution`. Shorter strokes than half the longest of
 /// their way (jogging, a start-up move) are left out.
-pub fn split(u: &[f64], resolution: f64) -> Vec<Stroke> {
+pub fn split(u: &[f64], resolution: f64) -> Strokes {
     let (low, high) = u
         .iter()
         .fold((f64::INFINITY, f64::NEG_INFINITY), |(low, high), x| {
@@ -55,7 +64,7 @@ pub fn split(u: &[f64], resolution: f64) -> Vec<Stroke> {
             .fold(0.0, f64::max)
     };
     let (loading, unloading) = (longest(Way::Loading), longest(Way::Unloading));
-    let full = |stroke: &Stroke, span: f64| {
+    let is_full = |stroke: &Stroke, span: f64| {
         span > 0.0
             && span
                 >= FULL
@@ -65,11 +74,13 @@ pub fn split(u: &[f64], resolution: f64) -> Vec<Stroke> {
                         unloading
                     }
     };
-    strokes
+    let (full, short): (Vec<_>, Vec<_>) = strokes
         .into_iter()
-        .filter(|(stroke, span)| full(stroke, *span))
-        .map(|(stroke, _)| stroke)
-        .collect()
+        .partition(|(stroke, span)| is_full(stroke, *span));
+    Strokes {
+        full: full.into_iter().map(|(stroke, _)| stroke).collect(),
+        short: short.len(),
+    }
 }
 
 /// Indices where the record turns, first and last point included.
@@ -134,7 +145,7 @@ mod tests {
                 u.push(f64::from(step) * 0.1);
             }
         }
-        let strokes = split(&u, 0.001);
+        let strokes = split(&u, 0.001).full;
         let ways: Vec<Way> = strokes.iter().map(|stroke| stroke.way).collect();
         assert_eq!(
             ways,
@@ -156,11 +167,11 @@ mod tests {
         u.extend((1..=100).map(f64::from));
         let strokes = split(&u, 0.001);
         assert_eq!(
-            strokes.len(),
-            1 + usize::from(strokes.iter().any(|stroke| stroke.way == Way::Unloading))
+            (strokes.full.len(), strokes.short),
+            (1 + usize::from(strokes.full.len() == 2), 1)
         );
         assert_eq!(
-            strokes.last().map(|stroke| stroke.points.end),
+            strokes.full.last().map(|stroke| stroke.points.end),
             Some(u.len())
         );
     }
