@@ -28,6 +28,22 @@ pub(super) fn by_gauge(own: OwnFree) -> Result<Estimate, StatsError> {
     )
 }
 
+/// Whether the gauge and the bench disagree by more than both expanded uncertainties; never where the bench gives none.
+///
+/// # Errors
+/// [`StatsError`] from the coverage factor.
+pub(super) fn differs(setup: &Setup<'_>, curve: &Curve, own: OwnFree) -> Result<bool, StatsError> {
+    let Ok(bench) = free(setup, curve)? else {
+        return Ok(false);
+    };
+    let expanded = |of: &Estimate| {
+        of.uncertainty
+            .map_or(0.0, |uncertainty| uncertainty.expanded)
+    };
+    let gauge = by_gauge(own)?;
+    Ok((bench.value - own.value).abs() > expanded(&bench).hypot(expanded(&gauge)) * 1.5)
+}
+
 /// The free length from contact on the first loading stroke after presetting, contact load put back, mm.
 ///
 /// # Errors
@@ -43,7 +59,6 @@ pub(super) fn free(
         return Ok(Err(Absence::ContactNotRecorded));
     };
     let length = -contact.u;
-    let seating = setup.rig.contact_load.get() / contact.slope;
     let shown = vec![
         Line::new("contact", Part::Own, contact.scatter),
         Line::new(
@@ -51,8 +66,7 @@ pub(super) fn free(
             Part::Own,
             setup.rig.travel.resolution.get() / 12.0_f64.sqrt(),
         ),
-        // The stretch below the contact load is not seen: half of it either way, rectangular.
-        Line::new("seating", Part::Own, seating / 12.0_f64.sqrt()),
+        Line::new("seating", Part::Own, contact.seating()),
     ];
     let mut lines = with_repeatability(shown, setup.repeatability("free_length"));
     let zero = load::zero_line(setup, curve);
@@ -112,7 +126,7 @@ pub(super) fn solid(
         setup.rig.travel.resolution.get() / 12.0_f64.sqrt(),
     );
     if let Some(rise) = curve.rise(path, setup.rig.contact_load.get()) {
-        let tangent = Line::new("tangent", Part::Own, rise.tangent_over / 3.0_f64.sqrt());
+        let tangent = Line::new("tangent", Part::Own, rise.tangent_over / 12.0_f64.sqrt());
         let shown = with_repeatability(
             vec![tangent, resolution],
             setup.repeatability("solid_length"),
@@ -148,6 +162,7 @@ fn length_lines(
     let (scaled, zeroed_at) = if let Some((own, contact)) = own {
         lines.push(Line::new("own free length", Part::Common, own.standard));
         lines.push(Line::new("contact", Part::Own, contact.scatter));
+        lines.push(Line::new("seating", Part::Own, contact.seating()));
         (at.length - own.value, 0.0)
     } else {
         lines.push(Line::new("length zero", Part::Common, rig.zero.get()));

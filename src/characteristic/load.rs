@@ -108,6 +108,11 @@ pub(super) fn estimate(
                 Part::Own,
                 local.slope * contact.scatter,
             ));
+            lines.push(Line::new(
+                "seating",
+                Part::Own,
+                local.slope * contact.seating(),
+            ));
             lines.extend(scales::travel_scale(
                 rig,
                 -local.slope * (own.value - length),

@@ -81,6 +81,12 @@ pub(super) fn set(
     let set = last.u - first.u;
     let shown = vec![
         Line::new("contact", Part::Own, first.scatter.hypot(last.scatter)),
+        // Both strokes seat alike; how far each is seen differs with where its points lie: half of the seating each.
+        Line::new(
+            "seating",
+            Part::Own,
+            first.seating().hypot(last.seating()) / 2.0,
+        ),
         Line::new(
             "resolution of travel",
             Part::Own,

@@ -112,6 +112,8 @@ pub struct Measurement {
     pub fit: Option<RateFit>,
     /// The characteristics, those of the drawing first and in its order.
     pub characteristics: Vec<Characteristic>,
+    /// Whether the gauge and the bench disagree on the free length by more than both expanded uncertainties.
+    pub gauge_differs: bool,
     /// Origin of lengths in `u` on the judged stroke, mm; `None` where there are none.
     pub origin: Option<f64>,
 }
@@ -185,9 +187,13 @@ pub fn measure(
         characteristics.push(Characteristic { quantity, measured });
     }
     let origin = load::origin(setup, curve, own).map(|origin| origin.u);
+    let gauge_differs = own
+        .map_or(Ok(false), |own| length::differs(setup, curve, own))
+        .map_err(failed)?;
     Ok(Measurement {
         fit: fit.ok(),
         characteristics,
+        gauge_differs,
         origin,
     })
 }

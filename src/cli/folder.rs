@@ -96,9 +96,12 @@ fn files_below(root: &Path, dir: &Path) -> io::Result<Vec<PathBuf>> {
     let mut found = Vec::new();
     for entry in fs::read_dir(dir)? {
         let entry = entry?;
-        if entry.file_type()?.is_dir() {
-            found.extend(files_below(root, &entry.path())?);
+        let inner = if entry.file_type()?.is_dir() {
+            files_below(root, &entry.path())?
         } else {
+            Vec::new()
+        };
+        if inner.is_empty() {
             found.push(
                 entry
                     .path()
@@ -107,6 +110,7 @@ fn files_below(root: &Path, dir: &Path) -> io::Result<Vec<PathBuf>> {
                     .to_owned(),
             );
         }
+        found.extend(inner);
     }
     found.sort();
     Ok(found)

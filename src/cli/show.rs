@@ -36,7 +36,7 @@ fn render(fault: &dyn Diagnostic, colour: bool) -> String {
     let handler = GraphicalReportHandler::new_themed(theme)
         .with_width(WIDTH)
         .with_links(false)
-        .with_context_lines(0);
+        .with_context_lines(1);
     let mut text = String::new();
     match handler.render_report(&mut text, fault) {
         Ok(()) => text,

@@ -19,4 +19,4 @@ pub use path::{Node, Path, Side};
 pub use reduced::{Axis, MOST_POINTS, Reduced, thin};
 pub use solid::Rise;
 pub use strokes::{Stroke, Strokes, split};
-pub use window::{Bounds, WindowMiss, WindowOf, full_load, window_of};
+pub use window::{Bounds, WindowMiss, WindowOf, full_load, nominal_rate, window_of};

@@ -105,17 +105,6 @@ impl Path {
         None
     }
 
-    /// The travel at which the load itself first reaches `level`, between that node and the one before, in mm. For the
-    /// kink at contact, which smoothing would round. `None` where the stroke starts above the level or never reaches it.
-    pub fn reached(&self, level: f64) -> Option<f64> {
-        let place = self.nodes.iter().position(|node| node.load >= level)?;
-        let (before, node) = (
-            self.nodes.get(place.checked_sub(1)?)?,
-            self.nodes.get(place)?,
-        );
-        Some(before.u + (level - before.load) / (node.load - before.load) * (node.u - before.u))
-    }
-
     /// Standard deviation of a single load about a smooth curve, N: from the median distance of a node from the chord
     /// between its neighbours, which a line does not have and a bend hardly. `None` under three nodes.
     pub fn scatter(&self) -> Option<f64> {

@@ -69,9 +69,9 @@ pub(super) fn rise(path: &Path, contact_u: f64, rate: f64) -> Option<Rise> {
             continue;
         }
         begin = Some(Rise {
-            u: here.u,
-            load: here.load,
-            tangent_over: over,
+            u: f64::midpoint(here.u, there.u), // the bend lies somewhere on this tangent
+            load: f64::midpoint(here.load, there.load),
+            tangent_over: (there.u - here.u).max(over),
         });
     }
     begin

@@ -48,12 +48,17 @@ pub fn full_load(drawing: &Drawing) -> f64 {
     if let Some(stated) = drawing.rate_test.full_load {
         return stated;
     }
-    let stated = drawing
+    nominal_rate(drawing) * travel_to_smallest(drawing)
+}
+
+/// The rate that springs should have, N/mm: as stated, or else theory's.
+pub fn nominal_rate(drawing: &Drawing) -> f64 {
+    let rate = drawing
         .requirements
         .iter()
-        .find(|one| one.quantity == Quantity::Rate)
-        .and_then(|one| one.limits.nominal);
-    stated.unwrap_or(drawing.theory.rate.get()) * travel_to_smallest(drawing)
+        .find(|one| one.quantity == Quantity::Rate);
+    rate.and_then(|one| one.limits.nominal)
+        .unwrap_or(drawing.theory.rate.get())
 }
 
 fn travel_to_smallest(drawing: &Drawing) -> f64 {

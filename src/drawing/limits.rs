@@ -72,7 +72,9 @@ pub fn read_limits(table: Table<'_>, scale: f64) -> Option<Limits> {
         (bound("minimum"), bound("maximum"))
     } else {
         let Some(nominal) = nominal else {
-            table.missing("nominal", help);
+            if !table.has("nominal") {
+                table.missing("nominal", help);
+            }
             return None;
         };
         let (minus, plus) = spread(table, nominal, scale)?;

@@ -8,7 +8,7 @@ use jiff::civil::Date;
 use crate::drawing::read_units;
 use crate::text::{At, InputFile, Keys, Source, Table, read_toml};
 
-use super::exports::{Export, resolve};
+use super::exports::{Export, natural_order, resolve};
 use super::parts::{
     Conditions, Finding, NotInspected, Repeat, read_caliper, read_conditions, read_finding,
     read_not_inspected, read_repeat,
@@ -102,6 +102,16 @@ fn read(root: Table<'_>, source: &Source) -> Option<Lot> {
     let rig = named_file(root, "rig", source);
     let exports = read_exports(root, source);
     let head = root.table("lot");
+    if head
+        .text("number")
+        .is_some_and(|number| number.trim().is_empty())
+    {
+        head.fault(
+            &head.place("number"),
+            "the lot number is empty",
+            "write the number as it stands on the lot",
+        );
+    }
     let number = head.required_text(
         "number",
         "write the lot number under [lot], in quotes: number = \"0044\"",
@@ -111,6 +121,17 @@ fn read(root: Table<'_>, source: &Source) -> Option<Lot> {
     }
     let size = head.whole("size").filter(|size| at_least_one(head, size));
     let repeats = read_all(root, "repeat", |table| read_repeat(table, source));
+    let again = |export: &Export| {
+        repeats
+            .iter()
+            .flatten()
+            .any(|repeat| repeat.export.path == export.path)
+    };
+    let exports = exports.map(|all| {
+        all.into_iter()
+            .filter(|export| !again(export))
+            .collect::<Vec<_>>()
+    });
     let findings = read_all(root, "finding", read_finding);
     let not_inspected = read_all(root, "not_inspected", |table| {
         read_not_inspected(table, units)
@@ -206,5 +227,6 @@ fn read_exports(root: Table<'_>, source: &Source) -> Option<Vec<Export>> {
             ),
         }
     }
+    exports.sort_by(|a, b| natural_order(&a.written, &b.written));
     Some(exports)
 }

@@ -23,7 +23,7 @@ pub struct Conditions {
 #[derive(Clone, Debug)]
 pub struct Repeat {
     /// The spring, as written.
-    pub spring: String,
+    pub spring: At<String>,
     /// Its export.
     pub export: Export,
     /// Why it was taken.
@@ -48,6 +48,8 @@ pub struct Finding {
 pub struct NotInspected {
     /// Which.
     pub quantity: Quantity,
+    /// Where the file says so.
+    pub span: std::ops::Range<usize>,
     /// Why.
     pub reason: String,
 }
@@ -71,7 +73,7 @@ pub(super) fn read_repeat(table: Table<'_>, source: &Source) -> Option<Repeat> {
     let reason = table.text("reason");
     let written = written?.value;
     Some(Repeat {
-        spring: spring?.value,
+        spring: spring?,
         export: Export {
             path: crate::text::beside(&source.path, &written),
             written,
@@ -117,9 +119,20 @@ pub(super) fn read_not_inspected(table: Table<'_>, units: System) -> Option<NotI
             "write it as in the drawing: rate, free_length …; a load needs at_length too",
         );
     }
+    let reason = table
+        .text("reason")
+        .filter(|reason| !reason.trim().is_empty());
+    if reason.is_none() && table.has("reason") {
+        table.fault(
+            &table.place("reason"),
+            "the reason is empty",
+            "say why it was not inspected",
+        );
+    }
     Some(NotInspected {
         quantity: quantity?,
-        reason: table.text("reason")?,
+        span: name.span,
+        reason: reason?,
     })
 }
 

@@ -11,6 +11,7 @@ use crate::record::{
 };
 use crate::rig::{Accuracy, Compliance, Known, Means, Rig, Scale};
 use crate::units::{Finite, Megapascals, Millimetres, Newtons};
+use crate::wording::number;
 
 /// A figure of a result; `None` where it is not finite.
 pub(super) fn figure(value: f64) -> Option<Finite> {
@@ -194,11 +195,15 @@ pub(super) fn window(drawing: &Drawing, bounds: Bounds) -> WindowFacts {
 pub(super) fn rig(rig: &Rig) -> RigFacts {
     let compliance = match rig.frame {
         Compliance::Measured { value, standard } => {
-            format!("{value} mm/N, standard uncertainty {standard} mm/N, corrected")
+            format!(
+                "{} mm/N, standard uncertainty {} mm/N, corrected",
+                plain(value),
+                plain(standard)
+            )
         }
         Compliance::NotCorrected { allowance } => format!(
             "not known, not corrected; 0 to {} % of the travel allowed for",
-            100.0 * allowance
+            plain(100.0 * allowance)
         ),
         Compliance::DeclaredNegligible => "declared negligible".to_owned(),
     };
@@ -229,13 +234,18 @@ fn scale(scale: &Scale, standard: &str, unit: &str) -> String {
         Accuracy::Class { class, .. } => format!("{standard} class {class}"),
         Accuracy::Certificate { standard, .. } => format!(
             "certificate, relative standard uncertainty {} %",
-            100.0 * standard
+            plain(100.0 * standard)
         ),
         Accuracy::DeclaredNegligible => "error declared negligible".to_owned(),
     };
     let resolution = match scale.resolution {
-        Known::Stated(step) => format!("resolution {step} {unit}"),
+        Known::Stated(step) => format!("resolution {} {unit}", plain(step)),
         Known::DeclaredNegligible => "resolution declared negligible".to_owned(),
     };
     format!("{accuracy}, {resolution}")
+}
+
+/// A figure of a file as text, conversions' long tails cut.
+fn plain(value: f64) -> String {
+    number(Some(value), 6)
 }

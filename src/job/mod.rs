@@ -5,6 +5,7 @@ mod expect;
 mod facts;
 mod rate;
 mod read;
+mod threads;
 
 pub use accept::{Accepted, Options, accept};
 pub use expect::{Ask, Expected, MemberAnswer, StressAnswer, expect};

@@ -1,6 +1,7 @@
 //! Reads exports and measures their springs as they come, in parallel; only figures and reduced curves are kept.
 
 use std::collections::BTreeMap;
+use std::hash::{DefaultHasher, Hasher};
 use std::path::Path;
 
 use rayon::prelude::*;
@@ -22,6 +23,10 @@ pub(super) struct Reading {
     pub(super) export: String,
     /// First and last line in the export.
     pub(super) lines: (u64, u64),
+    /// Equal for two measurements whose points are the same, digit for digit.
+    pub(super) fingerprint: u64,
+    /// Strokes too short to be strokes of the test.
+    pub(super) short_strokes: usize,
     /// A first idea of the rate, N/mm, for plausibility.
     pub(super) plain_rate: Option<f64>,
     /// Whether the empty platen was read.
@@ -115,6 +120,8 @@ fn reading(raw: &RawCurve, how: How<'_>) -> Result<Reading, MeasureError> {
         id: raw.id.clone(),
         export: curve.export,
         lines: curve.lines,
+        fingerprint: fingerprint(raw),
+        short_strokes: curve.short_strokes,
         plain_rate,
         zero_read: matches!(curve.zero, Zero::Read { .. }),
         loads: curve.loads,
@@ -122,6 +129,15 @@ fn reading(raw: &RawCurve, how: How<'_>) -> Result<Reading, MeasureError> {
         measurement,
         reduced,
     })
+}
+
+/// The points as one number.
+fn fingerprint(raw: &RawCurve) -> u64 {
+    let mut hasher = DefaultHasher::new();
+    for figure in raw.load.iter().chain(&raw.travel) {
+        hasher.write_u64(figure.to_bits());
+    }
+    hasher.finish()
 }
 
 /// The judged strokes thinned for drawing; abscissae are lengths where there are any, else deflections from contact.

@@ -15,6 +15,8 @@ pub struct Standing {
     pub failing: u64,
     /// Springs of the sample that may yet prove failing in this class.
     pub undecided: u64,
+    /// Those of them without a value for a requirement of this class.
+    pub unmeasured: u64,
     /// Springs of the sample that are not there.
     pub missing: u64,
 }
@@ -88,18 +90,18 @@ fn sample(springs: &[(String, Overall)], size: u64) -> impl Iterator<Item = &Ove
 
 fn stand(terms: &ClassTerms, springs: &[(String, Overall)]) -> Standing {
     let class = terms.class;
-    let sampled = || sample(springs, terms.sample_size);
-    let failing = sampled()
-        .filter(|spring| spring.failing == Some(class))
-        .count() as u64;
-    let could = |spring: &&Overall| {
-        spring.undecided.contains(&class) && spring.failing.is_none_or(|proven| proven < class)
+    let count = |of: &dyn Fn(&Overall) -> bool| {
+        sample(springs, terms.sample_size)
+            .filter(|spring| of(spring))
+            .count() as u64
     };
+    let open = |spring: &Overall| spring.failing.is_none_or(|proven| proven < class);
     Standing {
         terms: terms.clone(),
-        failing,
-        undecided: sampled().filter(could).count() as u64,
-        missing: terms.sample_size - (sampled().count() as u64),
+        failing: count(&|spring| spring.failing == Some(class)),
+        undecided: count(&|spring| spring.undecided.contains(&class) && open(spring)),
+        unmeasured: count(&|spring| spring.unmeasured.contains(&class) && open(spring)),
+        missing: terms.sample_size - count(&|_| true),
     }
 }
 
@@ -108,8 +110,9 @@ fn of_class(standing: &Standing, policy: Policy) -> (Decision, LotReason) {
         terms,
         failing,
         undecided,
+        unmeasured,
         missing,
-    } = standing;
+    } = standing.clone();
     let ClassTerms {
         class,
         accept,
@@ -117,60 +120,69 @@ fn of_class(standing: &Standing, policy: Policy) -> (Decision, LotReason) {
         sample_size,
         ..
     } = terms;
-    let (class, failing, undecided) = (*class, *failing, *undecided);
-    if failing >= *reject {
+    if failing >= reject {
         return (
             Decision::Rejected,
             LotReason::ProvenFailures {
                 class,
                 failing,
-                reject: *reject,
+                reject,
             },
         );
     }
-    if failing + undecided + missing <= *accept {
+    if failing + undecided + missing <= accept {
         return (
             Decision::Accepted,
             LotReason::WithinAcceptance {
                 class,
                 failing,
                 undecided,
-                accept: *accept,
+                accept,
             },
         );
     }
-    if *missing > 0 {
+    if missing > 0 {
+        let measured = sample_size - missing;
         return (
             Decision::Undecided,
             LotReason::Missing {
                 class,
-                measured: sample_size - missing,
-                wanted: *sample_size,
+                measured,
+                wanted: sample_size,
             },
         );
     }
     match policy {
-        Policy::Report => (
-            Decision::Undecided,
-            LotReason::UndecidedMatter {
-                class,
-                failing,
-                undecided,
-                accept: *accept,
-            },
-        ),
-        Policy::Pass => (
-            Decision::Accepted,
-            LotReason::UndecidedPass { class, undecided },
-        ),
         Policy::Fail => (
             Decision::Rejected,
             LotReason::UndecidedFail {
                 class,
                 failing,
                 undecided,
-                reject: *reject,
+                reject,
             },
+        ),
+        _ if failing + unmeasured > accept => (
+            Decision::Undecided,
+            LotReason::Unmeasured {
+                class,
+                failing,
+                unmeasured,
+                accept,
+            },
+        ),
+        Policy::Report => (
+            Decision::Undecided,
+            LotReason::UndecidedMatter {
+                class,
+                failing,
+                undecided,
+                accept,
+            },
+        ),
+        Policy::Pass => (
+            Decision::Accepted,
+            LotReason::UndecidedPass { class, undecided },
         ),
     }
 }
@@ -232,6 +244,7 @@ mod tests {
                 verdict,
                 failing,
                 undecided,
+                unmeasured: BTreeSet::new(),
                 simple: verdict,
                 simple_failing: failing,
             },
@@ -275,6 +288,25 @@ mod tests {
                 "{good} good, {failing} failing, {undecided} undecided, {policy:?}"
             );
         }
+    }
+
+    #[test]
+    fn what_was_never_measured_passes_by_no_agreement() {
+        let plan = [terms(Class::Major, 10, 2)];
+        let mut springs = lot(7, 0, 3);
+        for (_, spring) in springs.iter_mut().skip(7) {
+            spring.unmeasured = spring.undecided.clone();
+        }
+        assert_eq!(
+            decide(&plan, &springs, Policy::Pass).decision,
+            Decision::Undecided
+        );
+        springs.truncate(9);
+        springs.push(spring(None, &[Class::Major]));
+        assert_eq!(
+            decide(&plan, &springs, Policy::Pass).decision,
+            Decision::Accepted
+        );
     }
 
     #[test]

@@ -7,6 +7,7 @@ use std::fmt;
 
 use super::plan_table::{Cell, LETTERS, SIZES, cell};
 use crate::drawing::{AQLS, Level};
+use crate::quantity::Class;
 use crate::stats::{StatsError, binomial_cdf};
 
 /// Faults of a plan asked for.
@@ -14,9 +15,21 @@ use crate::stats::{StatsError, binomial_cdf};
 #[expect(missing_docs, reason = "the messages say it")]
 pub enum PlanError {
     #[error("a lot of {found} cannot be sampled, the table begins at 2")]
+    #[diagnostic(
+        code(coilassay::lot::size),
+        help(
+            "check `size` in the lot file; for so small a lot agree by = \"every-spring\" in the drawing"
+        )
+    )]
     LotTooSmall { found: u64 },
     #[error("AQL {found} % is not in the table, which has {}", listed())]
     UnknownAql { found: f64 },
+    #[error("a finding or requirement is {}, and the drawing agrees no AQL for that class", class.word())]
+    #[diagnostic(
+        code(coilassay::lot::aql),
+        help("write aql = {{ {} = … }} into the drawing's plan, or give the finding a class that has one", class.word())
+    )]
+    NoAql { class: Class },
     #[error("no plan for letter {letter} at AQL {aql} %")]
     NoPlan { letter: CodeLetter, aql: Aql },
 }

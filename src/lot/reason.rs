@@ -51,6 +51,17 @@ pub enum LotReason {
         /// Acceptance number.
         accept: u64,
     },
+    /// Springs without a value for a requirement cannot be counted as conforming, whatever is agreed on undecided ones.
+    Unmeasured {
+        /// Class.
+        class: Class,
+        /// Springs proven failing.
+        failing: u64,
+        /// Springs without a value.
+        unmeasured: u64,
+        /// Acceptance number.
+        accept: u64,
+    },
     /// Undecided springs count as conforming, as agreed.
     UndecidedPass {
         /// Class.

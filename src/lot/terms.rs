@@ -50,6 +50,9 @@ pub fn class_terms(
                 .map(|(_, aql)| *aql),
         };
         let Some(aql) = aql.map(Aql::try_from).transpose()? else {
+            if *class != Class::Critical {
+                return Err(PlanError::NoAql { class: *class });
+            }
             built.push(all(*class)); // sample size settled below
             continue;
         };

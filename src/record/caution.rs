@@ -2,7 +2,7 @@
 
 use serde::{Deserialize, Serialize};
 
-use crate::units::{Finite, Millimetres, NewtonsPerMillimetre};
+use crate::units::{Finite, Millimetres, Newtons, NewtonsPerMillimetre};
 
 /// Something the reader of page one must know.
 #[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
@@ -127,4 +127,63 @@ pub enum Caution {
         /// Which quantity.
         what: String,
     },
+    /// Something odd in the curves of some springs, which are judged all the same.
+    OddCurves {
+        /// The springs.
+        springs: Vec<String>,
+        /// What is odd.
+        what: Oddity,
+    },
+    /// Ids that differ only in case or leading zeros.
+    IdsAlike {
+        /// The springs.
+        springs: Vec<String>,
+    },
+    /// Limits so wide that a tolerance may have been meant as a share.
+    LimitsWide {
+        /// The characteristic.
+        name: String,
+        /// Length of a load.
+        at_length_mm: Option<Millimetres>,
+    },
+    /// A required load that rate and free length do not give.
+    LoadNotFromRate {
+        /// The test length.
+        at_length_mm: Millimetres,
+        /// Nominal load as required.
+        stated: Newtons,
+        /// Nominal rate times the deflection there.
+        expected: Newtons,
+    },
+    /// The drawn free length lies outside the limits required of it.
+    FreeLengthNotAsDrawn {
+        /// As drawn.
+        drawn: Millimetres,
+    },
+    /// The free lengths of the whole lot lie off the drawn one by much the same.
+    LengthsShifted {
+        /// Median of measured less drawn.
+        shift_mm: Millimetres,
+    },
+    /// The frame is said to take up a large share of the travel.
+    ComplianceLarge {
+        /// Compliance times the expected rate, 0 … 1.
+        share: Finite,
+    },
+}
+
+/// What is odd in a curve.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize)]
+#[serde(rename_all = "snake_case")]
+pub enum Oddity {
+    /// Strokes much shorter than the others were left out: a jog, or a stroke cut off.
+    StrokesLeftOut,
+    /// The rate differs from stroke to stroke by more than 1 %.
+    StrokesDiffer,
+    /// Loads scatter about the fitted line by more than 0.5 % of Fn.
+    Scatter,
+    /// The free length by gauge differs from the bench's by more than both uncertainties.
+    GaugeDiffers,
+    /// Repeats differ by more than their own uncertainty says.
+    RepeatsDiffer,
 }

@@ -11,7 +11,7 @@ pub use accept::{
     AcceptRecord, ClassPlan, ConditionFacts, DrawingFacts, Kind, LotFacts, OutputFile, PlanFacts,
     Provenance, RequirementFacts, SimpleAcceptance,
 };
-pub use caution::Caution;
+pub use caution::{Caution, Oddity};
 pub use facts::{MemberFacts, RigFacts, StressFacts, TheoryFacts, WindowFacts};
 pub use find::{Key, find, occurring};
 pub use spring::{

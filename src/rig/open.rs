@@ -13,12 +13,19 @@ use super::scale::{
     FORCE_CLASSES, Known, Scale, TRAVEL_CLASSES, declared_negligible, read_scale, standard_of,
 };
 
-const SCALE: &[&str] = &[
+const FORCE: &[&str] = &[
     "class",
     "certificate",
     "unknown",
     "resolution",
     "range",
+    "calibrated",
+];
+const TRAVEL: &[&str] = &[
+    "class",
+    "certificate",
+    "unknown",
+    "resolution",
     "calibrated",
     "zero",
     "set_at_length",
@@ -36,15 +43,14 @@ pub const KEYS: Keys = &[
     ("export.travel", &["column", "unit", "means", "at_zero_gap"]),
     ("export.time", &["column", "unit"]),
     ("export.spring", &["from", "column"]),
-    ("force", SCALE),
+    ("force", FORCE),
     ("force.certificate", &["relative", "k", "error", "drift"]),
     ("force.resolution", STATED),
     ("force.range", &["from", "to"]),
     ("force.calibrated", &["on", "until"]),
-    ("travel", SCALE),
+    ("travel", TRAVEL),
     ("travel.certificate", &["relative", "k", "error", "drift"]),
     ("travel.resolution", STATED),
-    ("travel.range", &["from", "to"]),
     ("travel.zero", STATED),
     ("travel.calibrated", &["on", "until"]),
     ("frame", &["compliance", "allowance"]),
@@ -131,7 +137,7 @@ fn read(root: Table<'_>, input: &InputFile) -> Option<Rig> {
     let units = read_units(root)?;
     let head = root.table("rig");
     let name = head.required_text("name", "write the rig's name under [rig]");
-    let export = read_export(root.table("export"), units);
+    let export = read_export(root.table("export"));
     let force = read_scale(root.table("force"), &FORCE_CLASSES, units.force());
     let travel = read_scale(root.table("travel"), &TRAVEL_CLASSES, units.length());
     let frame = read_frame(root.table("frame"), units);

@@ -1,14 +1,14 @@
 //! Reads `[export]` of a rig file: how the tester writes its files.
 
 use crate::text::Table;
-use crate::units::{ForceUnit, LengthUnit, System};
+use crate::units::{ForceUnit, LengthUnit};
 
 use super::dialect::{
     Decimal, Delimiter, Dialect, Encoding, LoadColumn, Pushing, SpringFrom, TravelColumn,
 };
 use super::open::Means;
 
-pub(super) fn read_export(table: Table<'_>, units: System) -> Option<(Dialect, Means)> {
+pub(super) fn read_export(table: Table<'_>) -> Option<(Dialect, Means)> {
     if !table.is_present() {
         table.fault(
             &table.span(),
@@ -53,7 +53,7 @@ pub(super) fn read_export(table: Table<'_>, units: System) -> Option<(Dialect, M
         Some(Encoding::Utf8)
     };
     let load = read_load(table.table("load"));
-    let travel = read_travel(table.table("travel"), units);
+    let travel = read_travel(table.table("travel"));
     let spring = read_spring(table.table("spring"));
     let time = table.table("time");
     let time = if time.is_present() {
@@ -162,7 +162,7 @@ enum Meaning {
     Platen,
 }
 
-fn read_travel(table: Table<'_>, units: System) -> Option<(TravelColumn, Means)> {
+fn read_travel(table: Table<'_>) -> Option<(TravelColumn, Means)> {
     let column = column(table);
     let unit = unit(table, LengthUnit::parse, "mm, in");
     if !table.has("means") {
@@ -179,9 +179,11 @@ fn read_travel(table: Table<'_>, units: System) -> Option<(TravelColumn, Means)>
             ("platen position", Meaning::Platen),
         ],
     )?;
+    // A reading of the column, so in the column's unit.
     let gap = table
         .number("at_zero_gap")
-        .map(|gap| gap.value * units.length());
+        .zip(unit)
+        .map(|(gap, unit)| gap.value * unit.millimetres());
     let means = match (meaning, gap) {
         (Meaning::Deflection, None) => Means::Deflection,
         (Meaning::Length, None) => Means::Length,

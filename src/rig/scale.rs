@@ -74,20 +74,10 @@ pub(super) fn read_scale(table: Table<'_>, classes: &[(&str, f64)], unit: f64) -
         unit,
         "write resolution = 0.01, or { unknown = \"declared negligible\" }",
     );
-    let range = table.table("range");
-    let range = match (range.not_negative("from"), range.positive("to")) {
-        (Some(from), Some(to)) if from.value < to.value => {
-            Some((from.value * unit, to.value * unit))
-        }
-        (None, None) if !range.is_present() => None,
-        _ => {
-            range.fault(
-                &range.span(),
-                "the range does not run from a smaller to a larger figure",
-                "write range = { from = 4.0, to = 200.0 }",
-            );
-            None
-        }
+    let range = if table.has("range") {
+        read_range(table.table("range"), unit)
+    } else {
+        None
     };
     let dates = table.table("calibrated");
     let calibrated = match (dates.date("on"), dates.date("until")) {
@@ -108,6 +98,23 @@ pub(super) fn read_scale(table: Table<'_>, classes: &[(&str, f64)], unit: f64) -
         range,
         calibrated,
     })
+}
+
+fn read_range(range: Table<'_>, unit: f64) -> Option<(f64, f64)> {
+    match (range.not_negative("from"), range.positive("to")) {
+        (Some(from), Some(to)) if from.value < to.value => {
+            Some((from.value * unit, to.value * unit))
+        }
+        _ => {
+            let what = "the range does not run from a smaller to a larger figure";
+            range.fault(
+                &range.span(),
+                what,
+                "write range = { from = 4.0, to = 200.0 }",
+            );
+            None
+        }
+    }
 }
 
 fn read_accuracy(table: Table<'_>, classes: &[(&str, f64)]) -> Option<Accuracy> {
@@ -141,15 +148,30 @@ fn read_accuracy(table: Table<'_>, classes: &[(&str, f64)]) -> Option<Accuracy> 
         }
     }
     let share = |key| certificate.share(key).map_or(0.0, |share| share.value);
-    let relative = certificate.share("relative")?.value;
+    let relative = certificate.share("relative")?;
+    if relative.value <= 0.0 {
+        let what = "a certificate without any uncertainty is none";
+        certificate.fault(
+            &relative.span,
+            what,
+            "write its relative expanded uncertainty, or unknown = \"declared negligible\"",
+        );
+        return None;
+    }
     Some(Accuracy::Certificate {
-        standard: relative / certificate.positive("k")?.value,
+        standard: relative.value / certificate.positive("k")?.value,
         error: share("error"),
         drift: share("drift"),
     })
 }
 
 pub(super) fn declared_negligible(table: Table<'_>) -> bool {
+    if !table.has("unknown") {
+        table.missing(
+            "unknown",
+            "write the figure itself, or { unknown = \"declared negligible\" }",
+        );
+    }
     table
         .word("unknown", &[("declared negligible", ())])
         .is_some()

@@ -34,7 +34,7 @@ pub fn printable(text: &str, alphabet: &Alphabet<'_>) -> String {
 /// Controls, line separators, bidi controls (Unicode standard annex 9) and other invisible marks.
 fn moves_text(character: char) -> bool {
     character.is_control()
-        || matches!(character, '\u{061C}' | '\u{200B}'..='\u{200F}' | '\u{2028}'..='\u{202E}' | '\u{2060}'..='\u{206F}' | '\u{FEFF}' | '\u{FFF9}'..='\u{FFFB}')
+        || matches!(character, '\u{00AD}' | '\u{034F}' | '\u{061C}' | '\u{200B}'..='\u{200F}' | '\u{2028}'..='\u{202E}' | '\u{2060}'..='\u{206F}' | '\u{FEFF}' | '\u{FFF9}'..='\u{FFFB}')
 }
 
 #[cfg(test)]

@@ -30,12 +30,13 @@ pub struct Table<'a> {
 impl<'a> Table<'a> {
     /// The root table of a file.
     pub(super) fn root(reader: &'a Reader<'a>, items: &'a DeTable<'a>) -> Self {
+        let end = reader.first_line_end();
         Self {
             reader,
             items: Some(items),
             path: "",
             start: 0,
-            end: 0,
+            end,
         }
     }
 

@@ -52,6 +52,11 @@ pub fn read_toml<T>(
 }
 
 impl Reader<'_> {
+    /// Where the first line ends: what is missing at the top of a file is shown there.
+    pub(super) fn first_line_end(&self) -> usize {
+        self.source.text.lines().next().map_or(0, str::len)
+    }
+
     pub(super) fn fault(&self, span: Range<usize>, message: &str, help: String) {
         let place = Place::in_text(&self.source.name, &self.source.text, span);
         self.faults.borrow_mut().push(Fault::new(

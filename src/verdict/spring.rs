@@ -16,6 +16,8 @@ pub struct Overall {
     pub failing: Option<Class>,
     /// Classes of the requirements left undecided.
     pub undecided: BTreeSet<Class>,
+    /// Those of them that have no value, or none whose uncertainty is known: no agreed term can count them as conforming.
+    pub unmeasured: BTreeSet<Class>,
     /// What simple acceptance would have said.
     pub simple: Verdict,
     /// Class of the gravest failure under simple acceptance.
@@ -30,11 +32,17 @@ pub fn overall<'a>(
 ) -> Overall {
     let found = findings.iter().copied().max();
     let (mut failing, mut undecided) = (found, BTreeSet::new());
+    let mut unmeasured = BTreeSet::new();
     let (mut simple_failing, mut simple_undecided) = (found, false);
     for (class, judged) in judged {
         match judged.verdict {
             Verdict::Fails => failing = failing.max(Some(class)),
-            Verdict::Undecided => _ = undecided.insert(class),
+            Verdict::Undecided => {
+                undecided.insert(class);
+                if judged.guard.is_none() {
+                    unmeasured.insert(class);
+                }
+            }
             Verdict::Conforms => {}
         }
         match judged.simple {
@@ -47,6 +55,7 @@ pub fn overall<'a>(
         verdict: verdict(failing, !undecided.is_empty()),
         failing,
         undecided,
+        unmeasured,
         simple: verdict(simple_failing, simple_undecided),
         simple_failing,
     }

@@ -2,7 +2,7 @@
 
 use super::{characteristic, count, length, list, sentence, springs};
 use crate::quantity::{Quantity, Unit};
-use crate::record::Caution;
+use crate::record::{Caution, Oddity};
 use crate::units::{Finite, System};
 use crate::wording::{Place, number, percent, with_uncertainty, with_unit};
 
@@ -22,12 +22,18 @@ pub(crate) fn caution(of: &Caution, show_in: System) -> String {
         | Caution::LengthBelowSmallest { .. }
         | Caution::UnitsConfirmed { .. }
         | Caution::BeyondSample { .. }
-        | Caution::GeometryNotJudged { .. } => about_the_sample(of, show_in),
+        | Caution::GeometryNotJudged { .. }
+        | Caution::IdsAlike { .. } => about_the_sample(of, show_in),
+        Caution::LimitsWide { .. }
+        | Caution::LoadNotFromRate { .. }
+        | Caution::FreeLengthNotAsDrawn { .. } => about_the_drawing(of, show_in),
         Caution::RobustDiffers { .. }
         | Caution::LackOfFit { .. }
         | Caution::NoZeroReading { .. }
         | Caution::LoadOutsideRange { .. }
         | Caution::OddRatio { .. }
+        | Caution::OddCurves { .. }
+        | Caution::LengthsShifted { .. }
         | Caution::RateNotFromGeometry { .. } => about_the_curves(of, show_in),
         Caution::ComplianceNotCorrected
         | Caution::DeclaredNegligible { .. }
@@ -35,6 +41,7 @@ pub(crate) fn caution(of: &Caution, show_in: System) -> String {
         | Caution::CalibrationUnknown { .. }
         | Caution::NoCheckOnRecord { .. }
         | Caution::UncertaintyLarge { .. }
+        | Caution::ComplianceLarge { .. }
         | Caution::CannotProve { .. } => about_the_bench(of, show_in),
     }
 }
@@ -49,6 +56,10 @@ fn about_the_bench(of: &Caution, show_in: System) -> String {
             format!("The calibration of the {scale} scale does not cover this measurement; it was valid until {until}.")
         }
         Caution::CalibrationUnknown { scale } => format!("The rig file gives no calibration dates for the {scale} scale."),
+        Caution::ComplianceLarge { share } => format!(
+            "The frame compliance in the rig file makes up {} of the spring's own; is it right?",
+            percent(Some(*share))
+        ),
         Caution::NoCheckOnRecord { every } => {
             format!("The rig file asks for a check every {every}; no passed check is on record.")
         }
@@ -62,6 +73,54 @@ fn about_the_bench(of: &Caution, show_in: System) -> String {
             sentence(&characteristic(name, *at_length_mm, show_in))
         ),
         _ => String::new(),
+    }
+}
+
+fn about_the_drawing(of: &Caution, show_in: System) -> String {
+    let load = |value| with_unit(Some(value), Unit::Newton, Place::Stated, show_in);
+    match of {
+        Caution::LimitsWide { name, at_length_mm } => format!(
+            "{}: the limits lie more than 30 % from nominal; was a tolerance in % meant?",
+            sentence(&characteristic(name, *at_length_mm, show_in))
+        ),
+        Caution::LoadNotFromRate {
+            at_length_mm,
+            stated,
+            expected,
+        } => format!(
+            "The drawing requires {} at {}; its rate and free length give {}.",
+            load(*stated),
+            length(Some(*at_length_mm), show_in),
+            with_unit(
+                Some(*expected),
+                Unit::Newton,
+                Place::Significant(4),
+                show_in
+            )
+        ),
+        Caution::FreeLengthNotAsDrawn { drawn } => format!(
+            "The drawn free length {} lies outside the limits required of it.",
+            length(Some(*drawn), show_in)
+        ),
+        _ => String::new(),
+    }
+}
+
+fn odd(what: Oddity) -> &'static str {
+    match what {
+        Oddity::StrokesLeftOut => {
+            "strokes much shorter than the others were left out; was the recording cut off?"
+        }
+        Oddity::StrokesDiffer => "the rate differs from stroke to stroke by more than 1 %",
+        Oddity::Scatter => {
+            "the loads scatter about the fitted line by more than 0.5 % of Fn; are strokes mixed?"
+        }
+        Oddity::GaugeDiffers => {
+            "the free length by gauge and the one the bench gives differ by more than both uncertainties; the gauge's is used"
+        }
+        Oddity::RepeatsDiffer => {
+            "the repeats differ by more than their own uncertainty says; their spread is counted"
+        }
     }
 }
 
@@ -120,6 +179,19 @@ fn about_the_curves(of: &Caution, show_in: System) -> String {
             "{}: the curve bends within the window; the rate is the mean over it.",
             sentence(&springs(names))
         ),
+        Caution::OddCurves {
+            springs: names,
+            what,
+        } => format!("{}: {}.", sentence(&springs(names)), odd(*what)),
+        Caution::LengthsShifted { shift_mm } => format!(
+            "The free lengths of nearly all springs lie off the drawn one by about {}; is the length zero of the rig right?",
+            with_unit(
+                Some(*shift_mm),
+                Unit::Millimetre,
+                Place::Significant(3),
+                show_in
+            )
+        ),
         Caution::NoZeroReading { springs: names } => format!(
             "{}: no readings before contact; the load zero is a line of the budget.",
             sentence(&springs(names))
@@ -159,6 +231,10 @@ fn about_the_sample(of: &Caution, show_in: System) -> String {
         Caution::UnitsConfirmed { finding } => {
             format!("The units were confirmed by hand over this finding: {finding}.")
         }
+        Caution::IdsAlike { springs: names } => format!(
+            "{}: these ids differ only in case or leading zeros; are they springs of their own?",
+            sentence(&springs(names))
+        ),
         Caution::BeyondSample { springs } => format!(
             "{} measured beyond the sample; they do not count for the decision.",
             count(*springs, "spring")

@@ -65,6 +65,18 @@ pub(crate) fn why(reason: &LotReason) -> String {
             in_class(*class),
             proven(*failing, *undecided)
         ),
+        LotReason::Unmeasured {
+            class,
+            failing,
+            unmeasured,
+            accept,
+        } => format!(
+            "{}: {} proven failing and {} without a value; the plan allows {accept}. What was not measured is never counted as \
+             conforming.",
+            in_class(*class),
+            count(*failing, "spring"),
+            unmeasured
+        ),
         LotReason::UndecidedPass { class, undecided } => format!(
             "{}: {} undecided, counted as conforming by the agreed terms; the burden of proof lies with the receiver.",
             in_class(*class),

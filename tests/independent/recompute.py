@@ -4,7 +4,7 @@
 Run by hand:  python3 tests/independent/recompute.py [samples/accepted] > tests/independent/accepted.txt
 Needs numpy and pandas. Reads the lot, drawing and rig files, the exports and the findings.
 
-Where the definitions leave a choice, the choice made here is marked CHOICE.
+Where the definitions leave a choice, the choice made here is marked CHOICE; where the crate documents its own, it is that one.
 """
 import glob
 import re
@@ -125,28 +125,79 @@ def averaged(s, f):
 
 
 def contact(s, f, at):
-    """Travel of first touch: where F_c is crossed first, less F_c over the local slope.
+    """Travel of first touch: the line through the first loads on the spring, taken back to zero.
 
-    CHOICE: the crossing is linear between the two readings about it; the local slope is that of
-    the least-squares line through the first 4 readings at or above F_c.
+    CHOICE (documented at `contact::find`): the line goes through the readings after the last one below F_c, up to 3 F_c and
+    at least three.
     """
-    i = int(np.argmax(f >= at))
-    crossing = s[i - 1] + (at - f[i - 1]) / (f[i] - f[i - 1]) * (s[i] - s[i - 1])
-    slope = np.polyfit(s[i:i + 4] - s[i], f[i:i + 4], 1)[0]
-    return crossing - at / slope
+    risen = int(np.argmax(f >= 3 * at))
+    first = int(np.flatnonzero(f[:risen] < at)[-1]) + 1
+    count = max(int(np.argmax(f[first:] > 3 * at)), 3)
+    x, y = s[first:first + count], f[first:first + count]
+    slope = ((x - x.mean()) * (y - y.mean())).sum() / ((x - x.mean()) ** 2).sum()
+    return x.mean() - y.mean() / slope
+
+
+def smoothed(values):
+    """Means over five neighbours; near the ends over as many as there are on either side."""
+    n = len(values)
+    reach = np.minimum(2, np.minimum(np.arange(n), n - 1 - np.arange(n)))
+    return np.array([values[i - r:i + r + 1].mean() for i, r in enumerate(reach)])
 
 
 def crossing(s, f, level):
     """Travel where the load first reaches a level; None if it never does.
 
-    CHOICE: smoothed and monotone = the running maximum of the loads as they are, then linear
-    between the two readings about the level.
+    CHOICE (documented at `Path::crossing`): smoothed = travel and load averaged over five readings; monotone = from the
+    highest smoothed load before; then linear.
     """
-    high = np.maximum.accumulate(f)
-    i = int(np.argmax(high >= level))
+    s, f = smoothed(s), smoothed(f)
+    i = int(np.argmax(f >= level))
     if i == 0:
         return None
-    return s[i - 1] + (level - high[i - 1]) / (high[i] - high[i - 1]) * (s[i] - s[i - 1])
+    k = int(np.argmax(f[:i]))
+    return s[k] + (level - f[k]) / (f[i] - f[k]) * (s[i] - s[k])
+
+
+def load_at(s, f, at):
+    """Load at a travel.
+
+    CHOICE (documented at `load::local`): the least-squares line through the readings within 1 % of the stroke's travel
+    on either side, where there are at least five and on both sides; else linear between the two neighbours.
+    """
+    near = abs(s - at) <= 0.01 * (s[-1] - s[0])
+    if near.sum() >= 5 and (s[near] <= at).any() and (s[near] > at).any():
+        slope = np.polyfit(s[near] - at, f[near], 1)
+        return float(slope[1])
+    return float(np.interp(at, s, f))
+
+
+def rise(s, f, touch):
+    """Travel where the rise to solid begins; None if it was not reached.
+
+    CHOICE (documented at `solid::rise`): a tangent is taken over 1/200 of the travel from contact to the end, from a
+    reading to the last one that is nearer than that or, if farther apart, the next; the rise begins in the middle of the first tangent from
+    which on every one is above 5 times the median slope over 20 pieces of the stroke.
+    """
+    start = contact(s, f, touch)
+    step, slopes = (s[-1] - start) / 20, []
+    ahead = [i for i in range(len(s)) if s[i] >= start]
+    last = ahead[0]
+    for i in ahead[1:]:
+        if s[i] - s[last] >= step:
+            slopes.append((f[i] - f[last]) / (s[i] - s[last]))
+            last = i
+    rate, over = float(np.median(slopes)), (s[-1] - start) / 200
+    begin, k = None, len(s) - 1
+    for i in range(len(s) - 2, -1, -1):
+        while k > i + 1 and s[k - 1] - s[i] >= over:
+            k -= 1
+        if f[k] - f[i] <= 5 * rate * max(s[k] - s[i], over):
+            if begin is None and s[k] - s[i] < over:
+                continue
+            break
+        begin = (s[i] + s[k]) / 2
+    return begin
 
 
 def line(s, f):
@@ -172,14 +223,18 @@ def curve(load, travel, rig):
     mm, newton = in_file_units(rig)
     compliance = rig["frame"]["compliance"]["value"] * mm / newton
     touch = rig["contact"]["load"] * newton
-    # F is net of the empty platens. CHOICE: the mean of the readings of the first stroke up to
-    # 0.5 mm of indicated travel before the first reading that stands F_c above the median of the
-    # first 5; the last half millimetre is left out, for the spring may touch there already.
-    start = np.median(load[:5])
-    i = int(np.argmax(load - start >= touch))
-    air = np.abs(travel[:i] - travel[i]) > 0.5
-    net = load - load[:i][air].mean()
     kind, zero = rig["export"]["travel"]["means"], rig["travel"].get("zeroed_at_load", 0.0) * newton
+    # F is net of the empty platens. CHOICE (documented at `correct::empty_readings`): the mean of the readings before
+    # the load stands F_c above the first one that lie more than F_c's travel before the place where the first rise,
+    # drawn from there to 6 F_c, starts.
+    indicated = travel if kind == "deflection" else -(
+        travel if kind == "length" else np.abs(travel - rig["export"]["travel"]["at_zero_gap"]))
+    above = load - load[0] > touch
+    i = int(np.argmax(above))
+    k = min(i + max(int(np.argmax(load[i:] - load[0] > 6 * touch)), 2), len(load) - 1)
+    slope = (load[k] - load[i]) / (indicated[k] - indicated[i])
+    clear = indicated[i] - (load[i] - load[0]) / slope - touch / slope
+    net = load - load[:i][indicated[:i] < clear].mean()
     if kind == "deflection":
         s = travel - compliance * net
         base = None
@@ -215,21 +270,17 @@ def figures(load, travel, rig, lot, drawing, window, gauge):
     out["window_from"], out["window_to"] = base - low, base - high
     for requirement in drawing["requirements"]["load"]:
         at = requirement["at_length"]
-        # CHOICE: linear between the two readings about the length.
-        out[f"load_{at:g}"] = float(np.interp(base - at, s, f))
-    # CHOICE: the last full cycle; common travel = from the contact of its loading stroke to the
-    # shorter of both strokes' largest travel.
+        out[f"load_{at:g}"] = load_at(s, f, base - at)
+    # CHOICE (documented at `loops::hysteresis`): the last full cycle; common travel = from the contact of its loading
+    # stroke to the shorter of both strokes' largest travel, and before any rise to solid.
+    solid = rise(s, f, touch)
     end = min(s.max(), ups[-1][0].max())
+    if solid is not None:
+        end = min(end, solid)
     begin = max(s0_last, s.min(), ups[-1][0].min())
     loading, unloading = work(s, f, begin, end), work(*ups[-1], begin, end)
     out["hysteresis"] = 100 * (loading - unloading) / loading
-    # CHOICE: the first length from which on every tangent between neighbouring readings is
-    # above 5 rates; the middle of that first pair.
-    steep = np.diff(f) / np.diff(s) > 5 * out["rate"]
-    k = len(steep)
-    while k and steep[k - 1]:
-        k -= 1
-    out["solid_length"] = base - (s[k] + s[k + 1]) / 2 if k < len(steep) else np.nan
+    out["solid_length"] = base - solid if solid is not None else np.nan
     return out
 
 
@@ -249,17 +300,17 @@ def main(folder):
     print(f"theory of {drawing['drawing']['number']}")
     lengths = [r["at_length"] for r in drawing["requirements"]["load"]]
     for m in members:
-        print(f"  {m['name']}: w {m['D'] / m['d']:.10g}  R {m['rate']:.10g} N/mm  Lc {m['Lc']:.10g} mm"
-              f"  Sa {m['Sa']:.10g} mm  Ln {m['Ln']:.10g} mm")
+        print(f"  {m['name']}: w {m['D'] / m['d']:.12g}  R {m['rate']:.12g} N/mm  Lc {m['Lc']:.12g} mm"
+              f"  Sa {m['Sa']:.12g} mm  Ln {m['Ln']:.12g} mm")
         for at in [*lengths, smallest, m["Lc"]]:
             load = m["rate"] * (m["L0"] - at)
-            print(f"    at {at:.10g} mm: {load:.10g} N; stress uncorrected, static, dynamic, Wahl: "
-                  + "  ".join(f"{v:.10g}" for v in stresses(m, load)) + " MPa")
-    print(f"  rate of all members {theory_rate:.10g} N/mm; from the drawing's rate: Fn {full:.10g} N"
-          f"; by theory: {theory_rate * (free - smallest):.10g} N")
+            print(f"    at {at:.12g} mm: {load:.12g} N; stress uncorrected, static, dynamic, Wahl: "
+                  + "  ".join(f"{v:.12g}" for v in stresses(m, load)) + " MPa")
+    print(f"  rate of all members {theory_rate:.12g} N/mm; from the drawing's rate: Fn {full:.12g} N"
+          f"; by theory: {theory_rate * (free - smallest):.12g} N")
     w = terms["window"]
     print(f"  window {w['from']} to {w['to']} of {w['of']}"
-          + (f": {0.3 * full:.10g} to {0.7 * full:.10g} N" if w["of"] == "full load" else ""))
+          + (f": {0.3 * full:.12g} to {0.7 * full:.12g} N" if w["of"] == "full load" else ""))
 
     def window(s, f, base, s0):
         if w["of"] == "length":
@@ -292,7 +343,7 @@ def main(folder):
     table = pd.DataFrame(found).T
     table = table.loc[sorted(table.index, key=lambda n: [int(p) if p.isdigit() else p for p in re.split(r"(\d+)", n)])]
     print(f"\nsprings ({len(table)}); N, mm, %")
-    with pd.option_context("display.width", 400, "display.max_columns", None, "display.float_format", "{:.10g}".format):
+    with pd.option_context("display.width", 400, "display.max_columns", None, "display.float_format", "{:.12g}".format):
         for group in np.array_split(np.array(table.columns), -(-len(table.columns) // 6)):
             print(table[list(group)].to_string(), end="\n\n")
         print("mean and SD over the springs")

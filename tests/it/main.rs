@@ -3,14 +3,53 @@
     clippy::unwrap_used,
     clippy::expect_used,
     clippy::panic,
+    clippy::print_stdout,
     clippy::indexing_slicing,
     reason = "tests"
 )]
 
+/// What the sample generator's modules return; they look for it at the root.
+type Outcome = Result<(), Box<dyn std::error::Error>>;
+
+#[path = "../../samples/generate/bench.rs"]
+#[expect(dead_code, reason = "the generator uses all of it")]
+mod bench;
+#[path = "../../samples/generate/known.rs"]
+mod known;
+#[path = "../../samples/generate/known_text.rs"]
+mod known_text;
+#[path = "../../samples/generate/random.rs"]
+mod random;
+#[path = "../../samples/generate/rigs.rs"]
+#[expect(dead_code, reason = "the generator uses all of it")]
+mod rigs;
+#[path = "../../samples/generate/spring.rs"]
+mod spring;
+#[path = "../../samples/generate/text.rs"]
+#[expect(dead_code, reason = "the generator uses all of it")]
+mod text;
+
+mod bad_input;
+mod bad_input_attacks;
+mod bad_input_curves;
+mod bad_input_exports;
+mod bad_input_files;
+mod bad_input_units;
+mod coverage;
+mod coverage_cases;
 mod export;
 mod fit_published;
+mod folder;
+mod folder_interrupted;
+mod independent;
+mod known_lots;
+mod lots;
+mod one_truth;
 mod plan_published;
+mod prints;
 mod published;
+mod relations;
+mod relations_units;
 mod report;
 mod rooms;
 mod springs_published;

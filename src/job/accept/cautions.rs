@@ -1,22 +1,31 @@
 //! What page one must say besides the decision.
 
+use std::collections::BTreeMap;
+
+use crate::curve::{full_load, nominal_rate};
 use crate::doubt::{is_odd, reading};
 use crate::drawing::{Drawing, Requirement, Rule};
 use crate::quantity::Quantity;
-use crate::record::{Caution, CharacteristicResult, Reason};
+use crate::record::{BudgetFigure, Caution, CharacteristicResult, Oddity, Reason};
 use crate::rig::Rig;
 use crate::stats::median;
 use crate::units::Finite;
 
 use super::super::facts::figure;
+use super::drawing_cautions::of_drawing;
 use super::figures::value_of;
-use super::rig_cautions::of_rig;
+use super::rig_cautions::{large_compliance, of_rig};
 use super::springs::Judged;
-use super::{Files, Options, expected_rate, guards};
+use super::{Files, Options, guards};
 
 /// U over the half tolerance beyond which a requirement carries a caution: a third under the guarded rule, a quarter
 /// under simple acceptance.
 const LARGE: (f64, f64) = (1.0 / 3.0, 1.0 / 4.0);
+/// Relative spread of the rate from stroke to stroke that is odd, and scatter about the line that is, over Fn.
+const STROKES: f64 = 0.01;
+const SCATTER: f64 = 0.005;
+/// Share of the springs whose free length must be off alike, and by how much of the drawn one, to doubt the length zero.
+const SHIFTED: (f64, f64) = (0.8, 0.03);
 
 /// Every caution of a lot, gravest matters first.
 pub(super) fn cautions(
@@ -33,11 +42,14 @@ pub(super) fn cautions(
         .collect();
     found.extend(of_drawing(&files.drawing));
     found.extend(odd_rates(&files.drawing, judged));
+    found.extend(shifted(&files.drawing, judged));
+    found.extend(alike(judged));
     for requirement in &files.drawing.requirements {
         found.extend(of_requirement(requirement, rule, judged));
     }
     found.extend(of_rig(&files.rig, options.date));
-    found.extend(of_curves(&files.rig, judged));
+    found.extend(large_compliance(&files.rig, nominal_rate(&files.drawing)));
+    found.extend(of_curves(&files.rig, full_load(&files.drawing), judged));
     found.extend(of_measurements(files, judged));
     let measured = judged.len() as u64;
     if measured > sample_size {
@@ -48,61 +60,12 @@ pub(super) fn cautions(
     found
 }
 
-fn of_drawing(drawing: &Drawing) -> Vec<Caution> {
-    let mut found = Vec::new();
-    let theory = &drawing.theory;
-    let stated = drawing
-        .requirements
-        .iter()
-        .find(|one| one.quantity == Quantity::Rate)
-        .and_then(|one| one.limits.nominal);
-    let expanded = 2.0 * theory.standard_uncertainty;
-    if let Some(stated) = stated
-        && (stated - theory.rate.get()).abs() > expanded
-        && let (Ok(stated), Ok(expanded_uncertainty)) = (stated.try_into(), expanded.try_into())
-    {
-        found.push(Caution::RateNotFromGeometry {
-            stated,
-            theory: theory.rate,
-            expanded_uncertainty,
-        });
-    }
-    for at_length_mm in drawing
-        .requirements
-        .iter()
-        .filter_map(|one| one.quantity.at_length())
-    {
-        if at_length_mm < theory.smallest {
-            found.push(Caution::LengthBelowSmallest {
-                at_length_mm,
-                smallest_mm: theory.smallest,
-            });
-        }
-    }
-    let required = |quantity: Quantity| {
-        drawing
-            .requirements
-            .iter()
-            .any(|one| one.quantity == quantity)
-    };
-    let toleranced = drawing
-        .members
-        .iter()
-        .any(|member| member.free.tolerance > 0.0);
-    if toleranced && !required(Quantity::FreeLength) {
-        found.push(Caution::GeometryNotJudged {
-            what: Quantity::FreeLength.title().to_owned(),
-        });
-    }
-    found
-}
-
 fn ids<'a>(judged: impl Iterator<Item = &'a Judged>) -> Vec<String> {
     judged.map(|spring| spring.result.id.clone()).collect()
 }
 
 fn odd_rates(drawing: &Drawing, judged: &[Judged]) -> Option<Caution> {
-    let expected = expected_rate(drawing);
+    let expected = nominal_rate(drawing);
     let odd: Vec<&Judged> = judged
         .iter()
         .filter(|spring| rate_of(spring).is_some_and(|rate| is_odd(rate, expected)))
@@ -124,6 +87,58 @@ fn odd_rates(drawing: &Drawing, judged: &[Judged]) -> Option<Caution> {
         ratio,
         reading,
     })
+}
+
+/// Nearly all free lengths off the drawn one by much the same: the springs may be wrong, or the length zero.
+fn shifted(drawing: &Drawing, judged: &[Judged]) -> Option<Caution> {
+    let drawn = drawing.members.first()?.free.nominal;
+    let lengths = judged
+        .iter()
+        .filter_map(|spring| value_of(&spring.result, Quantity::FreeLength)?.value);
+    let shifts: Vec<f64> = lengths.map(|length| length.get() - drawn).collect();
+    let middle = median(shifts.clone())?;
+    let alike = shifts
+        .iter()
+        .filter(|shift| (*shift - middle).abs() < middle.abs() / 2.0)
+        .count();
+    let enough =
+        alike as f64 >= SHIFTED.0 * shifts.len() as f64 && middle.abs() > SHIFTED.1 * drawn;
+    if enough {
+        Some(Caution::LengthsShifted {
+            shift_mm: middle.try_into().ok()?,
+        })
+    } else {
+        None
+    }
+}
+
+/// Ids that a person would read as the same.
+fn alike(judged: &[Judged]) -> Option<Caution> {
+    let plain = |id: &str| -> String {
+        let lower = id.to_lowercase();
+        let digits = lower
+            .split(|c: char| !c.is_ascii_digit())
+            .filter(|run| run.len() > 1 && run.starts_with('0'));
+        digits.fold(lower.clone(), |text, run| {
+            text.replacen(run, run.trim_start_matches('0'), 1)
+        })
+    };
+    let mut seen: BTreeMap<String, Vec<String>> = BTreeMap::new();
+    for spring in judged {
+        seen.entry(plain(&spring.result.id))
+            .or_default()
+            .push(spring.result.id.clone());
+    }
+    let springs: Vec<String> = seen
+        .into_values()
+        .filter(|same| same.len() > 1)
+        .flatten()
+        .collect();
+    if springs.is_empty() {
+        None
+    } else {
+        Some(Caution::IdsAlike { springs })
+    }
 }
 
 /// The measured rate, or the first idea of it where the window was not reached. N/mm.
@@ -162,7 +177,7 @@ fn of_requirement(requirement: &Requirement, rule: Rule, judged: &[Judged]) -> O
     })
 }
 
-fn of_curves(rig: &Rig, judged: &[Judged]) -> Vec<Caution> {
+fn of_curves(rig: &Rig, full_load: f64, judged: &[Judged]) -> Vec<Caution> {
     let named = |of: &dyn Fn(&Judged) -> bool| {
         let springs = ids(judged.iter().filter(|spring| of(spring)));
         if springs.is_empty() {
@@ -170,6 +185,9 @@ fn of_curves(rig: &Rig, judged: &[Judged]) -> Vec<Caution> {
         } else {
             Some(springs)
         }
+    };
+    let odd = |what: Oddity, of: &dyn Fn(&Judged) -> bool| {
+        named(of).map(|springs| Caution::OddCurves { springs, what })
     };
     let outside = |spring: &Judged| {
         rig.force
@@ -191,6 +209,11 @@ fn of_curves(rig: &Rig, judged: &[Judged]) -> Vec<Caution> {
             .map(|springs| Caution::LoadOutsideRange { springs }),
         named(&robust_differs).map(|springs| Caution::RobustDiffers { springs }),
         named(&bends).map(|springs| Caution::LackOfFit { springs }),
+        odd(Oddity::StrokesLeftOut, &|spring| spring.short_strokes),
+        odd(Oddity::StrokesDiffer, &strokes_differ),
+        odd(Oddity::Scatter, &|spring| scatters(spring, full_load)),
+        odd(Oddity::GaugeDiffers, &|spring| spring.gauge_differs),
+        odd(Oddity::RepeatsDiffer, &repeats_differ),
         named(&|spring| !spring.zero_read).map(|springs| Caution::NoZeroReading { springs }),
     ]
     .into_iter()
@@ -217,6 +240,35 @@ fn robust_differs(spring: &Judged) -> bool {
     rate.value.is_some_and(|value| {
         (value.get() - robust.get()).abs() > (0.005 * value.get()).max(3.0 * type_a)
     })
+}
+
+/// A budget line of a characteristic.
+fn line<'a>(of: &'a CharacteristicResult, source: &str) -> Option<&'a BudgetFigure> {
+    of.budget.iter().find(|line| line.source == source)
+}
+
+fn strokes_differ(spring: &Judged) -> bool {
+    let rate = value_of(&spring.result, Quantity::Rate);
+    let share = rate.and_then(|rate| {
+        Some(line(rate, "stroke to stroke")?.contribution.get() / rate.value?.get())
+    });
+    share.is_some_and(|share| share.abs() > STROKES)
+}
+
+fn scatters(spring: &Judged, full_load: f64) -> bool {
+    spring
+        .result
+        .fit
+        .as_ref()
+        .is_some_and(|fit| fit.residual_sd_n.get() > SCATTER * full_load)
+}
+
+fn repeats_differ(spring: &Judged) -> bool {
+    spring
+        .result
+        .characteristics
+        .iter()
+        .any(|one| line(one, "repeat to repeat").is_some_and(|line| line.counted))
 }
 
 fn bends(spring: &Judged) -> bool {

@@ -1,6 +1,45 @@
 //! Why a lot is not judged.
 
 use crate::characteristic::MeasureError;
+use crate::export::ExportError;
+
+/// A report of another room, shown beside others.
+#[derive(Debug)]
+pub(super) struct Forwarded(pub(super) miette::Report);
+
+impl std::fmt::Display for Forwarded {
+    fn fmt(&self, out: &mut std::fmt::Formatter<'_>) -> std::fmt::Result {
+        std::fmt::Display::fmt(&self.0, out)
+    }
+}
+
+impl std::error::Error for Forwarded {
+    fn source(&self) -> Option<&(dyn std::error::Error + 'static)> {
+        self.0.source()
+    }
+}
+
+impl miette::Diagnostic for Forwarded {
+    fn code<'a>(&'a self) -> Option<Box<dyn std::fmt::Display + 'a>> {
+        self.0.code()
+    }
+
+    fn help<'a>(&'a self) -> Option<Box<dyn std::fmt::Display + 'a>> {
+        self.0.help()
+    }
+
+    fn source_code(&self) -> Option<&dyn miette::SourceCode> {
+        self.0.source_code()
+    }
+
+    fn labels(&self) -> Option<Box<dyn Iterator<Item = miette::LabeledSpan> + '_>> {
+        self.0.labels()
+    }
+
+    fn related<'a>(&'a self) -> Option<Box<dyn Iterator<Item = &'a dyn miette::Diagnostic> + 'a>> {
+        self.0.related()
+    }
+}
 
 /// Why a lot is not judged.
 #[derive(Debug, thiserror::Error, miette::Diagnostic)]
@@ -46,12 +85,55 @@ pub(super) enum AcceptError {
         export: String,
         found: usize,
     },
-    #[error("the lot file names spring `{spring}` under `{key}`, but no export holds it")]
-    #[diagnostic(code(coilassay::accept::unknown_spring), help("springs here: {known}"))]
-    UnknownSpring {
+    #[error(
+        "spring `{second}` in `{second_export}` has the very points of spring `{first}` in `{first_export}`, digit for digit"
+    )]
+    #[diagnostic(
+        code(coilassay::accept::same_points),
+        help(
+            "no two measurements agree in every digit: was a file copied? Export the measurement again"
+        )
+    )]
+    SamePoints {
+        first: String,
+        first_export: String,
+        second: String,
+        second_export: String,
+    },
+    #[error("the repeat of spring `{spring}` in `{export}` holds spring `{found}`")]
+    #[diagnostic(
+        code(coilassay::accept::repeat_of_other),
+        help("name the export that holds spring `{spring}`, or the spring that was repeated")
+    )]
+    RepeatOfOther {
         spring: String,
-        key: &'static str,
-        known: String,
+        export: String,
+        found: String,
+    },
+    #[error("the caliper findings name spring `{spring}`, but no export holds it")]
+    #[diagnostic(
+        code(coilassay::accept::unknown_finding),
+        help("write ids as the exports do; springs here: {known}")
+    )]
+    UnknownFinding { spring: String, known: String },
+    #[error("nothing that the drawing requires was inspected")]
+    #[diagnostic(
+        code(coilassay::accept::nothing),
+        help("a lot is decided on at least one requirement: shorten `not_inspected`")
+    )]
+    NothingInspected,
+    #[error("{count} exports cannot be used")]
+    #[diagnostic(code(coilassay::accept::exports))]
+    Exports {
+        count: usize,
+        #[related]
+        shown: Vec<ExportError>,
+    },
+    #[error("the lot's files have faults")]
+    #[diagnostic(code(coilassay::accept::files))]
+    Files {
+        #[related]
+        faults: Vec<Forwarded>,
     },
     #[error("{what}")]
     #[diagnostic(

@@ -4,7 +4,7 @@ use std::collections::{HashMap, HashSet};
 
 use crate::intake::{Lot, natural_order};
 use crate::record::RepeatFacts;
-use crate::text::{Alphabet, Fault, Faults, Place, printable};
+use crate::text::{Alphabet, At, Fault, Faults, Place, printable};
 use crate::verdict::Overall;
 
 use super::super::read::Reading;
@@ -21,11 +21,16 @@ pub(super) struct Spring {
     pub(super) measurements: Vec<RepeatFacts>,
 }
 
-/// Groups readings into springs.
+/// Groups readings into springs; `by_column` says that exports name their springs in a column.
 ///
 /// # Errors
 /// Where one spring is measured twice without a repeat entry, or the lot is smaller than its sample.
-pub(super) fn springs(lot: &Lot, readings: Vec<Reading>) -> miette::Result<Vec<Spring>> {
+pub(super) fn springs(
+    lot: &Lot,
+    readings: Vec<Reading>,
+    by_column: bool,
+) -> miette::Result<Vec<Spring>> {
+    refuse_copies(&readings)?;
     let (first, again) = split(lot, readings);
     let mut springs: Vec<Spring> = Vec::new();
     let mut places: HashMap<String, usize> = HashMap::new();
@@ -48,16 +53,16 @@ pub(super) fn springs(lot: &Lot, readings: Vec<Reading>) -> miette::Result<Vec<S
             measurements,
         });
     }
-    add_repeats(lot, &mut springs, &places, again)?;
+    add_repeats(lot, &mut springs, &places, again, by_column)?;
     check_size(lot, springs.len())?;
-    for (spring, key) in lot
+    let named = lot
         .findings
         .iter()
-        .map(|one| (&one.spring, "finding"))
-        .chain(lot.sample.iter().map(|one| (one, "sample")))
-    {
+        .map(|one| &one.spring)
+        .chain(&lot.sample);
+    for spring in named {
         if !places.contains_key(&printed(&spring.value)) {
-            return Err(unknown(&spring.value, key, &springs).into());
+            return Err(unknown(lot, spring, &springs).into());
         }
     }
     springs.sort_by(|a, b| natural_order(&a.id, &b.id));
@@ -102,13 +107,34 @@ fn twice(known: &Spring, second: &Reading) -> AcceptError {
     }
 }
 
-fn unknown(spring: &str, key: &'static str, springs: &[Spring]) -> AcceptError {
-    let known: Vec<&str> = springs.iter().take(20).map(|one| one.id.as_str()).collect();
-    AcceptError::UnknownSpring {
-        spring: printed(spring),
-        key,
-        known: known.join(", "),
+/// A spring that the lot file names and no export holds, shown at its place.
+fn unknown(lot: &Lot, spring: &At<String>, springs: &[Spring]) -> Faults {
+    let place = Place::in_text(&lot.source.name, &lot.source.text, spring.span.clone());
+    let what = format!("no export holds spring `{}`", printed(&spring.value));
+    let help = format!("springs here: {}", known(springs));
+    Faults::new(&lot.source.name, vec![Fault::new(what, help, Some(place))])
+}
+
+/// The first ids, for help.
+pub(super) fn known(springs: &[Spring]) -> String {
+    let ids: Vec<&str> = springs.iter().take(20).map(|one| one.id.as_str()).collect();
+    ids.join(", ")
+}
+
+/// No two measurements agree in every digit: where they do, one is a copy.
+fn refuse_copies(readings: &[Reading]) -> Result<(), AcceptError> {
+    let mut seen: HashMap<u64, &Reading> = HashMap::new();
+    for reading in readings {
+        if let Some(first) = seen.insert(reading.fingerprint, reading) {
+            return Err(AcceptError::SamePoints {
+                first: first.id.clone(),
+                first_export: first.export.clone(),
+                second: reading.id.clone(),
+                second_export: reading.export.clone(),
+            });
+        }
     }
+    Ok(())
 }
 
 fn add_repeats(
@@ -116,7 +142,8 @@ fn add_repeats(
     springs: &mut [Spring],
     places: &HashMap<String, usize>,
     mut again: Vec<Reading>,
-) -> Result<(), AcceptError> {
+    by_column: bool,
+) -> miette::Result<()> {
     for repeat in &lot.repeats {
         let export = printed(&repeat.export.written);
         let (of_this, rest): (Vec<Reading>, Vec<Reading>) = again
@@ -125,15 +152,27 @@ fn add_repeats(
         again = rest;
         let found = of_this.len();
         let Ok([reading]) = <[Reading; 1]>::try_from(of_this) else {
+            let spring = printed(&repeat.spring.value);
             return Err(AcceptError::RepeatOfMany {
-                spring: printed(&repeat.spring),
+                spring,
                 export,
                 found,
-            });
+            }
+            .into());
         };
-        let Some(place) = places.get(&printed(&repeat.spring)) else {
-            return Err(unknown(&repeat.spring, "repeat", springs));
+        let spring = printed(&repeat.spring.value);
+        let Some(place) = places.get(&spring) else {
+            return Err(unknown(lot, &repeat.spring, springs).into());
         };
+        if by_column && reading.id != spring {
+            let found = reading.id;
+            return Err(AcceptError::RepeatOfOther {
+                spring,
+                export,
+                found,
+            }
+            .into());
+        }
         let Some(spring) = springs.get_mut(*place) else {
             continue;
         };

@@ -1,8 +1,10 @@
 //! `accept`: a lot file in, a decided and documented lot out.
 
 mod cautions;
+mod drawing_cautions;
 mod error;
 mod figures;
+mod files;
 mod group;
 mod plan;
 mod requirements;
@@ -15,21 +17,25 @@ use jiff::civil::Date;
 use rayon::prelude::*;
 
 use crate::characteristic::{Setup, wanted};
-use crate::curve::{Reduced, full_load, window_of};
+use crate::curve::{Reduced, full_load, nominal_rate, window_of};
 use crate::doubt::doubt;
 use crate::drawing::{Drawing, Rule};
-use crate::intake::{Caliper, Lot, read_findings};
+use crate::intake::Lot;
 use crate::lot::{Outcome, class_terms, decide};
-use crate::quantity::{Class, Quantity};
+use crate::quantity::Class;
 use crate::record::{AcceptRecord, FORMAT, Kind, LedgerFacts, Provenance, SimpleAcceptance, TOOL};
-use crate::rig::Rig;
+use crate::rig::SpringFrom;
 use crate::text::InputFile;
-use crate::{drawing, intake, rig};
 
 use super::facts;
-use super::read::{Batch, How, Reading, read};
+use super::read::{How, Reading, read};
+use super::threads::side_by_side;
 use error::AcceptError;
+use files::Files;
 use group::Spring;
+
+/// Faults of exports shown at once.
+const SHOWN: usize = 20;
 
 /// What the command line adds to the files.
 #[derive(Clone, Debug)]
@@ -57,20 +63,12 @@ pub struct Accepted {
     pub curves: Vec<Reduced>,
 }
 
-/// The files of a lot, opened.
-struct Files {
-    lot: Lot,
-    drawing: Drawing,
-    rig: Rig,
-    caliper: Caliper,
-}
-
 /// Judges the lot of the file at `path`, written as `as_written`.
 ///
 /// # Errors
 /// A report that names file, line and column where a file or an export cannot be used, or why nothing is judged.
 pub fn accept(path: &Path, as_written: &str, options: &Options) -> miette::Result<Accepted> {
-    let files = open(path, as_written)?;
+    let files = files::open(path, as_written)?;
     let wanted = wanted(&files.drawing);
     let setup = Setup {
         rig: &files.rig,
@@ -94,36 +92,10 @@ pub fn accept(path: &Path, as_written: &str, options: &Options) -> miette::Resul
         .into_iter()
         .collect::<Result<Vec<Reading>, _>>()
         .map_err(|fault| AcceptError::Measure(Box::new(fault)))?;
-    let springs = group::springs(&files.lot, readings)?;
+    let by_column = matches!(files.rig.dialect.spring, SpringFrom::Column(_));
+    let springs = group::springs(&files.lot, readings, by_column)?;
+    files::check_findings(&files.caliper, &springs)?;
     judge(&files, springs, sources, finding, options)
-}
-
-fn open(path: &Path, as_written: &str) -> miette::Result<Files> {
-    let lot = intake::open(path, as_written)?;
-    let drawing = drawing::open(&lot.drawing.1, &lot.drawing.0)?;
-    let rig = rig::open(&lot.rig.1, &lot.rig.0)?;
-    if drawing.acceptance.is_none() {
-        return Err(AcceptError::NoTerms {
-            drawing: drawing.input.path,
-        }
-        .into());
-    }
-    if drawing.requirements.is_empty() {
-        return Err(AcceptError::NoRequirements {
-            drawing: drawing.input.path,
-        }
-        .into());
-    }
-    let caliper = match &lot.findings_file {
-        Some((written, path)) => read_findings(path, written, &lot.caliper)?,
-        None => Caliper::default(),
-    };
-    Ok(Files {
-        lot,
-        drawing,
-        rig,
-        caliper,
-    })
 }
 
 struct Sources {
@@ -136,10 +108,7 @@ type Readings = Vec<Result<Reading, crate::characteristic::MeasureError>>;
 fn read_all(files: &Files, how: How<'_>) -> miette::Result<(Readings, Sources)> {
     let repeats = files.lot.repeats.iter().map(|repeat| &repeat.export);
     let exports: Vec<_> = files.lot.exports.iter().chain(repeats).collect();
-    let batches: Vec<Result<Batch, _>> = exports
-        .into_par_iter()
-        .map(|export| read(export, how))
-        .collect();
+    let batches = side_by_side(&exports, |export| read(export, how));
     let mut inputs = vec![
         files.lot.input(),
         files.drawing.input.clone(),
@@ -151,23 +120,30 @@ fn read_all(files: &Files, how: How<'_>) -> miette::Result<(Readings, Sources)> 
         ledgers: Vec::new(),
     };
     let mut readings = Vec::new();
+    let mut faults = Vec::new();
     for batch in batches {
-        let batch = batch?;
-        readings.extend(batch.readings);
-        sources.inputs.push(batch.input);
-        sources.ledgers.push(batch.ledger);
+        match batch {
+            Ok(batch) => {
+                readings.extend(batch.readings);
+                sources.inputs.push(batch.input);
+                sources.ledgers.push(batch.ledger);
+            }
+            Err(fault) => faults.push(fault),
+        }
+    }
+    if let [_, _, ..] = faults.as_slice() {
+        let count = faults.len();
+        faults.truncate(SHOWN);
+        return Err(AcceptError::Exports {
+            count,
+            shown: faults,
+        }
+        .into());
+    }
+    if let Some(fault) = faults.pop() {
+        return Err(fault.into());
     }
     Ok((readings, sources))
-}
-
-/// The rate that springs should have: stated, or else theory's. N/mm.
-fn expected_rate(drawing: &Drawing) -> f64 {
-    let stated = drawing
-        .requirements
-        .iter()
-        .find(|one| one.quantity == Quantity::Rate)
-        .and_then(|one| one.limits.nominal);
-    stated.unwrap_or(drawing.theory.rate.get())
 }
 
 /// Withholds judgement from a lot whose units look mixed up; the finding, where someone stands for the units.
@@ -180,7 +156,7 @@ fn plausible(
         .iter()
         .filter_map(|one| one.as_ref().ok()?.plain_rate)
         .collect();
-    let expected = expected_rate(drawing);
+    let expected = nominal_rate(drawing);
     match doubt(&rates, expected) {
         None => Ok(None),
         Some(found) if confirmed => Ok(Some(found.finding)),

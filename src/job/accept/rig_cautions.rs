@@ -5,7 +5,11 @@ use jiff::civil::Date;
 use crate::record::Caution;
 use crate::rig::{Accuracy, Compliance, Known, Means, Rig, Scale};
 
+use super::super::facts::figure;
 use super::error::AcceptError;
+
+/// Compliance times rate beyond which the frame is doubted.
+const SOFT: f64 = 0.05;
 
 pub(super) fn of_rig(rig: &Rig, date: Date) -> Vec<Caution> {
     let mut found = Vec::new();
@@ -105,3 +109,18 @@ pub(super) fn refuse(cautions: &[Caution]) -> Result<(), AcceptError> {
 
 /// U over the half tolerance that `--strict` refuses.
 const REFUSED: f64 = 1.0 / 2.0;
+
+/// A frame said to be so soft that a slip of the decimal point is likelier.
+pub(super) fn large_compliance(rig: &Rig, rate: f64) -> Option<Caution> {
+    let Compliance::Measured { value, .. } = rig.frame else {
+        return None;
+    };
+    let share = value * rate;
+    if share > SOFT {
+        Some(Caution::ComplianceLarge {
+            share: figure(share)?,
+        })
+    } else {
+        None
+    }
+}

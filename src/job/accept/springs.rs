@@ -26,6 +26,10 @@ pub(super) struct Judged {
     pub(super) zero_read: bool,
     /// Smallest and largest load, N.
     pub(super) loads: (f64, f64),
+    /// Strokes left out as too short.
+    pub(super) short_strokes: bool,
+    /// Whether gauge and bench disagree.
+    pub(super) gauge_differs: bool,
 }
 
 /// Why statistics failed on a spring.
@@ -112,6 +116,14 @@ pub(super) fn judge(
         result,
         plain_rate: last.and_then(|reading| reading.plain_rate),
         zero_read: spring.readings.iter().all(|reading| reading.zero_read),
+        short_strokes: spring
+            .readings
+            .iter()
+            .any(|reading| reading.short_strokes > 0),
+        gauge_differs: spring
+            .readings
+            .iter()
+            .any(|reading| reading.measurement.gauge_differs),
         loads: loads
             .reduce(|a, b| (a.0.min(b.0), a.1.max(b.1)))
             .unwrap_or((0.0, 0.0)),
