@@ -76,7 +76,12 @@ pub(super) fn fit(
         .on(curve, path, setup.rig.contact_load.get(), free)
     {
         Ok(window) => window,
-        Err(WindowMiss::NotReached) => return Ok(Err(Absence::WindowNotReached)),
+        Err(WindowMiss::NotReached) => {
+            return match setup.bounds.loads_inside(path) {
+                Some(points) if points < 3 => Err(few_points(curve, points)),
+                _ => Ok(Err(Absence::WindowNotReached)),
+            };
+        }
         Err(WindowMiss::NoAbsoluteLength) => return Ok(Err(Absence::NoAbsoluteLength)),
     };
     let resolution = setup.rig.travel.resolution.get();
@@ -91,13 +96,7 @@ pub(super) fn fit(
     let nodes = path.between(from, to);
     let travel: Vec<f64> = nodes.iter().map(|node| node.u).collect();
     let load: Vec<f64> = nodes.iter().map(|node| node.load).collect();
-    let few = || CurveError::FewPoints {
-        spring: curve.id.clone(),
-        export: curve.export.clone(),
-        first: curve.lines.0,
-        last: curve.lines.1,
-        points: nodes.len(),
-    };
+    let few = || few_points(curve, nodes.len());
     let line = LineFit::through(&travel, &load).map_err(|_| few())?;
     let type_a = type_a(&line, &travel).map_err(|_| few())?;
     let largest = line
@@ -116,6 +115,16 @@ pub(super) fn fit(
         line,
         travel,
     }))
+}
+
+fn few_points(curve: &Curve, points: usize) -> CurveError {
+    CurveError::FewPoints {
+        spring: curve.id.clone(),
+        export: curve.export.clone(),
+        first: curve.lines.0,
+        last: curve.lines.1,
+        points,
+    }
 }
 
 fn lines(nodes: &[Node]) -> (u64, u64) {

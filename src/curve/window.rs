@@ -97,6 +97,17 @@ pub fn window_of(drawing: &Drawing) -> Bounds {
 }
 
 impl Bounds {
+    /// Points of a stroke between the window's loads, where its loads reach from below the window to beyond it; `None`
+    /// where they do not, or the window is not one of loads.
+    pub fn loads_inside(&self, path: &Path) -> Option<usize> {
+        let loads = || path.nodes.iter().map(|node| node.load);
+        let spans = loads().any(|load| load < self.from) && loads().any(|load| load >= self.to);
+        let inside = loads()
+            .filter(|load| (self.from..=self.to).contains(load))
+            .count();
+        (self.of == WindowOf::Load && spans).then_some(inside)
+    }
+
     /// The window as travel on one stroke of `curve`, in mm of `u`. `free` is the spring's own measured free
     /// length where the export gives none.
     ///

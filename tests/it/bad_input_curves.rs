@@ -217,7 +217,7 @@ fn a_length_offset_shared_by_the_lot_is_named() {
             .collect()
     });
     let ran = case.run(&["--json"]);
-    let said = String::from_utf8_lossy(&ran.out).contains("length_zero");
+    let said = String::from_utf8_lossy(&ran.out).contains("lengths_shifted");
     assert!(
         ran.code != Some(1) || said,
         "rejected as proven, nothing said of the length zero"

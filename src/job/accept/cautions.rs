@@ -1,7 +1,5 @@
 //! What page one must say besides the decision.
 
-use std::collections::BTreeMap;
-
 use crate::curve::{full_load, nominal_rate};
 use crate::doubt::{is_odd, reading};
 use crate::drawing::{Drawing, Requirement, Rule};
@@ -12,6 +10,7 @@ use crate::stats::median;
 use crate::units::Finite;
 
 use super::super::facts::figure;
+use super::alike::alike;
 use super::drawing_cautions::of_drawing;
 use super::figures::value_of;
 use super::rig_cautions::{large_compliance, of_rig};
@@ -43,7 +42,7 @@ pub(super) fn cautions(
     found.extend(of_drawing(&files.drawing));
     found.extend(odd_rates(&files.drawing, judged));
     found.extend(shifted(&files.drawing, judged));
-    found.extend(alike(judged));
+    found.extend(alike(&ids(judged.iter())));
     for requirement in &files.drawing.requirements {
         found.extend(of_requirement(requirement, rule, judged));
     }
@@ -109,35 +108,6 @@ fn shifted(drawing: &Drawing, judged: &[Judged]) -> Option<Caution> {
         })
     } else {
         None
-    }
-}
-
-/// Ids that a person would read as the same.
-fn alike(judged: &[Judged]) -> Option<Caution> {
-    let plain = |id: &str| -> String {
-        let lower = id.to_lowercase();
-        let digits = lower
-            .split(|c: char| !c.is_ascii_digit())
-            .filter(|run| run.len() > 1 && run.starts_with('0'));
-        digits.fold(lower.clone(), |text, run| {
-            text.replacen(run, run.trim_start_matches('0'), 1)
-        })
-    };
-    let mut seen: BTreeMap<String, Vec<String>> = BTreeMap::new();
-    for spring in judged {
-        seen.entry(plain(&spring.result.id))
-            .or_default()
-            .push(spring.result.id.clone());
-    }
-    let springs: Vec<String> = seen
-        .into_values()
-        .filter(|same| same.len() > 1)
-        .flatten()
-        .collect();
-    if springs.is_empty() {
-        None
-    } else {
-        Some(Caution::IdsAlike { springs })
     }
 }
 

@@ -17,6 +17,8 @@ pub(super) struct Spring {
     pub(super) id: String,
     /// Those that count, the first one first.
     pub(super) readings: Vec<Reading>,
+    /// Those set aside as invalid.
+    set_aside: Vec<Reading>,
     /// All of them, as the report lists them.
     pub(super) measurements: Vec<RepeatFacts>,
 }
@@ -30,7 +32,6 @@ pub(super) fn springs(
     readings: Vec<Reading>,
     by_column: bool,
 ) -> miette::Result<Vec<Spring>> {
-    refuse_copies(&readings)?;
     let (first, again) = split(lot, readings);
     let mut springs: Vec<Spring> = Vec::new();
     let mut places: HashMap<String, usize> = HashMap::new();
@@ -50,21 +51,26 @@ pub(super) fn springs(
         springs.push(Spring {
             id: reading.id.clone(),
             readings: vec![reading],
+            set_aside: Vec::new(),
             measurements,
         });
     }
     add_repeats(lot, &mut springs, &places, again, by_column)?;
     check_size(lot, springs.len())?;
-    let named = lot
+    let findings = lot
         .findings
         .iter()
-        .map(|one| &one.spring)
-        .chain(&lot.sample);
-    for spring in named {
+        .map(|one| (&one.spring, "a [[finding]]"));
+    for (spring, by) in findings.chain(lot.sample.iter().map(|one| (one, "the sample"))) {
         if !places.contains_key(&printed(&spring.value)) {
-            return Err(unknown(lot, spring, &springs).into());
+            return Err(unknown(lot, spring, by, &springs).into());
         }
     }
+    refuse_copies(
+        springs
+            .iter()
+            .flat_map(|spring| spring.readings.iter().chain(&spring.set_aside)),
+    )?;
     springs.sort_by(|a, b| natural_order(&a.id, &b.id));
     Ok(springs)
 }
@@ -108,9 +114,12 @@ fn twice(known: &Spring, second: &Reading) -> AcceptError {
 }
 
 /// A spring that the lot file names and no export holds, shown at its place.
-fn unknown(lot: &Lot, spring: &At<String>, springs: &[Spring]) -> Faults {
+fn unknown(lot: &Lot, spring: &At<String>, by: &str, springs: &[Spring]) -> Faults {
     let place = Place::in_text(&lot.source.name, &lot.source.text, spring.span.clone());
-    let what = format!("no export holds spring `{}`", printed(&spring.value));
+    let what = format!(
+        "{by} names spring `{}`, but no export holds it",
+        printed(&spring.value)
+    );
     let help = format!("springs here: {}", known(springs));
     Faults::new(&lot.source.name, vec![Fault::new(what, help, Some(place))])
 }
@@ -122,7 +131,7 @@ pub(super) fn known(springs: &[Spring]) -> String {
 }
 
 /// No two measurements agree in every digit: where they do, one is a copy.
-fn refuse_copies(readings: &[Reading]) -> Result<(), AcceptError> {
+fn refuse_copies<'a>(readings: impl Iterator<Item = &'a Reading>) -> Result<(), AcceptError> {
     let mut seen: HashMap<u64, &Reading> = HashMap::new();
     for reading in readings {
         if let Some(first) = seen.insert(reading.fingerprint, reading) {
@@ -162,7 +171,7 @@ fn add_repeats(
         };
         let spring = printed(&repeat.spring.value);
         let Some(place) = places.get(&spring) else {
-            return Err(unknown(lot, &repeat.spring, springs).into());
+            return Err(unknown(lot, &repeat.spring, "a [[repeat]]", springs).into());
         };
         if by_column && reading.id != spring {
             let found = reading.id;
@@ -177,7 +186,7 @@ fn add_repeats(
             continue;
         };
         if let Some(why) = &repeat.invalid {
-            spring.readings.clear();
+            spring.set_aside.append(&mut spring.readings);
             for earlier in spring
                 .measurements
                 .iter_mut()

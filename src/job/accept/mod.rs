@@ -1,5 +1,6 @@
 //! `accept`: a lot file in, a decided and documented lot out.
 
+mod alike;
 mod cautions;
 mod drawing_cautions;
 mod error;
