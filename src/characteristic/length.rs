@@ -125,7 +125,7 @@ pub(super) fn solid(
         Part::Own,
         setup.rig.travel.resolution.get() / 12.0_f64.sqrt(),
     );
-    if let Some(rise) = curve.rise(path, setup.rig.contact_load.get()) {
+    if let Some(rise) = path.rise() {
         let tangent = Line::new("tangent", Part::Own, rise.tangent_over / 12.0_f64.sqrt());
         let shown = with_repeatability(
             vec![tangent, resolution],

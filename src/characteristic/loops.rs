@@ -17,7 +17,6 @@ pub(super) fn hysteresis(
     curve: &Curve,
     residual_sd: Option<f64>,
 ) -> Result<Result<Estimate, Absence>, StatsError> {
-    let contact_load = setup.rig.contact_load.get();
     let cycles = curve.loading.len().min(curve.unloading.len());
     let last = cycles
         .checked_sub(1)
@@ -26,13 +25,9 @@ pub(super) fn hysteresis(
         return Ok(Err(Absence::NoFullCycle));
     };
     let common = || {
-        let from = curve
-            .touched(loading, contact_load)?
-            .max(unloading.reach()?.0);
+        let from = loading.start.max(unloading.reach()?.0);
         let end = loading.reach()?.1.min(unloading.reach()?.1);
-        let to = curve
-            .rise(loading, contact_load)
-            .map_or(end, |rise| rise.u.min(end));
+        let to = loading.rise().map_or(end, |rise| rise.u.min(end));
         let works = (loading.work(from, to)?, unloading.work(from, to)?);
         (works.0 > 0.0).then_some((from, to, works))
     };
@@ -68,14 +63,10 @@ pub(super) fn set(
     setup: &Setup<'_>,
     curve: &Curve,
 ) -> Result<Result<Estimate, Absence>, StatsError> {
-    let contact_load = setup.rig.contact_load.get();
     let [first, .., last] = curve.loading.as_slice() else {
         return Ok(Err(Absence::OneLoadingStroke));
     };
-    let contacts = curve
-        .contact(first, contact_load)
-        .zip(curve.contact(last, contact_load));
-    let Some((first, last)) = contacts else {
+    let Some((first, last)) = first.contact.zip(last.contact) else {
         return Ok(Err(Absence::ContactNotRecorded));
     };
     let set = last.u - first.u;

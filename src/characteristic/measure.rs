@@ -48,7 +48,7 @@ impl Setup<'_> {
     /// Contact on the first loading stroke after the presetting strokes of the recording.
     pub(super) fn first_contact(&self, curve: &Curve) -> Option<Contact> {
         let preset = usize::try_from(self.conditions.presetting_recorded).ok()?;
-        curve.contact(curve.loading.get(preset)?, self.rig.contact_load.get())
+        curve.loading.get(preset)?.contact
     }
 
     /// Fn, or the curve's own largest load.

@@ -71,10 +71,7 @@ pub(super) fn fit(
     path: &Path,
     free: Option<f64>,
 ) -> Result<Result<RateFit, Absence>, CurveError> {
-    let (from, to) = match setup
-        .bounds
-        .on(curve, path, setup.rig.contact_load.get(), free)
-    {
+    let (from, to) = match setup.bounds.on(curve, path, free) {
         Ok(window) => window,
         Err(WindowMiss::NotReached) => {
             return match setup.bounds.loads_inside(path) {
@@ -219,9 +216,7 @@ fn stroke_rates(setup: &Setup<'_>, curve: &Curve, free: Option<f64>) -> Vec<f64>
         return Vec::new();
     }
     let rate = |path: &Path| {
-        let window = setup
-            .bounds
-            .on(curve, path, setup.rig.contact_load.get(), free);
+        let window = setup.bounds.on(curve, path, free);
         let (from, to) = window.ok()?;
         let nodes = path.between(from, to);
         let travel: Vec<f64> = nodes.iter().map(|node| node.u).collect();

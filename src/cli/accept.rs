@@ -13,12 +13,10 @@ use crate::report::{self, OutFile, Template, Templates};
 use crate::text::{Source, hex};
 
 use super::args::AcceptArgs;
-use super::folder;
+use super::folder::{self, Target};
 
 pub(super) fn run(args: &AcceptArgs, quiet: bool, out: &mut impl Write) -> miette::Result<u8> {
-    if let Some(dir) = &args.out {
-        folder::check(dir)?;
-    }
+    let target = args.out.as_deref().map(Target::of).transpose()?;
     let templates = templates(args.templates.as_deref())?;
     let options = job::Options {
         date: date(args.date)?,
@@ -29,24 +27,20 @@ pub(super) fn run(args: &AcceptArgs, quiet: bool, out: &mut impl Write) -> miett
         flags: flags(args),
     };
     let mut accepted = job::accept(&args.lot, &args.lot.to_string_lossy(), &options)?;
-    let decision = accepted.record.decision;
-    if !args.json {
-        write!(
-            out,
-            "{}",
-            report::summary(&accepted.record, args.show_in.into())
-        )
-        .into_diagnostic()?;
+    if let Some(target) = &target {
+        write(target, args, &mut accepted, &templates)?;
     }
-    let result = match &args.out {
-        Some(dir) => write(dir, args, &mut accepted, &templates, quiet)?,
-        None if args.json => json(&accepted)?,
-        None => Vec::new(),
-    };
+    if let (Some(dir), false) = (&args.out, quiet) {
+        // A notice; where stderr is gone there is nobody to read it.
+        let _ = writeln!(std::io::stderr(), "written: {}", dir.display());
+    }
+    let record = &accepted.record;
     if args.json {
-        out.write_all(&result).into_diagnostic()?;
+        folder::json(record, out).into_diagnostic()?;
+    } else {
+        write!(out, "{}", report::summary(record, args.show_in.into())).into_diagnostic()?;
     }
-    Ok(status(decision))
+    Ok(status(record.decision))
 }
 
 const fn status(decision: Decision) -> u8 {
@@ -71,12 +65,11 @@ fn flags(args: &AcceptArgs) -> Vec<String> {
 }
 
 fn write(
-    dir: &Path,
+    target: &Target,
     args: &AcceptArgs,
     accepted: &mut Accepted,
     templates: &Templates,
-    quiet: bool,
-) -> miette::Result<Vec<u8>> {
+) -> miette::Result<()> {
     let record = &accepted.record;
     let mut files = if args.no_report {
         Vec::new()
@@ -93,23 +86,8 @@ fn write(
         sha256: hex(&Sha256::digest(&file.bytes)),
     };
     accepted.record.files = files.iter().map(listed).collect();
-    let result = json(accepted)?;
-    files.push(OutFile {
-        path: folder::RESULT.to_owned(),
-        bytes: result,
-    });
-    folder::write(dir, &files)?;
-    if !quiet {
-        // A notice; where stderr is gone there is nobody to read it.
-        let _ = writeln!(std::io::stderr(), "written: {}", dir.display());
-    }
-    Ok(files.pop().map_or(Vec::new(), |result| result.bytes))
-}
-
-fn json(accepted: &Accepted) -> miette::Result<Vec<u8>> {
-    let mut bytes = serde_json::to_vec(&accepted.record).into_diagnostic()?;
-    bytes.push(b'\n');
-    Ok(bytes)
+    target.write(&files, &accepted.record)?;
+    Ok(())
 }
 
 /// The date of the judgement: as given, else SOURCE_DATE_EPOCH, else today, in UTC.

@@ -2,16 +2,18 @@
 
 use std::collections::BTreeSet;
 use std::fs::{self, File};
-use std::io::{self, Write};
+use std::io::{self, BufWriter, Write};
 use std::path::{Path, PathBuf};
 
 use serde::Deserialize;
 
-use crate::record::{OutputFile, TOOL};
+use crate::record::{AcceptRecord, OutputFile, TOOL};
 use crate::report::OutFile;
 
 /// The file that makes a folder a result.
-pub(super) const RESULT: &str = "result.json";
+const RESULT: &str = "result.json";
+/// Bytes handed to the system at once.
+const BUFFER: usize = 1 << 20;
 
 /// Why an output folder cannot be written.
 #[derive(Debug, thiserror::Error, miette::Diagnostic)]
@@ -53,31 +55,104 @@ struct OlderProvenance {
     tool: String,
 }
 
-/// Refuses a folder that could not be replaced, before any work is done.
+/// A folder that may be written: not there yet, empty, or holding an older result and nothing else.
+pub(super) struct Target {
+    dir: PathBuf,
+    known: BTreeSet<PathBuf>,
+}
+
+impl Target {
+    /// Refuses a folder that could not be replaced, before any work is done.
+    ///
+    /// # Errors
+    /// [`FolderError`] naming the first file that does not belong to a result.
+    pub(super) fn of(dir: &Path) -> Result<Self, FolderError> {
+        let known = older(&dir.join(RESULT)).unwrap_or_default();
+        let target = Self {
+            dir: dir.to_owned(),
+            known,
+        };
+        target.check()?;
+        Ok(target)
+    }
+
+    fn check(&self) -> Result<(), FolderError> {
+        let dir = self.dir.clone();
+        if !dir.exists() {
+            return Ok(());
+        }
+        if !dir.is_dir() {
+            return Err(FolderError::NoFolder { dir });
+        }
+        let held = files_below(&dir, &dir).map_err(failed(&dir))?;
+        match held.into_iter().find(|file| !self.known.contains(file)) {
+            Some(foreign) => Err(FolderError::Foreign { dir, foreign }),
+            None => Ok(()),
+        }
+    }
+
+    /// Writes `files` as the folder, and `result.json` after them.
+    ///
+    /// # Errors
+    /// [`FolderError`]; then the folder is as it was.
+    pub(super) fn write(
+        &self,
+        files: &[OutFile],
+        result: &AcceptRecord,
+    ) -> Result<(), FolderError> {
+        let dir = if self.dir.exists() {
+            self.dir.canonicalize()
+        } else {
+            std::path::absolute(&self.dir)
+        };
+        let dir = dir.map_err(failed(&self.dir))?;
+        let parent = dir.parent().unwrap_or(&dir);
+        fs::create_dir_all(parent).map_err(failed(parent))?;
+        let staging = tempfile::Builder::new()
+            .prefix(".coilassay-")
+            .tempdir_in(parent)
+            .map_err(failed(parent))?;
+        let made = staging.path().join("out");
+        fs::create_dir(&made).map_err(failed(&made))?;
+        for file in files {
+            let text = |out: &mut dyn Write| out.write_all(&file.bytes);
+            write_one(&made.join(&file.path), text).map_err(failed(&dir.join(&file.path)))?;
+        }
+        write_one(&made.join(RESULT), |out| json(result, out))
+            .map_err(failed(&dir.join(RESULT)))?;
+        flush(&made).map_err(failed(&dir))?;
+        self.check()?; // once more: something may have been put there meanwhile
+        Self::move_in(&made, &staging.path().join("older"), &dir)?;
+        flush(parent).map_err(failed(parent))
+    }
+
+    fn move_in(made: &Path, aside: &Path, dir: &Path) -> Result<(), FolderError> {
+        let had = dir.exists();
+        if had {
+            fs::rename(dir, aside).map_err(failed(dir))?;
+        }
+        if let Err(cause) = fs::rename(made, dir) {
+            if had {
+                fs::rename(aside, dir).map_err(failed(dir))?;
+            }
+            return Err(failed(dir)(cause));
+        }
+        Ok(())
+    }
+}
+
+/// A result as one line of JSON.
 ///
 /// # Errors
-/// [`FolderError`] naming the first file that does not belong to a result.
-pub(super) fn check(dir: &Path) -> Result<(), FolderError> {
-    if !dir.exists() {
-        return Ok(());
-    }
-    if !dir.is_dir() {
-        return Err(FolderError::NoFolder {
-            dir: dir.to_owned(),
-        });
-    }
-    let held = files_below(dir, dir).map_err(|cause| FolderError::Write {
-        path: dir.to_owned(),
-        cause,
-    })?;
-    let known: BTreeSet<PathBuf> = older(&dir.join(RESULT)).unwrap_or_default();
-    match held.into_iter().find(|file| !known.contains(file)) {
-        Some(foreign) => Err(FolderError::Foreign {
-            dir: dir.to_owned(),
-            foreign,
-        }),
-        None => Ok(()),
-    }
+/// Where `out` cannot be written.
+pub(super) fn json(result: &AcceptRecord, mut out: &mut dyn Write) -> io::Result<()> {
+    serde_json::to_writer(&mut out, result)?;
+    out.write_all(b"\n")
+}
+
+fn failed(path: &Path) -> impl FnOnce(io::Error) -> FolderError + use<> {
+    let path = path.to_owned();
+    move |cause| FolderError::Write { path, cause }
 }
 
 /// The files an older result lists, itself included.
@@ -116,55 +191,16 @@ fn files_below(root: &Path, dir: &Path) -> io::Result<Vec<PathBuf>> {
     Ok(found)
 }
 
-/// Writes `files` as the folder `dir`, `result.json` being the last of them.
-///
-/// # Errors
-/// [`FolderError`]; then the folder is as it was.
-pub(super) fn write(dir: &Path, files: &[OutFile]) -> Result<(), FolderError> {
-    let failed = |path: &Path| {
-        let path = path.to_owned();
-        move |cause| FolderError::Write { path, cause }
-    };
-    let dir = if dir.exists() {
-        dir.canonicalize().map_err(failed(dir))?
-    } else {
-        std::path::absolute(dir).map_err(failed(dir))?
-    };
-    let parent = dir.parent().unwrap_or(&dir);
-    fs::create_dir_all(parent).map_err(failed(parent))?;
-    let staging = tempfile::Builder::new()
-        .prefix(".coilassay-")
-        .tempdir_in(parent)
-        .map_err(failed(parent))?;
-    let made = staging.path().join("out");
-    fs::create_dir(&made).map_err(failed(&made))?;
-    for file in files {
-        write_one(&made, file).map_err(failed(&dir.join(&file.path)))?;
-    }
-    flush(&made).map_err(failed(&dir))?;
-    check(&dir)?; // once more: something may have been put there meanwhile
-    let aside = staging.path().join("older");
-    let had = dir.exists();
-    if had {
-        fs::rename(&dir, &aside).map_err(failed(&dir))?;
-    }
-    if let Err(cause) = fs::rename(&made, &dir) {
-        if had {
-            fs::rename(&aside, &dir).map_err(failed(&dir))?;
-        }
-        return Err(FolderError::Write { path: dir, cause });
-    }
-    flush(parent).map_err(failed(parent))
-}
-
-fn write_one(root: &Path, file: &OutFile) -> io::Result<()> {
-    let path = root.join(&file.path);
+fn write_one(path: &Path, text: impl FnOnce(&mut dyn Write) -> io::Result<()>) -> io::Result<()> {
     if let Some(folder) = path.parent() {
         fs::create_dir_all(folder)?;
     }
-    let mut written = File::create(&path)?;
-    written.write_all(&file.bytes)?;
-    written.sync_all()
+    let mut written = BufWriter::with_capacity(BUFFER, File::create(path)?);
+    text(&mut written)?;
+    written
+        .into_inner()
+        .map_err(io::IntoInnerError::into_error)?
+        .sync_all()
 }
 
 /// Makes the names in a folder as lasting as the files.

@@ -4,10 +4,9 @@ use crate::drawing::Way;
 use crate::export::RawCurve;
 use crate::rig::{Compliance, Means, Rig};
 
-use super::contact::{self, Contact};
 use super::error::CurveError;
-use super::path::Path;
-use super::solid::{self, Rise};
+use super::path::{Path, Points};
+use super::solid;
 use super::strokes::split;
 
 /// What travel is measured from.
@@ -60,32 +59,6 @@ pub struct Curve {
     pub starts_loaded: bool,
 }
 
-impl Curve {
-    /// Contact on a stroke.
-    pub fn contact(&self, path: &Path, contact_load: f64) -> Option<Contact> {
-        contact::find(path, contact_load)
-    }
-
-    /// A first idea of the rate, N/mm, for plausibility only: no window, no uncertainty.
-    pub fn plain_rate(&self, contact_load: f64) -> Option<f64> {
-        let path = self.loading.last()?;
-        solid::plain_rate(path, self.touched(path, contact_load)?)
-    }
-
-    /// Where a stroke has the spring in hand: from contact on, or from its start where contact was not recorded.
-    pub fn touched(&self, path: &Path, contact_load: f64) -> Option<f64> {
-        let contact = self.contact(path, contact_load).map(|contact| contact.u);
-        contact.or_else(|| path.reach().map(|(start, _)| start))
-    }
-
-    /// The rise to solid on a loading stroke.
-    pub fn rise(&self, path: &Path, contact_load: f64) -> Option<Rise> {
-        let start = self.touched(path, contact_load)?;
-        let rate = solid::plain_rate(path, start)?;
-        solid::rise(path, start, rate)
-    }
-}
-
 /// Corrects one spring's raw curve by what the rig file says.
 ///
 /// # Errors
@@ -116,16 +89,16 @@ pub fn correct(raw: &RawCurve, rig: &Rig) -> Result<Curve, CurveError> {
     }
     let resolution = rig.travel.resolution.get();
     let (mut loading, mut unloading) = (Vec::new(), Vec::new());
+    let points = Points {
+        u: &u,
+        load: &load,
+        first_line: raw.first_line,
+        resolution,
+        contact_load,
+    };
     let strokes = split(&u, resolution);
     for stroke in strokes.full {
-        let path = Path::new(
-            &u,
-            &load,
-            stroke.points,
-            raw.first_line,
-            resolution,
-            stroke.way,
-        );
+        let path = Path::new(points, stroke.points, stroke.way);
         match stroke.way {
             Way::Loading => loading.push(path),
             Way::Unloading => unloading.push(path),
@@ -156,7 +129,7 @@ pub fn correct(raw: &RawCurve, rig: &Rig) -> Result<Curve, CurveError> {
         short_strokes: strokes.short,
         starts_loaded: zero == Zero::NotRead && first > contact_load,
     };
-    site.check_rising(&curve, contact_load)?;
+    site.check_rising(&curve)?;
     Ok(curve)
 }
 
@@ -188,11 +161,11 @@ impl Site<'_> {
     }
 
     /// Refuses a loading stroke in which the load stands still while the platen goes on.
-    fn check_rising(&self, curve: &Curve, contact: f64) -> Result<(), CurveError> {
+    fn check_rising(&self, curve: &Curve) -> Result<(), CurveError> {
         for path in &curve.loading {
-            let start = curve.touched(path, contact).unwrap_or(0.0);
-            let still = solid::plain_rate(path, start)
-                .and_then(|rate| solid::standstill(path, start, rate));
+            let still = path
+                .rate
+                .and_then(|rate| solid::standstill(path, path.start, rate));
             if let Some(still) = still {
                 let (spring, export, ..) = self.names();
                 let (first, last) = still.lines;

@@ -4,6 +4,9 @@ use std::ops::Range;
 
 use crate::drawing::Way;
 
+use super::contact::{self, Contact};
+use super::solid::{self, Rise};
+
 /// Nodes averaged on either side when a crossing is looked for.
 const SMOOTH: usize = 2;
 
@@ -30,59 +33,90 @@ pub struct Path {
     pub nodes: Vec<Node>,
     /// Loading or unloading.
     pub side: Side,
+    /// Where the stroke meets the spring; `None` where contact was not recorded.
+    pub contact: Option<Contact>,
+    /// Where the stroke has the spring in hand, mm: from contact on, or from its start where contact was not recorded.
+    pub start: f64,
+    /// A first idea of the rate, N/mm, for plausibility only: no window, no uncertainty.
+    pub rate: Option<f64>,
+}
+
+/// A curve's corrected points, before they are split into strokes.
+#[derive(Clone, Copy, Debug)]
+pub(super) struct Points<'a> {
+    /// Travel, mm.
+    pub(super) u: &'a [f64],
+    /// Load, N.
+    pub(super) load: &'a [f64],
+    /// Line of the first point.
+    pub(super) first_line: u64,
+    /// Resolution of travel, mm.
+    pub(super) resolution: f64,
+    /// Contact load, N.
+    pub(super) contact_load: f64,
+}
+
+/// Points averaged over each dwell, in the order of measuring.
+fn dwells(points: Points<'_>, range: Range<usize>) -> Vec<Node> {
+    let mut nodes: Vec<(Node, f64, f64)> = Vec::with_capacity(range.len()); // node with sums, its first u, its count
+    let start = range.start;
+    let (u, load) = (
+        points.u.get(range.clone()).unwrap_or(&[]),
+        points.load.get(range).unwrap_or(&[]),
+    );
+    for (offset, (x, f)) in u.iter().zip(load).enumerate() {
+        let line = points.first_line + (start + offset) as u64;
+        match nodes.last_mut() {
+            Some((node, first, count)) if (x - *first).abs() <= points.resolution / 2.0 => {
+                node.u += x;
+                node.load += f;
+                node.last_line = line;
+                *count += 1.0;
+            }
+            _ => nodes.push((
+                Node {
+                    u: *x,
+                    load: *f,
+                    first_line: line,
+                    last_line: line,
+                },
+                *x,
+                1.0,
+            )),
+        }
+    }
+    let mean = |(node, _, count): (Node, f64, f64)| Node {
+        u: node.u / count,
+        load: node.load / count,
+        ..node
+    };
+    nodes.into_iter().map(mean).collect()
 }
 
 impl Path {
-    /// The path of one stroke: `u` in mm, `load` in N; the point at index i stands on line `first_line + i`.
-    /// Consecutive points within half a `resolution` of travel are one dwell, so that sampling density does not weigh.
-    pub fn new(
-        u: &[f64],
-        load: &[f64],
-        points: Range<usize>,
-        first_line: u64,
-        resolution: f64,
-        side: Side,
-    ) -> Self {
-        let mut nodes: Vec<(Node, f64, f64)> = Vec::new(); // node with sums, its first u, its count
-        let start = points.start;
-        let stretch = u
-            .get(points.clone())
-            .unwrap_or(&[])
-            .iter()
-            .zip(load.get(points).unwrap_or(&[]));
-        for (offset, (x, f)) in stretch.enumerate() {
-            let line = first_line + (start + offset) as u64;
-            match nodes.last_mut() {
-                Some((node, first, count)) if (x - *first).abs() <= resolution / 2.0 => {
-                    node.u += x;
-                    node.load += f;
-                    node.last_line = line;
-                    *count += 1.0;
-                }
-                _ => nodes.push((
-                    Node {
-                        u: *x,
-                        load: *f,
-                        first_line: line,
-                        last_line: line,
-                    },
-                    *x,
-                    1.0,
-                )),
-            }
-        }
-        let mut nodes: Vec<Node> = nodes
-            .into_iter()
-            .map(|(node, _, count)| Node {
-                u: node.u / count,
-                load: node.load / count,
-                ..node
-            })
-            .collect();
+    /// The path of one stroke, the points in `range`. Consecutive points within half a resolution of travel are one
+    /// dwell, so that sampling density does not weigh.
+    pub(super) fn new(points: Points<'_>, range: Range<usize>, side: Side) -> Self {
+        let mut path = Self {
+            nodes: dwells(points, range),
+            side,
+            contact: None,
+            start: 0.0,
+            rate: None,
+        };
         if side == Way::Unloading {
-            nodes.reverse();
+            path.nodes.reverse();
         }
-        Self { nodes, side }
+        path.contact = contact::find(&path, points.contact_load);
+        let begins = path.reach().map_or(0.0, |(begins, _)| begins);
+        path.start = path.contact.map_or(begins, |contact| contact.u);
+        path.rate = solid::plain_rate(&path, path.start);
+        path
+    }
+
+    /// The rise to solid at the end of the stroke.
+    pub fn rise(&self) -> Option<Rise> {
+        solid::rise(self, self.start, self.rate?)
     }
 
     /// The travel at which the smoothed load first reaches `level`, in mm: loads averaged over five nodes and made

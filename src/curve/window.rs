@@ -112,17 +112,17 @@ impl Bounds {
     /// length where the export gives none.
     ///
     /// # Errors
-    /// [`WindowMiss`]; the window is never shrunk to fit.
+    /// [`WindowMiss`]; the window is never shrunk to fit, and no point past the rise to solid is in it.
     pub fn on(
         &self,
         curve: &Curve,
         path: &Path,
-        contact_load: f64,
         free: Option<f64>,
     ) -> Result<(f64, f64), WindowMiss> {
+        let (least, end) = path.reach().ok_or(WindowMiss::NotReached)?;
+        let most = path.rise().map_or(end, |rise| rise.u.min(end));
         let contact = || {
-            curve
-                .contact(path, contact_load)
+            path.contact
                 .map(|contact| contact.u)
                 .ok_or(WindowMiss::NotReached)
         };
@@ -133,12 +133,7 @@ impl Bounds {
             }
             WindowOf::Deflection => (contact()? + self.from, contact()? + self.to),
             WindowOf::Travel => {
-                let end = path.reach().ok_or(WindowMiss::NotReached)?.1;
-                let end = curve
-                    .rise(path, contact_load)
-                    .map_or(end, |rise| rise.u.min(end));
-                let start = contact()?;
-                let at = |share: f64| start + share * (end - start);
+                let at = |share: f64| path.start + share * (most - path.start);
                 (at(self.from), at(self.to))
             }
             WindowOf::Length => {
@@ -150,8 +145,8 @@ impl Bounds {
                 (origin - self.from, origin - self.to)
             }
         };
-        let (least, most) = path.reach().ok_or(WindowMiss::NotReached)?;
-        if from >= least && to <= most && from < to {
+        let inside = from >= least && to <= most && from < to;
+        if inside {
             Ok((from, to))
         } else {
             Err(WindowMiss::NotReached)

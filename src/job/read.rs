@@ -3,6 +3,7 @@
 use std::collections::BTreeMap;
 use std::hash::{DefaultHasher, Hasher};
 use std::path::Path;
+use std::sync::mpsc::sync_channel;
 
 use rayon::prelude::*;
 
@@ -66,16 +67,28 @@ pub(super) fn read(export: &Export, how: How<'_>) -> Result<Batch, ExportError> 
 }
 
 fn read_at(path: &Path, written: &str, how: How<'_>) -> Result<Batch, ExportError> {
-    let mut readings = Vec::new();
     let block = how.block_bytes.unwrap_or(BLOCK_BYTES);
-    let mut each = |curves: Vec<RawCurve>| {
-        let done: Vec<_> = curves
-            .into_par_iter()
-            .map(|raw| reading(&raw, how))
-            .collect();
-        readings.extend(done);
-    };
-    let read = crate::export::read(path, written, &how.setup.rig.dialect, block, &mut each)?;
+    // While the springs of one block are measured the next block is read; one may wait between the two.
+    let (hand_on, take) = sync_channel::<Vec<RawCurve>>(1);
+    let (read, readings) = std::thread::scope(|scope| {
+        let measuring = scope.spawn(move || {
+            let measure = |curves: Vec<RawCurve>| {
+                curves
+                    .into_par_iter()
+                    .map(|raw| reading(&raw, how))
+                    .collect::<Vec<_>>()
+            };
+            take.into_iter().flat_map(measure).collect::<Vec<_>>()
+        });
+        let mut each = |curves| _ = hand_on.send(curves); // the other end is there until this one is dropped
+        let read = crate::export::read(path, written, &how.setup.rig.dialect, block, &mut each);
+        drop(hand_on);
+        let readings = measuring
+            .join()
+            .unwrap_or_else(|panic| std::panic::resume_unwind(panic));
+        (read, readings)
+    });
+    let read = read?;
     let shown = crate::text::printable(written, &crate::text::Alphabet::Any);
     let input = InputFile {
         role: "export".to_owned(),
@@ -106,13 +119,13 @@ fn ledger(export: String, ledger: &Ledger) -> LedgerFacts {
 fn reading(raw: &RawCurve, how: How<'_>) -> Result<Reading, MeasureError> {
     let setup = how.setup;
     let curve = correct(raw, setup.rig)?;
-    let plain_rate = curve.plain_rate(setup.rig.contact_load.get());
+    let plain_rate = curve.loading.last().and_then(|path| path.rate);
     let caliper = how
         .caliper
         .get(&raw.identity)
         .map_or(&[][..], Vec::as_slice);
     let mut measurement = measure(setup, &curve, caliper)?;
-    let reduced = how.drawn.then(|| reduce(setup, &curve, &measurement));
+    let reduced = how.drawn.then(|| reduce(&curve, &measurement));
     if let Some(fit) = &mut measurement.fit {
         fit.forget_points();
     }
@@ -141,14 +154,11 @@ fn fingerprint(raw: &RawCurve) -> u64 {
 }
 
 /// The judged strokes thinned for drawing; abscissae are lengths where there are any, else deflections from contact.
-fn reduce(setup: &Setup<'_>, curve: &Curve, measurement: &Measurement) -> Reduced {
-    let contact = curve
-        .loading
-        .last()
-        .and_then(|path| curve.contact(path, setup.rig.contact_load.get()));
+fn reduce(curve: &Curve, measurement: &Measurement) -> Reduced {
+    let start = curve.loading.last().map_or(0.0, |path| path.start);
     let shown = |u: f64| match measurement.origin {
         Some(origin) => origin - u,
-        None => u - contact.map_or(0.0, |contact| contact.u),
+        None => u - start,
     };
     let stroke = |path: Option<&Stroke>| {
         let points: Vec<(f64, f64)> = path
