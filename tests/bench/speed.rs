@@ -57,7 +57,11 @@ fn samples(words: &[&str]) {
     assert!(made.unwrap().success());
 }
 
+/// The command that judges `lot` into a folder that is not there yet.
 fn accept(lot: &Path, out: &Path, more: &[&str]) -> Command {
+    if out.exists() {
+        std::fs::remove_dir_all(out).unwrap();
+    }
     let mut command = Command::new(env!("CARGO_BIN_EXE_coilassay"));
     command
         .arg("accept")
