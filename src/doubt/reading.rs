@@ -6,21 +6,26 @@ use crate::drawing::{Coil, Drawing, rate};
 const ODD: f64 = 0.1;
 /// How near a reading must come to explain it, relative.
 const EXPLAINS: f64 = 0.03;
+/// Readings named at once.
+const SHOWN: usize = 3;
 
 /// Whether a rate is far from the expected one.
 pub fn is_odd(rate: f64, expected: f64) -> bool {
     (rate / expected - 1.0).abs() > ODD
 }
 
-/// What would give `ratio` times the theory of `drawing`, in words; the nearest reading within 3 %.
+/// What would give `ratio` times the theory of `drawing`, in words: the readings within 3 %, nearest first, at most three.
 pub fn reading(drawing: &Drawing, ratio: f64) -> Option<String> {
-    let candidates = candidates(drawing);
     let miss = |found: f64| (found / ratio - 1.0).abs();
-    candidates
+    let mut near = candidates(drawing);
+    near.retain(|(found, _)| miss(*found) <= EXPLAINS);
+    near.sort_by(|a, b| miss(a.0).total_cmp(&miss(b.0)));
+    let words: Vec<String> = near
         .into_iter()
-        .filter(|(found, _)| miss(*found) <= EXPLAINS)
-        .min_by(|a, b| miss(a.0).total_cmp(&miss(b.0)))
         .map(|(_, words)| words)
+        .take(SHOWN)
+        .collect();
+    (!words.is_empty()).then(|| words.join(", or "))
 }
 
 fn candidates(drawing: &Drawing) -> Vec<(f64, String)> {

@@ -12,7 +12,6 @@
 type Outcome = Result<(), Box<dyn std::error::Error>>;
 
 #[path = "../../samples/generate/bench.rs"]
-#[expect(dead_code, reason = "the generator uses all of it")]
 mod bench;
 #[path = "../../samples/generate/known.rs"]
 mod known;
@@ -23,10 +22,12 @@ mod random;
 #[path = "../../samples/generate/rigs.rs"]
 #[expect(dead_code, reason = "the generator uses all of it")]
 mod rigs;
+#[path = "../../samples/generate/speed.rs"]
+#[expect(dead_code, reason = "the generator uses all of it")]
+mod speed;
 #[path = "../../samples/generate/spring.rs"]
 mod spring;
 #[path = "../../samples/generate/text.rs"]
-#[expect(dead_code, reason = "the generator uses all of it")]
 mod text;
 
 mod bad_input;
@@ -44,6 +45,7 @@ mod folder_interrupted;
 mod independent;
 mod known_lots;
 mod lots;
+mod many_exports;
 mod one_truth;
 mod plan_published;
 mod prints;
