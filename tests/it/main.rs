@@ -20,7 +20,6 @@ mod known_text;
 #[path = "../../samples/generate/random.rs"]
 mod random;
 #[path = "../../samples/generate/rigs.rs"]
-#[expect(dead_code, reason = "the generator uses all of it")]
 mod rigs;
 #[path = "../../samples/generate/speed.rs"]
 #[expect(dead_code, reason = "the generator uses all of it")]
@@ -28,6 +27,7 @@ mod speed;
 #[path = "../../samples/generate/spring.rs"]
 mod spring;
 #[path = "../../samples/generate/text.rs"]
+#[expect(dead_code, reason = "the generator uses all of it")]
 mod text;
 
 mod bad_input;
