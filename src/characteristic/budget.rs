@@ -45,6 +45,15 @@ impl Line {
         }
     }
 
+    /// The same for a value that changes by `sensitivity` for one of this line's.
+    #[must_use]
+    pub fn times(self, sensitivity: f64) -> Self {
+        Self {
+            contribution: self.contribution * sensitivity,
+            ..self
+        }
+    }
+
     /// The same with degrees of freedom.
     #[must_use]
     pub const fn with_dof(self, dof: Dof) -> Self {

@@ -93,10 +93,13 @@ pub(super) enum Solid {
 }
 
 /// A place on the stroke, as a length.
-struct Place {
-    length: f64,
-    load: f64,
-    deflection: f64,
+pub(super) struct Place {
+    /// mm.
+    pub(super) length: f64,
+    /// N.
+    pub(super) load: f64,
+    /// From contact, mm.
+    pub(super) deflection: f64,
 }
 
 /// The solid length where the rise is seen on the last loading stroke, else the shortest length reached, mm.
@@ -125,25 +128,22 @@ pub(super) fn solid(
         Part::Own,
         setup.rig.travel.resolution.get() / 12.0_f64.sqrt(),
     );
+    let with = |mut shown: Vec<Line>, at: &Place| {
+        shown.extend(lines(setup, at, origin.own));
+        Estimate::new(at.length, shown)
+    };
     if let Some(rise) = path.rise() {
         let tangent = Line::new("tangent", Part::Own, rise.tangent_over / 12.0_f64.sqrt());
         let shown = with_repeatability(
             vec![tangent, resolution],
             setup.repeatability("solid_length"),
         );
-        let at = place(rise.u, rise.load);
-        return Estimate::new(at.length, length_lines(setup, shown, &at, origin.own))
-            .map(Solid::Seen);
+        return with(shown, &place(rise.u, rise.load)).map(Solid::Seen);
     }
     let Some((u, load)) = furthest(path) else {
         return Ok(Solid::Absent(Absence::LengthNotReached));
     };
-    let at = place(u, load);
-    Estimate::new(
-        at.length,
-        length_lines(setup, vec![resolution], &at, origin.own),
-    )
-    .map(Solid::Below)
+    with(vec![resolution], &place(u, load)).map(Solid::Below)
 }
 
 /// Travel and load at the greatest compression of a stroke.
@@ -152,13 +152,11 @@ fn furthest(path: &Path) -> Option<(f64, f64)> {
     places.max_by(|a, b| a.0.total_cmp(&b.0))
 }
 
-fn length_lines(
-    setup: &Setup<'_>,
-    mut lines: Vec<Line>,
-    at: &Place,
-    own: Option<(OwnFree, Contact)>,
-) -> Vec<Line> {
+/// What makes a length on a stroke uncertain besides reading it, in mm; `own` where lengths hang on the spring's own
+/// free length.
+pub(super) fn lines(setup: &Setup<'_>, at: &Place, own: Option<(OwnFree, Contact)>) -> Vec<Line> {
     let rig = setup.rig;
+    let mut lines = Vec::new();
     let (scaled, zeroed_at) = if let Some((own, contact)) = own {
         lines.push(Line::new("own free length", Part::Common, own.standard));
         lines.push(Line::new("contact", Part::Own, contact.scatter));

@@ -5,7 +5,7 @@ use crate::fit::LineFit;
 use crate::stats::{Dof, StatsError};
 
 use super::budget::{Estimate, Line, Part, with_repeatability};
-use super::length::OwnFree;
+use super::length::{self, OwnFree};
 use super::measure::{Absence, Setup};
 use super::scales;
 
@@ -64,6 +64,7 @@ pub(super) fn estimate(
     };
     let rig = setup.rig;
     let single = 12.0_f64.sqrt(); // one reading of one step
+    let by_travel = local.slope * rig.travel.resolution.get() / single;
     let shown = vec![
         local.scatter,
         Line::new(
@@ -71,60 +72,18 @@ pub(super) fn estimate(
             Part::Own,
             rig.force.resolution.get() / single,
         ),
-        Line::new(
-            "resolution of travel",
-            Part::Own,
-            local.slope * rig.travel.resolution.get() / single,
-        ),
+        Line::new("resolution of travel", Part::Own, by_travel),
     ];
     let mut lines = with_repeatability(shown, setup.repeatability("load"));
     lines.push(zero_line(setup, curve));
     lines.extend(scales::force_scale(rig, local.load));
-    let zeroed_at = if origin.own.is_some() {
-        0.0
-    } else {
-        rig.zeroed_at_load
+    let at = length::Place {
+        length,
+        load: local.load,
+        deflection: local.load / local.slope,
     };
-    match &origin.own {
-        None => {
-            lines.push(Line::new(
-                "length zero",
-                Part::Common,
-                local.slope * rig.zero.get(),
-            ));
-            lines.extend(scales::travel_scale(
-                rig,
-                local.slope * (length - rig.set_at_length),
-            ));
-        }
-        Some((own, contact)) => {
-            lines.push(Line::new(
-                "own free length",
-                Part::Common,
-                local.slope * own.standard,
-            ));
-            lines.push(Line::new(
-                "contact",
-                Part::Own,
-                local.slope * contact.scatter,
-            ));
-            lines.push(Line::new(
-                "seating",
-                Part::Own,
-                local.slope * contact.seating(),
-            ));
-            lines.extend(scales::travel_scale(
-                rig,
-                -local.slope * (own.value - length),
-            ));
-        }
-    }
-    let deflection = local.load / local.slope;
-    lines.extend(scales::frame(
-        rig,
-        local.slope * (local.load - zeroed_at),
-        local.slope * deflection,
-    ));
+    let of_length = length::lines(setup, &at, origin.own);
+    lines.extend(of_length.into_iter().map(|line| line.times(local.slope)));
     lines.push(scales::temperature(
         setup.conditions.temperature,
         local.load,

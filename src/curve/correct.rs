@@ -87,28 +87,22 @@ pub fn correct(raw: &RawCurve, rig: &Rig) -> Result<Curve, CurveError> {
             *x -= value * (f - zeroed_at); // s = s_ind − C·F, and L = L_ind + C·(F − F_z)
         }
     }
-    let resolution = rig.travel.resolution.get();
-    let (mut loading, mut unloading) = (Vec::new(), Vec::new());
     let points = Points {
         u: &u,
         load: &load,
         first_line: raw.first_line,
-        resolution,
+        resolution: rig.travel.resolution.get(),
         contact_load,
     };
-    let strokes = split(&u, resolution);
-    for stroke in strokes.full {
-        let path = Path::new(points, stroke.points, stroke.way);
-        match stroke.way {
-            Way::Loading => loading.push(path),
-            Way::Unloading => unloading.push(path),
-        }
-    }
-    let loads = load
-        .iter()
-        .fold((f64::INFINITY, f64::NEG_INFINITY), |(low, high), f| {
-            (low.min(*f), high.max(*f))
-        });
+    let strokes = split(&u, points.resolution);
+    let paths = strokes
+        .full
+        .into_iter()
+        .map(|stroke| Path::new(points, stroke.points, stroke.way));
+    let (loading, unloading): (Vec<Path>, Vec<Path>) =
+        paths.partition(|path| path.side == Way::Loading);
+    let widen = |(low, high): (f64, f64), f: &f64| (low.min(*f), high.max(*f));
+    let loads = load.iter().fold((f64::INFINITY, f64::NEG_INFINITY), widen);
     if loading.is_empty() {
         return Err(site.no_contact(loads.1 - loads.0, contact_load));
     }

@@ -1,6 +1,6 @@
 //! What may stand behind an odd rate: a reading of the drawing, or a part left out. A caution, never a verdict.
 
-use crate::drawing::{Coil, Drawing, rate};
+use crate::drawing::{Coil, Drawing, Member, rate};
 
 /// A rate farther than this from the expected one is odd, relative.
 const ODD: f64 = 0.1;
@@ -8,6 +8,10 @@ const ODD: f64 = 0.1;
 const EXPLAINS: f64 = 0.03;
 /// Readings named at once.
 const SHOWN: usize = 3;
+/// Shear modulus of stainless spring wire as drawn, MPa: EN 13906-1:2013, 1.4310.
+const STAINLESS: f64 = 70_000.0;
+/// Wires off by a size or two, as shares of the drawn one.
+const WIRES: [f64; 9] = [0.96, 0.95, 0.94, 0.92, 0.90, 1.05, 1.06, 1.08, 1.10];
 
 /// Whether a rate is far from the expected one.
 pub fn is_odd(rate: f64, expected: f64) -> bool {
@@ -29,90 +33,89 @@ pub fn reading(drawing: &Drawing, ratio: f64) -> Option<String> {
 }
 
 fn candidates(drawing: &Drawing) -> Vec<(f64, String)> {
-    let whole = drawing.theory.rate.get();
-    let mut found = Vec::new();
-    if let [_, _, ..] = drawing.members.as_slice() {
-        for (member, theory) in drawing.members.iter().zip(&drawing.theory.members) {
-            found.push((
-                1.0 - theory.share,
-                format!("member `{}` missing", member.name),
-            ));
-        }
-        return found;
+    let members = drawing.members.iter().zip(&drawing.theory.members);
+    match drawing.members.as_slice() {
+        [member] => single(member, drawing.theory.rate.get()),
+        _ => members
+            .map(|(member, theory)| {
+                (
+                    1.0 - theory.share,
+                    format!("member `{}` missing", member.name),
+                )
+            })
+            .collect(),
     }
-    let Some(member) = drawing.members.first() else {
-        return found;
+}
+
+/// Wire, coil, active coils and shear modulus of a spring as it may have been made.
+struct Made {
+    wire: f64,
+    coil: f64,
+    active: f64,
+    shear: f64,
+}
+
+fn single(member: &Member, theory: f64) -> Vec<(f64, String)> {
+    let drawn = || Made {
+        wire: member.wire.nominal,
+        coil: member.mean_coil(),
+        active: member.active.nominal,
+        shear: member.shear.modulus,
     };
-    let (d, coil, n, shear) = (
-        member.wire.nominal,
-        member.mean_coil(),
-        member.active.nominal,
-        member.shear.modulus,
-    );
-    let mut add = |wire: f64, coil: f64, active: f64, shear: f64, words: &str| {
-        if let (true, Some(found_rate)) = (
-            wire > 0.0 && coil > wire && active > 0.0,
-            rate(wire, coil, active, shear),
-        ) {
-            found.push((found_rate.get() / whole, words.to_owned()));
-        }
+    let d = member.wire.nominal;
+    let mut made: Vec<(Made, String)> = diameters(member)
+        .into_iter()
+        .map(|(coil, words)| (Made { coil, ..drawn() }, words.to_owned()))
+        .collect();
+    let coils = [
+        (
+            member.total,
+            "as many active coils as the drawing has total coils",
+        ),
+        (
+            member.active.nominal + 1.0,
+            "one active coil more than drawn",
+        ),
+        (
+            member.active.nominal - 1.0,
+            "one active coil fewer than drawn",
+        ),
+    ];
+    made.extend(coils.map(|(active, words)| (Made { active, ..drawn() }, words.to_owned())));
+    let stainless = Made {
+        shear: STAINLESS,
+        ..drawn()
     };
+    made.push((
+        stainless,
+        format!("stainless wire (G {STAINLESS} MPa) instead of the drawn material"),
+    ));
+    made.extend(WIRES.map(|share| {
+        let wire = d * share;
+        (
+            Made { wire, ..drawn() },
+            format!("wire of about {wire:.2} mm instead of {d:.2} mm"),
+        )
+    }));
+    let sound = |made: &Made| made.wire > 0.0 && made.coil > made.wire && made.active > 0.0;
+    let ratio = |made: Made| {
+        rate(made.wire, made.coil, made.active, made.shear).map(|found| found.get() / theory)
+    };
+    made.into_iter()
+        .filter(|(made, _)| sound(made))
+        .filter_map(|(made, words)| Some((ratio(made)?, words)))
+        .collect()
+}
+
+/// The mean coil diameters that a drawn diameter taken for another gives, mm.
+fn diameters(member: &Member) -> Vec<(f64, &'static str)> {
+    let (d, coil) = (member.wire.nominal, member.mean_coil());
     match member.coil {
-        Coil::Outside(_) => add(
-            d,
-            coil + d,
-            n,
-            shear,
-            "the drawn outside diameter made as mean diameter",
-        ),
-        Coil::Mean(_) => {
-            add(
-                d,
-                coil - d,
-                n,
-                shear,
-                "the drawn mean diameter made as outside diameter",
-            );
-            add(
-                d,
-                coil + d,
-                n,
-                shear,
-                "the drawn mean diameter made as inside diameter",
-            );
-        }
-        Coil::Inside(_) => add(
-            d,
-            coil - d,
-            n,
-            shear,
-            "the drawn inside diameter made as mean diameter",
-        ),
+        Coil::Outside(_) => vec![(coil + d, "the drawn outside diameter made as mean diameter")],
+        Coil::Inside(_) => vec![(coil - d, "the drawn inside diameter made as mean diameter")],
+        Coil::Mean(_) => vec![
+            (coil - d, "the drawn mean diameter made as outside diameter"),
+            (coil + d, "the drawn mean diameter made as inside diameter"),
+        ],
     }
-    add(
-        d,
-        coil,
-        member.total,
-        shear,
-        "as many active coils as the drawing has total coils",
-    );
-    add(d, coil, n + 1.0, shear, "one active coil more than drawn");
-    add(d, coil, n - 1.0, shear, "one active coil fewer than drawn");
-    add(
-        d,
-        coil,
-        n,
-        70_000.0,
-        "stainless wire (G 70 000 MPa) instead of the drawn material",
-    );
-    for share in [0.95, 0.96, 0.94, 0.92, 0.90, 1.05, 1.06, 1.08, 1.10] {
-        add(
-            d * share,
-            coil,
-            n,
-            shear,
-            &format!("wire of about {:.2} mm instead of {d:.2} mm", d * share),
-        );
-    }
-    found
 }

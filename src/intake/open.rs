@@ -102,36 +102,9 @@ fn read(root: Table<'_>, source: &Source) -> Option<Lot> {
     let rig = named_file(root, "rig", source);
     let exports = read_exports(root, source);
     let head = root.table("lot");
-    if head
-        .text("number")
-        .is_some_and(|number| number.trim().is_empty())
-    {
-        head.fault(
-            &head.place("number"),
-            "the lot number is empty",
-            "write the number as it stands on the lot",
-        );
-    }
-    let number = head.required_text(
-        "number",
-        "write the lot number under [lot], in quotes: number = \"0044\"",
-    );
-    if !head.has("size") {
-        head.missing("size", "write how many springs the lot holds: size = 1200");
-    }
-    let size = head.whole("size").filter(|size| at_least_one(head, size));
+    let (number, size) = read_number_and_size(head);
     let repeats = read_all(root, "repeat", |table| read_repeat(table, source));
-    let again = |export: &Export| {
-        repeats
-            .iter()
-            .flatten()
-            .any(|repeat| repeat.export.path == export.path)
-    };
-    let exports = exports.map(|all| {
-        all.into_iter()
-            .filter(|export| !again(export))
-            .collect::<Vec<_>>()
-    });
+    let exports = exports.map(|all| without_repeats(all, repeats.as_deref().unwrap_or(&[])));
     let findings = read_all(root, "finding", read_finding);
     let not_inspected = read_all(root, "not_inspected", |table| {
         read_not_inspected(table, units)
@@ -172,16 +145,40 @@ fn read(root: Table<'_>, source: &Source) -> Option<Lot> {
     })
 }
 
-fn at_least_one(head: Table<'_>, size: &At<u64>) -> bool {
-    let fine = size.value >= 1;
-    if !fine {
+fn read_number_and_size(head: Table<'_>) -> (Option<String>, Option<At<u64>>) {
+    let number = head.required_text(
+        "number",
+        "write the lot number under [lot], in quotes: number = \"0044\"",
+    );
+    if number
+        .as_ref()
+        .is_some_and(|number| number.trim().is_empty())
+    {
         head.fault(
-            &size.span,
-            "a lot of no springs cannot be judged",
-            "write how many springs the lot holds",
+            &head.place("number"),
+            "the lot number is empty",
+            "write the number as it stands on the lot",
         );
     }
-    fine
+    let help = "write how many springs the lot holds: size = 1200";
+    if !head.has("size") {
+        head.missing("size", help);
+    }
+    let size = head.whole("size");
+    if let Some(size) = size.as_ref().filter(|size| size.value < 1) {
+        head.fault(&size.span, "a lot of no springs cannot be judged", help);
+    }
+    (number, size)
+}
+
+/// The exports that are no repeat's: a repeat may lie in the folder of the others.
+fn without_repeats(mut exports: Vec<Export>, repeats: &[Repeat]) -> Vec<Export> {
+    exports.retain(|export| {
+        !repeats
+            .iter()
+            .any(|repeat| repeat.export.path == export.path)
+    });
+    exports
 }
 
 fn read_all<T>(

@@ -106,80 +106,83 @@ fn stand(terms: &ClassTerms, springs: &[(String, Overall)]) -> Standing {
 }
 
 fn of_class(standing: &Standing, policy: Policy) -> (Decision, LotReason) {
-    let Standing {
-        terms,
-        failing,
-        undecided,
-        unmeasured,
-        missing,
-    } = standing.clone();
+    settled(standing).unwrap_or_else(|| by_agreement(standing, policy))
+}
+
+/// What holds whatever is agreed on undecided springs: proven failures, acceptance in the worst case, springs missing.
+fn settled(standing: &Standing) -> Option<(Decision, LotReason)> {
+    let (failing, undecided, missing) = (standing.failing, standing.undecided, standing.missing);
     let ClassTerms {
         class,
         accept,
         reject,
-        sample_size,
+        sample_size: wanted,
         ..
-    } = terms;
+    } = standing.terms;
     if failing >= reject {
-        return (
-            Decision::Rejected,
-            LotReason::ProvenFailures {
-                class,
-                failing,
-                reject,
-            },
-        );
+        let reason = LotReason::ProvenFailures {
+            class,
+            failing,
+            reject,
+        };
+        return Some((Decision::Rejected, reason));
     }
     if failing + undecided + missing <= accept {
-        return (
-            Decision::Accepted,
-            LotReason::WithinAcceptance {
-                class,
-                failing,
-                undecided,
-                accept,
-            },
-        );
+        let reason = LotReason::WithinAcceptance {
+            class,
+            failing,
+            undecided,
+            accept,
+        };
+        return Some((Decision::Accepted, reason));
     }
-    if missing > 0 {
-        let measured = sample_size - missing;
-        return (
-            Decision::Undecided,
-            LotReason::Missing {
-                class,
-                measured,
-                wanted: sample_size,
-            },
-        );
-    }
+    let measured = wanted - missing;
+    let reason = LotReason::Missing {
+        class,
+        measured,
+        wanted,
+    };
+    (missing > 0).then_some((Decision::Undecided, reason))
+}
+
+/// What is agreed on undecided springs; agreement covers no spring that was not measured.
+fn by_agreement(standing: &Standing, policy: Policy) -> (Decision, LotReason) {
+    let (failing, undecided, unmeasured) =
+        (standing.failing, standing.undecided, standing.unmeasured);
+    let ClassTerms {
+        class,
+        accept,
+        reject,
+        ..
+    } = standing.terms;
     match policy {
-        Policy::Fail => (
-            Decision::Rejected,
-            LotReason::UndecidedFail {
+        Policy::Fail => {
+            let reason = LotReason::UndecidedFail {
                 class,
                 failing,
                 undecided,
                 reject,
-            },
-        ),
-        _ if failing + unmeasured > accept => (
-            Decision::Undecided,
-            LotReason::Unmeasured {
+            };
+            (Decision::Rejected, reason)
+        }
+        _ if failing + unmeasured > accept => {
+            let reason = LotReason::Unmeasured {
                 class,
                 failing,
                 unmeasured,
                 accept,
-            },
-        ),
-        Policy::Report => (
-            Decision::Undecided,
-            LotReason::UndecidedMatter {
+            };
+            (Decision::Undecided, reason)
+        }
+        Policy::Report => {
+            let reason = LotReason::UndecidedMatter {
                 class,
                 failing,
                 undecided,
                 accept,
-            },
-        ),
+            };
+            (Decision::Undecided, reason)
+        }
         Policy::Pass => (
             Decision::Accepted,
             LotReason::UndecidedPass { class, undecided },

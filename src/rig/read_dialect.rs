@@ -17,41 +17,13 @@ pub(super) fn read_export(table: Table<'_>) -> Option<(Dialect, Means)> {
         );
         return None;
     }
-    if !table.has("header_line") {
-        table.missing(
-            "header_line",
-            "write the line the column names stand on, counted from 1; 0 where there is none",
-        );
-    }
+    let marks = read_marks(table);
     let header_line = table.whole("header_line").map(|line| line.value);
-    let units_line = table.whole("units_line").map(|line| line.value);
-    let required = |key: &str, help: &str| {
-        if !table.has(key) {
-            table.missing(key, help);
-        }
-    };
-    required("delimiter", "write delimiter = \",\" or \";\" or \"\\t\"");
-    required("decimal", "write decimal = \".\" or \",\"");
-    let delimiter = table.word(
-        "delimiter",
-        &[
-            (",", Delimiter::Comma),
-            (";", Delimiter::Semicolon),
-            ("\t", Delimiter::Tab),
-        ],
-    );
-    let decimal = table.word("decimal", &[(".", Decimal::Point), (",", Decimal::Comma)]);
-    let encoding = if table.has("encoding") {
-        table.word(
-            "encoding",
-            &[
-                ("utf-8", Encoding::Utf8),
-                ("windows-1252", Encoding::Windows1252),
-            ],
-        )
-    } else {
-        Some(Encoding::Utf8)
-    };
+    if header_line.is_none() && !table.has("header_line") {
+        let help =
+            "write the line the column names stand on, counted from 1; 0 where there is none";
+        table.missing("header_line", help);
+    }
     let load = read_load(table.table("load"));
     let travel = read_travel(table.table("travel"));
     let spring = read_spring(table.table("spring"));
@@ -61,22 +33,13 @@ pub(super) fn read_export(table: Table<'_>) -> Option<(Dialect, Means)> {
     } else {
         None
     };
-    let (travel, means) = travel?;
-    let (delimiter, decimal) = (delimiter?, decimal?);
-    if delimiter == Delimiter::Comma && decimal == Decimal::Comma && !table.flag("quoted") {
-        table.fault(
-            &table.place("decimal"),
-            "the decimal mark is also the delimiter",
-            "check both against a line of the export",
-        );
-        return None;
-    }
+    let ((delimiter, decimal, encoding), (travel, means)) = (marks?, travel?);
     let dialect = Dialect {
         header_line: header_line?,
-        units_line,
+        units_line: table.whole("units_line").map(|line| line.value),
         delimiter,
         decimal,
-        encoding: encoding?,
+        encoding,
         quoted: table.flag("quoted"),
         last_line_open: table.flag("last_line_open"),
         load: load?,
@@ -86,6 +49,45 @@ pub(super) fn read_export(table: Table<'_>) -> Option<(Dialect, Means)> {
     };
     check_lines(table, &dialect)?;
     Some((dialect, means))
+}
+
+/// Delimiter, decimal mark and encoding.
+fn read_marks(table: Table<'_>) -> Option<(Delimiter, Decimal, Encoding)> {
+    for (key, help) in [
+        ("delimiter", "write delimiter = \",\" or \";\" or \"\\t\""),
+        ("decimal", "write decimal = \".\" or \",\""),
+    ] {
+        if !table.has(key) {
+            table.missing(key, help);
+        }
+    }
+    let delimiters = [
+        (",", Delimiter::Comma),
+        (";", Delimiter::Semicolon),
+        ("\t", Delimiter::Tab),
+    ];
+    let delimiter = table.word("delimiter", &delimiters);
+    let decimal = table.word("decimal", &[(".", Decimal::Point), (",", Decimal::Comma)]);
+    let encodings = [
+        ("utf-8", Encoding::Utf8),
+        ("windows-1252", Encoding::Windows1252),
+    ];
+    let encoding = if table.has("encoding") {
+        table.word("encoding", &encodings)
+    } else {
+        Some(Encoding::Utf8)
+    };
+    let (delimiter, decimal) = (delimiter?, decimal?);
+    if delimiter == Delimiter::Comma && decimal == Decimal::Comma && !table.flag("quoted") {
+        let what = "the decimal mark is also the delimiter";
+        table.fault(
+            &table.place("decimal"),
+            what,
+            "check both against a line of the export",
+        );
+        return None;
+    }
+    Some((delimiter, decimal, encoding?))
 }
 
 fn check_lines(table: Table<'_>, dialect: &Dialect) -> Option<()> {

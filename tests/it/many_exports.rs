@@ -7,7 +7,7 @@ use crate::speed;
 #[test]
 fn twelve_hundred_exports_are_judged() {
     let work = tempfile::tempdir().unwrap();
-    speed::many_files(work.path(), 1200, 100).unwrap();
+    speed::many_files(work.path(), 1200, 200).unwrap();
     let ran = Command::cargo_bin("coilassay")
         .unwrap()
         .args(["accept", "--json"])
