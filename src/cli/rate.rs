@@ -88,7 +88,7 @@ fn print(result: &RateResult, out: &mut impl Write) -> std::io::Result<()> {
         Unit::NewtonPerMillimetre,
         shown,
     );
-    writeln!(out, "{}  R = {rate}  ({})", result.id, result.export)?;
+    writeln!(out, "{}  R = {rate} N/mm  ({})", result.id, result.export)?;
     let lines = result.lines.map_or(String::new(), |(first, last)| {
         format!(", lines {first}–{last}")
     });
@@ -120,7 +120,7 @@ fn print(result: &RateResult, out: &mut impl Write) -> std::io::Result<()> {
             Unit::Newton,
             shown,
         );
-        writeln!(out, "    F at {} mm = {text}", load.at_length_mm.get())?;
+        writeln!(out, "    F at {} mm = {text} N", load.at_length_mm.get())?;
     }
     Ok(())
 }

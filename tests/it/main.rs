@@ -50,6 +50,7 @@ mod one_truth;
 mod plan_published;
 mod prints;
 mod published;
+mod rate_expect;
 mod relations;
 mod relations_units;
 mod report;
