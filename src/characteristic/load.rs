@@ -54,12 +54,11 @@ pub(super) fn estimate(
     path: &Path,
     own: Option<OwnFree>,
     length: f64,
-    residual_sd: Option<f64>,
 ) -> Result<Result<Estimate, Absence>, StatsError> {
     let Some(origin) = origin(setup, curve, own) else {
         return Ok(Err(Absence::NoAbsoluteLength));
     };
-    let Some(local) = local(path, origin.u - length, residual_sd) else {
+    let Some(local) = local(path, origin.u - length) else {
         return Ok(Err(Absence::LengthNotReached));
     };
     let rig = setup.rig;
@@ -108,7 +107,7 @@ pub(super) fn zero_line(setup: &Setup<'_>, curve: &Curve) -> Line {
     }
 }
 
-fn local(path: &Path, u: f64, residual_sd: Option<f64>) -> Option<Local> {
+fn local(path: &Path, u: f64) -> Option<Local> {
     let (least, most) = path.reach()?;
     if u < least || u > most {
         return None;
@@ -132,7 +131,7 @@ fn local(path: &Path, u: f64, residual_sd: Option<f64>) -> Option<Local> {
     let wider = path.between(u - 10.0 * near, u + 10.0 * near);
     let (start, end) = (wider.first()?, wider.last()?);
     let slope = (end.load - start.load) / (end.u - start.u);
-    let scatter = Line::new("local fit", Part::Own, residual_sd?);
+    let scatter = Line::new("local fit", Part::Own, path.scatter()?);
     (slope > 0.0 && slope.is_finite()).then_some(Local {
         load,
         slope,

@@ -65,12 +65,15 @@ impl Setup<'_> {
 }
 
 /// Why there is no value.
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+#[derive(Clone, Copy, Debug, PartialEq)]
 pub enum Absence {
     /// Deflections only, and no free length of this spring's own.
     NoAbsoluteLength,
-    /// The curve does not span the window.
-    WindowNotReached,
+    /// The curve does not span the window; where that is one of loads, the largest load and the one to go beyond, N.
+    WindowNotReached {
+        /// The stroke's largest load and the window's upper one.
+        loads: Option<(f64, f64)>,
+    },
     /// The curve does not reach the length.
     LengthNotReached,
     /// The stroke starts on a loaded spring.
@@ -256,9 +259,7 @@ impl Spring<'_> {
         let found = match quantity {
             Quantity::Rate => self.rate()?,
             Quantity::LoadAt(length) => match rate::judged(setup, curve) {
-                Some(path) => {
-                    load::estimate(setup, curve, path, self.own, length.get(), residual_sd)?
-                }
+                Some(path) => load::estimate(setup, curve, path, self.own, length.get())?,
                 None => Err(Absence::StrokeNotRecorded),
             },
             Quantity::FreeLength => match self.own {

@@ -76,7 +76,9 @@ pub(super) fn fit(
         Err(WindowMiss::NotReached) => {
             return match setup.bounds.loads_inside(path) {
                 Some(points) if points < 3 => Err(few_points(curve, points)),
-                _ => Ok(Err(Absence::WindowNotReached)),
+                _ => Ok(Err(Absence::WindowNotReached {
+                    loads: setup.bounds.loads_short(path),
+                })),
             };
         }
         Err(WindowMiss::NoAbsoluteLength) => return Ok(Err(Absence::NoAbsoluteLength)),

@@ -108,6 +108,12 @@ impl Bounds {
         (self.of == WindowOf::Load && spans).then_some(inside)
     }
 
+    /// A stroke's largest load and the window's upper one, N, where the window is one of loads.
+    pub fn loads_short(&self, path: &Path) -> Option<(f64, f64)> {
+        let largest = path.nodes.iter().map(|node| node.load).reduce(f64::max)?;
+        (self.of == WindowOf::Load).then_some((largest, self.to))
+    }
+
     /// The window as travel on one stroke of `curve`, in mm of `u`. `free` is the spring's own measured free
     /// length where the export gives none.
     ///

@@ -51,7 +51,7 @@ pub enum DoubtError {
     #[diagnostic(
         code(coilassay::doubt::units),
         help(
-            "check the units and columns in the rig file against the export; if they are right, judge with --units-confirmed, which the report will say"
+            "check the units and columns in the rig file against the export, and `units` at the top of the drawing; if they are right, judge with --units-confirmed, which the report will say"
         )
     )]
     MixedUp {

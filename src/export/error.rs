@@ -77,7 +77,7 @@ pub enum ExportError {
     #[diagnostic(code(coilassay::export::few_cells), help("was the line cut off? Otherwise mend `delimiter` or `header_line` in the rig file"), forward(at))]
     TooFewCells { at: Spot, found: usize, wanted: usize },
     #[error("{at}: {found} cells, the header has {wanted}")]
-    #[diagnostic(code(coilassay::export::many_cells), help("are decimal or thousands marks taken for delimiters? Compare `delimiter` and `decimal` in the rig file with the export"), forward(at))]
+    #[diagnostic(code(coilassay::export::many_cells), help("are decimal or thousands marks taken for delimiters? Compare `delimiter` and `decimal` in the rig file with the export (caliper findings are always comma and decimal point)"), forward(at))]
     TooManyCells { at: Spot, found: usize, wanted: usize },
     #[error("{at}: an empty cell, wanted a number")]
     #[diagnostic(code(coilassay::export::empty_cell), help("export the measurement again; a missing point is never filled in"), forward(at))]

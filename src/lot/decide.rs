@@ -36,11 +36,17 @@ pub struct Outcome {
     pub simple_failing: u64,
 }
 
-/// Decides a lot from its springs in the order of the sample; springs beyond a class' sample size do not count for it.
+/// Decides a lot from the springs that may form the sample, in its order, and the `others` that may not; springs beyond
+/// a class' sample size do not count for it.
 ///
 /// d ≥ Re: rejected, proven. d + u ≤ Ac: accepted. Otherwise as `policy` says. Missing springs count as if they could
 /// all fail. A proven failure beyond the sample leaves an otherwise accepted lot undecided.
-pub fn decide(terms: &[ClassTerms], springs: &[(String, Overall)], policy: Policy) -> Outcome {
+pub fn decide(
+    terms: &[ClassTerms],
+    springs: &[(String, Overall)],
+    others: &[(String, Overall)],
+    policy: Policy,
+) -> Outcome {
     let mut reasons = Vec::new();
     let mut decisions = Vec::new();
     let mut standings = Vec::new();
@@ -53,7 +59,7 @@ pub fn decide(terms: &[ClassTerms], springs: &[(String, Overall)], policy: Polic
         simple.push(simply(one, springs, standing.missing));
         standings.push(standing);
     }
-    let beyond = beyond_sample(terms, springs);
+    let beyond = beyond_sample(terms, springs, others);
     if !beyond.is_empty() {
         decisions.push(Decision::Undecided);
         reasons.extend(beyond);
@@ -209,18 +215,23 @@ fn simply(terms: &ClassTerms, springs: &[(String, Overall)], missing: u64) -> De
     }
 }
 
-fn beyond_sample(terms: &[ClassTerms], springs: &[(String, Overall)]) -> Vec<LotReason> {
+fn beyond_sample(
+    terms: &[ClassTerms],
+    springs: &[(String, Overall)],
+    others: &[(String, Overall)],
+) -> Vec<LotReason> {
     let mut named = Vec::new();
     for one in terms {
-        let rest = springs
+        let size = usize::try_from(one.sample_size).unwrap_or(usize::MAX);
+        let failing = springs
             .iter()
-            .skip(usize::try_from(one.sample_size).unwrap_or(usize::MAX));
-        for (id, _) in rest.filter(|(_, spring)| spring.failing == Some(one.class)) {
-            named.push(LotReason::FailureBeyondSample {
-                spring: id.clone(),
-                class: one.class,
-            });
-        }
+            .skip(size)
+            .chain(others)
+            .filter(|(_, spring)| spring.failing == Some(one.class));
+        named.extend(failing.map(|(id, _)| LotReason::FailureBeyondSample {
+            spring: id.clone(),
+            class: one.class,
+        }));
     }
     named
 }
@@ -285,7 +296,7 @@ mod tests {
             (2, 3, 0, Policy::Report, Decision::Rejected), // settled although five are missing
         ];
         for (good, failing, undecided, policy, wanted) in rows {
-            let got = decide(&plan, &lot(good, failing, undecided), policy).decision;
+            let got = decide(&plan, &lot(good, failing, undecided), &[], policy).decision;
             assert_eq!(
                 got, wanted,
                 "{good} good, {failing} failing, {undecided} undecided, {policy:?}"
@@ -301,13 +312,13 @@ mod tests {
             spring.unmeasured = spring.undecided.clone();
         }
         assert_eq!(
-            decide(&plan, &springs, Policy::Pass).decision,
+            decide(&plan, &springs, &[], Policy::Pass).decision,
             Decision::Undecided
         );
         springs.truncate(9);
         springs.push(spring(None, &[Class::Major]));
         assert_eq!(
-            decide(&plan, &springs, Policy::Pass).decision,
+            decide(&plan, &springs, &[], Policy::Pass).decision,
             Decision::Accepted
         );
     }
@@ -321,7 +332,7 @@ mod tests {
         ];
         let mut springs = lot(3, 1, 0);
         springs.push(spring(Some(Class::Minor), &[Class::Major]));
-        let outcome = decide(&plan, &springs, Policy::Report);
+        let outcome = decide(&plan, &springs, &[], Policy::Report);
         let counts: Vec<(u64, u64)> = outcome
             .standings
             .iter()
@@ -332,7 +343,7 @@ mod tests {
         springs.pop();
         springs.push(spring(Some(Class::Critical), &[]));
         assert_eq!(
-            decide(&plan, &springs, Policy::Pass).decision,
+            decide(&plan, &springs, &[], Policy::Pass).decision,
             Decision::Rejected
         );
     }
@@ -340,7 +351,7 @@ mod tests {
     #[test]
     fn a_failure_beyond_the_sample_is_named_and_withholds_acceptance() {
         let plan = [terms(Class::Major, 5, 0)];
-        let outcome = decide(&plan, &lot(5, 1, 0), Policy::Pass);
+        let outcome = decide(&plan, &lot(5, 1, 0), &[], Policy::Pass);
         assert_eq!(outcome.decision, Decision::Undecided);
         assert!(matches!(
             outcome.reasons.last(),

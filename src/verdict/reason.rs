@@ -3,7 +3,7 @@
 use serde::{Deserialize, Serialize};
 
 use crate::characteristic::Absence;
-use crate::units::Millimetres;
+use crate::units::{Millimetres, Newtons};
 
 /// The verdict on a spring or on one of its characteristics.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize)]
@@ -34,7 +34,12 @@ pub enum Reason {
     /// The export gives deflections only and this spring has no measured free length.
     NoAbsoluteLength,
     /// The curve does not span the window of the rate.
-    WindowNotReached,
+    WindowNotReached {
+        /// The stroke's largest load, where the window is one of loads.
+        reached_n: Option<Newtons>,
+        /// The window's upper load.
+        wanted_n: Option<Newtons>,
+    },
     /// The curve does not reach the test length.
     LengthNotReached,
     /// The stroke starts on a loaded spring: contact was not recorded.
@@ -67,7 +72,13 @@ impl From<&Absence> for Reason {
     fn from(why: &Absence) -> Self {
         match why {
             Absence::NoAbsoluteLength => Self::NoAbsoluteLength,
-            Absence::WindowNotReached => Self::WindowNotReached,
+            Absence::WindowNotReached { loads } => {
+                let load = |value: f64| Newtons::try_from(value).ok();
+                Self::WindowNotReached {
+                    reached_n: loads.and_then(|(reached, _)| load(reached)),
+                    wanted_n: loads.and_then(|(_, wanted)| load(wanted)),
+                }
+            }
             Absence::LengthNotReached => Self::LengthNotReached,
             Absence::ContactNotRecorded => Self::ContactNotRecorded,
             Absence::StrokeNotRecorded => Self::StrokeNotRecorded,

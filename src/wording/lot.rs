@@ -104,7 +104,8 @@ pub(crate) fn why(reason: &LotReason) -> String {
             wanted.saturating_sub(*measured)
         ),
         LotReason::FailureBeyondSample { spring, class } => format!(
-            "Spring {spring}, measured beyond the sample, is proven to fail a {} requirement.",
+            "Spring {spring}, measured beyond the sample, is proven to fail a {} requirement: the sample alone would accept, but this \
+             lot is not accepted while a known failure stands beside it. Take it into the sample, or settle it with the supplier.",
             class.word()
         ),
     }
@@ -125,10 +126,16 @@ pub(crate) fn simple_line(record: &AcceptRecord) -> String {
         (Decision::Rejected, Decision::Accepted | Decision::Undecided) => {
             "Rejecting on that ground would put the risk of a conforming lot sent back on the supplier."
         }
+        (Decision::Undecided, _) => "It cannot decide either: values are missing, or springs.",
         _ if record.drawing.rule == "simple" => {
             "It is the rule the drawing asks for: near a limit both sides share the risk of a wrong verdict."
         }
-        _ => "Near a limit it would share the risk of a wrong verdict between both sides.",
+        (Decision::Rejected, Decision::Rejected) => {
+            "The decision is the same; here the failures are proven beyond the uncertainty, or agreed."
+        }
+        (Decision::Accepted, Decision::Accepted) => {
+            "The decision is the same; near a limit it would share the risk of a wrong verdict between both sides."
+        }
     };
     format!("{said} {risk}")
 }

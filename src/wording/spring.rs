@@ -1,8 +1,9 @@
 //! Words for a spring's verdicts.
 
 use super::{characteristic, length};
+use crate::quantity::Unit;
 use crate::record::{Advice, CharacteristicResult, DrawingFacts, Reason, SpringResult, Verdict};
-use crate::units::{Finite, System};
+use crate::units::{Finite, Newtons, System};
 use crate::wording::{Place, with_unit};
 
 /// The word of a verdict; a failure is written in capitals so that it stands out without colour.
@@ -38,7 +39,7 @@ pub(crate) fn verdict_reason(of: &CharacteristicResult, show_in: System) -> Opti
         ),
         Reason::GuardBandsMeet => "the guard bands leave no room between the limits".to_owned(),
         Reason::NoAbsoluteLength => "no absolute length: the export gives deflections and the spring has no measured free length".to_owned(),
-        Reason::WindowNotReached => "the curve does not span the window of the rate".to_owned(),
+        Reason::WindowNotReached { reached_n, wanted_n } => window_missed(*reached_n, *wanted_n, show_in),
         Reason::LengthNotReached => "the curve does not reach the test length".to_owned(),
         Reason::ContactNotRecorded => "the stroke starts on a loaded spring, contact was not recorded".to_owned(),
         Reason::StrokeNotRecorded => "the stroke the drawing asks for is not in the export".to_owned(),
@@ -57,6 +58,19 @@ pub(crate) fn verdict_reason(of: &CharacteristicResult, show_in: System) -> Opti
         Reason::NotInspected => "not inspected, as the lot file says".to_owned(),
     };
     Some(text)
+}
+
+fn window_missed(reached: Option<Newtons>, wanted: Option<Newtons>, show_in: System) -> String {
+    let load = |value| with_unit(value, Unit::Newton, Place::Significant(4), show_in);
+    let how = match (reached, wanted) {
+        (Some(_), Some(_)) => format!(
+            ": its loads reach {}, and three readings beyond {} are needed; compress further",
+            load(reached),
+            load(wanted)
+        ),
+        _ => String::new(),
+    };
+    format!("the curve does not span the window of the rate{how}")
 }
 
 /// What would settle what is undecided.

@@ -57,4 +57,5 @@ mod report;
 mod rooms;
 mod springs_published;
 mod stats_published;
+mod terms;
 mod type_a_coverage;

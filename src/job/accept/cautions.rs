@@ -32,7 +32,6 @@ pub(super) fn cautions(
     rule: Rule,
     judged: &[Judged],
     finding: Option<String>,
-    sample_size: u64,
     options: &Options,
 ) -> Vec<Caution> {
     let mut found: Vec<Caution> = finding
@@ -50,11 +49,13 @@ pub(super) fn cautions(
     found.extend(large_compliance(&files.rig, nominal_rate(&files.drawing)));
     found.extend(of_curves(&files.rig, full_load(&files.drawing), judged));
     found.extend(of_measurements(files, judged));
-    let measured = judged.len() as u64;
-    if measured > sample_size {
-        found.push(Caution::BeyondSample {
-            springs: u32::try_from(measured - sample_size).unwrap_or(u32::MAX),
-        });
+    let beyond = judged
+        .iter()
+        .filter(|spring| !spring.result.in_sample)
+        .count();
+    if beyond > 0 {
+        let springs = u32::try_from(beyond).unwrap_or(u32::MAX);
+        found.push(Caution::BeyondSample { springs });
     }
     found
 }

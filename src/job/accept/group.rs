@@ -224,34 +224,35 @@ fn check_size(lot: &Lot, measured: usize) -> Result<(), Faults> {
     ))
 }
 
-/// The springs in the order they enter the sample: as `sample` lists them, then the others by id.
+/// Springs with what holds for each, in order.
+pub(super) type Ordered = Vec<(String, Overall)>;
+
+/// The springs that may form the sample, in its order, and those that may not: where the lot file lists a `sample`, only
+/// its springs may, as listed; else all, by id.
 ///
 /// # Errors
 /// Where `sample` names a spring twice.
-pub(super) fn sample_order(lot: &Lot, judged: &[Judged]) -> Result<Vec<(String, Overall)>, Faults> {
-    let mut order: Vec<(String, Overall)> = Vec::new();
+pub(super) fn sample_order(lot: &Lot, judged: &[Judged]) -> Result<(Ordered, Ordered), Faults> {
+    let entry = |one: &Judged| (one.result.id.clone(), one.overall.clone());
+    if lot.sample.is_empty() {
+        return Ok((judged.iter().map(entry).collect(), Vec::new()));
+    }
     let by_id: HashMap<&str, &Judged> = judged
         .iter()
         .map(|one| (one.result.id.as_str(), one))
         .collect();
+    let mut listed = Vec::new();
     let mut taken: HashSet<String> = HashSet::new();
     for wanted in &lot.sample {
         let id = printed(&wanted.value);
         if !taken.insert(id.clone()) {
             let place = Place::in_text(&lot.source.name, &lot.source.text, wanted.span.clone());
             let what = format!("spring `{id}` stands twice in the sample");
-            return Err(Faults::new(
-                &lot.source.name,
-                vec![Fault::new(what, "name each spring once", Some(place))],
-            ));
+            let fault = Fault::new(what, "name each spring once", Some(place));
+            return Err(Faults::new(&lot.source.name, vec![fault]));
         }
-        order.extend(
-            by_id
-                .get(id.as_str())
-                .map(|one| (id.clone(), one.overall.clone())),
-        );
+        listed.extend(by_id.get(id.as_str()).map(|one| entry(one)));
     }
     let rest = judged.iter().filter(|one| !taken.contains(&one.result.id));
-    order.extend(rest.map(|one| (one.result.id.clone(), one.overall.clone())));
-    Ok(order)
+    Ok((listed, rest.map(entry).collect()))
 }

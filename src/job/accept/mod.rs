@@ -20,8 +20,7 @@ use rayon::prelude::*;
 use crate::characteristic::{Setup, wanted};
 use crate::curve::{Reduced, full_load, nominal_rate, window_of};
 use crate::doubt::doubt;
-use crate::drawing::{Drawing, Rule};
-use crate::intake::Lot;
+use crate::drawing::{Drawing, Requirement, Rule};
 use crate::lot::{Outcome, class_terms, decide};
 use crate::quantity::Class;
 use crate::record::{AcceptRecord, FORMAT, Kind, LedgerFacts, Provenance, SimpleAcceptance, TOOL};
@@ -34,6 +33,7 @@ use super::threads::side_by_side;
 use error::AcceptError;
 use files::Files;
 use group::Spring;
+use springs::Judged;
 
 /// Faults of exports shown at once.
 const SHOWN: usize = 20;
@@ -189,12 +189,12 @@ fn judge(
         .into_par_iter()
         .map(judge)
         .collect::<Result<Vec<_>, _>>()?;
-    let order = group::sample_order(lot, &judged)?;
-    let plans = class_terms(&terms.plan, lot.size.value, &classes(drawing, lot))?;
-    let outcome = decide(&plans, &order, terms.undecided);
+    let (sampled, others) = group::sample_order(lot, &judged)?;
+    let plans = class_terms(&terms.plan, lot.size.value, &classes(files, &judged))?;
+    let outcome = decide(&plans, &sampled, &others, terms.undecided);
     let widest = plans.iter().map(|plan| plan.sample_size).max().unwrap_or(0);
-    springs::mark_sample(&mut judged, &order, widest);
-    let cautions = cautions::cautions(files, terms.rule, &judged, finding, widest, options);
+    springs::mark_sample(&mut judged, &sampled, widest);
+    let cautions = cautions::cautions(files, terms.rule, &judged, finding, options);
     if options.strict {
         rig_cautions::refuse(&cautions)?;
     }
@@ -241,11 +241,23 @@ fn provenance(sources: Sources, options: &Options) -> Provenance {
     }
 }
 
-/// The classes that requirements and findings use, gravest first.
-fn classes(drawing: &Drawing, lot: &Lot) -> Vec<Class> {
+/// The classes that are decided on, gravest first: those of inspected requirements, of findings, and of proven failures.
+fn classes(files: &Files, judged: &[Judged]) -> Vec<Class> {
+    let Files { lot, drawing, .. } = files;
+    let left_out = |one: &Requirement| {
+        lot.not_inspected
+            .iter()
+            .any(|not| not.quantity == one.quantity)
+    };
     let used = |class: &Class| {
-        drawing.requirements.iter().any(|one| one.class == *class)
+        drawing
+            .requirements
+            .iter()
+            .any(|one| one.class == *class && !left_out(one))
             || lot.findings.iter().any(|one| one.class == *class)
+            || judged
+                .iter()
+                .any(|spring| spring.overall.failing == Some(*class))
     };
     Class::ALL.into_iter().filter(used).collect()
 }

@@ -154,13 +154,15 @@ impl<'a> Verdicts<'a> {
             .not_inspected
             .iter()
             .any(|one| one.quantity == quantity);
-        let found = match requirement.filter(|_| !left_out) {
-            Some(requirement) => Some((
-                requirement,
-                verdict::judge(measured, &requirement.limits, terms.rule, terms.guard)?,
+        let found = match requirement {
+            Some(one) => Some((
+                one,
+                verdict::judge(measured, &one.limits, terms.rule, terms.guard)?,
             )),
             None => None,
         };
+        // What was left out of the inspection and yet measured is not judged, unless it is proven to fail.
+        let found = found.filter(|(_, judged)| !left_out || judged.verdict == Verdict::Fails);
         if let Some((requirement, judged)) = &found
             && judged.verdict == Verdict::Undecided
         {
@@ -176,7 +178,7 @@ impl<'a> Verdicts<'a> {
             characteristic,
             requirement,
             judged,
-            requirement.is_some() && left_out,
+            left_out && judged.is_none(),
         ));
         self.judged.extend(found);
         Ok(())
@@ -197,10 +199,14 @@ fn findings(files: &Files, id: &str) -> Vec<FindingResult> {
         .collect()
 }
 
-/// Says of every spring whether it is in the sample: the first `size` of `order`.
-pub(super) fn mark_sample(judged: &mut [Judged], order: &[(String, Overall)], size: u64) {
+/// Says of every spring whether it is in the sample: the first `size` of those that may be.
+pub(super) fn mark_sample(judged: &mut [Judged], sampled: &[(String, Overall)], size: u64) {
     let size = usize::try_from(size).unwrap_or(usize::MAX);
-    let inside: HashSet<&str> = order.iter().take(size).map(|(id, _)| id.as_str()).collect();
+    let inside: HashSet<&str> = sampled
+        .iter()
+        .take(size)
+        .map(|(id, _)| id.as_str())
+        .collect();
     for spring in judged {
         spring.result.in_sample = inside.contains(spring.result.id.as_str());
     }
