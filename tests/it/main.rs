@@ -51,6 +51,7 @@ mod plan_published;
 mod prints;
 mod published;
 mod rate_expect;
+mod readme;
 mod relations;
 mod relations_units;
 mod report;
