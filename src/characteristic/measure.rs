@@ -7,7 +7,7 @@ use crate::quantity::Quantity;
 use crate::rig::Rig;
 use crate::stats::StatsError;
 
-use super::budget::{Estimate, Line, Part, combine, with_repeatability};
+use super::budget::{Estimate, Line, Part, with_repeatability};
 use super::length::{self, OwnFree, Solid};
 use super::rate::{self, RateFit};
 use super::{load, loops};
@@ -305,56 +305,4 @@ impl Spring<'_> {
         let lines = with_repeatability(vec![scatter], self.setup.repeatability("straightness"));
         Estimate::new(100.0 * fit.straightness, lines).map(Ok)
     }
-}
-
-/// The characteristics of repeated measurements of one spring, averaged one by one. A characteristic that one of
-/// them lacks is averaged over the others.
-///
-/// # Errors
-/// [`StatsError`] from the coverage factor.
-pub fn average(measurements: &[&Measurement]) -> Result<Vec<Characteristic>, StatsError> {
-    let Some(first) = measurements.first() else {
-        return Ok(Vec::new());
-    };
-    let mut averaged = Vec::new();
-    for (place, characteristic) in first.characteristics.iter().enumerate() {
-        let all = || {
-            measurements
-                .iter()
-                .filter_map(|one| one.characteristics.get(place))
-                .map(|one| &one.measured)
-        };
-        let values: Vec<Estimate> = all()
-            .filter_map(|one| {
-                if let Measured::Value(estimate) = one {
-                    Some(estimate.clone())
-                } else {
-                    None
-                }
-            })
-            .collect();
-        let measured = match combine(&values)? {
-            Some(estimate) => Measured::Value(estimate),
-            None => lowest(all()).unwrap_or_else(|| characteristic.measured.clone()),
-        };
-        averaged.push(Characteristic {
-            quantity: characteristic.quantity,
-            measured,
-        });
-    }
-    Ok(averaged)
-}
-
-/// Of several bounds from above, the lowest.
-fn lowest<'a>(all: impl Iterator<Item = &'a Measured>) -> Option<Measured> {
-    let bounds = all.filter_map(|one| {
-        if let Measured::Below(estimate) = one {
-            Some(estimate)
-        } else {
-            None
-        }
-    });
-    bounds
-        .min_by(|a, b| a.value.total_cmp(&b.value))
-        .map(|estimate| Measured::Below(estimate.clone()))
 }

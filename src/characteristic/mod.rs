@@ -2,6 +2,7 @@
 //! Here: which points make a value, and what makes it uncertain, own or common to the rig.
 //! Elsewhere: the curve itself (`curve`), limits and verdicts (`drawing`, `verdict`).
 
+mod average;
 mod budget;
 mod length;
 mod load;
@@ -10,9 +11,10 @@ mod measure;
 mod rate;
 mod scales;
 
+pub use average::average;
 pub use budget::{Estimate, Line, Part, Uncertainty, combine};
 pub use length::OwnFree;
 pub use measure::{
-    Absence, Characteristic, MeasureError, Measured, Measurement, Setup, average, measure, wanted,
+    Absence, Characteristic, MeasureError, Measured, Measurement, Setup, measure, wanted,
 };
 pub use rate::RateFit;

@@ -8,6 +8,7 @@ mod correct;
 mod error;
 mod path;
 mod reduced;
+mod site;
 mod solid;
 mod strokes;
 mod window;

@@ -9,6 +9,7 @@ mod printable;
 mod source;
 mod table;
 mod toml;
+mod values;
 
 pub use blocks::{Block, Blocks, Next, Tail};
 pub use excerpt::{Excerpt, Place};

@@ -21,7 +21,7 @@ use crate::characteristic::{Setup, wanted};
 use crate::curve::{Reduced, full_load, nominal_rate, window_of};
 use crate::doubt::doubt;
 use crate::drawing::{Drawing, Requirement, Rule};
-use crate::lot::{Outcome, class_terms, decide};
+use crate::lot::{class_terms, decide};
 use crate::quantity::Class;
 use crate::record::{AcceptRecord, FORMAT, Kind, LedgerFacts, Provenance, SimpleAcceptance, TOOL};
 use crate::rig::SpringFrom;
@@ -218,16 +218,12 @@ fn judge(
         window: facts::window(drawing, window_of(drawing)),
         rig: facts::rig(rig),
         plan: plan::facts(&terms.plan, &outcome)?,
-        reasons: reasons(outcome),
+        reasons: outcome.reasons,
         springs: judged.into_iter().map(|spring| spring.result).collect(),
         provenance: provenance(sources, options),
         files: Vec::new(),
     };
     Ok(Accepted { record, curves })
-}
-
-fn reasons(outcome: Outcome) -> Vec<crate::lot::LotReason> {
-    outcome.reasons
 }
 
 fn provenance(sources: Sources, options: &Options) -> Provenance {
