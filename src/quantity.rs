@@ -1,6 +1,7 @@
 //! The names of what can be judged: symbol, unit, JSON name. Holds no values.
 //! Symbols follow ISO 26909 / ISO 2162 and EN 13906-1.
 
+use schemars::JsonSchema;
 use serde::{Deserialize, Serialize};
 
 use crate::units::Millimetres;
@@ -31,7 +32,7 @@ pub enum Quantity {
 }
 
 /// The unit a quantity is reported in.
-#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize)]
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize, JsonSchema)]
 pub enum Unit {
     /// Newton.
     #[serde(rename = "N")]
@@ -159,7 +160,9 @@ impl Unit {
 }
 
 /// How grave a departure from a requirement is; the order is from least to gravest.
-#[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord, Serialize, Deserialize)]
+#[derive(
+    Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord, Serialize, Deserialize, JsonSchema,
+)]
 #[serde(rename_all = "lowercase")]
 pub enum Class {
     /// Minor.

@@ -2,6 +2,7 @@
 //! Here: constructors that refuse nonsense, arithmetic between units, conversions, serde.
 //! Elsewhere: rounding and labels (`report::figure`), limits (`drawing::limits`).
 
+use schemars::JsonSchema;
 use serde::{Deserialize, Serialize};
 
 /// Beyond this no bench reads anything; below it sums and differences of two figures stay finite.
@@ -35,7 +36,7 @@ fn finite(value: f64, unit: &'static str) -> Result<f64, NotFinite> {
 macro_rules! unit {
     ($(#[$doc:meta])* $name:ident, $symbol:literal) => {
         $(#[$doc])*
-        #[derive(Clone, Copy, Debug, PartialEq, PartialOrd, Serialize, Deserialize)]
+        #[derive(Clone, Copy, Debug, PartialEq, PartialOrd, Serialize, Deserialize, JsonSchema)]
         #[serde(try_from = "f64", into = "f64")] // `transparent` would let TOML's `nan` in
         pub struct $name(f64);
 
@@ -209,7 +210,7 @@ impl LengthUnit {
 }
 
 /// The pair of units a file states for all its figures, or a reader wants to see.
-#[derive(Clone, Copy, Debug, Default, PartialEq, Eq, Serialize, Deserialize)]
+#[derive(Clone, Copy, Debug, Default, PartialEq, Eq, Serialize, Deserialize, JsonSchema)]
 pub enum System {
     /// Millimetres, newtons, N/mm, MPa.
     #[default]

@@ -1,6 +1,7 @@
 //! The budget of a value: lines, their sum, effective degrees of freedom, coverage factor.
 //! Source: JCGM 100:2008 (GUM), 5.1.2 and G.4.
 
+use schemars::JsonSchema;
 use serde::{Deserialize, Serialize};
 
 use crate::stats::{Dof, StatsError, standard_deviation, student_quantile};
@@ -9,7 +10,7 @@ use crate::stats::{Dof, StatsError, standard_deviation, student_quantile};
 const BELOW_TWO_SIGMA: f64 = 0.977_249_868_051_820_8;
 
 /// Whether a line is this spring's own or shared by all springs of one rig set-up.
-#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize)]
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize, JsonSchema)]
 #[serde(rename_all = "lowercase")]
 pub enum Part {
     /// Independent from spring to spring.

@@ -1,5 +1,6 @@
 //! What the drawing's window means on a curve: one window for the whole lot, fixed from the drawing.
 
+use schemars::JsonSchema;
 use serde::{Deserialize, Serialize};
 
 use crate::drawing::{Drawing, Window};
@@ -9,7 +10,7 @@ use super::correct::{Curve, Frame};
 use super::path::Path;
 
 /// What the window's bounds are.
-#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize)]
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize, JsonSchema)]
 #[serde(rename_all = "lowercase")]
 pub enum WindowOf {
     /// Loads in N.

@@ -1,5 +1,6 @@
 //! What the drawing states of the test and of acceptance: data only.
 
+use schemars::JsonSchema;
 use serde::{Deserialize, Serialize};
 
 use crate::quantity::Class;
@@ -114,7 +115,7 @@ pub enum Guard {
 }
 
 /// How undecided springs count for the lot.
-#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize)]
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize, JsonSchema)]
 #[serde(rename_all = "lowercase")]
 pub enum Policy {
     /// They leave the lot undecided.

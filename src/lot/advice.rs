@@ -1,5 +1,6 @@
 //! What would settle an undecided characteristic.
 
+use schemars::JsonSchema;
 use serde::{Deserialize, Serialize};
 
 use crate::characteristic::{Measured, Uncertainty};
@@ -12,7 +13,7 @@ use crate::units::{Finite, Millimetres};
 const MOST_REPEATS: u32 = 10;
 
 /// What would settle an undecided characteristic.
-#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
+#[derive(Clone, Debug, PartialEq, Serialize, Deserialize, JsonSchema)]
 #[serde(tag = "do", rename_all = "snake_case")]
 pub enum Advice {
     /// Repeating on this bench can settle it.

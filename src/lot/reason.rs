@@ -1,11 +1,12 @@
 //! The words of a lot decision and its grounds.
 
+use schemars::JsonSchema;
 use serde::{Deserialize, Serialize};
 
 use crate::quantity::Class;
 
 /// The decision on a lot.
-#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize)]
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize, JsonSchema)]
 #[serde(rename_all = "lowercase")]
 pub enum Decision {
     /// The plan accepts the lot.
@@ -17,7 +18,7 @@ pub enum Decision {
 }
 
 /// Why the lot has the decision it has.
-#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
+#[derive(Clone, Debug, PartialEq, Serialize, Deserialize, JsonSchema)]
 #[serde(tag = "code", rename_all = "snake_case")]
 pub enum LotReason {
     /// Proven failing springs reach the rejection number of a class.

@@ -2,6 +2,7 @@
 
 use std::collections::BTreeMap;
 
+use schemars::JsonSchema;
 use serde::{Deserialize, Serialize};
 
 use super::caution::Caution;
@@ -14,7 +15,7 @@ use crate::text::InputFile;
 use crate::units::{Finite, Millimetres};
 
 /// Which job wrote a result.
-#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize)]
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize, JsonSchema)]
 #[serde(rename_all = "lowercase")]
 pub enum Kind {
     /// `accept`.
@@ -22,7 +23,7 @@ pub enum Kind {
 }
 
 /// What simple acceptance would have said, and whose risk it is.
-#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
+#[derive(Clone, Debug, PartialEq, Serialize, Deserialize, JsonSchema)]
 pub struct SimpleAcceptance {
     /// Its decision.
     pub decision: Decision,
@@ -31,7 +32,7 @@ pub struct SimpleAcceptance {
 }
 
 /// The lot, as its file states it.
-#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
+#[derive(Clone, Debug, PartialEq, Serialize, Deserialize, JsonSchema)]
 pub struct LotFacts {
     /// Lot number, as written.
     pub number: String,
@@ -60,7 +61,7 @@ pub struct LotFacts {
 }
 
 /// Conditions of the test.
-#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
+#[derive(Clone, Debug, PartialEq, Serialize, Deserialize, JsonSchema)]
 pub struct ConditionFacts {
     /// Temperature, °C.
     pub temperature_c: Option<Finite>,
@@ -71,7 +72,7 @@ pub struct ConditionFacts {
 }
 
 /// One requirement of the drawing.
-#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
+#[derive(Clone, Debug, PartialEq, Serialize, Deserialize, JsonSchema)]
 pub struct RequirementFacts {
     /// The quantity's name.
     pub name: String,
@@ -106,7 +107,7 @@ pub struct RequirementFacts {
 }
 
 /// The drawing.
-#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
+#[derive(Clone, Debug, PartialEq, Serialize, Deserialize, JsonSchema)]
 pub struct DrawingFacts {
     /// Drawing number.
     pub number: String,
@@ -125,7 +126,7 @@ pub struct DrawingFacts {
 }
 
 /// The plan of one class.
-#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
+#[derive(Clone, Debug, PartialEq, Serialize, Deserialize, JsonSchema)]
 pub struct ClassPlan {
     /// Class.
     pub class: Class,
@@ -150,7 +151,7 @@ pub struct ClassPlan {
 }
 
 /// The sampling plan, in the terms of its source.
-#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
+#[derive(Clone, Debug, PartialEq, Serialize, Deserialize, JsonSchema)]
 pub struct PlanFacts {
     /// `attributes` or `every-spring`.
     pub by: String,
@@ -169,7 +170,7 @@ pub struct PlanFacts {
 }
 
 /// A file of the output folder.
-#[derive(Clone, Debug, PartialEq, Eq, Serialize, Deserialize)]
+#[derive(Clone, Debug, PartialEq, Eq, Serialize, Deserialize, JsonSchema)]
 pub struct OutputFile {
     /// Path inside the folder.
     pub path: String,
@@ -178,7 +179,7 @@ pub struct OutputFile {
 }
 
 /// Where the result comes from.
-#[derive(Clone, Debug, PartialEq, Eq, Serialize, Deserialize)]
+#[derive(Clone, Debug, PartialEq, Eq, Serialize, Deserialize, JsonSchema)]
 pub struct Provenance {
     /// `coilassay`.
     pub tool: String,
@@ -195,7 +196,7 @@ pub struct Provenance {
 }
 
 /// `result.json` of `accept`.
-#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
+#[derive(Clone, Debug, PartialEq, Serialize, Deserialize, JsonSchema)]
 pub struct AcceptRecord {
     /// Version of this layout.
     pub format: u32,

@@ -1,11 +1,12 @@
 //! What the reader of page one must know besides the decision.
 
+use schemars::JsonSchema;
 use serde::{Deserialize, Serialize};
 
 use crate::units::{Finite, Millimetres, Newtons, NewtonsPerMillimetre};
 
 /// Something the reader of page one must know.
-#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
+#[derive(Clone, Debug, PartialEq, Serialize, Deserialize, JsonSchema)]
 #[serde(tag = "code", rename_all = "snake_case")]
 pub enum Caution {
     /// The stated rate is not what the geometry gives.
@@ -173,7 +174,7 @@ pub enum Caution {
 }
 
 /// What is odd in a curve.
-#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize)]
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize, JsonSchema)]
 #[serde(rename_all = "snake_case")]
 pub enum Oddity {
     /// Strokes much shorter than the others were left out: a jog, or a stroke cut off.

@@ -1,12 +1,13 @@
 //! What a result says of theory, window and rig.
 
+use schemars::JsonSchema;
 use serde::{Deserialize, Serialize};
 
 use crate::curve::WindowOf;
 use crate::units::{Finite, Megapascals, Millimetres, Newtons, NewtonsPerMillimetre};
 
 /// Stresses at a load or length; theory, see the formulas in the report.
-#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
+#[derive(Clone, Debug, PartialEq, Serialize, Deserialize, JsonSchema)]
 pub struct StressFacts {
     /// Where: a test length, or the solid length.
     pub at_length_mm: Millimetres,
@@ -25,7 +26,7 @@ pub struct StressFacts {
 }
 
 /// One spring of the set, in theory.
-#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
+#[derive(Clone, Debug, PartialEq, Serialize, Deserialize, JsonSchema)]
 pub struct MemberFacts {
     /// Its name.
     pub name: String,
@@ -58,7 +59,7 @@ pub struct MemberFacts {
 }
 
 /// What the drawn spring should do.
-#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
+#[derive(Clone, Debug, PartialEq, Serialize, Deserialize, JsonSchema)]
 pub struct TheoryFacts {
     /// Rate of the whole set.
     pub rate_n_per_mm: NewtonsPerMillimetre,
@@ -81,7 +82,7 @@ pub struct TheoryFacts {
 }
 
 /// The window of the rate, one for the whole lot.
-#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
+#[derive(Clone, Debug, PartialEq, Serialize, Deserialize, JsonSchema)]
 pub struct WindowFacts {
     /// What the bounds are.
     pub of: WindowOf,
@@ -98,7 +99,7 @@ pub struct WindowFacts {
 }
 
 /// The rig, as its file states it.
-#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
+#[derive(Clone, Debug, PartialEq, Serialize, Deserialize, JsonSchema)]
 pub struct RigFacts {
     /// Name.
     pub name: String,

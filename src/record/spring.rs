@@ -1,5 +1,6 @@
 //! What was concluded about one spring.
 
+use schemars::JsonSchema;
 use serde::{Deserialize, Serialize};
 
 use crate::characteristic::Part;
@@ -9,7 +10,7 @@ use crate::units::{Finite, Millimetres, Newtons, NewtonsPerMillimetre};
 use crate::verdict::{Reason, Verdict};
 
 /// One line of an uncertainty budget.
-#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
+#[derive(Clone, Debug, PartialEq, Serialize, Deserialize, JsonSchema)]
 pub struct BudgetFigure {
     /// What it comes from, e.g. `force scale`, `fit`, `length zero`.
     pub source: String,
@@ -24,7 +25,7 @@ pub struct BudgetFigure {
 }
 
 /// One characteristic of one spring, judged.
-#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
+#[derive(Clone, Debug, PartialEq, Serialize, Deserialize, JsonSchema)]
 pub struct CharacteristicResult {
     /// The quantity's name: `rate`, `load`, `free_length` …
     pub name: String,
@@ -73,7 +74,7 @@ pub struct CharacteristicResult {
 }
 
 /// Lines of an export that hold no point, and why.
-#[derive(Clone, Debug, PartialEq, Eq, Serialize, Deserialize)]
+#[derive(Clone, Debug, PartialEq, Eq, Serialize, Deserialize, JsonSchema)]
 pub struct SetAside {
     /// Why: `metadata`, `header`, `units`, `blank at the end`.
     pub reason: String,
@@ -84,7 +85,7 @@ pub struct SetAside {
 }
 
 /// The row ledger of one export: `lines` = `points` + lines set aside.
-#[derive(Clone, Debug, PartialEq, Eq, Serialize, Deserialize)]
+#[derive(Clone, Debug, PartialEq, Eq, Serialize, Deserialize, JsonSchema)]
 pub struct LedgerFacts {
     /// The export, as written.
     pub export: String,
@@ -97,7 +98,7 @@ pub struct LedgerFacts {
 }
 
 /// Lack of fit of the straight line.
-#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
+#[derive(Clone, Debug, PartialEq, Serialize, Deserialize, JsonSchema)]
 pub struct LackFacts {
     /// F statistic.
     pub f: Finite,
@@ -110,7 +111,7 @@ pub struct LackFacts {
 }
 
 /// The fit of the rate, and what stands beside it.
-#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
+#[derive(Clone, Debug, PartialEq, Serialize, Deserialize, JsonSchema)]
 pub struct FitFacts {
     /// Export the points come from.
     pub export: String,
@@ -143,7 +144,7 @@ pub struct FitFacts {
 }
 
 /// A repeated measurement of a spring.
-#[derive(Clone, Debug, PartialEq, Eq, Serialize, Deserialize)]
+#[derive(Clone, Debug, PartialEq, Eq, Serialize, Deserialize, JsonSchema)]
 pub struct RepeatFacts {
     /// The export of this measurement.
     pub export: String,
@@ -154,7 +155,7 @@ pub struct RepeatFacts {
 }
 
 /// Something seen or measured without the bench.
-#[derive(Clone, Debug, PartialEq, Eq, Serialize, Deserialize)]
+#[derive(Clone, Debug, PartialEq, Eq, Serialize, Deserialize, JsonSchema)]
 pub struct FindingResult {
     /// What was seen.
     pub text: String,
@@ -163,7 +164,7 @@ pub struct FindingResult {
 }
 
 /// Everything concluded about one spring.
-#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
+#[derive(Clone, Debug, PartialEq, Serialize, Deserialize, JsonSchema)]
 pub struct SpringResult {
     /// The spring's id, as written.
     pub id: String,

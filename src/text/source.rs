@@ -4,6 +4,7 @@ use std::fmt::Write;
 use std::path::{Path, PathBuf};
 use std::sync::Arc;
 
+use schemars::JsonSchema;
 use serde::{Deserialize, Serialize};
 use sha2::Digest;
 
@@ -13,7 +14,7 @@ const LARGEST_HAND_WRITTEN: u64 = 4 << 20;
 const LOOKED_AT: u64 = 64 << 10;
 
 /// What a judgement was made from: the path as it was written, and the SHA-256 of its bytes.
-#[derive(Clone, Debug, PartialEq, Eq, PartialOrd, Ord, Serialize, Deserialize)]
+#[derive(Clone, Debug, PartialEq, Eq, PartialOrd, Ord, Serialize, Deserialize, JsonSchema)]
 pub struct InputFile {
     /// What the file is for: `lot`, `drawing`, `rig`, `export`, `findings`.
     pub role: String,

@@ -1,12 +1,13 @@
 //! The words of a verdict and its grounds.
 
+use schemars::JsonSchema;
 use serde::{Deserialize, Serialize};
 
 use crate::characteristic::Absence;
 use crate::units::{Millimetres, Newtons};
 
 /// The verdict on a spring or on one of its characteristics.
-#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize)]
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize, JsonSchema)]
 #[serde(rename_all = "lowercase")]
 pub enum Verdict {
     /// Proven inside the limits.
@@ -18,7 +19,7 @@ pub enum Verdict {
 }
 
 /// Why a characteristic has the verdict it has, or no value.
-#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
+#[derive(Clone, Debug, PartialEq, Serialize, Deserialize, JsonSchema)]
 #[serde(tag = "code", rename_all = "snake_case")]
 pub enum Reason {
     /// The value lies below the lower limit by more than the guard band.

@@ -56,6 +56,7 @@ mod relations;
 mod relations_units;
 mod report;
 mod rooms;
+mod schema;
 mod springs_published;
 mod stats_published;
 mod terms;

@@ -1,0 +1,109 @@
+//! The published schema of `result.json`: it is what the types say, every sample keeps to it, and every key of it is met.
+
+use std::collections::BTreeSet;
+use std::path::Path;
+
+use assert_cmd::Command;
+use serde_json::Value;
+
+fn root(path: &str) -> std::path::PathBuf {
+    Path::new(env!("CARGO_MANIFEST_DIR")).join(path)
+}
+
+fn published() -> Value {
+    serde_json::from_str(&std::fs::read_to_string(root("templates/result.schema.json")).unwrap())
+        .unwrap()
+}
+
+fn sample(name: &str) -> Value {
+    let output = Command::cargo_bin("coilassay")
+        .unwrap()
+        .args(["accept", "--json", "--date", "2026-12-01"])
+        .arg(root(&format!("samples/{name}/lot.toml")))
+        .output()
+        .unwrap();
+    serde_json::from_slice(&output.stdout).unwrap()
+}
+
+/// Where the types changed, `UPDATE_SCHEMA=1` writes the schema anew; then `record::FORMAT` is to be thought of.
+#[test]
+fn the_schema_is_what_the_types_say() {
+    let made =
+        serde_json::to_value(schemars::schema_for!(coilassay::record::AcceptRecord)).unwrap();
+    if std::env::var_os("UPDATE_SCHEMA").is_some() {
+        let text = serde_json::to_string_pretty(&made).unwrap();
+        std::fs::write(root("templates/result.schema.json"), text + "\n").unwrap();
+    }
+    assert!(
+        published() == made,
+        "templates/result.schema.json is not what the types say"
+    );
+}
+
+#[test]
+fn every_sample_keeps_to_the_schema() {
+    let schema = jsonschema::validator_for(&published()).unwrap();
+    for name in ["accepted", "rejected", "undecided", "nested"] {
+        let record = sample(name);
+        let faults: Vec<String> = schema
+            .iter_errors(&record)
+            .map(|fault| fault.to_string())
+            .collect();
+        assert!(faults.is_empty(), "{name}: {faults:#?}");
+        let mut spoilt = record.clone();
+        spoilt["springs"][0]["characteristics"][0]["value"] = Value::from("10.6");
+        assert!(!schema.is_valid(&spoilt), "a text for a figure passes");
+    }
+}
+
+/// The keys of the record's fixed objects (not of the words that depend on what was found) all occur in a sample.
+#[test]
+fn every_key_of_the_schema_is_met() {
+    let schema = published();
+    let mut wanted = BTreeSet::new();
+    keys(&schema["properties"], &mut wanted);
+    for name in [
+        "SpringResult",
+        "CharacteristicResult",
+        "FitFacts",
+        "BudgetFigure",
+        "PlanFacts",
+        "ClassPlan",
+        "LotFacts",
+        "DrawingFacts",
+        "TheoryFacts",
+        "MemberFacts",
+        "RigFacts",
+        "Provenance",
+        "LedgerFacts",
+    ] {
+        keys(&schema["$defs"][name]["properties"], &mut wanted);
+    }
+    let mut met = BTreeSet::new();
+    for name in ["accepted", "rejected", "undecided", "nested"] {
+        all_keys(&sample(name), &mut met);
+    }
+    let never: Vec<&String> = wanted.difference(&met).collect();
+    assert!(
+        wanted.len() > 90 && never.is_empty(),
+        "{} keys, never met: {never:?}",
+        wanted.len()
+    );
+}
+
+fn keys(properties: &Value, into: &mut BTreeSet<String>) {
+    into.extend(properties.as_object().unwrap().keys().cloned());
+}
+
+fn all_keys(value: &Value, into: &mut BTreeSet<String>) {
+    match value {
+        Value::Object(map) => {
+            for (key, inner) in map {
+                into.insert(key.clone());
+                all_keys(inner, into);
+            }
+        }
+        Value::Array(items) => items.iter().for_each(|item| all_keys(item, into)),
+        _ => {}
+    }
+}
