@@ -2,6 +2,7 @@
 //! Marks differ by shape as well as by colour, so that a black-and-white print says the same.
 
 mod bounds;
+mod compared;
 mod curves;
 mod field;
 mod histogram;

@@ -1,10 +1,11 @@
 //! One characteristic over the springs: each value with its interval against the limits, and the distribution beside it.
 
+use super::compared::Lines;
 use super::{Chart, chart};
 use super::{histogram, ids};
 use crate::quantity::{Quantity, Unit};
-use crate::record::{AcceptRecord, CharacteristicResult, Verdict};
-use crate::record::{find, occurring};
+use crate::record::{AcceptRecord, CharacteristicResult, SpringResult, Verdict};
+use crate::record::{Key, find, occurring};
 use crate::sheet::ChartError;
 use crate::sheet::canvas::{Drawn, LIMIT, Sheet, THEORY, WIDTH, colour};
 use crate::sheet::plot::{self, EDGE, Entry, LEADING, Plot, Sample, Scale};
@@ -25,13 +26,6 @@ pub(super) struct Measured<'a> {
     pub verdict: Option<Verdict>,
     value: f64,
     expanded: f64,
-}
-
-/// What the plot compares with.
-struct Lines {
-    lower: Option<f64>,
-    upper: Option<f64>,
-    theory: Option<(f64, f64, f64)>,
 }
 
 /// A chart for every characteristic with limits, and for the rate.
@@ -58,51 +52,51 @@ pub(super) fn all(record: &AcceptRecord, show_in: System) -> Result<Vec<Chart>, 
     Ok(charts)
 }
 
-fn one(
-    record: &AcceptRecord,
-    key: &(String, Option<crate::units::Millimetres>),
-    unit: Unit,
-    show_in: System,
-) -> Result<Chart, ChartError> {
-    let scale = per_unit(unit, show_in);
-    let values: Vec<Measured<'_>> = record
-        .springs
-        .iter()
-        .filter_map(|spring| {
-            let of = find(spring, key)?;
-            Some(Measured {
-                id: &spring.id,
-                verdict: of.verdict,
-                value: of.value?.get() / scale,
-                expanded: of
-                    .expanded_uncertainty
-                    .map_or(0.0, |value| value.get() / scale),
-            })
-        })
-        .collect();
+fn one(record: &AcceptRecord, key: &Key, unit: Unit, show_in: System) -> Result<Chart, ChartError> {
+    let values = measured(record, key, per_unit(unit, show_in));
     let first = record
         .springs
         .iter()
         .filter_map(|spring| find(spring, key))
         .find(|of| of.lower.is_some() || of.upper.is_some());
-    let shown = |value: Option<crate::units::Finite>| value.map(|value| value.get() / scale);
-    let theory = &record.theory;
-    let lines = Lines {
-        lower: first.and_then(|of| shown(of.lower)),
-        upper: first.and_then(|of| shown(of.upper)),
-        theory: (key.0 == Quantity::Rate.name()).then(|| {
-            (
-                theory.rate_lowest.get() / scale,
-                theory.rate_n_per_mm.get() / scale,
-                theory.rate_highest.get() / scale,
-            )
-        }),
-    };
+    let lines = Lines::new(record, key, first, per_unit(unit, show_in));
     let name = wording::characteristic(&key.0, key.1, show_in);
     let file = match key.1 {
         Some(at) => format!("{}-at-{}-mm", key.0, at.get()),
         None => key.0.clone(),
     };
+    let entries = entries(&values, &lines, first, &record.theory, show_in);
+    let bottom = ids::labels_height(&values);
+    let height = plot::legend_height(&entries) + LEADING * 1.6 + TALL + bottom;
+    let title = format!("{} of each spring", wording::sentence(&name));
+    let caption = caption(record, key, &values, &lines);
+    chart(&file, &title, caption, height, |sheet| {
+        draw(
+            sheet,
+            &values,
+            &lines,
+            &entries,
+            &format!("{name} ({})", unit_symbol(unit, show_in)),
+        )
+    })
+}
+
+fn measured<'a>(record: &'a AcceptRecord, key: &Key, scale: f64) -> Vec<Measured<'a>> {
+    let one = |spring: &'a SpringResult| {
+        let of = find(spring, key)?;
+        Some(Measured {
+            id: &spring.id,
+            verdict: of.verdict,
+            value: of.value?.get() / scale,
+            expanded: of
+                .expanded_uncertainty
+                .map_or(0.0, |value| value.get() / scale),
+        })
+    };
+    record.springs.iter().filter_map(one).collect()
+}
+
+fn caption(record: &AcceptRecord, key: &Key, values: &[Measured<'_>], lines: &Lines) -> String {
     let against = if lines.theory.is_some() {
         "limits and theory"
     } else {
@@ -113,21 +107,20 @@ fn one(
     } else {
         ""
     };
-    let caption =
-        format!("Each spring’s value with its interval ± U (95.45 %) against {against}{beside}.");
-    let entries = entries(&values, &lines, first, theory, show_in);
-    let bottom = ids::labels_height(&values);
-    let height = plot::legend_height(&entries) + LEADING * 1.6 + TALL + bottom;
-    let title = format!("{} of each spring", wording::sentence(&name));
-    chart(&file, &title, caption, height, |sheet| {
-        draw(
-            sheet,
-            &values,
-            &lines,
-            &entries,
-            &format!("{name} ({})", unit_symbol(unit, show_in)),
-        )
-    })
+    let without: Vec<String> = record
+        .springs
+        .iter()
+        .filter(|spring| find(spring, key).is_none_or(|of| of.value.is_none()))
+        .map(|spring| spring.id.clone())
+        .collect();
+    let absent = if without.is_empty() {
+        String::new()
+    } else {
+        format!(" Without a value: {}.", wording::list(&without))
+    };
+    format!(
+        "Each spring’s value with its interval ± U (95.45 %) against {against}{beside}.{absent}"
+    )
 }
 
 fn entries(
@@ -193,6 +186,35 @@ fn draw(
     entries: &[Entry],
     title: &str,
 ) -> Drawn {
+    let beside = values.len() >= histogram::FEWEST;
+    let y = up(values, lines);
+    let top = plot::legend_height(entries) + LEADING * 1.6;
+    let left = EDGE + plot::labels_width(y, 6) + 10.0;
+    let right = WIDTH - EDGE - if beside { SIDE } else { 0.0 };
+    let plot = Plot {
+        x: Scale {
+            value: (0.0, (values.len() as f64).max(1.0)),
+            paper: (left, right),
+        },
+        y: Scale {
+            value: y,
+            paper: (top + TALL, top),
+        },
+    };
+    plot::legend(sheet, entries)?;
+    plot::upward_axis(sheet, &plot, 6, title)?;
+    lines.draw(sheet, &plot)?;
+    marks(sheet, &plot, values)?;
+    ids::labels(sheet, &plot, values)?;
+    if beside {
+        let all: Vec<f64> = values.iter().map(|value| value.value).collect();
+        histogram::draw(sheet, &plot.y, (right + 10.0, WIDTH - EDGE), &all)?;
+    }
+    plot::frame(sheet, &plot)
+}
+
+/// The range of the values, of the limits, and of the theory where it is not far off.
+fn up(values: &[Measured<'_>], lines: &Lines) -> (f64, f64) {
     let bounds = [lines.lower, lines.upper].into_iter().flatten();
     let intervals = values
         .iter()
@@ -204,54 +226,7 @@ fn draw(
         .into_iter()
         .flat_map(|(low, middle, high)| [low, middle, high])
         .filter(|value| *value > tight.0 - reach && *value < tight.1 + reach);
-    let y = plot::range(near.chain([tight.0, tight.1]), 0.0);
-    let top = plot::legend_height(entries) + LEADING * 1.6;
-    let left = EDGE + plot::labels_width(y, 6) + 10.0;
-    let side = if values.len() >= histogram::FEWEST {
-        SIDE
-    } else {
-        0.0
-    };
-    let last = values.len() as f64;
-    let plot = Plot {
-        x: Scale {
-            value: (0.0, last.max(1.0)),
-            paper: (left, WIDTH - EDGE - side),
-        },
-        y: Scale {
-            value: y,
-            paper: (top + TALL, top),
-        },
-    };
-    plot::legend(sheet, entries)?;
-    plot::upward_axis(sheet, &plot, 6, title)?;
-    let right = WIDTH - EDGE;
-    if let Some((low, middle, high)) = lines.theory {
-        let held = |value: f64| plot.y.at(value.clamp(y.0, y.1));
-        sheet.block((left, held(low)), (right, held(high)), THEORY, 0.10)?;
-        if middle > y.0 && middle < y.1 {
-            sheet.dashes(
-                (left, plot.y.at(middle)),
-                (right, plot.y.at(middle)),
-                THEORY,
-                1.4,
-            )?;
-        }
-    }
-    for bound in [lines.lower, lines.upper].into_iter().flatten() {
-        sheet.line(
-            &[(left, plot.y.at(bound)), (right, plot.y.at(bound))],
-            LIMIT,
-            1.8,
-        )?;
-    }
-    marks(sheet, &plot, values)?;
-    ids::labels(sheet, &plot, values)?;
-    if side > 0.0 {
-        let all: Vec<f64> = values.iter().map(|value| value.value).collect();
-        histogram::draw(sheet, &plot.y, (plot.x.paper.1 + 10.0, right), &all)?;
-    }
-    plot::frame(sheet, &plot)
+    plot::range(near.chain([tight.0, tight.1]), 0.0)
 }
 
 fn marks(sheet: &mut Sheet<'_>, plot: &Plot, values: &[Measured<'_>]) -> Drawn {

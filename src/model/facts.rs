@@ -3,8 +3,9 @@
 use serde::Serialize;
 
 use crate::quantity::Unit;
-use crate::record::{AcceptRecord, WindowOf};
+use crate::record::{AcceptRecord, ClassPlan, ConditionFacts, PlanFacts, WindowOf};
 use crate::units::System;
+use crate::wording;
 use crate::wording::count;
 use crate::wording::{ABSENT, Place, number, with_unit};
 
@@ -57,25 +58,11 @@ pub(crate) fn all(record: &AcceptRecord, show_in: System) -> Vec<Facts> {
 
 fn lot(record: &AcceptRecord) -> Facts {
     let lot = &record.lot;
-    let conditions = &lot.conditions;
-    let measured = record.springs.len();
-    let strokes = match conditions.presetting_strokes {
-        Some(strokes) => format!(
-            "{} before the recording, {} in it",
-            strokes, conditions.presetting_recorded
-        ),
-        None => format!(
-            "not stated; {} in the recording",
-            conditions.presetting_recorded
-        ),
-    };
+    let measured = u64::try_from(record.springs.len()).unwrap_or(u64::MAX);
     let mut rows = vec![
         fact("Lot", lot.number.clone()),
         fact("Size", count(lot.size, "spring")),
-        fact(
-            "Measured",
-            count(u64::try_from(measured).unwrap_or(u64::MAX), "spring"),
-        ),
+        fact("Measured", count(measured, "spring")),
     ];
     rows.extend(
         [
@@ -88,14 +75,7 @@ fn lot(record: &AcceptRecord) -> Facts {
         .into_iter()
         .flatten(),
     );
-    rows.push(fact(
-        "Temperature",
-        conditions.temperature_c.map_or_else(
-            || "not stated".to_owned(),
-            |value| format!("{}\u{a0}°C", number(Some(value), 4)),
-        ),
-    ));
-    rows.push(fact("Presetting strokes", strokes));
+    rows.extend(conditions(&lot.conditions));
     rows.extend(
         lot.tags
             .iter()
@@ -105,6 +85,22 @@ fn lot(record: &AcceptRecord) -> Facts {
         title: "Lot".to_owned(),
         rows,
     }
+}
+
+fn conditions(of: &ConditionFacts) -> [Fact; 2] {
+    let temperature = of.temperature_c.map_or_else(
+        || "not stated; ±5\u{a0}K about 20\u{a0}°C allowed for".to_owned(),
+        |value| format!("{}\u{a0}°C", number(Some(value), 4)),
+    );
+    let recorded = of.presetting_recorded;
+    let strokes = match of.presetting_strokes {
+        Some(strokes) => format!("{strokes} before the recording, {recorded} in it"),
+        None => format!("not stated; {recorded} in the recording"),
+    };
+    [
+        fact("Temperature", temperature),
+        fact("Presetting strokes", strokes),
+    ]
 }
 
 fn drawing(record: &AcceptRecord, show_in: System) -> Facts {
@@ -187,10 +183,8 @@ fn plan(record: &AcceptRecord) -> Facts {
     rows.extend(stated("Inspection level", plan.level.as_ref()));
     rows.extend(stated("Code letter", plan.code_letter.as_ref()));
     rows.push(fact("Sample size", count(plan.sample_size, "spring")));
-    rows.push(fact(
-        "Accept, reject",
-        format!("Ac {}, Re {}", plan.accept, plan.reject),
-    ));
+    rows.extend(arrows(&plan.classes).map(|words| fact("Arrow of the table", words)));
+    rows.push(fact("Accept, reject", numbers(plan)));
     let counted = record
         .springs
         .iter()
@@ -204,4 +198,50 @@ fn plan(record: &AcceptRecord) -> Facts {
         title: "Plan".to_owned(),
         rows,
     }
+}
+
+/// Where an arrow of the table led; one line for classes it led alike.
+fn arrows(classes: &[ClassPlan]) -> Option<String> {
+    let mut led: Vec<(String, Vec<String>)> = Vec::new();
+    for class in classes {
+        let (Some(code), Some(used)) = (&class.code_letter, &class.used_letter) else {
+            continue;
+        };
+        if code == used {
+            continue;
+        }
+        let words = format!(
+            "letter {code} leads by the arrow to {used}: n {}",
+            class.sample_size
+        );
+        let name = class.class.word().to_owned();
+        match led.iter_mut().find(|known| known.0 == words) {
+            Some(known) => known.1.push(name),
+            None => led.push((words, vec![name])),
+        }
+    }
+    let lines: Vec<String> = led
+        .iter()
+        .map(|(words, names)| {
+            if names.len() == classes.len() {
+                words.clone()
+            } else {
+                format!("{}: {words}", wording::list(names))
+            }
+        })
+        .collect();
+    (!lines.is_empty()).then(|| lines.join("; "))
+}
+
+/// `major Ac 1, Re 2; minor Ac 2, Re 3`.
+fn numbers(plan: &PlanFacts) -> String {
+    if plan.classes.is_empty() {
+        return format!("Ac {}, Re {}", plan.accept, plan.reject);
+    }
+    let classes: Vec<String> = plan
+        .classes
+        .iter()
+        .map(|of| format!("{} Ac {}, Re {}", of.class.word(), of.accept, of.reject))
+        .collect();
+    classes.join("; ")
 }

@@ -4,6 +4,7 @@
 mod budget;
 mod facts;
 mod fits;
+mod named;
 mod page_one;
 mod provenance;
 mod springs;
@@ -73,6 +74,8 @@ pub struct Model {
     pub supplier: Option<Section>,
     /// Places to sign.
     pub signatures: Vec<String>,
+    /// Places to sign on the supplier's page.
+    pub supplier_signatures: Vec<String>,
 }
 
 impl Model {
@@ -90,7 +93,7 @@ impl Model {
                 System::MmN => "mm, N, N/mm, MPa".to_owned(),
                 System::InLbf => "in, lbf, lbf/in, psi (shown; judged in mm and N)".to_owned(),
             },
-            decision: page_one::deciding(record),
+            decision: page_one::deciding(record, show_in),
             notes: page_one::notes(record),
             facts: facts::all(record, show_in),
             plan: page_one::plan(record),
@@ -109,6 +112,9 @@ impl Model {
             provenance: provenance::section(record),
             supplier: supplier::page(record, show_in),
             signatures: ["Inspected by", "Decision released by"]
+                .map(str::to_owned)
+                .to_vec(),
+            supplier_signatures: ["Issued by", "Received by the supplier"]
                 .map(str::to_owned)
                 .to_vec(),
         }

@@ -3,12 +3,13 @@
 use serde::Serialize;
 
 use super::facts::labelled;
+use super::named;
 use super::table::{Cell, Column, Row, Table};
 use crate::quantity::Unit;
-use crate::record::{AcceptRecord, Decision, RequirementFacts, Verdict};
+use crate::record::{AcceptRecord, Decision, Reason, RequirementFacts, Verdict, find};
 use crate::units::{Finite, System};
 use crate::wording;
-use crate::wording::{Place, figure, number, probability, unit_symbol};
+use crate::wording::{ABSENT, Place, figure, number, probability, unit_symbol};
 
 /// The decision and why.
 #[derive(Clone, Debug, PartialEq, Eq, Serialize)]
@@ -21,6 +22,8 @@ pub struct Deciding {
     pub counts: String,
     /// The grounds.
     pub why: Vec<String>,
+    /// Failing and undecided springs of the sample by name, and what was seen.
+    pub springs: Vec<String>,
     /// What simple acceptance would have said.
     pub simple: String,
     /// The rule, and how undecided springs count.
@@ -56,7 +59,7 @@ pub(crate) fn with_verdict(record: &AcceptRecord, verdict: Verdict) -> usize {
 }
 
 /// The decision.
-pub(crate) fn deciding(record: &AcceptRecord) -> Deciding {
+pub(crate) fn deciding(record: &AcceptRecord, show_in: System) -> Deciding {
     let of = |verdict| with_verdict(record, verdict);
     Deciding {
         code: wording::decided(record.decision),
@@ -72,6 +75,7 @@ pub(crate) fn deciding(record: &AcceptRecord) -> Deciding {
             of(Verdict::Undecided)
         ),
         why: record.reasons.iter().map(wording::why).collect(),
+        springs: named::lines(record, show_in),
         simple: wording::simple_line(record),
         terms: wording::terms(&record.drawing),
     }
@@ -94,7 +98,7 @@ pub(crate) fn notes(record: &AcceptRecord) -> Vec<Note> {
     if !lot.not_inspected.is_empty() {
         notes.push(note("Not inspected", &lot.not_inspected.join("; ")));
     }
-    if record.decision == Decision::Undecided {
+    if record.decision == Decision::Undecided && with_verdict(record, Verdict::Undecided) > 0 {
         notes.push(note(
             "What would settle it",
             "The table of the springs says for each undecided spring what would settle it.",
@@ -118,9 +122,11 @@ pub(crate) fn plan(record: &AcceptRecord) -> Table {
     ];
     let rows = record.plan.classes.iter().map(|class| {
         let letter = match (&class.code_letter, &class.used_letter) {
-            (Some(code), Some(used)) if code != used => format!("{code}, by the arrow {used}"),
+            (Some(code), Some(used)) if code != used => {
+                format!("{code}, by the arrow to {used}")
+            }
             (Some(code), _) => code.clone(),
-            (None, _) => crate::wording::ABSENT.to_owned(),
+            (None, _) => ABSENT.to_owned(),
         };
         Row::from([
             class.class.word().into(),
@@ -144,14 +150,14 @@ pub(crate) fn plan(record: &AcceptRecord) -> Table {
 pub(crate) fn requirements(record: &AcceptRecord, show_in: System) -> Table {
     let columns = vec![
         Column::words("Requirement"),
+        Column::figures("Conform", ""),
+        Column::figures("Fail", ""),
+        Column::figures("Undecided", ""),
         Column::words("Unit"),
         Column::words("Class"),
         Column::figures("Nominal", ""),
         Column::figures("Lower", ""),
         Column::figures("Upper", ""),
-        Column::figures("Conform", ""),
-        Column::figures("Fail", ""),
-        Column::figures("Undecided", ""),
         Column::figures("Mean", ""),
         Column::figures("s", ""),
         Column::figures("Smallest", ""),
@@ -162,7 +168,7 @@ pub(crate) fn requirements(record: &AcceptRecord, show_in: System) -> Table {
         .drawing
         .requirements
         .iter()
-        .map(|of| requirement(of, show_in));
+        .map(|of| requirement(of, not_inspected(record, of), show_in));
     let mut table = Table::new(
         "Requirements, and what was measured",
         columns,
@@ -173,11 +179,23 @@ pub(crate) fn requirements(record: &AcceptRecord, show_in: System) -> Table {
     table
 }
 
-fn requirement(of: &RequirementFacts, show_in: System) -> Row {
-    let unit: Unit = of.unit;
-    let stated = |value: Option<Finite>| figure(value, unit, Place::Stated, show_in);
-    let place = Place::Uncertainty(of.largest_expanded_uncertainty);
-    let measured = |value: Option<Finite>| figure(value, unit, place, show_in);
+/// Whether the lot file says that this requirement was not inspected.
+fn not_inspected(record: &AcceptRecord, of: &RequirementFacts) -> bool {
+    let key = (of.name.clone(), of.at_length_mm);
+    let found = record
+        .springs
+        .iter()
+        .filter_map(|spring| find(spring, &key));
+    found
+        .map(|one| &one.reason)
+        .any(|reason| *reason == Some(Reason::NotInspected))
+}
+
+/// Springs that conform, fail, are undecided.
+fn counts(of: &RequirementFacts, left_out: bool) -> [Cell; 3] {
+    if left_out {
+        return ["not inspected", ABSENT, ABSENT].map(Cell::from);
+    }
     let emphasised = |number: u32, verdict: Verdict| {
         if number == 0 {
             Cell::from("0")
@@ -185,17 +203,30 @@ fn requirement(of: &RequirementFacts, show_in: System) -> Row {
             Cell::marked(number.to_string(), verdict)
         }
     };
+    [
+        of.conforming.to_string().into(),
+        emphasised(of.failing, Verdict::Fails),
+        emphasised(of.undecided, Verdict::Undecided),
+    ]
+}
+
+fn requirement(of: &RequirementFacts, left_out: bool, show_in: System) -> Row {
+    let unit: Unit = of.unit;
+    let stated = |value: Option<Finite>| figure(value, unit, Place::Stated, show_in);
+    let place = Place::Uncertainty(of.largest_expanded_uncertainty);
+    let measured = |value: Option<Finite>| figure(value, unit, place, show_in);
+    let [conform, fail, undecided] = counts(of, left_out);
     let name = wording::characteristic(&of.name, of.at_length_mm, show_in);
     Row::from([
         wording::sentence(&name).into(),
+        conform,
+        fail,
+        undecided,
         unit_symbol(unit, show_in).into(),
         of.class.word().into(),
         stated(of.nominal).into(),
         stated(of.lower).into(),
         stated(of.upper).into(),
-        of.conforming.to_string().into(),
-        emphasised(of.failing, Verdict::Fails),
-        emphasised(of.undecided, Verdict::Undecided),
         measured(of.mean).into(),
         measured(of.standard_deviation).into(),
         measured(of.smallest).into(),

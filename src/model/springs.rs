@@ -19,16 +19,7 @@ pub(crate) fn verdicts(record: &AcceptRecord, show_in: System) -> Section {
         let from = (part * ABREAST).min(keys.len());
         let to = (from + ABREAST).min(keys.len());
         let some = keys.get(from..to).unwrap_or(&[]);
-        let mut columns = vec![Column::words("Spring"), Column::words("Disposition")];
-        columns.extend(some.iter().map(|((name, at), unit)| {
-            Column::figures(
-                wording::symbol(name, *at, show_in),
-                unit_symbol(*unit, show_in),
-            )
-        }));
-        if part == 0 {
-            columns.push(Column::words("Remarks"));
-        }
+        let columns = columns(some, part == 0, show_in);
         let rows = record.springs.iter().map(|spring| Row {
             mark: mark(spring.verdict),
             cells: cells(spring, some, part == 0, show_in),
@@ -51,16 +42,33 @@ pub(crate) fn verdicts(record: &AcceptRecord, show_in: System) -> Section {
     }
 }
 
-fn cells(spring: &SpringResult, keys: &[(Key, Unit)], remark: bool, show_in: System) -> Vec<Cell> {
-    let mut cells = vec![
-        Cell::from(spring.id.clone()),
-        Cell::marked(wording::disposition(spring), spring.verdict),
-    ];
+fn columns(keys: &[(Key, Unit)], first: bool, show_in: System) -> Vec<Column> {
+    let mut columns = vec![Column::words("Spring")];
+    if first {
+        columns.push(Column::words("Disposition"));
+    }
+    columns.extend(keys.iter().map(|((name, at), unit)| {
+        Column::figures(
+            wording::symbol(name, *at, show_in),
+            unit_symbol(*unit, show_in),
+        )
+    }));
+    if first {
+        columns.push(Column::words("Remarks"));
+    }
+    columns
+}
+
+fn cells(spring: &SpringResult, keys: &[(Key, Unit)], first: bool, show_in: System) -> Vec<Cell> {
+    let mut cells = vec![Cell::from(spring.id.clone())];
+    if first {
+        cells.push(Cell::marked(wording::disposition(spring), spring.verdict));
+    }
     cells.extend(
         keys.iter()
             .map(|(key, _)| find(spring, key).map_or_else(Cell::default, |of| value(of, show_in))),
     );
-    if remark {
+    if first {
         cells.push(remarks(spring, show_in).into());
     }
     cells
@@ -100,16 +108,7 @@ pub(crate) fn remarks(spring: &SpringResult, show_in: System) -> String {
             .iter()
             .map(|advice| format!("to settle {}", wording::advice(advice, show_in))),
     );
-    if spring.measurements.len() > 1 {
-        said.push(format!("measured {} times", spring.measurements.len()));
-    }
-    for repeat in &spring.measurements {
-        if let Some(invalid) = &repeat.invalid {
-            said.push(format!("{} set aside as invalid: {invalid}", repeat.export));
-        } else if let Some(reason) = &repeat.reason {
-            said.push(format!("repeated ({reason}): {}", repeat.export));
-        }
-    }
+    said.extend(measured(spring));
     if !spring.in_sample {
         said.push("beyond the sample, does not count".to_owned());
     }
@@ -122,23 +121,42 @@ pub(crate) fn remarks(spring: &SpringResult, show_in: System) -> String {
     said.join("; ")
 }
 
+/// The measurements of a spring measured more than once, or not validly.
+fn measured(spring: &SpringResult) -> Option<String> {
+    let all = &spring.measurements;
+    if all.len() < 2 && all.iter().all(|one| one.invalid.is_none()) {
+        return None;
+    }
+    let exports: Vec<String> = all
+        .iter()
+        .map(|one| match (&one.invalid, &one.reason) {
+            (Some(why), _) => format!("{} (set aside as invalid: {why})", one.export),
+            (None, Some(reason)) => format!("{} (repeated: {reason})", one.export),
+            (None, None) => one.export.clone(),
+        })
+        .collect();
+    let times = u64::try_from(all.len()).unwrap_or(u64::MAX);
+    Some(format!(
+        "{}: {}",
+        wording::count(times, "measurement"),
+        exports.join(", ")
+    ))
+}
+
 /// What is behind the figures: one table per characteristic.
 pub(crate) fn details(record: &AcceptRecord, show_in: System) -> Section {
     let tables = occurring(record).into_iter().map(|(key, unit)| {
-        let unit_text = unit_symbol(unit, show_in);
-        let columns = vec![
-            Column::words("Spring"),
-            Column::figures("u", unit_text),
-            Column::figures("own", unit_text),
-            Column::figures("common", unit_text),
-            Column::figures("k (ν)", ""),
-            Column::figures("Conforms within", unit_text),
-            Column::figures("Fails beyond", unit_text),
-            Column::figures("P inside limits", ""),
-        ];
+        let found = || {
+            record
+                .springs
+                .iter()
+                .filter_map(|spring| find(spring, &key))
+        };
+        let judged = found().any(|of| of.verdict.is_some());
+        let columns = detail_columns(unit_symbol(unit, show_in), judged);
         let rows = record.springs.iter().filter_map(|spring| {
             let of = find(spring, &key)?;
-            of.value.map(|_| detail(spring, of, show_in))
+            of.value.map(|_| detail(spring, of, judged, show_in))
         });
         let name = wording::characteristic(&key.0, key.1, show_in);
         Table::new(wording::sentence(&name), columns, rows.collect())
@@ -155,7 +173,50 @@ pub(crate) fn details(record: &AcceptRecord, show_in: System) -> Section {
     }
 }
 
-fn detail(spring: &SpringResult, of: &CharacteristicResult, show_in: System) -> Row {
+fn detail_columns(unit: &str, judged: bool) -> Vec<Column> {
+    let mut columns = vec![
+        Column::words("Spring"),
+        Column::figures("u", unit),
+        Column::figures("own", unit),
+        Column::figures("common", unit),
+        Column::figures("k (ν)", ""),
+    ];
+    if judged {
+        columns.extend([
+            Column::figures("Conforms within", unit),
+            Column::figures("Fails beyond", unit),
+            Column::figures("P inside limits", ""),
+        ]);
+    }
+    columns
+}
+
+/// One spring's row; the last three cells only where the characteristic is judged.
+fn detail(spring: &SpringResult, of: &CharacteristicResult, judged: bool, show_in: System) -> Row {
+    let small = |value: Option<Finite>| figure(value, of.unit, Place::Significant(2), show_in);
+    let coverage = of.coverage_factor.map_or_else(
+        || ABSENT.to_owned(),
+        |k| format!("{:.2} ({})", k.get(), freedom(of.degrees_of_freedom)),
+    );
+    let mut cells: Vec<Cell> = vec![
+        spring.id.clone().into(),
+        small(of.standard_uncertainty).into(),
+        small(of.own_uncertainty).into(),
+        small(of.common_uncertainty).into(),
+        coverage.into(),
+    ];
+    if judged {
+        cells.extend(proof(of, show_in).map(Cell::from));
+        cells.push(probability(of.conformance_probability).into());
+    }
+    Row {
+        mark: mark(spring.verdict),
+        cells,
+    }
+}
+
+/// Inside what conformance is proven, and beyond what failure.
+fn proof(of: &CharacteristicResult, show_in: System) -> [String; 2] {
     let shown = |value: Option<Finite>| {
         figure(
             value,
@@ -164,7 +225,6 @@ fn detail(spring: &SpringResult, of: &CharacteristicResult, show_in: System) -> 
             show_in,
         )
     };
-    let small = |value: Option<Finite>| figure(value, of.unit, Place::Significant(2), show_in);
     let bounds = |low: Option<Finite>, high: Option<Finite>| match (low, high) {
         (None, None) => ABSENT.to_owned(),
         (Some(_), None) => format!("≥ {}", shown(low)),
@@ -177,19 +237,5 @@ fn detail(spring: &SpringResult, of: &CharacteristicResult, show_in: System) -> 
         (None, high @ Some(_)) => format!("> {}", shown(high)),
         (low, high) => format!("< {}, > {}", shown(low), shown(high)),
     };
-    let coverage = of.coverage_factor.map_or_else(
-        || ABSENT.to_owned(),
-        |k| format!("{:.2} ({})", k.get(), freedom(of.degrees_of_freedom)),
-    );
-    Row::from([
-        spring.id.clone().into(),
-        small(of.standard_uncertainty).into(),
-        small(of.own_uncertainty).into(),
-        small(of.common_uncertainty).into(),
-        coverage.into(),
-        bounds(of.accept_lower, of.accept_upper).into(),
-        beyond.into(),
-        probability(of.conformance_probability).into(),
-    ])
-    .about(spring.verdict)
+    [bounds(of.accept_lower, of.accept_upper), beyond]
 }

@@ -131,7 +131,8 @@ pub(super) fn judge(
             .readings
             .into_iter()
             .last()
-            .and_then(|reading| reading.reduced),
+            .and_then(|reading| reading.reduced)
+            .map(|reduced| Reduced { id, ..reduced }),
     })
 }
 

@@ -5,5 +5,6 @@ mod facts;
 mod figures;
 mod fixture;
 mod lots;
+mod named;
 mod pages;
 mod springs;
