@@ -276,7 +276,7 @@ mod tests {
                 Line::new("resolution", Part::Own, 0.4),
             ]
         };
-        for (stated, wanted) in [(0.6, 0.6), (0.1, 0.5)] {
+        for (stated, wanted) in [(0.6, 0.6), (0.1, 0.5), (0.3, 0.5), (0.51, 0.51)] {
             let got = sum(&with_repeatability(fit(), Some(stated)))
                 .unwrap()
                 .standard;

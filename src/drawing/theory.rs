@@ -224,3 +224,61 @@ fn extremes(member: &Member) -> Option<(f64, f64)> {
     };
     Some((at(-1.0)?, at(1.0)?))
 }
+
+#[cfg(test)]
+mod tests {
+    #![expect(clippy::unwrap_used, reason = "tests")]
+    use super::*;
+    use crate::drawing::{Shear, Sized};
+    use approx::assert_relative_eq;
+
+    fn member(coil: Coil, wire: f64) -> Member {
+        let exact = |nominal: f64| Sized {
+            nominal,
+            tolerance: 0.0,
+        };
+        Member {
+            name: String::new(),
+            wire: Sized {
+                nominal: wire,
+                tolerance: 0.01,
+            },
+            coil,
+            active: exact(7.5),
+            total: 9.5,
+            ends: Ends::ClosedGround,
+            free: exact(90.0),
+            shear: Shear {
+                modulus: 81_500.0,
+                spread: 0.0,
+                material: String::new(),
+                source: String::new(),
+            },
+        }
+    }
+
+    /// Only the wire is uncertain: u(R) is the numerical derivative of the rate by d, with the drawn diameter held.
+    #[test]
+    fn the_sensitivity_of_the_wire_follows_the_drawn_diameter() {
+        let exact = |nominal: f64| Sized {
+            nominal,
+            tolerance: 0.0,
+        };
+        for coil in [
+            Coil::Outside(exact(36.0)),
+            Coil::Mean(exact(32.0)),
+            Coil::Inside(exact(28.0)),
+        ] {
+            let at = |wire: f64| theory(&[member(coil, wire)], 90.0).unwrap();
+            let step = 1e-5;
+            let slope = (at(4.0 + step).rate.get() - at(4.0 - step).rate.get()) / (2.0 * step);
+            let wanted = slope * 0.01 / 3.0_f64.sqrt();
+            assert_relative_eq!(
+                at(4.0).standard_uncertainty,
+                wanted,
+                epsilon = 0.0,
+                max_relative = 1e-6
+            );
+        }
+    }
+}

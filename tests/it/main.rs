@@ -46,6 +46,7 @@ mod independent;
 mod known_lots;
 mod lots;
 mod many_exports;
+mod mutants;
 mod one_truth;
 mod plan_published;
 mod prints;

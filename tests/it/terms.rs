@@ -84,3 +84,74 @@ fn a_curve_that_misses_the_window_still_gives_its_loads_and_says_how_far_to_go()
         }
     }
 }
+
+/// A repeat that replaces an invalid measurement stands alone: its value, and no uncertainty shared with the other.
+#[test]
+fn an_invalid_measurement_does_not_count() {
+    let repeat = |invalid: &str| {
+        format!(
+            "[[repeat]]\nspring = \"TG-07\"\nexport = \"again/TG-07.csv\"\nreason = \"slipped\"\n{invalid}\n"
+        )
+    };
+    let run = |invalid: &str, first_off: f64| {
+        let case = Case::of("accepted");
+        let good = case.text("springs/TG-07.csv");
+        case.set("again/TG-07.csv", &good);
+        let mut lines: Vec<String> = good.lines().map(str::to_owned).collect();
+        for line in lines.iter_mut().skip(1) {
+            let cells: Vec<&str> = line.split(',').collect();
+            *line = format!(
+                "{},{},{:.4}",
+                cells[0],
+                cells[1],
+                cells[2].parse::<f64>().unwrap() * first_off
+            );
+        }
+        case.set("springs/TG-07.csv", lines.join("\n") + "\n");
+        case.end(&repeat(invalid));
+        let (_, record) = case.judged(&[]);
+        record["springs"]
+            .as_array()
+            .unwrap()
+            .iter()
+            .find(|one| one["id"] == "TG-07")
+            .unwrap()
+            .clone()
+    };
+    let rate = |spring: &Value| spring["characteristics"][0].clone();
+    let alone = rate(&Case::of("accepted").judged(&[]).1["springs"][6]);
+    let replaced = run("invalid = \"slipped off the plate\"", 0.7);
+    assert_eq!(rate(&replaced)["value"], alone["value"]);
+    assert_eq!(rate(&replaced)["own_uncertainty"], alone["own_uncertainty"]);
+    assert_eq!(replaced["measurements"].as_array().unwrap().len(), 2);
+    let averaged = run("", 0.7);
+    assert!(rate(&averaged)["value"].as_f64() < alone["value"].as_f64());
+}
+
+/// The window ends beyond the rise to solid: no point past the rise is fitted, so there is no rate.
+#[test]
+fn a_window_beyond_the_rise_to_solid_gives_no_rate() {
+    let case = Case::of("accepted");
+    let (_, record) = case.judged(&[]);
+    let of = |record: &Value, name: &str| {
+        let all = record["springs"][4]["characteristics"]
+            .as_array()
+            .unwrap()
+            .clone();
+        all.into_iter().find(|one| one["name"] == name).unwrap()
+    };
+    let solid = of(&record, "solid_length")["value"].as_f64().unwrap();
+    let window = |to: f64| {
+        let case = Case::of("accepted");
+        let stated = "window = { from = \"30 %\", to = \"70 %\", of = \"full load\" }";
+        case.sub(
+            "tg-204.toml",
+            stated,
+            &format!("window = {{ from = 70.0, to = {to:.3}, of = \"length\" }}"),
+        );
+        case.sub("tg-204.toml", "total_coils = 9.5", "total_coils = 9.2"); // the drawing lets the window end nearer to solid
+        of(&case.judged(&[]).1, "rate")
+    };
+    assert!(window(solid + 1.0)["value"].is_number());
+    assert_eq!(window(solid - 0.1)["reason"]["code"], "window_not_reached");
+}
