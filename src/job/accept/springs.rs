@@ -11,6 +11,7 @@ use crate::record::{CharacteristicResult, FindingResult, SpringResult};
 use crate::stats::StatsError;
 use crate::verdict::{self, Overall, Verdict, overall};
 
+use super::super::read::Reading;
 use super::Files;
 use super::figures::{fit_facts, result};
 use super::group::{self, Spring};
@@ -110,30 +111,33 @@ pub(super) fn judge(
             Vec::new()
         },
     };
-    let loads = spring.readings.iter().map(|reading| reading.loads);
-    Ok(Judged {
+    Ok(with_readings(overall, result, spring.readings))
+}
+
+/// What the lot still needs of a spring's readings, beside its result.
+fn with_readings(overall: Overall, result: SpringResult, readings: Vec<Reading>) -> Judged {
+    let widen = |a: (f64, f64), b: (f64, f64)| (a.0.min(b.0), a.1.max(b.1));
+    let loads = readings.iter().map(|reading| reading.loads).reduce(widen);
+    let any = |of: fn(&Reading) -> bool| readings.iter().any(of);
+    let (zero_missing, short_strokes, gauge_differs) = (
+        any(|one| !one.zero_read),
+        any(|one| one.short_strokes > 0),
+        any(|one| one.measurement.gauge_differs),
+    );
+    let id = result.id.clone();
+    let last = readings.into_iter().last();
+    Judged {
         overall,
         result,
-        plain_rate: last.and_then(|reading| reading.plain_rate),
-        zero_read: spring.readings.iter().all(|reading| reading.zero_read),
-        short_strokes: spring
-            .readings
-            .iter()
-            .any(|reading| reading.short_strokes > 0),
-        gauge_differs: spring
-            .readings
-            .iter()
-            .any(|reading| reading.measurement.gauge_differs),
-        loads: loads
-            .reduce(|a, b| (a.0.min(b.0), a.1.max(b.1)))
-            .unwrap_or((0.0, 0.0)),
-        reduced: spring
-            .readings
-            .into_iter()
-            .last()
+        plain_rate: last.as_ref().and_then(|reading| reading.plain_rate),
+        zero_read: !zero_missing,
+        short_strokes,
+        gauge_differs,
+        loads: loads.unwrap_or((0.0, 0.0)),
+        reduced: last
             .and_then(|reading| reading.reduced)
             .map(|reduced| Reduced { id, ..reduced }),
-    })
+    }
 }
 
 impl<'a> Verdicts<'a> {
