@@ -72,24 +72,7 @@ fn print(expected: &Expected, out: &mut impl Write) -> std::io::Result<()> {
     for member in &theory.members {
         member_lines(member, out)?;
     }
-    if let Some(deflection) = expected.deflection_mm {
-        writeln!(out, "at a deflection of {} mm:", length(deflection))?;
-        for member in &expected.members {
-            let stress = |of: fn(&job::StressAnswer) -> f64| {
-                n(member.stress_mpa.as_ref().map(of), Unit::Megapascal)
-            };
-            writeln!(
-                out,
-                "  {}: F {} N; stress {} MPa, static {}, dynamic {}, Wahl {}",
-                member.name,
-                n(member.load_n, Unit::Newton),
-                stress(|one| one.uncorrected),
-                stress(|one| one.r#static),
-                stress(|one| one.dynamic),
-                stress(|one| one.wahl)
-            )?;
-        }
-    }
+    asked_lines(expected, out)?;
     writeln!(
         out,
         "R = G·d⁴/(8·D³·n), EN 13906-1. Stresses are theoretical; a compressed spring stores energy and can be thrown."
@@ -98,6 +81,34 @@ fn print(expected: &Expected, out: &mut impl Write) -> std::io::Result<()> {
         out,
         "Safety-related use is decided by the responsible engineer under the applicable codes, not by this page."
     )
+}
+
+/// What holds at the load or length asked for; nothing where none was.
+fn asked_lines(expected: &Expected, out: &mut impl Write) -> std::io::Result<()> {
+    let Some(deflection) = expected.deflection_mm else {
+        return Ok(());
+    };
+    writeln!(
+        out,
+        "at a deflection of {} mm:",
+        n(Some(deflection), Unit::Millimetre)
+    )?;
+    for member in &expected.members {
+        let stress = |of: fn(&job::StressAnswer) -> f64| {
+            n(member.stress_mpa.as_ref().map(of), Unit::Megapascal)
+        };
+        writeln!(
+            out,
+            "  {}: F {} N; stress {} MPa, static {}, dynamic {}, Wahl {}",
+            member.name,
+            n(member.load_n, Unit::Newton),
+            stress(|one| one.uncorrected),
+            stress(|one| one.r#static),
+            stress(|one| one.dynamic),
+            stress(|one| one.wahl)
+        )?;
+    }
+    Ok(())
 }
 
 fn member_lines(member: &MemberFacts, out: &mut impl Write) -> std::io::Result<()> {

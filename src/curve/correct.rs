@@ -77,16 +77,7 @@ pub fn correct(raw: &RawCurve, rig: &Rig) -> Result<Curve, CurveError> {
         Zero::NotRead => 0.0,
     };
     let load: Vec<f64> = raw.load.iter().map(|f| f - offset).collect();
-    if let Compliance::Measured { value, .. } = rig.frame {
-        let zeroed_at = if rig.means == Means::Deflection {
-            0.0
-        } else {
-            rig.zeroed_at_load
-        };
-        for (x, f) in u.iter_mut().zip(&load) {
-            *x -= value * (f - zeroed_at); // s = s_ind − C·F, and L = L_ind + C·(F − F_z)
-        }
-    }
+    take_off_frame(&mut u, &load, rig);
     let points = Points {
         u: &u,
         load: &load,
@@ -125,6 +116,21 @@ pub fn correct(raw: &RawCurve, rig: &Rig) -> Result<Curve, CurveError> {
     };
     site.check_rising(&curve)?;
     Ok(curve)
+}
+
+/// Takes off the travel what the frame gave: s = s_ind − C·F, and L = L_ind + C·(F − F_z).
+fn take_off_frame(u: &mut [f64], load: &[f64], rig: &Rig) {
+    let Compliance::Measured { value, .. } = rig.frame else {
+        return;
+    };
+    let zeroed_at = if rig.means == Means::Deflection {
+        0.0
+    } else {
+        rig.zeroed_at_load
+    };
+    for (x, f) in u.iter_mut().zip(load) {
+        *x -= value * (f - zeroed_at);
+    }
 }
 
 /// The empty-platen readings before first contact: points that lie more than one contact load's travel

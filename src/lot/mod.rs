@@ -3,13 +3,15 @@
 
 mod advice;
 mod decide;
+mod outcome;
 mod plan;
 mod plan_table;
 mod reason;
 mod terms;
 
 pub use advice::{Advice, advise};
-pub use decide::{Outcome, Standing, decide};
+pub use decide::decide;
+pub use outcome::{Outcome, Standing};
 pub use plan::{
     Aql, Arrow, CodeLetter, PlanError, SinglePlan, normal_single, probability_of_acceptance,
 };
