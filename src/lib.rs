@@ -32,6 +32,8 @@ pub mod lot;
 
 pub mod record;
 
+pub mod archive;
+
 pub mod wording;
 
 pub mod sheet;

@@ -17,4 +17,4 @@ pub use length::OwnFree;
 pub use measure::{
     Absence, Characteristic, MeasureError, Measured, Measurement, Setup, measure, wanted,
 };
-pub use rate::RateFit;
+pub use rate::{RateFit, judged};

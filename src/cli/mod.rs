@@ -4,7 +4,9 @@ mod accept;
 mod args;
 mod expect;
 mod folder;
+mod lots;
 mod rate;
+mod recheck;
 mod shell;
 mod show;
 
@@ -62,6 +64,8 @@ fn dispatch(arguments: &Arguments, out: &mut impl Write) -> miette::Result<u8> {
         Command::Accept(args) => accept::run(args, arguments.quiet, out),
         Command::Rate(args) => rate::run(args, out),
         Command::Expect(args) => expect::run(args, out),
+        Command::Lots(args) => lots::run(args, out),
+        Command::Recheck(args) => recheck::run(args, out),
         Command::Completions { shell } => Ok(shell::completions(*shell, out)),
         Command::Manual { dir } => shell::manual(dir),
     }

@@ -3,10 +3,17 @@
 mod accept;
 mod expect;
 mod facts;
+mod lots;
 mod rate;
 mod read;
+mod recheck;
 mod threads;
 
 pub use accept::{Accepted, Options, accept};
 pub use expect::{Ask, Expected, MemberAnswer, StressAnswer, expect};
+pub use lots::{Listing, LotsError, Query, lots};
 pub use rate::{Bench, Guess, LoadAt, RateOptions, RateResult, rate};
+pub use read::Keep;
+pub use recheck::{
+    ChangedInput, Outcome, RecheckError, Rechecked, Stored, recheck, recheck_run, stored_runs,
+};

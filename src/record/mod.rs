@@ -3,6 +3,7 @@
 
 mod accept;
 mod caution;
+mod compare;
 mod facts;
 mod find;
 mod spring;
@@ -12,6 +13,7 @@ pub use accept::{
     Provenance, RequirementFacts, SimpleAcceptance,
 };
 pub use caution::{Caution, Oddity};
+pub use compare::{ACROSS_VERSIONS, Closeness, Difference, differences};
 pub use facts::{MemberFacts, RigFacts, StressFacts, TheoryFacts, WindowFacts};
 pub use find::{Key, find, occurring};
 pub use spring::{

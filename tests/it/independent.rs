@@ -20,7 +20,7 @@ fn record() -> AcceptRecord {
         date: jiff::civil::date(2026, 12, 1),
         units_confirmed: false,
         strict: false,
-        drawn: false,
+        keep: coilassay::job::Keep::default(),
         block_bytes: None,
         flags: Vec::new(),
     };

@@ -83,7 +83,7 @@ fn judged() -> Vec<Judged> {
         date: jiff::civil::date(2026, 12, 1),
         units_confirmed: false,
         strict: false,
-        drawn: false,
+        keep: coilassay::job::Keep::default(),
         block_bytes: None,
         flags: Vec::new(),
     };

@@ -51,7 +51,7 @@ impl Lot {
             date: jiff::civil::date(2026, 12, 1),
             units_confirmed: false,
             strict: false,
-            drawn: false,
+            keep: coilassay::job::Keep::default(),
             block_bytes,
             flags: Vec::new(),
         };

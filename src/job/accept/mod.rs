@@ -18,7 +18,7 @@ use jiff::civil::Date;
 use rayon::prelude::*;
 
 use crate::characteristic::{Setup, wanted};
-use crate::curve::{Reduced, full_load, nominal_rate, window_of};
+use crate::curve::{Kept, Reduced, full_load, nominal_rate, window_of};
 use crate::doubt::doubt;
 use crate::drawing::{Drawing, Requirement, Rule};
 use crate::lot::{class_terms, decide};
@@ -28,7 +28,7 @@ use crate::rig::SpringFrom;
 use crate::text::InputFile;
 
 use super::facts;
-use super::read::{How, Reading, read};
+use super::read::{How, Keep, Reading, read};
 use super::threads::side_by_side;
 use error::AcceptError;
 use files::Files;
@@ -47,8 +47,8 @@ pub struct Options {
     pub units_confirmed: bool,
     /// A warning on the rig ends the run.
     pub strict: bool,
-    /// Whether curves are kept for charts.
-    pub drawn: bool,
+    /// What is kept of the curves.
+    pub keep: Keep,
     /// Bytes read at once, where a test wants other blocks.
     pub block_bytes: Option<usize>,
     /// Flags that bear on the result, as given.
@@ -62,6 +62,9 @@ pub struct Accepted {
     pub record: AcceptRecord,
     /// The curves for the charts, in the order of the springs; empty where they were not wanted.
     pub curves: Vec<Reduced>,
+    /// The curves for an archive, in the order of the springs, each spring's measurements in the order of measuring; empty
+    /// where they were not wanted.
+    pub kept: Vec<Vec<Kept>>,
 }
 
 /// Judges the lot of the file at `path`, written as `as_written`.
@@ -84,7 +87,7 @@ pub fn accept(path: &Path, as_written: &str, options: &Options) -> miette::Resul
     let how = How {
         setup: &setup,
         caliper: &files.caliper.springs,
-        drawn: options.drawn,
+        keep: options.keep,
         block_bytes: options.block_bytes,
     };
     let (readings, sources) = read_all(&files, how)?;
@@ -202,6 +205,10 @@ fn judge(
         .iter_mut()
         .filter_map(|spring| spring.reduced.take())
         .collect();
+    let kept = judged
+        .iter_mut()
+        .map(|spring| std::mem::take(&mut spring.kept))
+        .collect();
     let requirements = requirements::facts(drawing, &judged);
     let record = AcceptRecord {
         format: FORMAT,
@@ -223,7 +230,11 @@ fn judge(
         provenance: provenance(sources, options),
         files: Vec::new(),
     };
-    Ok(Accepted { record, curves })
+    Ok(Accepted {
+        record,
+        curves,
+        kept,
+    })
 }
 
 fn provenance(sources: Sources, options: &Options) -> Provenance {
