@@ -30,7 +30,7 @@ impl Archive {
     /// [`ArchiveError::Read`] where a folder cannot be listed.
     pub fn stored_runs(&self) -> Result<(Vec<StoredRun>, Vec<Unreadable>), ArchiveError> {
         let tree = self.root().join("springs");
-        let files = walk::runs(&tree, "parquet")?;
+        let files = walk::runs(&tree, "parquet", None)?;
         let (mut runs, mut unreadable) = (Vec::new(), files.foreign);
         for path in files.runs {
             match run_of(&path) {

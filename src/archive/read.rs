@@ -46,8 +46,8 @@ const COLUMNS: [&str; 23] = [
 /// One measured value of one spring; figures in the unit of the series.
 #[derive(Clone, Debug, PartialEq)]
 pub struct SpringValue {
-    /// The spring.
-    pub spring: String,
+    /// Its place in [`LotRun::springs`].
+    pub spring: usize,
     /// The value.
     pub value: f64,
     /// Standard uncertainty of its own; `None` where it is not known.
@@ -115,6 +115,8 @@ pub struct LotRun {
     pub run: Run,
     /// The lot.
     pub head: LotHead,
+    /// Ids of the springs, in the order of the result.
+    pub springs: Vec<String>,
     /// The characteristics, in the order of the result.
     pub series: Vec<Series>,
 }
@@ -129,12 +131,12 @@ pub struct Found {
 }
 
 impl Archive {
-    /// Reads every run. A file that cannot be read is named, and the rest is read.
+    /// Reads every run, or every run of one drawing. A file that cannot be read is named, and the rest is read.
     ///
     /// # Errors
     /// [`ArchiveError::Read`] where a folder cannot be listed.
-    pub fn runs(&self) -> Result<Found, ArchiveError> {
-        let files = walk::runs(&self.root().join("springs"), "parquet")?;
+    pub fn runs(&self, drawing: Option<&str>) -> Result<Found, ArchiveError> {
+        let files = walk::runs(&self.root().join("springs"), "parquet", drawing)?;
         let read: Vec<_> = files.runs.par_iter().map(|path| run(path)).collect();
         let mut found = Found {
             runs: Vec::with_capacity(read.len()),
@@ -223,10 +225,8 @@ fn lot_run(frame: &DataFrame) -> Result<LotRun, PolarsError> {
         let missing = || PolarsError::NoData(format!("its column `{name}` is empty").into());
         text(name)?.ok_or_else(missing)
     };
-    let wrong = |name: &str| {
-        PolarsError::InvalidOperation(format!("its column `{name}` holds no such thing").into())
-    };
     let date = |name: &str, text: &str| text.parse::<Date>().map_err(|_| wrong(name));
+    let (springs, series) = series(frame)?;
     let received = text("received")?.map(|text| date("received", &text));
     let decision = texts(frame, "decision")?.get(0);
     Ok(LotRun {
@@ -248,12 +248,13 @@ fn lot_run(frame: &DataFrame) -> Result<LotRun, PolarsError> {
             tags: serde_json::from_str(&must("tags")?).map_err(|_| wrong("tags"))?,
             decision: decision.and_then(unword).ok_or_else(|| wrong("decision"))?,
         },
-        series: series(frame)?,
+        springs,
+        series,
     })
 }
 
-/// The values by characteristic.
-fn series(frame: &DataFrame) -> Result<Vec<Series>, PolarsError> {
+/// The springs, and their values by characteristic.
+fn series(frame: &DataFrame) -> Result<(Vec<String>, Vec<Series>), PolarsError> {
     let (springs, names, units) = (
         texts(frame, "spring")?,
         texts(frame, "characteristic")?,
@@ -263,39 +264,43 @@ fn series(frame: &DataFrame) -> Result<Vec<Series>, PolarsError> {
     let (at, values) = (figure("at_length_mm")?, figure("value")?);
     let (own, common) = (figure("own_uncertainty")?, figure("common_uncertainty")?);
     let (nominal, lower, upper) = (figure("nominal")?, figure("lower")?, figure("upper")?);
-    let mut found: Vec<Series> = Vec::new();
+    let (mut ids, mut found): (Vec<String>, Vec<Series>) = (Vec::new(), Vec::new());
     for row in 0..frame.height() {
-        let (Some(spring), Some(name), Some(unit)) = (
-            springs.get(row),
-            names.get(row),
-            units.get(row).and_then(unword),
-        ) else {
-            continue;
+        let spring = springs.get(row).unwrap_or("");
+        if ids.last().is_none_or(|last| last != spring) {
+            ids.push(spring.to_owned());
+        }
+        let (Some(name), Some(unit)) = (names.get(row), units.get(row)) else {
+            continue; // a spring of which nothing was measured
         };
         let at = at.get(row);
-        let place = found.iter().position(|one| one.is(name, at));
-        let place = place.unwrap_or_else(|| {
+        let known = found.iter().position(|one| one.is(name, at));
+        let place = known.unwrap_or(found.len());
+        if known.is_none() {
             found.push(Series {
                 characteristic: name.to_owned(),
                 at_length_mm: at,
-                unit,
+                unit: unword(unit).ok_or_else(|| wrong("unit"))?,
                 nominal: nominal.get(row),
                 lower: lower.get(row),
                 upper: upper.get(row),
                 values: Vec::new(),
             });
-            found.len() - 1
-        });
+        }
         if let (Some(series), Some(value)) = (found.get_mut(place), values.get(row)) {
             series.values.push(SpringValue {
-                spring: spring.to_owned(),
+                spring: ids.len() - 1,
                 value,
                 own: own.get(row),
                 common: common.get(row),
             });
         }
     }
-    Ok(found)
+    Ok((ids, found))
+}
+
+fn wrong(column: &str) -> PolarsError {
+    PolarsError::InvalidOperation(format!("its column `{column}` holds no such thing").into())
 }
 
 impl Series {

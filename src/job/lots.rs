@@ -57,7 +57,7 @@ pub fn lots(source: &Path, query: &Query) -> Result<Listing, LotsError> {
     let (mut lots, unreadable) = if source.is_file() {
         (read_table(source)?, Vec::new())
     } else {
-        let found = Archive::open(source)?.runs()?;
+        let found = Archive::open(source)?.runs(query.drawing.as_deref())?;
         let runs = if query.superseded {
             found.runs
         } else {

@@ -33,7 +33,7 @@ pub(crate) fn found_again(work: &Path) {
         .status();
     if there.is_ok_and(|status| status.success()) {
         crate::compare(
-            "5000 lots x 32 springs, lots of one drawing, against DuckDB",
+            "5000 lots x 32 springs, all read for those of one supplier, against DuckDB",
             &ours,
             &theirs,
         );

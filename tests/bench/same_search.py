@@ -1,4 +1,4 @@
-"""The same question to DuckDB: mean rate of the latest run of every lot of one drawing. Usage: same_search.py ARCHIVE"""
+"""The same question to DuckDB: mean rate of the latest run of every lot. Usage: same_search.py ARCHIVE"""
 
 import sys
 
@@ -9,7 +9,7 @@ rows = duckdb.sql(
     f"""
     WITH latest AS (
         SELECT drawing, lot, supplier, max_by(run, (run_number, judged_at, run)) AS run
-        FROM {files} WHERE drawing = 'BN-7' GROUP BY ALL)
+        FROM {files} GROUP BY ALL)
     SELECT drawing, lot, supplier, avg(value) FROM {files} SEMI JOIN latest USING (run)
     WHERE characteristic = 'rate' AND value IS NOT NULL GROUP BY ALL ORDER BY ALL
     """
