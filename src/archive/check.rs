@@ -8,6 +8,7 @@ use super::error::{ArchiveError, Unreadable};
 use super::place::Archive;
 use super::read::run_of;
 use super::springs::Run;
+use super::sums::Sums;
 use super::{curves, frame, springs, walk};
 use crate::curve::Kept;
 use crate::record::{AcceptRecord, Closeness, Difference};
@@ -21,6 +22,7 @@ pub struct StoredRun {
     pub record: PathBuf,
     springs: PathBuf,
     curves: PathBuf,
+    archive: PathBuf,
 }
 
 impl Archive {
@@ -33,7 +35,7 @@ impl Archive {
         let files = walk::runs(&tree, "parquet", None)?;
         let (mut runs, mut unreadable) = (Vec::new(), files.foreign);
         for path in files.runs {
-            match run_of(&path) {
+            match run_of(self.root(), &path) {
                 Ok(run) => runs.push(self.stored(run, &tree, path)),
                 Err(fault) => unreadable.push(fault.into()),
             }
@@ -48,12 +50,21 @@ impl Archive {
             run,
             record: other("records", "json"),
             curves: other("curves", "parquet"),
+            archive: self.root().to_owned(),
             springs,
         }
     }
 }
 
 impl StoredRun {
+    /// The files of this run that are not, byte for byte, what was written.
+    ///
+    /// # Errors
+    /// [`ArchiveError`] where its checksums cannot be read.
+    pub fn altered(&self) -> Result<Vec<Difference>, ArchiveError> {
+        Ok(Sums::of(&self.archive, &self.springs)?.altered())
+    }
+
     /// Where the tables of this run differ from those that `record` and `kept` give.
     ///
     /// # Errors
@@ -75,7 +86,8 @@ impl StoredRun {
             ),
         ];
         for (tree, path, now) in pairs {
-            let stored = frame::read(path, None)?;
+            let bytes = Sums::of(&self.archive, &self.springs)?.read(path)?;
+            let stored = frame::read(&bytes, path, None)?;
             compare(tree, &stored, &now.map_err(table)?, closeness, &mut found).map_err(table)?;
         }
         Ok(found)

@@ -69,6 +69,9 @@ pub enum ArchiveError {
         #[source]
         cause: std::io::Error,
     },
+    #[error(transparent)]
+    #[diagnostic(transparent)]
+    Text(#[from] crate::text::TextError),
     #[error("the run cannot be written as a table")]
     #[diagnostic(
         code(coilassay::archive::table),

@@ -4,10 +4,11 @@ use std::io::{self, Cursor, Write};
 use std::path::Path;
 
 use polars::prelude::{
-    Column, CsvWriter, DataFrame, Float64Chunked, Int64Chunked, ParallelStrategy,
-    ParquetCompression, ParquetReader, ParquetWriter, PolarsError, SerReader, SerWriter,
-    StringChunked,
+    Column, CompatLevel, CsvWriter, DataFrame, Float64Chunked, Int64Chunked, KeyValueMetadata,
+    ParallelStrategy, ParquetCompression, ParquetReader, ParquetWriter, PolarsError, SchemaExt,
+    SerReader, SerWriter, StringChunked,
 };
+use polars_parquet::write::schema_to_metadata_key;
 use serde::Serialize;
 use serde::de::DeserializeOwned;
 
@@ -18,9 +19,15 @@ use super::place::LAYOUT;
 pub(super) const LAYOUT_COLUMN: &str = "layout";
 
 /// Writes a table as Parquet, compressed by snappy, which every engine reads.
+///
+/// polars would note its own form of text in the file, which other engines read as a form they can do little with: the note
+/// says plain text instead.
 pub(super) fn write(frame: &mut DataFrame, out: &mut impl Write) -> io::Result<()> {
+    let plain = schema_to_metadata_key(&frame.schema().to_arrow(CompatLevel::oldest()));
+    let note = vec![(plain.key, plain.value.unwrap_or_default())];
     ParquetWriter::new(out)
         .with_compression(ParquetCompression::Snappy)
+        .with_key_value_metadata(Some(KeyValueMetadata::from_static(note)))
         .finish(frame)
         .map(|_| ())
         .map_err(|fault| match fault {
@@ -29,36 +36,47 @@ pub(super) fn write(frame: &mut DataFrame, out: &mut impl Write) -> io::Result<(
         })
 }
 
-/// Reads `columns` of the Parquet file `path`, whole where `None`.
+/// `columns` of the table in `bytes`, the Parquet file `path`; all where `None`.
 ///
 /// # Errors
 /// [`ArchiveError`] where it cannot be read, lacks a column, holds no row, or is of a newer layout.
-pub(super) fn read(path: &Path, columns: Option<&[&str]>) -> Result<DataFrame, ArchiveError> {
-    let bytes = std::fs::read(path).map_err(super::error::reading(path))?;
-    let wanted = columns.map(|columns| columns.iter().map(|one| (*one).to_owned()).collect());
-    let read = |columns: Option<Vec<String>>| {
-        ParquetReader::new(Cursor::new(bytes.as_slice()))
-            .read_parallel(ParallelStrategy::None)
-            .with_columns(columns)
-            .finish()
-    };
+pub(super) fn read(
+    bytes: &[u8],
+    path: &Path,
+    columns: Option<&[&str]>,
+) -> Result<DataFrame, ArchiveError> {
     let unreadable = |why: String| ArchiveError::Unreadable {
         file: shown(path),
         why,
     };
-    let frame = match read(wanted) {
+    let frame = match parquet(bytes, columns) {
         Ok(frame) => frame,
-        // A newer layout may have other columns: that is said rather than which one is missing.
-        Err(fault) => match read(Some(vec![LAYOUT_COLUMN.to_owned()])) {
-            Ok(frame) => {
+        Err(why) => {
+            // A newer layout may have other columns: that is said rather than which one is missing.
+            if let Ok(frame) = parquet(bytes, Some(&[LAYOUT_COLUMN])) {
                 check_layout(&frame, path)?;
-                return Err(unreadable(first_line(&fault)));
             }
-            Err(_) => return Err(unreadable(first_line(&fault))),
-        },
+            return Err(unreadable(why));
+        }
     };
     check_layout(&frame, path)?;
     Ok(frame)
+}
+
+/// polars panics on some damaged files; here that is a fault as any other.
+fn parquet(bytes: &[u8], columns: Option<&[&str]>) -> Result<DataFrame, String> {
+    let wanted = columns.map(|columns| columns.iter().map(|one| (*one).to_owned()).collect());
+    let read = || {
+        ParquetReader::new(Cursor::new(bytes))
+            .read_parallel(ParallelStrategy::None)
+            .with_columns(wanted)
+            .finish()
+    };
+    match std::panic::catch_unwind(std::panic::AssertUnwindSafe(read)) {
+        Ok(Ok(frame)) => Ok(frame),
+        Ok(Err(fault)) => Err(first_line(&fault)),
+        Err(_) => Err("it is damaged".to_owned()),
+    }
 }
 
 /// A Parquet file of another engine as CSV, figures in their shortest exact form.
@@ -66,15 +84,15 @@ pub(super) fn read(path: &Path, columns: Option<&[&str]>) -> Result<DataFrame, A
 /// # Errors
 /// [`ArchiveError`] where it cannot be read.
 pub(super) fn as_csv(path: &Path) -> Result<Vec<u8>, ArchiveError> {
+    let unreadable = |why: String| ArchiveError::Unreadable {
+        file: shown(path),
+        why,
+    };
     let bytes = std::fs::read(path).map_err(super::error::reading(path))?;
+    let mut frame = parquet(&bytes, None).map_err(unreadable)?;
     let mut text = Vec::new();
-    ParquetReader::new(Cursor::new(bytes.as_slice()))
-        .finish()
-        .and_then(|mut frame| CsvWriter::new(&mut text).finish(&mut frame))
-        .map_err(|fault| ArchiveError::Unreadable {
-            file: shown(path),
-            why: first_line(&fault),
-        })?;
+    let written = CsvWriter::new(&mut text).finish(&mut frame);
+    written.map_err(|fault| unreadable(first_line(&fault)))?;
     Ok(text)
 }
 

@@ -9,6 +9,7 @@
 //! springs/drawing_key=…/lot_key=…/<run>.parquet            one row per spring and characteristic
 //! curves/drawing_key=…/lot_key=…/<run>.parquet             one row per point
 //! records/drawing_key=…/lot_key=…/<run>.json               the result, as `result.json` holds it
+//! records/drawing_key=…/lot_key=…/<run>.sha256             checksums of the run's files, as `sha256sum -c` reads them
 //! staging/<run>/                                           a run being written
 //! ```
 //!
@@ -24,6 +25,7 @@ mod key;
 mod place;
 mod read;
 mod springs;
+mod sums;
 mod table;
 mod walk;
 mod write;

@@ -12,6 +12,7 @@ use super::error::{ArchiveError, Unreadable, shown};
 use super::frame::{self, LAYOUT_COLUMN, f64s, i64s, texts, unword};
 use super::place::Archive;
 use super::springs::Run;
+use super::sums::Sums;
 use super::walk;
 use crate::quantity::Unit;
 use crate::record::{AcceptRecord, Decision};
@@ -137,7 +138,11 @@ impl Archive {
     /// [`ArchiveError::Read`] where a folder cannot be listed.
     pub fn runs(&self, drawing: Option<&str>) -> Result<Found, ArchiveError> {
         let files = walk::runs(&self.root().join("springs"), "parquet", drawing)?;
-        let read: Vec<_> = files.runs.par_iter().map(|path| run(path)).collect();
+        let read: Vec<_> = files
+            .runs
+            .par_iter()
+            .map(|path| run(self.root(), path))
+            .collect();
         let mut found = Found {
             runs: Vec::with_capacity(read.len()),
             unreadable: files.foreign,
@@ -186,7 +191,7 @@ pub(super) fn latest_of(
     );
     let mut latest: Option<Run> = None;
     for path in &files.runs {
-        let found = run(path)?;
+        let found = run(archive.root(), path)?;
         if found.head.identity() == wanted {
             latest = latest.max(Some(found.run));
         }
@@ -198,12 +203,13 @@ pub(super) fn latest_of(
 ///
 /// # Errors
 /// [`ArchiveError`] where it cannot be read.
-pub(super) fn run_of(path: &Path) -> Result<Run, ArchiveError> {
-    run(path).map(|run| run.run)
+pub(super) fn run_of(archive: &Path, path: &Path) -> Result<Run, ArchiveError> {
+    run(archive, path).map(|run| run.run)
 }
 
-fn run(path: &Path) -> Result<LotRun, ArchiveError> {
-    let frame = frame::read(path, Some(&COLUMNS))?;
+fn run(archive: &Path, path: &Path) -> Result<LotRun, ArchiveError> {
+    let bytes = Sums::of(archive, path)?.read(path)?;
+    let frame = frame::read(&bytes, path, Some(&COLUMNS))?;
     let unreadable = |why: String| ArchiveError::Unreadable {
         file: shown(path),
         why,

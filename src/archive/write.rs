@@ -1,4 +1,4 @@
-//! A run written whole or not at all: staged, flushed, moved in; record, then curves, then springs.
+//! A run written whole or not at all: staged, flushed, moved in; record with its checksums, then curves, then springs.
 
 use std::fs::{self, File};
 use std::io::{self, BufWriter, Write};
@@ -11,7 +11,7 @@ use sha2::{Digest, Sha256};
 use super::error::{ArchiveError, writing};
 use super::place::Archive;
 use super::springs::Run;
-use super::{curves, frame, key, read, springs};
+use super::{curves, frame, key, read, springs, sums};
 use crate::curve::Kept;
 use crate::record::AcceptRecord;
 use crate::text::hex;
@@ -41,7 +41,8 @@ impl Archive {
         self.move_in(&folder, &run.id, |staged| {
             staged.json("records", record)?;
             staged.parquet("curves", &mut curves)?;
-            staged.parquet("springs", &mut springs)
+            staged.parquet("springs", &mut springs)?;
+            staged.sums()
         })?;
         Ok(run)
     }
@@ -102,6 +103,21 @@ impl Staged {
         let target = self.archive.join(tree).join(&self.folder).join(name);
         whole(&staged, fill).map_err(writing(&target))?;
         self.files.push((staged, target));
+        Ok(())
+    }
+
+    /// The SHA-256 of every file so far, as `sha256sum -c` reads it in the archive's folder; it is moved in after the record.
+    fn sums(&mut self) -> Result<(), ArchiveError> {
+        let line = |(staged, target): &(PathBuf, PathBuf)| {
+            let below = target.strip_prefix(&self.archive).unwrap_or(target);
+            sums::line(staged, below)
+        };
+        let lines: Result<String, ArchiveError> = self.files.iter().map(line).collect();
+        let lines = lines?;
+        self.file("records", sums::END, |out| out.write_all(lines.as_bytes()))?;
+        if let Some(sums) = self.files.pop() {
+            self.files.insert(1, sums);
+        }
         Ok(())
     }
 

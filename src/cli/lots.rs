@@ -11,6 +11,7 @@ use crate::units::System;
 use crate::wording::{Place, decided, figure};
 
 use super::args::LotsArgs;
+use super::show::passed_over;
 
 pub(super) fn run(args: &LotsArgs, out: &mut impl Write) -> miette::Result<u8> {
     let query = Query {
@@ -33,10 +34,7 @@ pub(super) fn run(args: &LotsArgs, out: &mut impl Write) -> miette::Result<u8> {
             print(lot, out).into_diagnostic()?;
         }
     }
-    for one in &found.unreadable {
-        // A fault of one file; the rest is on stdout.
-        let _ = writeln!(std::io::stderr(), "passed over: {one}");
-    }
+    passed_over(&found.unreadable);
     Ok(if found.unreadable.is_empty() {
         0
     } else {

@@ -8,6 +8,7 @@ use miette::IntoDiagnostic;
 use crate::job::{self, ChangedInput, Outcome, Rechecked};
 
 use super::args::RecheckArgs;
+use super::show::passed_over;
 
 /// Exit status of results that differ.
 const DIFFERENT: u8 = 1;
@@ -42,9 +43,7 @@ fn archive(args: &RecheckArgs, out: &mut impl Write) -> miette::Result<u8> {
             *count += 1;
         }
     }
-    for one in &stored.unreadable {
-        let _ = writeln!(std::io::stderr(), "passed over: {one}");
-    }
+    passed_over(&stored.unreadable);
     let [same, different, could_not] = counts;
     if !args.json {
         writeln!(

@@ -5,9 +5,29 @@ use std::io::{IsTerminal, Write};
 use miette::{Diagnostic, GraphicalReportHandler, GraphicalTheme};
 
 use super::args::Colour;
+use crate::archive::Unreadable;
 
 /// Columns a fault is laid out for; the same on every terminal, so that two people see the same lines.
 const WIDTH: usize = 100;
+
+/// Passed-over files named at once.
+const SHOWN: usize = 20;
+
+/// Names on stderr the files of an archive that were passed over.
+pub(super) fn passed_over(files: &[Unreadable]) {
+    let mut text: String = files
+        .iter()
+        .take(SHOWN)
+        .map(|file| format!("passed over: {file}\n"))
+        .collect();
+    if let Some(more @ 1..) = files.len().checked_sub(SHOWN) {
+        text += "passed over: ";
+        text += &more.to_string();
+        text += " more\n";
+    }
+    // Nothing can be said where stderr itself is gone.
+    let _ = std::io::stderr().lock().write_all(text.as_bytes());
+}
 
 /// Shows `fault` on stderr, in colour where `colour` and the terminal allow it.
 pub fn show(fault: &miette::Report, colour: Colour) {

@@ -115,12 +115,19 @@ pub fn recheck(file: &Path, from: &Path) -> miette::Result<Rechecked> {
     sealed.recheck(from, Keep::default(), |_| Ok(beside_it()))
 }
 
-/// Recomputes a run of an archive: its record, and the tables of its springs and curves.
+/// Rechecks a run of an archive: its files against their checksums, and, recomputed, its record and the tables of its springs
+/// and curves.
 ///
 /// # Errors
 /// As [`recheck`], and where a table cannot be read.
 pub fn recheck_run(run: &StoredRun, from: &Path) -> miette::Result<Rechecked> {
+    let altered = run.altered()?;
     let sealed = Sealed::read(&run.record)?;
+    if !altered.is_empty() {
+        return Ok(sealed.rechecked(Outcome::Different {
+            differences: altered,
+        }));
+    }
     let keep = Keep {
         for_charts: false,
         for_archive: true,

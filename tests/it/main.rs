@@ -30,6 +30,7 @@ mod spring;
 #[expect(dead_code, reason = "the generator uses all of it")]
 mod text;
 
+mod archive;
 mod bad_input;
 mod bad_input_attacks;
 mod bad_input_curves;
