@@ -15,18 +15,18 @@ const SHOWN: usize = 20;
 
 /// Names on stderr the files of an archive that were passed over.
 pub(super) fn passed_over(files: &[Unreadable]) {
-    let mut text: String = files
+    let mut lines: Vec<String> = files
         .iter()
         .take(SHOWN)
-        .map(|file| format!("passed over: {file}\n"))
+        .map(Unreadable::to_string)
         .collect();
     if let Some(more @ 1..) = files.len().checked_sub(SHOWN) {
-        text += "passed over: ";
-        text += &more.to_string();
-        text += " more\n";
+        lines.push(format!("{more} more"));
     }
-    // Nothing can be said where stderr itself is gone.
-    let _ = std::io::stderr().lock().write_all(text.as_bytes());
+    let mut err = std::io::stderr().lock();
+    for line in lines {
+        let _ = writeln!(err, "passed over: {line}"); // nothing can be said where stderr itself is gone
+    }
 }
 
 /// Shows `fault` on stderr, in colour where `colour` and the terminal allow it.
