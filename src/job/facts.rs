@@ -9,7 +9,7 @@ use crate::record::{
     ConditionFacts, DrawingFacts, LotFacts, MemberFacts, RequirementFacts, RigFacts, StressFacts,
     TheoryFacts, WindowFacts,
 };
-use crate::rig::{Accuracy, Compliance, Known, Means, Rig, Scale};
+use crate::rig::{Accuracy, Compliance, Give, Known, Means, Rig, Scale};
 use crate::units::{Finite, Megapascals, Millimetres, Newtons};
 use crate::wording::number;
 
@@ -193,12 +193,15 @@ pub(super) fn window(drawing: &Drawing, bounds: Bounds) -> WindowFacts {
 
 /// The rig.
 pub(super) fn rig(rig: &Rig) -> RigFacts {
-    let compliance = match rig.frame {
-        Compliance::Measured { value, standard } => {
+    let compliance = match &rig.frame {
+        Compliance::Measured { give, standard } => {
+            let give = match give {
+                Give::Line(per_newton) => format!("{} mm/N", plain(*per_newton)),
+                Give::Table(points) => format!("table of {} loads", points.len() - 1),
+            };
             format!(
-                "{} mm/N, standard uncertainty {} mm/N, corrected",
-                plain(value),
-                plain(standard)
+                "{give}, standard uncertainty {} mm/N, corrected",
+                plain(*standard)
             )
         }
         Compliance::NotCorrected { allowance } => format!(

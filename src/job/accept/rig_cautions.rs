@@ -54,7 +54,7 @@ pub(super) fn of_rig(rig: &Rig, date: Date) -> Vec<Caution> {
         rig.check_every
             .iter()
             .map(|every| Caution::NoCheckOnRecord {
-                every: every.clone(),
+                every: every.written.clone(),
             }),
     );
     found
@@ -112,10 +112,10 @@ const REFUSED: f64 = 1.0 / 2.0;
 
 /// A frame said to be so soft that a slip of the decimal point is likelier.
 pub(super) fn large_compliance(rig: &Rig, rate: f64) -> Option<Caution> {
-    let Compliance::Measured { value, .. } = rig.frame else {
+    let Compliance::Measured { give, .. } = &rig.frame else {
         return None;
     };
-    let share = value * rate;
+    let share = give.steepest() * rate;
     if share > SOFT {
         Some(Caution::ComplianceLarge {
             share: figure(share)?,
