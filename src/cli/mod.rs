@@ -5,6 +5,8 @@ mod args;
 mod expect;
 mod folder;
 mod rate;
+mod rig;
+mod rig_file;
 mod shell;
 mod show;
 
@@ -61,6 +63,7 @@ fn dispatch(arguments: &Arguments, out: &mut impl Write) -> miette::Result<u8> {
     match &arguments.command {
         Command::Accept(args) => accept::run(args, arguments.quiet, out),
         Command::Rate(args) => rate::run(args, out),
+        Command::Rig { command } => rig::run(command, arguments.quiet, out),
         Command::Expect(args) => expect::run(args, out),
         Command::Completions { shell } => Ok(shell::completions(*shell, out)),
         Command::Manual { dir } => shell::manual(dir),

@@ -6,8 +6,8 @@ use crate::drawing::{
 };
 use crate::intake::{Lot, NotInspected};
 use crate::record::{
-    ConditionFacts, DrawingFacts, LotFacts, MemberFacts, RequirementFacts, RigFacts, StressFacts,
-    TheoryFacts, WindowFacts,
+    ConditionFacts, DrawingFacts, LastCheck, LotFacts, MemberFacts, RequirementFacts, RigFacts,
+    StressFacts, TheoryFacts, WindowFacts,
 };
 use crate::rig::{Accuracy, Compliance, Give, Known, Means, Rig, Scale};
 use crate::units::{Finite, Megapascals, Millimetres, Newtons};
@@ -191,8 +191,8 @@ pub(super) fn window(drawing: &Drawing, bounds: Bounds) -> WindowFacts {
     }
 }
 
-/// The rig.
-pub(super) fn rig(rig: &Rig) -> RigFacts {
+/// The rig; `checked` is its last passed check, where it holds.
+pub(super) fn rig(rig: &Rig, checked: Option<&LastCheck>) -> RigFacts {
     let compliance = match &rig.frame {
         Compliance::Measured { give, standard } => {
             let give = match give {
@@ -222,6 +222,7 @@ pub(super) fn rig(rig: &Rig) -> RigFacts {
         travel: scale(&rig.travel, "ISO 9513", "mm"),
         travel_calibrated: calibrated(&rig.travel),
         compliance,
+        checked: checked.map(|last| format!("{} ({})", last.date, last.id)),
         travel_means: means.to_owned(),
     }
 }

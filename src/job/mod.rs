@@ -5,8 +5,10 @@ mod expect;
 mod facts;
 mod rate;
 mod read;
+mod rig;
 mod threads;
 
 pub use accept::{Accepted, Options, accept};
 pub use expect::{Ask, Expected, MemberAnswer, StressAnswer, expect};
 pub use rate::{Bench, Guess, LoadAt, RateOptions, RateResult, rate};
+pub use rig::{Proposal, Repeated, RigOptions, Verified, rig_repeat, rig_verify};

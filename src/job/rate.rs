@@ -145,6 +145,7 @@ pub fn rate(exports: &[String], options: &RateOptions) -> miette::Result<Vec<Rat
         let how = How {
             setup: &setup,
             caliper: &caliper,
+            of_all: &[],
             drawn: false,
             block_bytes: None,
         };

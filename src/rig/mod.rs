@@ -16,4 +16,4 @@ pub use edit::{Change, Changed, Edited, RigEditError, edit};
 pub use every::Every;
 pub use frame::{Compliance, Give};
 pub use open::{KEYS, Means, Rig, from_source, open};
-pub use scale::{Accuracy, Known, Scale, standard_of};
+pub use scale::{Accuracy, Known, Scale, read_calibrated, standard_of};

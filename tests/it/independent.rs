@@ -23,6 +23,7 @@ fn record() -> AcceptRecord {
         drawn: false,
         block_bytes: None,
         flags: Vec::new(),
+        last_check: None,
     };
     accept(&lot, "lot.toml", &options).unwrap().record
 }

@@ -54,6 +54,7 @@ impl Lot {
             drawn: false,
             block_bytes,
             flags: Vec::new(),
+            last_check: None,
         };
         accept(&self.place().join("lot.toml"), "lot.toml", &options)
             .unwrap()
