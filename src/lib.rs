@@ -28,6 +28,8 @@ pub mod doubt;
 
 pub mod verdict;
 
+pub mod bench;
+
 pub mod lot;
 
 pub mod record;

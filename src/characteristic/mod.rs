@@ -18,3 +18,4 @@ pub use measure::{
     Absence, Characteristic, MeasureError, Measured, Measurement, Setup, measure, wanted,
 };
 pub use rate::{RateFit, judged};
+pub use scales::scale_lines;

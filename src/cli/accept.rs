@@ -34,6 +34,7 @@ pub(super) fn run(args: &AcceptArgs, quiet: bool, out: &mut impl Write) -> miett
         },
         block_bytes: None,
         flags: flags(args),
+        last_check: None,
     };
     let mut accepted = job::accept(&args.lot, &args.lot.to_string_lossy(), &options)?;
     let files = if args.out.is_some() {
@@ -112,7 +113,7 @@ fn files(
 }
 
 /// The date of the judgement: as given, else SOURCE_DATE_EPOCH, else today, in UTC.
-fn date(given: Option<Date>) -> miette::Result<Date> {
+pub(super) fn date(given: Option<Date>) -> miette::Result<Date> {
     if let Some(date) = given {
         return Ok(date);
     }
@@ -135,7 +136,7 @@ fn date(given: Option<Date>) -> miette::Result<Date> {
 }
 
 /// The built-in templates, each replaced where the user's folder holds one of its name.
-fn templates(folder: Option<&Path>) -> miette::Result<Templates> {
+pub(super) fn templates(folder: Option<&Path>) -> miette::Result<Templates> {
     let mut templates = Templates::built_in();
     let Some(folder) = folder else {
         return Ok(templates);

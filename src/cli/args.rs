@@ -44,6 +44,11 @@ pub(super) enum Command {
     Lots(LotsArgs),
     /// Recomputes sealed results from their inputs (exit 0 same, 1 different, 2 could not or an input changed)
     Recheck(RecheckArgs),
+    /// What a rig is worth: a check on a reference spring, a repeatability study
+    Rig {
+        #[command(subcommand)]
+        command: RigCommand,
+    },
     /// Completions for a shell, on stdout
     Completions {
         /// The shell
@@ -92,6 +97,49 @@ pub(super) struct AcceptArgs {
     /// You stand for the units although they look mixed up; the report says so
     #[arg(long)]
     pub(super) units_confirmed: bool,
+}
+
+#[derive(Debug, Subcommand)]
+pub(super) enum RigCommand {
+    /// Checks a rig on a reference spring, and its frame plate on plate (exit 0 serves, 1 does not, 3 undecided, 2 could not)
+    Verify(RigArgs),
+    /// Studies the repeatability of a rig (exit 0 serves, 1 does not, 3 undecided, 2 could not)
+    Repeat(RigArgs),
+}
+
+#[derive(Debug, Args)]
+#[expect(
+    clippy::struct_excessive_bools,
+    reason = "each is a flag of the command line"
+)]
+pub(super) struct RigArgs {
+    /// The check file, or the study file
+    #[arg(value_name = "FILE.toml")]
+    pub(super) file: PathBuf,
+    /// Writes what was found into the rig file, its comments kept; shows the change
+    #[arg(long)]
+    pub(super) write: bool,
+    /// Folder for report.html, report.pdf, charts and result.json; nothing is written without it
+    #[arg(long, value_name = "DIR")]
+    pub(super) out: Option<PathBuf>,
+    /// Only result.json, no report and no charts
+    #[arg(long, requires = "out")]
+    pub(super) no_report: bool,
+    /// The result as JSON on stdout, and nothing else there
+    #[arg(long)]
+    pub(super) json: bool,
+    /// A warning on the rig is a refusal (exit 2)
+    #[arg(long)]
+    pub(super) strict: bool,
+    /// Units that people read; result.json is always mm and N
+    #[arg(long, value_enum, default_value_t = ShowIn::MmN, value_name = "UNITS")]
+    pub(super) show_in: ShowIn,
+    /// A folder with templates of your own: report.html, report.typ
+    #[arg(long, value_name = "DIR")]
+    pub(super) templates: Option<PathBuf>,
+    /// Date of the judgement; else SOURCE_DATE_EPOCH, else today (UTC)
+    #[arg(long, value_name = "YYYY-MM-DD")]
+    pub(super) date: Option<Date>,
 }
 
 /// Units that people read.

@@ -7,6 +7,8 @@ mod folder;
 mod lots;
 mod rate;
 mod recheck;
+mod rig;
+mod rig_file;
 mod shell;
 mod show;
 
@@ -63,6 +65,7 @@ fn dispatch(arguments: &Arguments, out: &mut impl Write) -> miette::Result<u8> {
     match &arguments.command {
         Command::Accept(args) => accept::run(args, arguments.quiet, out),
         Command::Rate(args) => rate::run(args, out),
+        Command::Rig { command } => rig::run(command, arguments.quiet, out),
         Command::Expect(args) => expect::run(args, out),
         Command::Lots(args) => lots::run(args, out),
         Command::Recheck(args) => recheck::run(args, out),

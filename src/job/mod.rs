@@ -7,6 +7,7 @@ mod lots;
 mod rate;
 mod read;
 mod recheck;
+mod rig;
 mod threads;
 
 pub use accept::{Accepted, Options, accept};
@@ -17,3 +18,4 @@ pub use read::Keep;
 pub use recheck::{
     ChangedInput, Outcome, RecheckError, Rechecked, Stored, recheck, recheck_run, stored_runs,
 };
+pub use rig::{Proposal, Repeated, RigOptions, Verified, rig_repeat, rig_verify};

@@ -146,6 +146,7 @@ pub fn rate(exports: &[String], options: &RateOptions) -> miette::Result<Vec<Rat
             setup: &setup,
             caliper: &caliper,
             keep: Keep::default(),
+            of_all: &[],
             block_bytes: None,
         };
         let export = Export {

@@ -69,6 +69,8 @@ pub(super) struct How<'a> {
     pub(super) setup: &'a Setup<'a>,
     pub(super) caliper: &'a BTreeMap<String, Vec<(Quantity, f64)>>,
     pub(super) keep: Keep,
+    /// What is known of every spring of these exports without the bench: a reference spring's certificate.
+    pub(super) of_all: &'a [(Quantity, f64)],
     pub(super) block_bytes: Option<usize>,
 }
 
@@ -116,7 +118,7 @@ fn read_at(path: &Path, written: &str, how: How<'_>) -> Result<Batch, ExportErro
     })
 }
 
-fn ledger(export: String, ledger: &Ledger) -> LedgerFacts {
+pub(super) fn ledger(export: String, ledger: &Ledger) -> LedgerFacts {
     let aside = |one: &crate::export::Aside| SetAside {
         reason: one.reason.as_str().to_owned(),
         first_line: one.first_line,
@@ -137,7 +139,7 @@ fn reading(raw: &RawCurve, how: How<'_>) -> Result<Reading, MeasureError> {
     let caliper = how
         .caliper
         .get(&raw.identity)
-        .map_or(&[][..], Vec::as_slice);
+        .map_or(how.of_all, Vec::as_slice);
     let mut measurement = measure(setup, &curve, caliper)?;
     let reduced = how.keep.for_charts.then(|| reduce(&curve, &measurement));
     let kept = how

@@ -269,6 +269,7 @@ impl Sealed {
             units_confirmed: false,
             strict: false,
             keep,
+            last_check: None,
             block_bytes: None,
             flags: self.provenance.flags.clone(),
         };

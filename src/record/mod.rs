@@ -2,25 +2,38 @@
 //! Every figure is finite or absent (`null`), in mm, N, N/mm, MPa or %; there is no bare `f64`.
 
 mod accept;
+mod bench_caution;
 mod caution;
+mod check;
 mod compare;
 mod facts;
 mod find;
+mod repeat;
 mod spring;
 
 pub use accept::{
     AcceptRecord, ClassPlan, ConditionFacts, DrawingFacts, Kind, LotFacts, OutputFile, PlanFacts,
     Provenance, RequirementFacts, SimpleAcceptance,
 };
+pub use bench_caution::BenchCaution;
 pub use caution::{Caution, Oddity};
+pub use check::{
+    CheckKind, CheckReason, CheckRecord, ComparisonFacts, EarlierCheck, FrameFacts, GivePoint,
+    LastCheck, ReferenceFacts,
+};
 pub use compare::{ACROSS_VERSIONS, Closeness, Difference, differences};
 pub use facts::{MemberFacts, RigFacts, StressFacts, TheoryFacts, WindowFacts};
 pub use find::{Key, find, occurring};
+pub use repeat::{
+    ProposedFigure, RangeFacts, RepeatKind, RepeatReason, RepeatRecord, StudyFacts, StudyValue,
+    VarianceRow, VariationShare,
+};
 pub use spring::{
     BudgetFigure, CharacteristicResult, FindingResult, FitFacts, LackFacts, LedgerFacts,
     RepeatFacts, SetAside, SpringResult,
 };
 
+pub use crate::bench::{Finding, Serving};
 pub use crate::characteristic::Part;
 pub use crate::curve::WindowOf;
 pub use crate::drawing::Policy as Undecided;

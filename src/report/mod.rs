@@ -10,12 +10,15 @@ mod summary;
 
 pub use csv::springs_csv;
 pub use error::ReportError;
-pub use summary::summary;
+pub use summary::{page_summary, summary};
+
+use serde::Serialize;
 
 use crate::charts;
+use crate::charts::Chart;
 use crate::curve::Reduced;
-use crate::model::Model;
-use crate::record::AcceptRecord;
+use crate::model::{Model, Page};
+use crate::record::{AcceptRecord, CheckRecord, RepeatRecord};
 use crate::units::System;
 
 /// A template and the name of its file, for faults.
@@ -78,8 +81,42 @@ pub fn accept(
         || Model::new(record, show_in),
         || charts::all(record, curves, show_in),
     );
-    let charts = charts?;
-    let data = || serde_json::to_value(&model).map_err(ReportError::Model);
+    files(&model, charts?, templates)
+}
+
+/// The files of a check: its page, and its charts with `readings` of the plates' run (N, mm).
+///
+/// # Errors
+/// [`ReportError`] as in [`accept`].
+pub fn check(
+    record: &CheckRecord,
+    page: &Page,
+    readings: &[(f64, f64)],
+    show_in: System,
+    templates: &Templates,
+) -> Result<Vec<OutFile>, ReportError> {
+    files(page, charts::check(record, readings, show_in)?, templates)
+}
+
+/// The files of a study: its page and its charts.
+///
+/// # Errors
+/// [`ReportError`] as in [`accept`].
+pub fn study(
+    record: &RepeatRecord,
+    page: &Page,
+    show_in: System,
+    templates: &Templates,
+) -> Result<Vec<OutFile>, ReportError> {
+    files(page, charts::study(record, show_in)?, templates)
+}
+
+fn files(
+    model: &(impl Serialize + Sync),
+    charts: Vec<Chart>,
+    templates: &Templates,
+) -> Result<Vec<OutFile>, ReportError> {
+    let data = || serde_json::to_value(model).map_err(ReportError::Model);
     let (html, pdf) = rayon::join(
         || html::page(data()?, &charts, &templates.html),
         || pdf::document(data()?, &charts, &templates.typst),

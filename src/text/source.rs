@@ -104,6 +104,16 @@ impl Source {
         })
     }
 
+    /// The same file with another text.
+    #[must_use]
+    pub fn with_text(&self, text: &str) -> Self {
+        Self {
+            text: text.into(),
+            sha256: hex(&sha2::Sha256::digest(text.as_bytes())),
+            ..self.clone()
+        }
+    }
+
     /// This file as a line of provenance.
     pub fn input(&self, role: &str) -> InputFile {
         InputFile {

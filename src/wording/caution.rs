@@ -31,6 +31,7 @@ pub(crate) fn caution(of: &Caution, show_in: System) -> String {
         | Caution::LackOfFit { .. }
         | Caution::NoZeroReading { .. }
         | Caution::LoadOutsideRange { .. }
+        | Caution::FrameBeyondTable { .. }
         | Caution::OddRatio { .. }
         | Caution::OddCurves { .. }
         | Caution::LengthsShifted { .. }
@@ -60,9 +61,12 @@ fn about_the_bench(of: &Caution, show_in: System) -> String {
             "The frame compliance in the rig file makes up {} of the spring's own; is it right?",
             percent(Some(*share))
         ),
-        Caution::NoCheckOnRecord { every } => {
-            format!("The rig file asks for a check every {every}; no passed check is on record.")
-        }
+        Caution::NoCheckOnRecord { every, last } => match last {
+            Some(last) => format!(
+                "The rig file asks for a check every {every}; the last passed check on record is of {last}."
+            ),
+            None => format!("The rig file asks for a check every {every}; no passed check is on record."),
+        },
         Caution::UncertaintyLarge { name, at_length_mm, share } => format!(
             "{}: the expanded uncertainty is {} of the half tolerance; springs near a limit stay undecided.",
             sentence(&characteristic(name, *at_length_mm, show_in)),
@@ -170,6 +174,10 @@ fn about_the_curves(of: &Caution, show_in: System) -> String {
                 springs(names)
             )
         }
+        Caution::FrameBeyondTable { springs: names } => format!(
+            "Loads beyond the table of the frame's give in the rig file, whose last stretch is drawn on: {}.",
+            springs(names)
+        ),
         Caution::RobustDiffers { springs: names } => format!(
             "{}: the robust rate differs from the fitted one; look at {} residuals.",
             sentence(&springs(names)),
@@ -281,7 +289,15 @@ mod tests {
                 until: text(),
             },
             Caution::CalibrationUnknown { scale: text() },
-            Caution::NoCheckOnRecord { every: text() },
+            Caution::NoCheckOnRecord {
+                every: text(),
+                last: None,
+            },
+            Caution::NoCheckOnRecord {
+                every: text(),
+                last: Some(text()),
+            },
+            Caution::FrameBeyondTable { springs: some() },
             Caution::LoadOutsideRange { springs: some() },
             Caution::UncertaintyLarge {
                 name: name(),

@@ -1,19 +1,23 @@
 //! A record's data as finished text: figures with their rounding, reasons, cautions, advice, names; and the fonts it is
 //! printed in. Elsewhere: what a record means (`verdict`, `lot`), what stands where (`model`).
 
+mod bench;
 mod caution;
 mod figure;
 pub(crate) mod font;
 mod lot;
 mod spring;
 
+pub(crate) use bench::{
+    bench_caution, check_reason, component_word, finding, repeat_reason, serving_word,
+};
 pub(crate) use caution::{STANDING, caution};
 pub use figure::{
     ABSENT, Place, figure, freedom, number, per_unit, percent, probability, unit_symbol,
     with_uncertainty, with_unit,
 };
 pub(crate) use lot::{decided, decision_word, simple_line, terms, why};
-pub(crate) use spring::{advice, disposition, rule_used, verdict_reason, verdict_word};
+pub(crate) use spring::{absence, advice, disposition, rule_used, verdict_reason, verdict_word};
 
 use crate::quantity::{Quantity, Unit};
 use crate::units::{Millimetres, System};

@@ -86,6 +86,7 @@ fn judged() -> Vec<Judged> {
         keep: coilassay::job::Keep::default(),
         block_bytes: None,
         flags: Vec::new(),
+        last_check: None,
     };
     let (truths, options, folder) = (&truths, &options, &folder);
     let one_lot = move |lot: u64| {

@@ -54,6 +54,7 @@ impl Lot {
             keep: coilassay::job::Keep::default(),
             block_bytes,
             flags: Vec::new(),
+            last_check: None,
         };
         accept(&self.place().join("lot.toml"), "lot.toml", &options)
             .unwrap()

@@ -37,6 +37,8 @@ mod bad_input_curves;
 mod bad_input_exports;
 mod bad_input_files;
 mod bad_input_units;
+mod bench_check;
+mod bench_study;
 mod coverage;
 mod coverage_cases;
 mod export;

@@ -20,6 +20,7 @@ const ROOMS: [&str; 24] = [
     "characteristic",
     "doubt",
     "verdict",
+    "bench",
     "lot",
     "record",
     "archive",

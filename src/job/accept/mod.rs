@@ -4,12 +4,12 @@ mod alike;
 mod cautions;
 mod drawing_cautions;
 mod error;
-mod figures;
+pub(super) mod figures;
 mod files;
 mod group;
 mod plan;
 mod requirements;
-mod rig_cautions;
+pub(super) mod rig_cautions;
 mod springs;
 
 use std::path::Path;
@@ -23,7 +23,9 @@ use crate::doubt::doubt;
 use crate::drawing::{Drawing, Requirement, Rule};
 use crate::lot::{class_terms, decide};
 use crate::quantity::Class;
-use crate::record::{AcceptRecord, FORMAT, Kind, LedgerFacts, Provenance, SimpleAcceptance, TOOL};
+use crate::record::{
+    AcceptRecord, FORMAT, Kind, LastCheck, LedgerFacts, Provenance, SimpleAcceptance, TOOL,
+};
 use crate::rig::SpringFrom;
 use crate::text::InputFile;
 
@@ -53,6 +55,8 @@ pub struct Options {
     pub block_bytes: Option<usize>,
     /// Flags that bear on the result, as given.
     pub flags: Vec<String>,
+    /// The last passed check of the rig on a reference spring, where one is on record.
+    pub last_check: Option<LastCheck>,
 }
 
 /// A judged lot.
@@ -88,6 +92,7 @@ pub fn accept(path: &Path, as_written: &str, options: &Options) -> miette::Resul
         setup: &setup,
         caliper: &files.caliper.springs,
         keep: options.keep,
+        of_all: &[],
         block_bytes: options.block_bytes,
     };
     let (readings, sources) = read_all(&files, how)?;
@@ -223,7 +228,7 @@ fn judge(
         drawing: facts::drawing(drawing, terms, requirements),
         theory: facts::theory(drawing, full_load(drawing))?,
         window: facts::window(drawing, window_of(drawing)),
-        rig: facts::rig(rig),
+        rig: facts::rig(rig, rig_cautions::holding(rig, options)),
         plan: plan::facts(&terms.plan, &outcome)?,
         reasons: outcome.reasons,
         springs: judged.into_iter().map(|spring| spring.result).collect(),
