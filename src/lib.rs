@@ -28,6 +28,10 @@ pub mod doubt;
 
 pub mod verdict;
 
+pub mod sampling;
+
+pub mod process;
+
 pub mod lot;
 
 pub mod record;

@@ -25,6 +25,7 @@ pub(super) fn run(args: &AcceptArgs, quiet: bool, out: &mut impl Write) -> miett
         drawn: args.out.is_some() && !args.no_report,
         block_bytes: None,
         flags: flags(args),
+        past: args.history.as_deref().map(job::read_history).transpose()?,
     };
     let mut accepted = job::accept(&args.lot, &args.lot.to_string_lossy(), &options)?;
     if let Some(target) = &target {

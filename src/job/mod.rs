@@ -3,10 +3,12 @@
 mod accept;
 mod expect;
 mod facts;
+mod history;
 mod rate;
 mod read;
 mod threads;
 
-pub use accept::{Accepted, Options, accept};
+pub use accept::{Accepted, Options, Past, accept};
 pub use expect::{Ask, Expected, MemberAnswer, StressAnswer, expect};
+pub use history::read_history;
 pub use rate::{Bench, Guess, LoadAt, RateOptions, RateResult, rate};

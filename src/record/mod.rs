@@ -5,15 +5,19 @@ mod accept;
 mod caution;
 mod facts;
 mod find;
+mod plan;
+mod process;
 mod spring;
 
 pub use accept::{
-    AcceptRecord, ClassPlan, ConditionFacts, DrawingFacts, Kind, LotFacts, OutputFile, PlanFacts,
-    Provenance, RequirementFacts, SimpleAcceptance,
+    AcceptRecord, ConditionFacts, DrawingFacts, Kind, LotFacts, OutputFile, Provenance,
+    RequirementFacts, SimpleAcceptance,
 };
 pub use caution::{Caution, Oddity};
 pub use facts::{MemberFacts, RigFacts, StressFacts, TheoryFacts, WindowFacts};
 pub use find::{Key, find, occurring};
+pub use plan::{ClassPlan, PlanFacts, SettlingFacts, StateFacts, VariablesFacts, ZeroAcceptFacts};
+pub use process::{EstimatedFacts, IntervalFacts, ProcessFacts, ShapeFacts};
 pub use spring::{
     BudgetFigure, CharacteristicResult, FindingResult, FitFacts, LackFacts, LedgerFacts,
     RepeatFacts, SetAside, SpringResult,
@@ -22,7 +26,8 @@ pub use spring::{
 pub use crate::characteristic::Part;
 pub use crate::curve::WindowOf;
 pub use crate::drawing::Policy as Undecided;
-pub use crate::lot::{Advice, Decision, LotReason};
+pub use crate::lot::{Advice, Comparison, Decision, LotReason};
+pub use crate::sampling::Reason as StateReason;
 pub use crate::verdict::{Reason, Verdict};
 
 /// The version of the layout of `result.json`.

@@ -23,6 +23,7 @@ fn record() -> AcceptRecord {
         drawn: false,
         block_bytes: None,
         flags: Vec::new(),
+        past: None,
     };
     accept(&lot, "lot.toml", &options).unwrap().record
 }
@@ -185,8 +186,8 @@ fn theory_window_and_plan_to_nine_digits() {
         "letter {}, AQL 2.5: n {}, Ac {}, Re {}",
         plan.code_letter.as_deref().unwrap(),
         plan.sample_size,
-        plan.accept,
-        plan.reject
+        plan.accept.unwrap(),
+        plan.reject.unwrap()
     );
     assert!(text.contains(&line), "{line}");
 }

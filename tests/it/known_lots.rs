@@ -86,6 +86,7 @@ fn judged() -> Vec<Judged> {
         drawn: false,
         block_bytes: None,
         flags: Vec::new(),
+        past: None,
     };
     let (truths, options, folder) = (&truths, &options, &folder);
     let one_lot = move |lot: u64| {

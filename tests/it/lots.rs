@@ -54,6 +54,7 @@ impl Lot {
             drawn: false,
             block_bytes,
             flags: Vec::new(),
+            past: None,
         };
         accept(&self.place().join("lot.toml"), "lot.toml", &options)
             .unwrap()

@@ -263,6 +263,7 @@ fn a_repeated_spring_is_drawn_under_its_own_id() {
         drawn: true,
         block_bytes: None,
         flags: Vec::new(),
+        past: None,
     };
     let lot = "samples/undecided/lot.toml";
     let path = std::path::Path::new(env!("CARGO_MANIFEST_DIR")).join(lot);
