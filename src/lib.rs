@@ -29,6 +29,9 @@ pub mod doubt;
 pub mod verdict;
 
 pub mod bench;
+pub mod sampling;
+
+pub mod process;
 
 pub mod lot;
 

@@ -35,6 +35,7 @@ pub(super) fn run(args: &AcceptArgs, quiet: bool, out: &mut impl Write) -> miett
         block_bytes: None,
         flags: flags(args),
         last_check: None,
+        past: args.history.as_deref().map(job::read_history).transpose()?,
     };
     let mut accepted = job::accept(&args.lot, &args.lot.to_string_lossy(), &options)?;
     let files = if args.out.is_some() {

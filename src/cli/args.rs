@@ -94,6 +94,9 @@ pub(super) struct AcceptArgs {
     /// Date of the judgement; else SOURCE_DATE_EPOCH, else today (UTC)
     #[arg(long, value_name = "YYYY-MM-DD")]
     pub(super) date: Option<Date>,
+    /// Past lots for the switching rules of ISO 2859-1: date,lot,decision,accept,accepted_tighter
+    #[arg(long, value_name = "FILE.csv")]
+    pub(super) history: Option<PathBuf>,
     /// You stand for the units although they look mixed up; the report says so
     #[arg(long)]
     pub(super) units_confirmed: bool,

@@ -7,6 +7,7 @@ mod limits;
 mod material;
 mod member;
 mod open;
+mod read_plan;
 mod read_terms;
 mod requirements;
 mod terms;
@@ -17,7 +18,7 @@ pub use material::{FAMILIES, Family, Shear, family};
 pub use member::{Coil, Ends, Member, Sized};
 pub use open::{Arrangement, Drawing, KEYS, open, read_units};
 pub use terms::{
-    AQLS, Acceptance, Aqls, Guard, Level, Method, PlanTerms, Policy, RateTest, Rule, Stroke, Way,
-    Window,
+    AQLS, AQLS_414, Acceptance, Aqls, Guard, Level, Level414, Method, PlanTerms, Policy, RateTest,
+    Rule, State, Stroke, Way, Window,
 };
 pub use theory::{MemberTheory, Stress, Theory, TheoryError, rate, solid_length, stress, theory};

@@ -53,7 +53,8 @@ pub const KEYS: Keys = &[
     ("rate_test", &["window", "full_load", "stroke", "method"]),
     ("rate_test.window", &["from", "to", "of"]),
     ("acceptance", &["rule", "guard", "undecided_springs", "plan"]),
-    ("acceptance.plan", &["by", "level", "aql", "state"]),
+    ("acceptance.plan", &["by", "level", "aql", "state", "reduced", "table", "designed", "limiting_quality", "consumer_risk"]),
+    ("acceptance.plan.designed", &["p1", "alpha", "p2", "beta"]),
     ("acceptance.plan.aql", &["critical", "major", "minor"]),
 ];
 

@@ -3,6 +3,7 @@
 mod accept;
 mod expect;
 mod facts;
+mod history;
 mod lots;
 mod rate;
 mod read;
@@ -10,8 +11,9 @@ mod recheck;
 mod rig;
 mod threads;
 
-pub use accept::{Accepted, Options, accept};
+pub use accept::{Accepted, Options, Past, accept};
 pub use expect::{Ask, Expected, MemberAnswer, StressAnswer, expect};
+pub use history::read_history;
 pub use lots::{Listing, LotsError, Query, lots};
 pub use rate::{Bench, Guess, LoadAt, RateOptions, RateResult, rate};
 pub use read::Keep;

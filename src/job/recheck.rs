@@ -270,6 +270,7 @@ impl Sealed {
             strict: false,
             keep,
             last_check: None,
+            past: None,
             block_bytes: None,
             flags: self.provenance.flags.clone(),
         };

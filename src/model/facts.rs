@@ -185,11 +185,19 @@ pub(crate) fn of_bench(rig: &RigFacts) -> Facts {
 fn plan(record: &AcceptRecord) -> Facts {
     let plan = &record.plan;
     let mut rows = vec![fact("By", plan.by.clone())];
+    if plan.source.replace(' ', "-") != plan.by && !plan.source.is_empty() {
+        rows.push(fact("Source", plan.source.clone()));
+    }
+    rows.extend(
+        plan.state
+            .as_ref()
+            .map(|state| fact("State of inspection", wording::state(state))),
+    );
     rows.extend(stated("Inspection level", plan.level.as_ref()));
     rows.extend(stated("Code letter", plan.code_letter.as_ref()));
     rows.push(fact("Sample size", count(plan.sample_size, "spring")));
     rows.extend(arrows(&plan.classes).map(|words| fact("Arrow of the table", words)));
-    rows.push(fact("Accept, reject", numbers(plan)));
+    rows.extend(numbers(plan).map(|numbers| fact("Accept, reject", numbers)));
     let counted = record
         .springs
         .iter()
@@ -238,15 +246,12 @@ fn arrows(classes: &[ClassPlan]) -> Option<String> {
     (!lines.is_empty()).then(|| lines.join("; "))
 }
 
-/// `major Ac 1, Re 2; minor Ac 2, Re 3`.
-fn numbers(plan: &PlanFacts) -> String {
-    if plan.classes.is_empty() {
-        return format!("Ac {}, Re {}", plan.accept, plan.reject);
-    }
+/// `major Ac 1, Re 2; minor Ac 2, Re 3`; `None` where no class is counted.
+fn numbers(plan: &PlanFacts) -> Option<String> {
     let classes: Vec<String> = plan
         .classes
         .iter()
         .map(|of| format!("{} Ac {}, Re {}", of.class.word(), of.accept, of.reject))
         .collect();
-    classes.join("; ")
+    (!classes.is_empty()).then(|| classes.join("; "))
 }

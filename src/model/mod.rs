@@ -8,6 +8,8 @@ mod fits;
 mod named;
 mod page;
 mod page_one;
+mod plan;
+mod process;
 mod provenance;
 mod springs;
 mod study;
@@ -56,8 +58,14 @@ pub struct Model {
     pub notes: Vec<Note>,
     /// Lot, drawing, rig, plan.
     pub facts: Vec<Facts>,
-    /// The plan of each class.
+    /// The plan of each class, or of each characteristic where none is counted.
     pub plan: Table,
+    /// The characteristics by variables, where classes are counted too.
+    pub plan_more: Vec<Table>,
+    /// What would settle an undecided lot.
+    pub settling: Option<Section>,
+    /// What the sample says of the lot.
+    pub process: Section,
     /// Requirements with limits, counts and what was measured.
     pub requirements: Table,
     /// What page one must say besides.
@@ -99,7 +107,10 @@ impl Model {
             decision: page_one::deciding(record, show_in),
             notes: page_one::notes(record),
             facts: facts::all(record, show_in),
-            plan: page_one::plan(record),
+            plan: plan::main(record, show_in),
+            plan_more: plan::more(record, show_in),
+            settling: plan::settling(record, show_in),
+            process: process::section(record, show_in),
             requirements: page_one::requirements(record, show_in),
             cautions: record
                 .cautions

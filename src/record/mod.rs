@@ -8,12 +8,14 @@ mod check;
 mod compare;
 mod facts;
 mod find;
+mod plan;
+mod process;
 mod repeat;
 mod spring;
 
 pub use accept::{
-    AcceptRecord, ClassPlan, ConditionFacts, DrawingFacts, Kind, LotFacts, OutputFile, PlanFacts,
-    Provenance, RequirementFacts, SimpleAcceptance,
+    AcceptRecord, ConditionFacts, DrawingFacts, Kind, LotFacts, OutputFile, Provenance,
+    RequirementFacts, SimpleAcceptance,
 };
 pub use bench_caution::BenchCaution;
 pub use caution::{Caution, Oddity};
@@ -24,6 +26,8 @@ pub use check::{
 pub use compare::{ACROSS_VERSIONS, Closeness, Difference, differences};
 pub use facts::{MemberFacts, RigFacts, StressFacts, TheoryFacts, WindowFacts};
 pub use find::{Key, find, occurring};
+pub use plan::{ClassPlan, PlanFacts, SettlingFacts, StateFacts, VariablesFacts, ZeroAcceptFacts};
+pub use process::{EstimatedFacts, IntervalFacts, ProcessFacts, ShapeFacts};
 pub use repeat::{
     ProposedFigure, RangeFacts, RepeatKind, RepeatReason, RepeatRecord, StudyFacts, StudyValue,
     VarianceRow, VariationShare,
@@ -37,7 +41,8 @@ pub use crate::bench::{Finding, Serving};
 pub use crate::characteristic::Part;
 pub use crate::curve::WindowOf;
 pub use crate::drawing::Policy as Undecided;
-pub use crate::lot::{Advice, Decision, LotReason};
+pub use crate::lot::{Advice, Comparison, Decision, LotReason};
+pub use crate::sampling::Reason as StateReason;
 pub use crate::verdict::{Reason, Verdict};
 
 /// The version of the layout of `result.json`.

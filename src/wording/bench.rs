@@ -36,11 +36,11 @@ pub(crate) fn check_reason(of: &CheckReason, record: &CheckRecord, show_in: Syst
             finding,
             comparisons,
         } => {
-            let named = comparisons.iter().filter_map(|place| {
+            let quantities = comparisons.iter().filter_map(|place| {
                 let of = record.comparisons.get(usize::try_from(*place).ok()?)?;
                 Some(characteristic(&of.name, of.at_length_mm, show_in))
             });
-            let names = sentence(&list(&named.collect::<Vec<_>>()));
+            let subject = sentence(&list(&quantities.collect::<Vec<_>>()));
             let what = match finding {
                 Finding::Disagrees => {
                     "the error is larger than both expanded uncertainties together explain (|E_n| above 1)"
@@ -55,7 +55,7 @@ pub(crate) fn check_reason(of: &CheckReason, record: &CheckRecord, show_in: Syst
                 Finding::NotMeasured => "no value whose uncertainty is known",
                 Finding::Serves => "agrees",
             };
-            format!("{names}: {what}.")
+            format!("{subject}: {what}.")
         }
         CheckReason::FrameDiffers => {
             "The give of the frame, plate on plate, contradicts the rig file by more than both uncertainties.".to_owned()

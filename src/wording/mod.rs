@@ -6,6 +6,7 @@ mod caution;
 mod figure;
 pub(crate) mod font;
 mod lot;
+mod plan;
 mod spring;
 
 pub(crate) use bench::{
@@ -17,6 +18,7 @@ pub use figure::{
     with_uncertainty, with_unit,
 };
 pub(crate) use lot::{decided, decision_word, simple_line, terms, why};
+pub(crate) use plan::{compared, readings, state};
 pub(crate) use spring::{absence, advice, disposition, rule_used, verdict_reason, verdict_word};
 
 use crate::quantity::{Quantity, Unit};

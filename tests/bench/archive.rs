@@ -54,6 +54,7 @@ fn fill(dir: &Path) {
         strict: false,
         keep: Keep::default(),
         last_check: None,
+        past: None,
         block_bytes: None,
         flags: Vec::new(),
     };

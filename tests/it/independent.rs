@@ -24,6 +24,7 @@ fn record() -> AcceptRecord {
         block_bytes: None,
         flags: Vec::new(),
         last_check: None,
+        past: None,
     };
     accept(&lot, "lot.toml", &options).unwrap().record
 }
@@ -186,8 +187,8 @@ fn theory_window_and_plan_to_nine_digits() {
         "letter {}, AQL 2.5: n {}, Ac {}, Re {}",
         plan.code_letter.as_deref().unwrap(),
         plan.sample_size,
-        plan.accept,
-        plan.reject
+        plan.accept.unwrap(),
+        plan.reject.unwrap()
     );
     assert!(text.contains(&line), "{line}");
 }

@@ -87,6 +87,7 @@ fn judged() -> Vec<Judged> {
         block_bytes: None,
         flags: Vec::new(),
         last_check: None,
+        past: None,
     };
     let (truths, options, folder) = (&truths, &options, &folder);
     let one_lot = move |lot: u64| {

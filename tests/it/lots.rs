@@ -55,6 +55,7 @@ impl Lot {
             block_bytes,
             flags: Vec::new(),
             last_check: None,
+            past: None,
         };
         accept(&self.place().join("lot.toml"), "lot.toml", &options)
             .unwrap()

@@ -6,7 +6,7 @@ use std::path::{Path, PathBuf};
 use syn::visit::Visit;
 
 /// The rooms, top to bottom, as DEVELOPERS.md lists them.
-const ROOMS: [&str; 24] = [
+const ROOMS: [&str; 27] = [
     "units",
     "stats",
     "text",
@@ -21,6 +21,8 @@ const ROOMS: [&str; 24] = [
     "doubt",
     "verdict",
     "bench",
+    "sampling",
+    "process",
     "lot",
     "record",
     "archive",

@@ -216,13 +216,9 @@ fn findings(files: &Files, id: &str) -> Vec<FindingResult> {
 }
 
 /// Says of every spring whether it is in the sample: the first `size` of those that may be.
-pub(super) fn mark_sample(judged: &mut [Judged], sampled: &[(String, Overall)], size: u64) {
+pub(super) fn mark_sample(judged: &mut [Judged], sampled: &[String], size: u64) {
     let size = usize::try_from(size).unwrap_or(usize::MAX);
-    let inside: HashSet<&str> = sampled
-        .iter()
-        .take(size)
-        .map(|(id, _)| id.as_str())
-        .collect();
+    let inside: HashSet<&str> = sampled.iter().take(size).map(String::as_str).collect();
     for spring in judged {
         spring.result.in_sample = inside.contains(spring.result.id.as_str());
     }

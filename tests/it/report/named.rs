@@ -267,6 +267,7 @@ fn a_repeated_spring_is_drawn_under_its_own_id() {
         block_bytes: None,
         flags: Vec::new(),
         last_check: None,
+        past: None,
     };
     let lot = "samples/undecided/lot.toml";
     let path = std::path::Path::new(env!("CARGO_MANIFEST_DIR")).join(lot);
