@@ -46,6 +46,11 @@ pub enum Caution {
         /// `force` or `travel`.
         scale: String,
     },
+    /// The last check of the rig on record failed.
+    CheckFailed {
+        /// When, and on what.
+        last: String,
+    },
     /// The rig file wants checks and no passed check is on record that is recent enough.
     NoCheckOnRecord {
         /// How often the rig file wants one.

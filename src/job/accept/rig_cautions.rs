@@ -57,7 +57,7 @@ pub(in crate::job) fn of_rig(rig: &Rig, date: Date) -> Vec<Caution> {
 
 /// The last passed check, where it was made early enough before the judgement and not after it.
 pub(super) fn holding<'a>(rig: &Rig, options: &'a Options) -> Option<&'a LastCheck> {
-    let last = options.last_check.as_ref()?;
+    let last = options.memory.told()?.last_check.as_ref()?;
     let holds = match &rig.check_every {
         Some(every) => every
             .holds_until(last.date)
@@ -67,16 +67,21 @@ pub(super) fn holding<'a>(rig: &Rig, options: &'a Options) -> Option<&'a LastChe
     (holds && last.date <= options.date).then_some(last)
 }
 
-/// No passed check within the time the rig file asks for.
+/// A failed check that no passed one follows, or no passed check within the time the rig file asks for.
 pub(super) fn of_check(rig: &Rig, options: &Options) -> Option<Caution> {
+    let text = |last: &LastCheck| format!("{} ({})", last.date, last.id);
+    let told = options.memory.told();
+    if let Some(failed) = told.and_then(|told| told.failed_check.as_ref()) {
+        return Some(Caution::CheckFailed { last: text(failed) });
+    }
     let every = rig.check_every.as_ref()?;
     if holding(rig, options).is_some() {
         return None;
     }
-    let last = options.last_check.as_ref();
+    let last = told.and_then(|told| told.last_check.as_ref());
     Some(Caution::NoCheckOnRecord {
         every: every.written.clone(),
-        last: last.map(|last| format!("{} ({})", last.date, last.id)),
+        last: last.map(text),
     })
 }
 
@@ -109,6 +114,9 @@ pub(in crate::job) fn refused(cautions: &[Caution]) -> Option<String> {
         )),
         Caution::CalibrationUnknown { scale } => Some(format!(
             "the rig file states no calibration of the {scale} scale"
+        )),
+        Caution::CheckFailed { last } => Some(format!(
+            "the last check of the rig on record failed: {last}"
         )),
         Caution::NoCheckOnRecord { every, last } => Some(match last {
             Some(last) => format!(

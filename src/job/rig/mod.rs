@@ -48,5 +48,6 @@ fn provenance(inputs: Vec<InputFile>, sources: Sources, options: &RigOptions) ->
         flags: options.flags.clone(),
         inputs,
         ledgers: sources.ledgers,
+        archive: None,
     }
 }
