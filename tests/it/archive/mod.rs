@@ -3,6 +3,7 @@
 mod engines;
 mod interrupted;
 mod lots;
+mod memory;
 mod recheck;
 mod spoilt;
 
