@@ -81,7 +81,9 @@ pub struct GivePoint {
 pub struct FrameFacts {
     /// Slope of the straight line.
     pub compliance_mm_per_n: Finite,
-    /// Its expanded uncertainty; `null` where the run is too short to give one.
+    /// Its standard uncertainty; `null` where the run is too short to give one.
+    pub standard_uncertainty_mm_per_n: Option<Finite>,
+    /// Its expanded uncertainty.
     pub expanded_uncertainty_mm_per_n: Option<Finite>,
     /// k for 95.45 %.
     pub coverage_factor: Option<Finite>,

@@ -129,7 +129,7 @@ fn frame(document: &mut DocumentMut, give: &Give, standard: f64, units: System) 
         }
     }
     set(compliance, "uncertainty", expanded);
-    set(compliance, "k", 2.0);
+    compliance.insert("k", value(2));
     if let Some(Value::InlineTable(inline)) =
         frame.get_mut("compliance").and_then(Item::as_value_mut)
     {
@@ -165,7 +165,7 @@ fn set(table: &mut dyn TableLike, key: &str, figure: f64) {
 }
 
 fn repeatability(document: &mut DocumentMut, of: &str, figure: f64) -> Option<()> {
-    let figure = rounded_up(figure, DIGITS.0 + DIGITS.1);
+    let figure = to_place(figure, last_place(figure, DIGITS.0 + DIGITS.1));
     let stated = document
         .entry("repeatability")
         .or_insert(Item::ArrayOfTables(ArrayOfTables::new()));

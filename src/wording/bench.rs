@@ -36,11 +36,11 @@ pub(crate) fn check_reason(of: &CheckReason, record: &CheckRecord, show_in: Syst
             finding,
             comparisons,
         } => {
-            let named = comparisons.iter().filter_map(|place| {
+            let found = comparisons.iter().filter_map(|place| {
                 let of = record.comparisons.get(usize::try_from(*place).ok()?)?;
                 Some(characteristic(&of.name, of.at_length_mm, show_in))
             });
-            let names = sentence(&list(&named.collect::<Vec<_>>()));
+            let names = sentence(&list(&found.collect::<Vec<_>>()));
             let what = match finding {
                 Finding::Disagrees => {
                     "the error is larger than both expanded uncertainties together explain (|E_n| above 1)"
