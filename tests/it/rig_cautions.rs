@@ -78,7 +78,14 @@ fn a_passed_check_holds_for_its_time() {
 #[test]
 fn every_warning_on_the_rig_is_refused_where_asked() {
     let held = Some(date(2026, 12, 1));
-    let cases: [(&str, &str, &str, &str); 5] = [
+    let cases: [(&str, &str, &str, &str); 6] = [
+        // Class 0.5 allows a step of 0.25 % of the load: 0.6 N is that of 240 N, more than the springs carry at 70 mm.
+        (
+            "resolution = 0.01\nrange = { from = 4.0, to = 1000.0 }",
+            "resolution = 0.6",
+            "load_outside_range",
+            "outside the range",
+        ),
         (
             "until = 2027-03-02",
             "until = 2026-11-30",

@@ -167,7 +167,7 @@ fn of_curves(rig: &Rig, full_load: f64, judged: &[Judged]) -> Vec<Caution> {
             .is_some_and(|(_, most)| spring.loads.1 > most)
     };
     let below = |spring: &Judged| {
-        let least = rig.force.range.map(|(least, _)| least);
+        let least = rig.force.usable_from();
         let judged_loads = spring
             .result
             .characteristics

@@ -192,20 +192,21 @@ fn comparison(
 /// What the readings make necessary to say: loads outside the range of the force scale, strokes left out, no zero.
 fn cautions(spring: &ReferenceSpring, rig: &Rig, readings: &[Reading]) -> Vec<Caution> {
     let mut found = Vec::new();
-    if let Some((least, most)) = rig.force.range {
-        let certified = spring
-            .values
-            .iter()
-            .filter(|one| one.quantity.at_length().is_some());
-        let below = certified.into_iter().any(|one| one.value < least);
-        let names = |of: &dyn Fn(&Reading) -> bool| -> Vec<String> {
-            let some = readings.iter().filter(|one| of(one));
-            some.map(|one| one.id.clone()).collect()
-        };
-        let springs = names(&|one| below || one.loads.1 > most);
-        if !springs.is_empty() {
-            found.push(Caution::LoadOutsideRange { springs });
-        }
+    let least = rig.force.usable_from();
+    let mut loads = spring
+        .values
+        .iter()
+        .filter(|one| one.quantity.at_length().is_some());
+    let below = loads.any(|one| least.is_some_and(|least| one.value < least));
+    let most = rig.force.range.map(|(_, most)| most);
+    let above = |one: &Reading| most.is_some_and(|most| one.loads.1 > most);
+    let springs: Vec<String> = readings
+        .iter()
+        .filter(|one| below || above(one))
+        .map(|one| one.id.clone())
+        .collect();
+    if !springs.is_empty() {
+        found.push(Caution::LoadOutsideRange { springs });
     }
     let unread: Vec<String> = readings
         .iter()
