@@ -89,13 +89,23 @@ pub fn edit(source: &Source, changes: &[Change]) -> Result<Edited, RigEditError>
         };
         done.ok_or_else(|| unfit("what it says of the frame or of repeatability is no table"))?;
     }
-    let text = document.to_string();
+    let text = with_ends_of(&source.text, &document.to_string());
     let lines = difference(&source.text, &text);
     Ok(Edited {
         source: source.with_text(&text),
         was: source.sha256.clone(),
         lines,
     })
+}
+
+/// The new text with the line ends of the old one: `toml_edit` writes `\n` alone.
+fn with_ends_of(old: &str, new: &str) -> String {
+    let plain = new.replace("\r\n", "\n");
+    if old.contains("\r\n") {
+        plain.replace('\n', "\r\n")
+    } else {
+        plain
+    }
 }
 
 fn unit_of(quantity: &str, units: System) -> f64 {

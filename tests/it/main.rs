@@ -59,6 +59,7 @@ mod relations;
 mod relations_units;
 mod report;
 mod rig_cautions;
+mod rig_edit;
 mod rig_repeat;
 mod rig_verify;
 mod rooms;
