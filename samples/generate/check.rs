@@ -118,6 +118,7 @@ plates = "plates.csv"                  # the platens on each other
 drawings = ["tg-204.toml"]             # what is judged on this rig
 
 [check]
+on = 2026-11-30                        # the day it was measured
 inspector = "second shift (invented)"
 note = "Invented sample: a good bench"
 

@@ -41,7 +41,7 @@ pub(super) const fn mark(of: Finding) -> Verdict {
     match of {
         Finding::Serves => Verdict::Conforms,
         Finding::Disagrees | Finding::BeyondShare => Verdict::Fails,
-        Finding::CannotTell | Finding::NotMeasured => Verdict::Undecided,
+        Finding::CannotTell | Finding::Scattered | Finding::NotMeasured => Verdict::Undecided,
     }
 }
 

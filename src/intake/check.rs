@@ -2,6 +2,8 @@
 
 use std::path::{Path, PathBuf};
 
+use jiff::civil::Date;
+
 use crate::drawing::read_units;
 use crate::text::{Keys, Source, Table, beside, read_toml};
 use crate::units::System;
@@ -17,7 +19,7 @@ const CERTIFIED: &[&str] = &["value", "uncertainty", "k"];
 #[rustfmt::skip] // keeps the list a list
 pub const CHECK_KEYS: Keys = &[
     ("", &["units", "rig", "exports", "plates", "drawings", "tolerances", "share", "earlier", "check", "reference", "conditions"]),
-    ("check", &["inspector", "note"]),
+    ("check", &["on", "inspector", "note"]),
     ("tolerances", &["rate", "load", "free_length"]),
     ("reference", &["name", "certificate", "calibrated", "rate", "load", "free_length"]),
     ("reference.calibrated", &["on", "until"]),
@@ -74,6 +76,8 @@ pub struct CheckFile {
     pub share: f64,
     /// Results of earlier checks.
     pub earlier: Vec<Export>,
+    /// The day it was measured, where the file says so.
+    pub on: Option<Date>,
     /// Who checked.
     pub inspector: Option<String>,
     /// A note to print.
@@ -120,6 +124,7 @@ fn read(root: Table<'_>, source: &Source) -> Option<CheckFile> {
         SHARE
     };
     let check = root.table("check");
+    let on = check.date("on").map(|on| on.value);
     Some(CheckFile {
         source: source.clone(),
         rig: rig?,
@@ -127,6 +132,7 @@ fn read(root: Table<'_>, source: &Source) -> Option<CheckFile> {
         plates,
         share,
         earlier: read_earlier(root, source),
+        on,
         inspector: check.text("inspector"),
         note: check.text("note"),
         conditions: read_conditions(root.table("conditions"))?,

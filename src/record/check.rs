@@ -184,7 +184,7 @@ pub struct CheckRecord {
     pub reasons: Vec<CheckReason>,
     /// Whether this counts as a passed check: the decision is `serves` and a reference spring was measured.
     pub passed: bool,
-    /// Day of the check.
+    /// Day of the check: when it was measured, as the check file states it, else when it was judged.
     #[schemars(with = "String")]
     pub judged_at: Date,
     /// The rig's name.

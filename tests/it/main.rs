@@ -62,6 +62,8 @@ mod rig_cautions;
 mod rig_edit;
 mod rig_repeat;
 mod rig_verify;
+mod rig_verify_files;
+mod rig_verify_terms;
 mod rooms;
 mod schema;
 mod springs_published;

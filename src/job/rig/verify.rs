@@ -2,6 +2,8 @@
 
 use std::path::Path;
 
+use jiff::civil::Date;
+
 use crate::bench::Serving;
 use crate::curve::thin;
 use crate::intake::{CheckFile, open_check};
@@ -67,19 +69,33 @@ pub fn rig_verify(
     let proposal = change
         .map(|change| propose(&rig_source, &change))
         .transpose()?;
-    let record = record(
-        (&file, &rig),
-        (found, frame_facts, words),
-        all,
-        provenance(inputs, sources, options),
-        options,
-    )?;
+    let provenance = provenance(inputs, sources, options);
+    let measured = RigOptions {
+        date: day(&file, options)?,
+        ..options.clone()
+    };
+    let found = (found, frame_facts, words);
+    let record = record((&file, &rig), found, all, provenance, &measured)?;
     let readings = frame.map_or(Vec::new(), |frame| thin(&frame.readings, DRAWN));
     Ok(Verified {
         record,
         proposal,
         readings,
     })
+}
+
+/// The day that the check speaks of: the day it was measured. A check measured long ago and judged today holds from then.
+///
+/// # Errors
+/// [`RigJobError::Measured`] where that day is still to come.
+fn day(file: &CheckFile, options: &RigOptions) -> Result<Date, RigJobError> {
+    match file.on {
+        Some(on) if on > options.date => Err(RigJobError::Measured {
+            on,
+            date: options.date,
+        }),
+        on => Ok(on.unwrap_or(options.date)),
+    }
 }
 
 /// The rig file with a change in it, proven to open.

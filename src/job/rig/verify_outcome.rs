@@ -46,6 +46,7 @@ pub(super) fn reasons(
         Finding::Disagrees,
         Finding::BeyondShare,
         Finding::CannotTell,
+        Finding::Scattered,
         Finding::NotMeasured,
     ] {
         let places = (0..).zip(comparisons);
@@ -109,6 +110,16 @@ pub(super) fn cautions(
         if spring.values.iter().any(|one| !checked(rig, one)) {
             found.push(BenchCaution::FreeLengthNotChecked);
         }
+    }
+    if file.on.is_none() {
+        found.push(BenchCaution::DayNotStated);
+    }
+    let spread = |one: &ComparisonFacts| {
+        let mut lines = one.budget.iter();
+        lines.any(|line| line.source == "repeat to repeat" && line.counted)
+    };
+    if comparisons.iter().any(spread) {
+        found.push(BenchCaution::MeasurementsDiffer);
     }
     if measurements == Some(1) {
         found.push(BenchCaution::MeasuredOnce);
