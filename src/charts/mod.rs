@@ -10,6 +10,7 @@ mod histogram;
 mod ids;
 mod share;
 mod study;
+mod trend;
 mod values;
 
 pub(crate) use check::check;

@@ -5,6 +5,7 @@ mod budget;
 mod check;
 mod facts;
 mod fits;
+mod frame;
 mod named;
 mod page;
 mod page_one;

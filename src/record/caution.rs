@@ -63,7 +63,7 @@ pub enum Caution {
         /// The springs.
         springs: Vec<String>,
     },
-    /// Loads outside the range the rig file states.
+    /// Loads outside the usable range of the force scale: as stated, or by its class and resolution.
     LoadOutsideRange {
         /// The springs.
         springs: Vec<String>,

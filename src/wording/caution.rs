@@ -174,7 +174,7 @@ fn about_the_curves(of: &Caution, show_in: System) -> String {
         ),
         Caution::LoadOutsideRange { springs: names } => {
             format!(
-                "Loads outside the range the rig file states: {}.",
+                "Loads outside the usable range of the force scale: {}.",
                 springs(names)
             )
         }

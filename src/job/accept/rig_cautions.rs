@@ -8,6 +8,7 @@ use crate::rig::{Accuracy, Compliance, Known, Means, Rig, Scale};
 use super::super::facts::figure;
 use super::Options;
 use super::error::AcceptError;
+use super::springs::Judged;
 
 /// Compliance times rate beyond which the frame is doubted.
 const SOFT: f64 = 0.05;
@@ -158,4 +159,22 @@ pub(super) fn large_compliance(rig: &Rig, rate: f64) -> Option<Caution> {
     } else {
         None
     }
+}
+
+/// A judged load beyond what the table of the frame's give knows.
+pub(super) fn beyond_table(rig: &Rig, spring: &Judged) -> bool {
+    let Compliance::Measured { give, .. } = &rig.frame else {
+        return false;
+    };
+    let Some(most) = give.known_to() else {
+        return false;
+    };
+    let loads = spring
+        .result
+        .characteristics
+        .iter()
+        .filter(|one| one.at_length_mm.is_some());
+    loads
+        .filter_map(|one| one.value)
+        .any(|load| load.get() > most)
 }
