@@ -10,6 +10,12 @@ pub mod text;
 
 pub mod quantity;
 
+pub mod formula;
+
+pub mod material;
+
+pub mod spring;
+
 pub mod drawing;
 
 pub mod rig;
@@ -19,6 +25,8 @@ pub mod export;
 pub mod intake;
 
 pub mod curve;
+
+pub mod review;
 
 pub mod fit;
 

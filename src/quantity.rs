@@ -11,6 +11,10 @@ use crate::units::Millimetres;
 pub enum Quantity {
     /// Rate R in the drawing's window.
     Rate,
+    /// Rate of a stage of a set whose members engage one after the other, from 1.
+    RateOf(u8),
+    /// Length at which the next member of a set engages: 1 between the first stage and the second.
+    Knee(u8),
     /// Load F at a stated length.
     LoadAt(Millimetres),
     /// Free length L0.
@@ -51,11 +55,42 @@ pub enum Unit {
     Percent,
 }
 
+/// The most stages a set may have.
+pub const MOST_STAGES: u8 = 4;
+
+/// Name, symbol and title, by number.
+type Numbered = [(&'static str, &'static str, &'static str); 4];
+
+const STAGES: Numbered = [
+    ("rate_stage_1", "R1", "rate of stage 1"),
+    ("rate_stage_2", "R2", "rate of stage 2"),
+    ("rate_stage_3", "R3", "rate of stage 3"),
+    ("rate_stage_4", "R4", "rate of stage 4"),
+];
+const KNEES: Numbered = [
+    ("knee", "LK", "length at the knee"),
+    ("knee_2", "LK2", "length at the second knee"),
+    ("knee_3", "LK3", "length at the third knee"),
+    ("knee_4", "LK4", "length at the fourth knee"),
+];
+
+/// The entry of a number counted from 1; the last one beyond the table.
+const fn numbered(of: &Numbered, number: u8) -> (&'static str, &'static str, &'static str) {
+    match number {
+        0 | 1 => of[0],
+        2 => of[1],
+        3 => of[2],
+        _ => of[3],
+    }
+}
+
 impl Quantity {
     /// The key used in `result.json`, in `springs.csv` and under `[requirements]`.
     pub const fn name(self) -> &'static str {
         match self {
             Self::Rate => "rate",
+            Self::RateOf(stage) => numbered(&STAGES, stage).0,
+            Self::Knee(knee) => numbered(&KNEES, knee).0,
             Self::LoadAt(_) => "load",
             Self::FreeLength => "free_length",
             Self::SolidLength => "solid_length",
@@ -72,6 +107,14 @@ impl Quantity {
     pub fn from_name(name: &str, at: Option<Millimetres>) -> Option<Self> {
         if let Some(length) = at {
             return (name == "load").then_some(Self::LoadAt(length));
+        }
+        for number in 1..=MOST_STAGES {
+            if name == Self::RateOf(number).name() {
+                return Some(Self::RateOf(number));
+            }
+            if name == Self::Knee(number).name() {
+                return Some(Self::Knee(number));
+            }
         }
         let plain = [
             Self::Rate,
@@ -91,6 +134,8 @@ impl Quantity {
     pub const fn symbol(self) -> &'static str {
         match self {
             Self::Rate => "R",
+            Self::RateOf(stage) => numbered(&STAGES, stage).1,
+            Self::Knee(knee) => numbered(&KNEES, knee).1,
             Self::LoadAt(_) => "F",
             Self::FreeLength => "L0",
             Self::SolidLength => "Lc",
@@ -107,6 +152,8 @@ impl Quantity {
     pub const fn title(self) -> &'static str {
         match self {
             Self::Rate => "rate",
+            Self::RateOf(stage) => numbered(&STAGES, stage).2,
+            Self::Knee(knee) => numbered(&KNEES, knee).2,
             Self::LoadAt(_) => "load at length",
             Self::FreeLength => "free length",
             Self::SolidLength => "solid length",
@@ -122,7 +169,7 @@ impl Quantity {
     /// The unit its values are in.
     pub const fn unit(self) -> Unit {
         match self {
-            Self::Rate => Unit::NewtonPerMillimetre,
+            Self::Rate | Self::RateOf(_) => Unit::NewtonPerMillimetre,
             Self::LoadAt(_) => Unit::Newton,
             Self::Hysteresis | Self::Straightness => Unit::Percent,
             _ => Unit::Millimetre,

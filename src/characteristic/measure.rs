@@ -276,9 +276,11 @@ impl Spring<'_> {
             Quantity::Hysteresis => loops::hysteresis(setup, curve, residual_sd)?,
             Quantity::Set => loops::set(setup, curve)?,
             Quantity::Straightness => self.straightness()?,
-            Quantity::OutsideDiameter | Quantity::InsideDiameter | Quantity::WireDiameter => {
-                Err(Absence::NotMeasured)
-            }
+            Quantity::RateOf(_)
+            | Quantity::Knee(_)
+            | Quantity::OutsideDiameter
+            | Quantity::InsideDiameter
+            | Quantity::WireDiameter => Err(Absence::NotMeasured),
         };
         Ok(found.map_or_else(Measured::Absent, Measured::Value))
     }

@@ -91,7 +91,7 @@ fn write(
 }
 
 /// The date of the judgement: as given, else SOURCE_DATE_EPOCH, else today, in UTC.
-fn date(given: Option<Date>) -> miette::Result<Date> {
+pub(super) fn date(given: Option<Date>) -> miette::Result<Date> {
     if let Some(date) = given {
         return Ok(date);
     }

@@ -140,7 +140,13 @@ pub(super) struct ExpectArgs {
     /// Load and stress at this length in mm
     #[arg(long, value_name = "MM")]
     pub(super) at_length: Option<f64>,
-    /// As JSON
+    /// The result as JSON on stdout, and nothing else there
     #[arg(long)]
     pub(super) json: bool,
+    /// Units that people read; JSON is always mm and N
+    #[arg(long, value_enum, default_value_t = ShowIn::MmN, value_name = "UNITS")]
+    pub(super) show_in: ShowIn,
+    /// Date on the report; else SOURCE_DATE_EPOCH, else today (UTC)
+    #[arg(long, value_name = "YYYY-MM-DD")]
+    pub(super) date: Option<Date>,
 }

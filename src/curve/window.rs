@@ -44,10 +44,13 @@ pub enum WindowMiss {
 }
 
 /// Fn in N, the load at the smallest permitted length Ln: as stated under `[rate_test] full_load`, else
-/// nominal rate (stated, or else theory's) times L0 − Ln.
+/// nominal rate (stated, or else theory's) times L0 − Ln; with several stages theory's load there.
 pub fn full_load(drawing: &Drawing) -> f64 {
     if let Some(stated) = drawing.rate_test.full_load {
         return stated;
+    }
+    if drawing.theory.stages.len() > 1 {
+        return drawing.theory.load_at(drawing.theory.smallest.get());
     }
     nominal_rate(drawing) * travel_to_smallest(drawing)
 }
@@ -63,11 +66,7 @@ pub fn nominal_rate(drawing: &Drawing) -> f64 {
 }
 
 fn travel_to_smallest(drawing: &Drawing) -> f64 {
-    let free = drawing
-        .members
-        .first()
-        .map_or(0.0, |member| member.free.nominal);
-    free - drawing.theory.smallest.get()
+    drawing.theory.free.get() - drawing.theory.smallest.get()
 }
 
 /// The window of `drawing` with its bounds in N or mm.

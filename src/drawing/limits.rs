@@ -22,7 +22,7 @@ impl Limits {
 }
 
 /// One requirement of the drawing.
-#[derive(Clone, Copy, Debug, PartialEq)]
+#[derive(Clone, Debug, PartialEq)]
 pub struct Requirement {
     /// What is required.
     pub quantity: Quantity,
@@ -30,6 +30,8 @@ pub struct Requirement {
     pub limits: Limits,
     /// How grave a departure is.
     pub class: Class,
+    /// The standard the limits come from, in words; `None` where the drawing states them.
+    pub standard: Option<String>,
 }
 
 /// The words for a class in files.

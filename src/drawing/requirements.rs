@@ -1,11 +1,11 @@
 //! Reads what the drawing requires, and holds it against the rest of the drawing.
 
 use crate::quantity::{Class, Quantity};
+use crate::spring::Arrangement;
 use crate::text::Table;
 use crate::units::System;
 
 use super::limits::{CLASSES, Requirement, read_limits};
-use super::open::Arrangement;
 use super::terms::{Acceptance, Aqls, PlanTerms, RateTest, Window};
 
 /// The quantities stated under their own name, in the order they are judged and printed after the rate and loads.
@@ -52,9 +52,13 @@ pub(super) fn read_requirements(
         if !table.has(quantity.name()) {
             continue;
         }
-        if quantity.by_caliper() && arrangement == Some(Arrangement::Nested) {
+        let several = matches!(
+            arrangement,
+            Some(Arrangement::Nested | Arrangement::Stacked)
+        );
+        if quantity.by_caliper() && several {
             let what = format!(
-                "a {} of a nested set is not yet judged by this version",
+                "a {} is that of one spring, and this drawing has several",
                 quantity.title()
             );
             table.fault(
@@ -103,6 +107,7 @@ fn read_one(table: Table<'_>, quantity: Quantity, scale: f64) -> Option<Requirem
         quantity,
         limits: limits?,
         class: class?,
+        standard: None,
     })
 }
 

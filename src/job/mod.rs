@@ -8,5 +8,5 @@ mod read;
 mod threads;
 
 pub use accept::{Accepted, Options, accept};
-pub use expect::{Ask, Expected, MemberAnswer, StressAnswer, expect};
+pub use expect::{Ask, expect};
 pub use rate::{Bench, Guess, LoadAt, RateOptions, RateResult, rate};

@@ -27,7 +27,7 @@ pub struct Facts {
     pub rows: Vec<Fact>,
 }
 
-fn fact(name: &str, value: impl Into<String>) -> Fact {
+pub(crate) fn fact(name: &str, value: impl Into<String>) -> Fact {
     Fact {
         name: name.to_owned(),
         value: value.into(),

@@ -2,12 +2,16 @@
 //! Here: which facts stand where. Elsewhere: how a figure is written (`figure`), the words (`wording`), the page (`templates/`).
 
 mod budget;
+mod expect;
+mod expect_facts;
 mod facts;
 mod fits;
 mod named;
+mod page;
 mod page_one;
 mod provenance;
 mod springs;
+mod strength;
 mod supplier;
 mod table;
 mod theory;
@@ -16,6 +20,7 @@ use serde::Serialize;
 
 pub(crate) use facts::labelled;
 pub use facts::{Fact, Facts};
+pub use page::{Headline, Page};
 pub use page_one::{Deciding, Note};
 pub(crate) use springs::remarks;
 pub use table::{Cell, Column, Holds, Row, Section, Table};
@@ -89,10 +94,7 @@ impl Model {
             subject: page_one::subject(record),
             date: record.provenance.date.clone(),
             tool: format!("{} {}", record.provenance.tool, record.provenance.version),
-            units: match show_in {
-                System::MmN => "mm, N, N/mm, MPa".to_owned(),
-                System::InLbf => "in, lbf, lbf/in, psi (shown; judged in mm and N)".to_owned(),
-            },
+            units: units_line(show_in),
             decision: page_one::deciding(record, show_in),
             notes: page_one::notes(record),
             facts: facts::all(record, show_in),
@@ -108,7 +110,7 @@ impl Model {
             details: springs::details(record, show_in),
             fits: fits::section(record, show_in),
             budget: budget::section(record, show_in),
-            theory: theory::section(record, show_in),
+            theory: theory::section(&record.theory, show_in),
             provenance: provenance::section(record),
             supplier: supplier::page(record, show_in),
             signatures: ["Inspected by", "Decision released by"]
@@ -118,6 +120,14 @@ impl Model {
                 .map(str::to_owned)
                 .to_vec(),
         }
+    }
+}
+
+/// The units a report is written in.
+fn units_line(show_in: System) -> String {
+    match show_in {
+        System::MmN => "mm, N, N/mm, MPa".to_owned(),
+        System::InLbf => "in, lbf, lbf/in, psi (shown; judged in mm and N)".to_owned(),
     }
 }
 

@@ -3,6 +3,7 @@
 
 mod accept;
 mod caution;
+mod expect;
 mod facts;
 mod find;
 mod spring;
@@ -12,6 +13,9 @@ pub use accept::{
     Provenance, RequirementFacts, SimpleAcceptance,
 };
 pub use caution::{Caution, Oddity};
+pub use expect::{
+    Expected, ExpectedRequirement, MemberAnswer, ServiceFacts, StageFacts, StressAnswer,
+};
 pub use facts::{MemberFacts, RigFacts, StressFacts, TheoryFacts, WindowFacts};
 pub use find::{Key, find, occurring};
 pub use spring::{
@@ -23,6 +27,10 @@ pub use crate::characteristic::Part;
 pub use crate::curve::WindowOf;
 pub use crate::drawing::Policy as Undecided;
 pub use crate::lot::{Advice, Decision, LotReason};
+pub use crate::review::{
+    Basis, Clearance, Fatigue, FatigueMargin, Finding, Fitting, Needed, Outlook, Permissible,
+    ReadAs, SpringBuckling, StrengthGap, StrengthLine, StressPlace,
+};
 pub use crate::verdict::{Reason, Verdict};
 
 /// The version of the layout of `result.json`.

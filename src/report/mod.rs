@@ -6,6 +6,7 @@ mod error;
 mod gate;
 mod html;
 mod pdf;
+mod plain;
 mod summary;
 
 pub use csv::springs_csv;
@@ -14,8 +15,8 @@ pub use summary::summary;
 
 use crate::charts;
 use crate::curve::Reduced;
-use crate::model::Model;
-use crate::record::AcceptRecord;
+use crate::model::{Model, Page};
+use crate::record::{AcceptRecord, Expected};
 use crate::units::System;
 
 /// A template and the name of its file, for faults.
@@ -99,4 +100,9 @@ pub fn accept(
         bytes: chart.svg.into_bytes(),
     }));
     Ok(files)
+}
+
+/// What `expect` says on the terminal, figures in the units of `show_in`; it ends with a line end.
+pub fn expected_text(record: &Expected, show_in: System) -> String {
+    plain::text(&Page::expected(record, show_in))
 }

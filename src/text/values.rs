@@ -5,8 +5,18 @@ use toml::de::DeValue;
 use super::table::{At, Table};
 use super::toml::nearest;
 use super::{Alphabet, printable};
+use crate::units::System;
 
 impl Table<'_> {
+    /// The `units` key that every file may state; millimetres and newtons without it.
+    pub fn system(&self) -> Option<System> {
+        if self.has("units") {
+            self.word("units", &[("mm-N", System::MmN), ("in-lbf", System::InLbf)])
+        } else {
+            Some(System::MmN)
+        }
+    }
+
     /// Text as written, for paths and column names, which must match byte for byte.
     pub fn raw_text(&self, key: &str) -> Option<At<String>> {
         let (value, span) = self.value(key)?;

@@ -115,6 +115,7 @@ fn read_all(files: &Files, how: How<'_>) -> miette::Result<(Readings, Sources)> 
         files.drawing.input.clone(),
         files.rig.input.clone(),
     ];
+    inputs.extend(files.drawing.materials.clone());
     inputs.extend(files.caliper.input.clone());
     let mut sources = Sources {
         inputs,
