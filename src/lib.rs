@@ -14,6 +14,8 @@ pub mod formula;
 
 pub mod material;
 
+pub mod standard;
+
 pub mod spring;
 
 pub mod drawing;

@@ -33,6 +33,10 @@ pub enum Quantity {
     InsideDiameter,
     /// Wire diameter d, by caliper.
     WireDiameter,
+    /// Squareness e1: how far the free spring leans, by square and gauge.
+    Squareness,
+    /// Parallelism e2 of the ground ends, by gauge.
+    Parallelism,
 }
 
 /// The unit a quantity is reported in.
@@ -100,6 +104,8 @@ impl Quantity {
             Self::OutsideDiameter => "outside_diameter",
             Self::InsideDiameter => "inside_diameter",
             Self::WireDiameter => "wire_diameter",
+            Self::Squareness => "squareness",
+            Self::Parallelism => "parallelism",
         }
     }
 
@@ -126,6 +132,8 @@ impl Quantity {
             Self::OutsideDiameter,
             Self::InsideDiameter,
             Self::WireDiameter,
+            Self::Squareness,
+            Self::Parallelism,
         ];
         plain.into_iter().find(|quantity| quantity.name() == name)
     }
@@ -145,6 +153,8 @@ impl Quantity {
             Self::OutsideDiameter => "De",
             Self::InsideDiameter => "Di",
             Self::WireDiameter => "d",
+            Self::Squareness => "e1",
+            Self::Parallelism => "e2",
         }
     }
 
@@ -163,6 +173,8 @@ impl Quantity {
             Self::OutsideDiameter => "outside diameter",
             Self::InsideDiameter => "inside diameter",
             Self::WireDiameter => "wire diameter",
+            Self::Squareness => "squareness",
+            Self::Parallelism => "parallelism",
         }
     }
 
@@ -184,11 +196,20 @@ impl Quantity {
         }
     }
 
+    /// Whether a true value of zero is possible: a perfect end has no error of squareness or parallelism.
+    pub const fn may_be_zero(self) -> bool {
+        matches!(self, Self::Squareness | Self::Parallelism)
+    }
+
     /// Whether a caliper measures it, and not the bench.
     pub const fn by_caliper(self) -> bool {
         matches!(
             self,
-            Self::OutsideDiameter | Self::InsideDiameter | Self::WireDiameter
+            Self::OutsideDiameter
+                | Self::InsideDiameter
+                | Self::WireDiameter
+                | Self::Squareness
+                | Self::Parallelism
         )
     }
 }

@@ -280,7 +280,9 @@ impl Spring<'_> {
             | Quantity::Knee(_)
             | Quantity::OutsideDiameter
             | Quantity::InsideDiameter
-            | Quantity::WireDiameter => Err(Absence::NotMeasured),
+            | Quantity::WireDiameter
+            | Quantity::Squareness
+            | Quantity::Parallelism => Err(Absence::NotMeasured),
         };
         Ok(found.map_or_else(Measured::Absent, Measured::Value))
     }

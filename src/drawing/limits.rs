@@ -44,15 +44,6 @@ pub const CLASSES: [(&str, Class); 3] = [
 /// Reads the limits stated in `table`; `scale` turns the file's unit into the quantity's own.
 /// Every fault is noted in the table; `None` where the limits cannot be used.
 pub fn read_limits(table: Table<'_>, scale: f64) -> Option<Limits> {
-    if table.has("standard") {
-        let what = "tolerances by standard are not yet judged by this version";
-        table.fault(
-            &table.place("standard"),
-            what,
-            "write the tolerance itself: tolerance = …",
-        );
-        return None;
-    }
     let kinds = [
         table.has("tolerance"),
         table.has("plus") || table.has("minus"),

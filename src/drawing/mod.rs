@@ -2,6 +2,7 @@
 //! Here: what the drawing says. Elsewhere: what theory makes of it (`spring`), whether it agrees with itself (`review`),
 //! what the window does to a curve (`curve`), what the rule does to a value (`verdict`), what the plan does to a lot (`lot`).
 
+mod by_standard;
 mod limits;
 mod open;
 mod read_member;

@@ -4,11 +4,13 @@ use std::path::Path;
 
 use crate::material::{self, OwnTable};
 use crate::spring::{Arrangement, Member, Theory, theory};
+use crate::standard::Standard;
 use crate::text::{InputFile, Keys, Source, Table, beside, read_toml};
 use crate::units::System;
 
+use super::by_standard::{Ruling, Springs};
 use super::limits::Requirement;
-use super::read_member::read_members;
+use super::read_member::{Given, read_members};
 use super::read_terms::{read_acceptance, read_rate_test};
 use super::requirements::{check_classes, check_lengths, read_requirements};
 use super::service::{Service, read_service};
@@ -25,23 +27,24 @@ const LIMIT: &[&str] = &[
     "class",
 ];
 const SIZED: &[&str] = &["nominal", "tolerance"];
+const RULED: &[&str] = &["nominal", "tolerance", "standard"];
 
 /// The keys a drawing may hold.
 #[rustfmt::skip] // keeps the list a list
 pub const KEYS: Keys = &[
     ("", &["units", "drawing", "spring", "requirements", "rate_test", "acceptance", "service"]),
-    ("drawing", &["number", "revision", "title", "arrangement", "materials"]),
+    ("drawing", &["number", "revision", "title", "arrangement", "materials", "tolerances_by"]),
     ("spring", &["name", "wire_diameter", "outside_diameter", "mean_diameter", "inside_diameter", "active_coils",
         "total_coils", "ends", "free_length", "material", "shear_modulus", "shear_modulus_source", "hand", "coiled"]),
     ("spring.wire_diameter", SIZED),
-    ("spring.outside_diameter", SIZED),
-    ("spring.mean_diameter", SIZED),
-    ("spring.inside_diameter", SIZED),
+    ("spring.outside_diameter", RULED),
+    ("spring.mean_diameter", RULED),
+    ("spring.inside_diameter", RULED),
     ("spring.active_coils", SIZED),
-    ("spring.free_length", SIZED),
+    ("spring.free_length", RULED),
     ("spring.shear_modulus", SIZED),
     ("requirements", &["rate", "load", "free_length", "solid_length", "hysteresis", "set", "straightness",
-        "outside_diameter", "inside_diameter", "wire_diameter"]),
+        "outside_diameter", "inside_diameter", "wire_diameter", "squareness", "parallelism"]),
     ("requirements.rate", LIMIT),
     ("requirements.load", &["at_length", "nominal", "tolerance", "plus", "minus", "minimum", "maximum", "standard", "class"]),
     ("requirements.free_length", LIMIT),
@@ -52,6 +55,8 @@ pub const KEYS: Keys = &[
     ("requirements.outside_diameter", LIMIT),
     ("requirements.inside_diameter", LIMIT),
     ("requirements.wire_diameter", LIMIT),
+    ("requirements.squareness", LIMIT),
+    ("requirements.parallelism", LIMIT),
     ("rate_test", &["window", "full_load", "stroke", "method"]),
     ("rate_test.window", &["from", "to", "of"]),
     ("service", &["load", "temperature", "frequency", "seating", "peened", "set_removed"]),
@@ -130,8 +135,22 @@ fn read(root: Table<'_>, input: &InputFile, own: Option<OwnTable>) -> Option<Dra
     let head = root.table("drawing");
     let number = head.required_text("number", "write the drawing's number under [drawing]");
     let arrangement = read_arrangement(head);
-    let members = read_members(root, arrangement, units, own.as_ref());
-    let requirements = read_requirements(root.table("requirements"), units, arrangement);
+    let general = if head.has("tolerances_by") {
+        Some(head.word("tolerances_by", &Standard::WORDS)?)
+    } else {
+        None
+    };
+    let given = Given {
+        units,
+        own: own.as_ref(),
+        general,
+    };
+    let members = read_members(root, arrangement, given);
+    let ruling = Ruling {
+        general,
+        springs: Springs::of(members.as_deref()),
+    };
+    let requirements = read_requirements(root.table("requirements"), units, arrangement, &ruling);
     let rate_test = read_rate_test(root.table("rate_test"), units.length(), units.force());
     let service = read_service(root.table("service"), units);
     let terms = root.table("acceptance");

@@ -3,8 +3,11 @@
 use crate::formula::{Ends, Forming};
 use crate::material::{self, Kind, Material, OwnTable};
 use crate::spring::{Arrangement, Coil, Hand, Member, Sized};
+use crate::standard::Standard;
 use crate::text::Table;
 use crate::units::System;
+
+use super::by_standard::sizes;
 
 const ENDS: [(&str, Ends); 4] = [
     ("open", Ends::Open),
@@ -13,12 +16,22 @@ const ENDS: [(&str, Ends); 4] = [
     ("closed ground", Ends::ClosedGround),
 ];
 
-/// Reads `[[spring]]`; `own` is the user's own table of materials.
+/// What the rest of the drawing says of its springs.
+#[derive(Clone, Copy)]
+pub(super) struct Given<'a> {
+    /// Units of the file.
+    pub units: System,
+    /// The user's own table of materials.
+    pub own: Option<&'a OwnTable>,
+    /// The standard for what has no tolerance of its own.
+    pub general: Option<Standard>,
+}
+
+/// Reads `[[spring]]`.
 pub(super) fn read_members(
     root: Table<'_>,
     arrangement: Option<Arrangement>,
-    units: System,
-    own: Option<&OwnTable>,
+    given: Given<'_>,
 ) -> Option<Vec<Member>> {
     let tables = root.tables("spring");
     let wanted = match arrangement? {
@@ -40,17 +53,17 @@ pub(super) fn read_members(
     let read: Vec<Option<Member>> = tables
         .iter()
         .enumerate()
-        .map(|(place, table)| read_member(*table, place, units, own))
+        .map(|(place, table)| read_member(*table, place, given))
         .collect();
     read.into_iter().collect()
 }
 
-fn read_member(
-    table: Table<'_>,
-    place: usize,
-    units: System,
-    own: Option<&OwnTable>,
-) -> Option<Member> {
+fn read_member(table: Table<'_>, place: usize, given: Given<'_>) -> Option<Member> {
+    let Given {
+        units,
+        own,
+        general,
+    } = given;
     let length = units.length();
     let wire = read_sized(table, "wire_diameter", length, 0.0);
     let coil = read_coil(table, length);
@@ -70,7 +83,7 @@ fn read_member(
     let material = read_material(table, units, wire.map(|wire| wire.nominal), own);
     let hand = read_hand(table);
     let forming = read_forming(table, material.as_ref());
-    let member = Member {
+    let mut member = Member {
         name: table
             .text("name")
             .unwrap_or_else(|| format!("spring {}", place + 1)),
@@ -84,7 +97,11 @@ fn read_member(
         free: free?,
         material: material?,
     };
-    sound(table, &member).then_some(member)
+    if !sound(table, &member) {
+        return None;
+    }
+    sizes(table, &mut member, general)?;
+    Some(member)
 }
 
 /// Notes what cannot be a spring.

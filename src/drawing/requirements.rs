@@ -5,11 +5,12 @@ use crate::spring::Arrangement;
 use crate::text::Table;
 use crate::units::System;
 
+use super::by_standard::Ruling;
 use super::limits::{CLASSES, Requirement, read_limits};
 use super::terms::{Acceptance, Aqls, PlanTerms, RateTest, Window};
 
 /// The quantities stated under their own name, in the order they are judged and printed after the rate and loads.
-const PLAIN: [Quantity; 8] = [
+const PLAIN: [Quantity; 10] = [
     Quantity::FreeLength,
     Quantity::SolidLength,
     Quantity::Hysteresis,
@@ -18,6 +19,8 @@ const PLAIN: [Quantity; 8] = [
     Quantity::OutsideDiameter,
     Quantity::InsideDiameter,
     Quantity::WireDiameter,
+    Quantity::Squareness,
+    Quantity::Parallelism,
 ];
 
 /// Reads `[requirements]`: rate first, loads from the longest length down, then the others.
@@ -25,14 +28,20 @@ pub(super) fn read_requirements(
     table: Table<'_>,
     units: System,
     arrangement: Option<Arrangement>,
+    ruling: &Ruling,
 ) -> Option<Vec<Requirement>> {
     let mut requirements = Vec::new();
     if table.has("rate") {
-        requirements.push(read_one(table.table("rate"), Quantity::Rate, units.rate())?);
+        requirements.push(read_one(
+            table.table("rate"),
+            Quantity::Rate,
+            units.rate(),
+            ruling,
+        )?);
     }
     let mut loads = Vec::new();
     for load in table.tables("load") {
-        loads.push(read_load(load, units)?);
+        loads.push(read_load(load, units, ruling)?);
     }
     loads.sort_by(|a, b| length_of(b).total_cmp(&length_of(a)));
     for pair in loads.windows(2) {
@@ -72,7 +81,12 @@ pub(super) fn read_requirements(
             Quantity::Hysteresis | Quantity::Straightness => 1.0,
             _ => units.length(),
         };
-        requirements.push(read_one(table.table(quantity.name()), quantity, scale)?);
+        requirements.push(read_one(
+            table.table(quantity.name()),
+            quantity,
+            scale,
+            ruling,
+        )?);
     }
     Some(requirements)
 }
@@ -84,7 +98,7 @@ fn length_of(requirement: &Requirement) -> f64 {
         .map_or(0.0, crate::units::Millimetres::get)
 }
 
-fn read_load(table: Table<'_>, units: System) -> Option<Requirement> {
+fn read_load(table: Table<'_>, units: System, ruling: &Ruling) -> Option<Requirement> {
     if !table.has("at_length") {
         table.missing("at_length", "write the test length: at_length = 48.0");
     }
@@ -93,11 +107,23 @@ fn read_load(table: Table<'_>, units: System) -> Option<Requirement> {
         table,
         Quantity::LoadAt(length.try_into().ok()?),
         units.force(),
+        ruling,
     )
 }
 
-fn read_one(table: Table<'_>, quantity: Quantity, scale: f64) -> Option<Requirement> {
-    let limits = read_limits(table, scale);
+fn read_one(
+    table: Table<'_>,
+    quantity: Quantity,
+    scale: f64,
+    ruling: &Ruling,
+) -> Option<Requirement> {
+    let (limits, standard) = if ruling.rules(table) {
+        ruling
+            .limits(table, quantity, scale)
+            .map_or((None, None), |(limits, words)| (Some(limits), Some(words)))
+    } else {
+        (read_limits(table, scale), None)
+    };
     let class = if table.has("class") {
         table.word("class", &CLASSES)
     } else {
@@ -107,7 +133,7 @@ fn read_one(table: Table<'_>, quantity: Quantity, scale: f64) -> Option<Requirem
         quantity,
         limits: limits?,
         class: class?,
-        standard: None,
+        standard,
     })
 }
 

@@ -37,7 +37,7 @@ pub fn expect(path: &Path, as_written: &str, ask: Ask, date: Date) -> miette::Re
     let length = asked(&drawing, ask)?;
     let theory = facts::theory(&drawing, full_load(&drawing))?;
     let reviewed = review(&drawing);
-    let agrees = |finding: &crate::review::Finding| finding.weight() == Weight::Remark;
+    let agrees = |finding: &crate::review::DrawingFinding| finding.weight() == Weight::Remark;
     let set = &drawing.theory;
     Ok(Expected {
         format: FORMAT,

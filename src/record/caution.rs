@@ -3,7 +3,7 @@
 use schemars::JsonSchema;
 use serde::{Deserialize, Serialize};
 
-use crate::review::Finding;
+use crate::review::DrawingFinding;
 use crate::units::{Finite, Millimetres};
 
 /// Something the reader of page one must know.
@@ -13,7 +13,7 @@ pub enum Caution {
     /// The drawing does not agree with itself.
     Drawing {
         /// What does not agree.
-        finding: Finding,
+        finding: DrawingFinding,
     },
     /// Springs whose rate is far from what is stated, and what would give such a rate.
     OddRatio {

@@ -6,7 +6,7 @@ use serde::{Deserialize, Serialize};
 use super::accept::{Kind, OutputFile, Provenance};
 use super::facts::{TheoryFacts, WindowFacts};
 use crate::quantity::{Class, Unit};
-use crate::review::{Clearance, Fatigue, Finding, Outlook, StrengthGap, StrengthLine};
+use crate::review::{Clearance, DrawingFinding, Fatigue, Outlook, StrengthGap, StrengthLine};
 use crate::units::{Finite, Megapascals, Millimetres, Newtons, NewtonsPerMillimetre};
 
 /// Stresses in MPa; theory.
@@ -116,7 +116,7 @@ pub struct Expected {
     /// Whether nothing contradicts.
     pub agrees: bool,
     /// What does not agree, contradictions first, then remarks.
-    pub findings: Vec<Finding>,
+    pub findings: Vec<DrawingFinding>,
     /// Rate of the set where all members carry.
     pub rate_n_per_mm: NewtonsPerMillimetre,
     /// Deflection of the set asked for.

@@ -28,8 +28,8 @@ pub use crate::curve::WindowOf;
 pub use crate::drawing::Policy as Undecided;
 pub use crate::lot::{Advice, Decision, LotReason};
 pub use crate::review::{
-    Basis, Clearance, Fatigue, FatigueMargin, Finding, Fitting, Needed, Outlook, Permissible,
-    ReadAs, SpringBuckling, StrengthGap, StrengthLine, StressPlace,
+    Basis, Clearance, DrawingFinding, Fatigue, FatigueMargin, Fitting, Needed, Outlook,
+    Permissible, ReadAs, SpringBuckling, StrengthGap, StrengthLine, StressPlace,
 };
 pub use crate::verdict::{Reason, Verdict};
 

@@ -8,7 +8,7 @@ use crate::formula::stress;
 use crate::material::{Kind, Strength};
 use crate::units::{Finite, Megapascals};
 
-use super::finding::Finding;
+use super::finding::DrawingFinding;
 
 /// Zimmerli's amplitude and mean, MPa, wire not peened and peened: Shigley's, section 10-9 (35 and 55 kpsi, 57.5 and
 /// 77.5 kpsi; the book prints 398 MPa for 57.5 kpsi, its own rounding).
@@ -112,12 +112,12 @@ fn margin(
 }
 
 /// Margins below one.
-pub(super) fn findings(lines: &[Fatigue]) -> Vec<Finding> {
+pub(super) fn findings(lines: &[Fatigue]) -> Vec<DrawingFinding> {
     lines
         .iter()
         .filter_map(|line| Some((line, line.margin?.margin)))
         .filter(|(_, margin)| margin.get() < 1.0)
-        .map(|(line, margin)| Finding::FatigueBelowOne {
+        .map(|(line, margin)| DrawingFinding::FatigueBelowOne {
             member: line.member.clone(),
             margin,
         })

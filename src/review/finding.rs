@@ -85,7 +85,7 @@ pub struct Needed {
 /// Something that does not agree in a drawing, or that its reader must know.
 #[derive(Clone, Debug, PartialEq, Serialize, Deserialize, JsonSchema)]
 #[serde(tag = "code", rename_all = "snake_case")]
-pub enum Finding {
+pub enum DrawingFinding {
     /// The rate is not what the geometry gives.
     RateNotFromGeometry {
         /// Where the rate comes from.
@@ -136,8 +136,10 @@ pub enum Finding {
         /// Where the two loads point.
         implied: Millimetres,
     },
-    /// The drawn free length lies outside the limits required of it.
-    FreeLengthNotAsDrawn {
+    /// A drawn size lies outside the limits required of it.
+    SizeNotAsDrawn {
+        /// Which: `free_length`, `outside_diameter` …
+        name: String,
         /// As drawn.
         drawn: Millimetres,
     },
@@ -259,7 +261,7 @@ pub enum Finding {
     },
 }
 
-impl Finding {
+impl DrawingFinding {
     /// How grave it is.
     pub fn weight(&self) -> Weight {
         match self {

@@ -5,7 +5,7 @@ use crate::drawing::{Arrangement, Drawing};
 use crate::formula::{Forming, smallest_gaps, solid_length};
 use crate::quantity::Quantity;
 
-use super::finding::Finding;
+use super::finding::DrawingFinding;
 
 /// The stretch of the deflection in which a rate is measured: SMI practice and JIS B 2704-1.
 const USUAL: (f64, f64) = (0.2, 0.8);
@@ -15,14 +15,14 @@ const ROUNDING: f64 = 1e-6;
 const GROUND: f64 = 0.25;
 
 /// What is wrong with the lengths.
-pub(super) fn findings(drawing: &Drawing) -> Vec<Finding> {
+pub(super) fn findings(drawing: &Drawing) -> Vec<DrawingFinding> {
     let smallest_mm = drawing.theory.smallest;
-    let mut found: Vec<Finding> = drawing
+    let mut found: Vec<DrawingFinding> = drawing
         .requirements
         .iter()
         .filter_map(|one| one.quantity.at_length())
         .filter(|at| *at < smallest_mm)
-        .map(|at_length_mm| Finding::LengthBelowSmallest {
+        .map(|at_length_mm| DrawingFinding::LengthBelowSmallest {
             at_length_mm,
             smallest_mm,
         })
@@ -34,7 +34,7 @@ pub(super) fn findings(drawing: &Drawing) -> Vec<Finding> {
 }
 
 /// Under dynamic load the gaps must be 1.5 times as large (coiled hot: twice; EN 13906-1:2013).
-fn service(drawing: &Drawing) -> Option<Finding> {
+fn service(drawing: &Drawing) -> Option<DrawingFinding> {
     let (_, upper) = drawing.service.load?;
     if drawing.theory.arrangement == Arrangement::Stacked {
         return None;
@@ -56,13 +56,13 @@ fn service(drawing: &Drawing) -> Option<Finding> {
     if length >= smallest {
         return None;
     }
-    Some(Finding::ServiceBelowSmallest {
+    Some(DrawingFinding::ServiceBelowSmallest {
         at_length_mm: length.try_into().ok()?,
         smallest_mm: smallest.try_into().ok()?,
     })
 }
 
-fn window(drawing: &Drawing) -> Option<Finding> {
+fn window(drawing: &Drawing) -> Option<DrawingFinding> {
     let asked = |one: &crate::drawing::Requirement| one.quantity == Quantity::Rate;
     if drawing.theory.stages.len() > 1 && !drawing.requirements.iter().any(asked) {
         return None; // the stages have windows of their own
@@ -80,14 +80,14 @@ fn window(drawing: &Drawing) -> Option<Finding> {
     if from >= USUAL.0 - ROUNDING && to <= USUAL.1 + ROUNDING {
         return None;
     }
-    Some(Finding::WindowOutside {
+    Some(DrawingFinding::WindowOutside {
         from: from.try_into().ok()?,
         to: to.try_into().ok()?,
     })
 }
 
 /// The coils of the thinnest wire, a quarter of a coil ground away, by the convention that counts fewest.
-fn solid(drawing: &Drawing) -> Option<Finding> {
+fn solid(drawing: &Drawing) -> Option<DrawingFinding> {
     let required = drawing
         .requirements
         .iter()
@@ -112,7 +112,7 @@ fn solid(drawing: &Drawing) -> Option<Finding> {
     if maximum >= least {
         return None;
     }
-    Some(Finding::SolidLengthTooShort {
+    Some(DrawingFinding::SolidLengthTooShort {
         maximum: maximum.try_into().ok()?,
         least: least.try_into().ok()?,
     })

@@ -4,15 +4,17 @@ use crate::curve::nominal_rate;
 use crate::drawing::{Drawing, Limits, Requirement};
 use crate::quantity::Quantity;
 
-use super::finding::Finding;
+use super::finding::DrawingFinding;
 use super::rate::nominal_loads;
 
 /// Where nothing is toleranced, two loads may point this far from the drawn free length, as a share of it.
 const FREE: f64 = 0.05;
+/// Sizes that differ by less are one, mm: sums of inch sizes round.
+const ROUNDING: f64 = 1e-6;
 
 /// Loads that do not follow.
-pub(super) fn findings(drawing: &Drawing) -> Vec<Finding> {
-    let mut found: Vec<Finding> = free_not_as_drawn(drawing).into_iter().collect();
+pub(super) fn findings(drawing: &Drawing) -> Vec<DrawingFinding> {
+    let mut found = not_as_drawn(drawing);
     if drawing.theory.stages.len() > 1 {
         return found; // the stages' rates are held against theory one by one
     }
@@ -39,7 +41,7 @@ fn required(drawing: &Drawing, quantity: Quantity) -> Option<&Requirement> {
 }
 
 /// A spring that carries both nominal loads exactly would fail the rate.
-fn two_loads(drawing: &Drawing, rate: &Limits) -> Option<Finding> {
+fn two_loads(drawing: &Drawing, rate: &Limits) -> Option<DrawingFinding> {
     let loads = nominal_loads(drawing);
     let ((first, low), (second, high)) = (loads.first()?, loads.last()?);
     if loads.len() < 2 {
@@ -52,7 +54,7 @@ fn two_loads(drawing: &Drawing, rate: &Limits) -> Option<Finding> {
         return None;
     }
     let limit = |value: Option<f64>| value.and_then(|value| value.try_into().ok());
-    Some(Finding::LoadsNotFromRate {
+    Some(DrawingFinding::LoadsNotFromRate {
         first_mm: (*first).try_into().ok()?,
         second_mm: (*second).try_into().ok()?,
         implied: implied.try_into().ok()?,
@@ -62,7 +64,7 @@ fn two_loads(drawing: &Drawing, rate: &Limits) -> Option<Finding> {
 }
 
 /// A spring of nominal rate and free length would fail this load.
-fn missed(drawing: &Drawing, load: &Requirement) -> Option<Finding> {
+fn missed(drawing: &Drawing, load: &Requirement) -> Option<DrawingFinding> {
     let at_length_mm = load.quantity.at_length()?;
     let limits = &load.limits;
     let rate = nominal_rate(drawing);
@@ -79,7 +81,7 @@ fn missed(drawing: &Drawing, load: &Requirement) -> Option<Finding> {
             (one, other) => one.or(other),
         })?;
     let limit = |value: Option<f64>| value.and_then(|value| value.try_into().ok());
-    Some(Finding::LoadNotFromRate {
+    Some(DrawingFinding::LoadNotFromRate {
         at_length_mm,
         expected: expected.try_into().ok()?,
         lower: limit(limits.lower),
@@ -89,7 +91,7 @@ fn missed(drawing: &Drawing, load: &Requirement) -> Option<Finding> {
 }
 
 /// Two loads, prolonged to zero load, against the drawn free length with its tolerance and theirs.
-fn free_length(drawing: &Drawing) -> Option<Finding> {
+fn free_length(drawing: &Drawing) -> Option<DrawingFinding> {
     let loads: Vec<&Requirement> = drawing
         .requirements
         .iter()
@@ -117,16 +119,34 @@ fn free_length(drawing: &Drawing) -> Option<Finding> {
     if (implied - drawn).abs() <= allowed {
         return None;
     }
-    Some(Finding::FreeLengthNotFromLoads {
+    Some(DrawingFinding::FreeLengthNotFromLoads {
         drawn: drawing.theory.free,
         implied: implied.try_into().ok()?,
     })
 }
 
-fn free_not_as_drawn(drawing: &Drawing) -> Option<Finding> {
-    let limits = required(drawing, Quantity::FreeLength)?.limits;
-    let drawn = drawing.theory.free;
-    let outside = limits.lower.is_some_and(|lower| drawn.get() < lower)
-        || limits.upper.is_some_and(|upper| drawn.get() > upper);
-    outside.then_some(Finding::FreeLengthNotAsDrawn { drawn })
+/// Required sizes whose limits leave out the drawn one.
+fn not_as_drawn(drawing: &Drawing) -> Vec<DrawingFinding> {
+    let mut sizes = vec![(Quantity::FreeLength, drawing.theory.free.get())];
+    if let [member] = drawing.members.as_slice() {
+        let (wire, coil) = (member.wire.nominal, member.mean_coil());
+        sizes.extend([
+            (Quantity::OutsideDiameter, coil + wire),
+            (Quantity::InsideDiameter, coil - wire),
+            (Quantity::WireDiameter, wire),
+        ]);
+    }
+    let outside = |(quantity, drawn): (Quantity, f64)| {
+        let limits = required(drawing, quantity)?.limits;
+        let outside = limits.lower.is_some_and(|lower| drawn < lower - ROUNDING)
+            || limits.upper.is_some_and(|upper| drawn > upper + ROUNDING);
+        if !outside {
+            return None;
+        }
+        Some(DrawingFinding::SizeNotAsDrawn {
+            name: quantity.name().to_owned(),
+            drawn: drawn.try_into().ok()?,
+        })
+    };
+    sizes.into_iter().filter_map(outside).collect()
 }

@@ -10,7 +10,7 @@ use crate::formula::{
 };
 use crate::units::{Finite, Millimetres};
 
-use super::finding::Finding;
+use super::finding::DrawingFinding;
 
 /// Indices that standards cover: EN 13906-1 and EN 15800.
 const INDEX: (f64, f64) = (4.0, 20.0);
@@ -142,7 +142,7 @@ fn buckles(member: &Member, theory: &MemberTheory, seating: Seating) -> SpringBu
 }
 
 /// What is unusual about the members.
-pub(super) fn findings(drawing: &Drawing, outlooks: &[Outlook]) -> Vec<Finding> {
+pub(super) fn findings(drawing: &Drawing, outlooks: &[Outlook]) -> Vec<DrawingFinding> {
     let mut found = Vec::new();
     let members = drawing.members.iter().zip(&drawing.theory.members);
     for ((member, theory), outlook) in members.zip(outlooks) {
@@ -154,7 +154,7 @@ pub(super) fn findings(drawing: &Drawing, outlooks: &[Outlook]) -> Vec<Finding> 
     found
 }
 
-fn coils(member: &Member) -> Option<Finding> {
+fn coils(member: &Member) -> Option<DrawingFinding> {
     let drawn = member.total - member.active.nominal;
     let usual = member.ends.dead_coils(member.forming);
     // Closed ends are made with one and a half to two and a half dead coils; open ones have none to spare.
@@ -163,18 +163,18 @@ fn coils(member: &Member) -> Option<Finding> {
     if !off || (closed && member.forming == Forming::Hot && (drawn - 2.0).abs() <= COILS) {
         return None;
     }
-    Some(Finding::CoilsNotFromEnds {
+    Some(DrawingFinding::CoilsNotFromEnds {
         member: member.name.clone(),
         drawn: drawn.try_into().ok()?,
         usual: usual.try_into().ok()?,
     })
 }
 
-fn index(member: &Member, theory: &MemberTheory) -> Option<Finding> {
+fn index(member: &Member, theory: &MemberTheory) -> Option<DrawingFinding> {
     if (INDEX.0..=INDEX.1).contains(&theory.index) {
         return None;
     }
-    Some(Finding::IndexUnusual {
+    Some(DrawingFinding::IndexUnusual {
         member: member.name.clone(),
         index: theory.index.try_into().ok()?,
     })
@@ -184,7 +184,7 @@ fn buckling_on_the_way(
     drawing: &Drawing,
     theory: &MemberTheory,
     outlook: &Outlook,
-) -> Option<Finding> {
+) -> Option<DrawingFinding> {
     let SpringBuckling::From { deflection_mm } = outlook.buckling else {
         return None;
     };
@@ -192,7 +192,7 @@ fn buckling_on_the_way(
     if deflection_mm.get() > wanted {
         return None;
     }
-    Some(Finding::Buckles {
+    Some(DrawingFinding::Buckles {
         member: outlook.member.clone(),
         deflection_mm,
         wanted_mm: wanted.try_into().ok()?,
@@ -201,13 +201,13 @@ fn buckling_on_the_way(
     })
 }
 
-fn frequency(drawing: &Drawing, outlook: &Outlook) -> Option<Finding> {
+fn frequency(drawing: &Drawing, outlook: &Outlook) -> Option<DrawingFinding> {
     let driven = drawing.service.frequency?;
     let natural_hz = outlook.natural_frequency_hz?;
     if natural_hz.get() >= APART * driven {
         return None;
     }
-    Some(Finding::FrequencyNear {
+    Some(DrawingFinding::FrequencyNear {
         member: outlook.member.clone(),
         natural_hz,
         driven_hz: driven.try_into().ok()?,

@@ -13,7 +13,7 @@ mod readings;
 mod strength;
 
 pub use fatigue::{Fatigue, FatigueMargin};
-pub use finding::{Basis, Finding, Fitting, Needed, ReadAs, Weight};
+pub use finding::{Basis, DrawingFinding, Fitting, Needed, ReadAs, Weight};
 pub use members::{Outlook, SpringBuckling};
 pub use nest::Clearance;
 pub use strength::{Permissible, StrengthGap, StrengthLine, StressPlace};
@@ -24,7 +24,7 @@ use crate::drawing::Drawing;
 #[derive(Clone, Debug)]
 pub struct Review {
     /// What does not agree, contradictions first.
-    pub findings: Vec<Finding>,
+    pub findings: Vec<DrawingFinding>,
     /// Stresses held against what the wire bears.
     pub strength: Vec<StrengthLine>,
     /// Where no stress can be held against anything, and why.

@@ -7,7 +7,7 @@ use crate::drawing::{Arrangement, Coil, Drawing, Member, MemberTheory};
 use crate::formula::{growth_held, growth_turning, pitch};
 use crate::units::Millimetres;
 
-use super::finding::Finding;
+use super::finding::DrawingFinding;
 
 /// The room between two neighbours of a nest, radially.
 #[derive(Clone, Debug, PartialEq, Serialize, Deserialize, JsonSchema)]
@@ -85,11 +85,11 @@ fn tolerance(member: &Member, inside: bool) -> f64 {
 }
 
 /// What is wrong with a nest.
-pub(super) fn findings(drawing: &Drawing, clearances: &[Clearance]) -> Vec<Finding> {
-    let mut found: Vec<Finding> = clearances
+pub(super) fn findings(drawing: &Drawing, clearances: &[Clearance]) -> Vec<DrawingFinding> {
+    let mut found: Vec<DrawingFinding> = clearances
         .iter()
         .filter(|one| one.least_mm.get() <= 0.0)
-        .map(|one| Finding::NestTouches {
+        .map(|one| DrawingFinding::NestTouches {
             outer: one.outer.clone(),
             inner: one.inner.clone(),
             clearance_mm: one.loaded_mm,
@@ -103,12 +103,12 @@ pub(super) fn findings(drawing: &Drawing, clearances: &[Clearance]) -> Vec<Findi
         };
         let (outer_name, inner_name) = (outer.name.clone(), inner.name.clone());
         match (outer.hand, inner.hand) {
-            (Some(a), Some(b)) if a == b => found.push(Finding::SameHand {
+            (Some(a), Some(b)) if a == b => found.push(DrawingFinding::SameHand {
                 outer: outer_name,
                 inner: inner_name,
             }),
             (Some(_), Some(_)) => {}
-            _ => found.push(Finding::HandNotStated {
+            _ => found.push(DrawingFinding::HandNotStated {
                 outer: outer_name,
                 inner: inner_name,
             }),

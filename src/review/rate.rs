@@ -3,7 +3,7 @@
 use crate::drawing::{Drawing, Limits, Stage};
 use crate::quantity::Quantity;
 
-use super::finding::{Basis, Finding};
+use super::finding::{Basis, DrawingFinding};
 use super::readings::{fitting, needed};
 
 /// How many standard uncertainties of theory a stated rate may be off.
@@ -20,7 +20,7 @@ struct Asked {
 }
 
 /// Rates that do not follow.
-pub(super) fn findings(drawing: &Drawing) -> Vec<Finding> {
+pub(super) fn findings(drawing: &Drawing) -> Vec<DrawingFinding> {
     asked(drawing)
         .into_iter()
         .filter_map(|asked| {
@@ -97,7 +97,7 @@ pub(super) fn nominal_loads(drawing: &Drawing) -> Vec<(f64, f64)> {
     drawing.requirements.iter().filter_map(of).collect()
 }
 
-fn not_from_geometry(drawing: &Drawing, asked: Asked, stage: &Stage) -> Option<Finding> {
+fn not_from_geometry(drawing: &Drawing, asked: Asked, stage: &Stage) -> Option<DrawingFinding> {
     let theory = stage.rate.get();
     let (low, high) = asked.between;
     let stated = theory.clamp(low.min(high), high.max(low));
@@ -107,7 +107,7 @@ fn not_from_geometry(drawing: &Drawing, asked: Asked, stage: &Stage) -> Option<F
     }
     let set = &drawing.theory;
     let alone = set.stages.len() == 1;
-    Some(Finding::RateNotFromGeometry {
+    Some(DrawingFinding::RateNotFromGeometry {
         basis: asked.basis,
         stage: u32::try_from(asked.stage + 1).ok()?,
         stated: stated.try_into().ok()?,

@@ -8,7 +8,7 @@ use crate::formula::{Forming, Stress, stress};
 use crate::material::{Kind, Strength};
 use crate::units::{Finite, Megapascals, Millimetres, Newtons};
 
-use super::finding::Finding;
+use super::finding::DrawingFinding;
 
 /// Where a stress is taken.
 #[derive(Clone, Copy, Debug, PartialEq, Serialize, Deserialize, JsonSchema)]
@@ -205,7 +205,7 @@ fn taken(stress: &Stress, rule: Permissible) -> Megapascals {
 
 /// Stresses above their limit. A test length above the standard's limit contradicts the drawing; a textbook's share is
 /// named only where no standard speaks.
-pub(super) fn findings(lines: &[StrengthLine]) -> Vec<Finding> {
+pub(super) fn findings(lines: &[StrengthLine]) -> Vec<DrawingFinding> {
     let standard = |line: &StrengthLine| {
         let same = |other: &&StrengthLine| {
             other.member == line.member && other.rule == Permissible::EnUncorrected
@@ -215,7 +215,7 @@ pub(super) fn findings(lines: &[StrengthLine]) -> Vec<Finding> {
     lines
         .iter()
         .filter(|line| line.stress_mpa > line.limit_mpa && standard(line))
-        .map(|line| Finding::StressAbove {
+        .map(|line| DrawingFinding::StressAbove {
             member: line.member.clone(),
             place: line.place,
             rule: line.rule,

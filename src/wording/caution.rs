@@ -191,7 +191,7 @@ fn about_the_sample(of: &Caution) -> String {
 mod tests {
     #![expect(clippy::unwrap_used, reason = "tests")]
     use super::*;
-    use crate::record::Finding;
+    use crate::record::DrawingFinding;
     use crate::units::{Finite, Millimetres};
 
     fn every() -> Vec<Caution> {
@@ -203,7 +203,7 @@ mod tests {
         let share = Finite::try_from(0.4).unwrap();
         vec![
             Caution::Drawing {
-                finding: Finding::LengthBelowSmallest {
+                finding: DrawingFinding::LengthBelowSmallest {
                     at_length_mm: at,
                     smallest_mm: at,
                 },

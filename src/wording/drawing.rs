@@ -4,7 +4,7 @@ use super::drawing_rate::about_rate;
 use super::strength::about_strength;
 use super::{Place, length, number, percent, with_unit};
 use crate::quantity::Unit;
-use crate::record::Finding;
+use crate::record::DrawingFinding;
 use crate::units::{Millimetres, NewtonsPerMillimetre, System};
 
 pub(super) fn rate(value: NewtonsPerMillimetre, show_in: System) -> String {
@@ -26,43 +26,44 @@ pub(super) fn millimetres(value: Millimetres, show_in: System) -> String {
 }
 
 /// One finding as sentences.
-pub(crate) fn finding(of: &Finding, show_in: System) -> String {
+pub(crate) fn finding(of: &DrawingFinding, show_in: System) -> String {
     match of {
-        Finding::RateNotFromGeometry { .. }
-        | Finding::LoadsNotFromRate { .. }
-        | Finding::LoadNotFromRate { .. } => about_rate(of, show_in),
-        Finding::FreeLengthNotFromLoads { .. }
-        | Finding::FreeLengthNotAsDrawn { .. }
-        | Finding::LengthBelowSmallest { .. }
-        | Finding::ServiceBelowSmallest { .. }
-        | Finding::WindowOutside { .. }
-        | Finding::WindowOverKnee { .. }
-        | Finding::SolidLengthTooShort { .. } => about_lengths(of, show_in),
-        Finding::CoilsNotFromEnds { .. }
-        | Finding::IndexUnusual { .. }
-        | Finding::Buckles { .. }
-        | Finding::FrequencyNear { .. } => about_the_spring(of, show_in),
-        Finding::StressAbove { .. } | Finding::FatigueBelowOne { .. } => {
+        DrawingFinding::RateNotFromGeometry { .. }
+        | DrawingFinding::LoadsNotFromRate { .. }
+        | DrawingFinding::LoadNotFromRate { .. } => about_rate(of, show_in),
+        DrawingFinding::FreeLengthNotFromLoads { .. }
+        | DrawingFinding::SizeNotAsDrawn { .. }
+        | DrawingFinding::LengthBelowSmallest { .. }
+        | DrawingFinding::ServiceBelowSmallest { .. }
+        | DrawingFinding::WindowOutside { .. }
+        | DrawingFinding::WindowOverKnee { .. }
+        | DrawingFinding::SolidLengthTooShort { .. } => about_lengths(of, show_in),
+        DrawingFinding::CoilsNotFromEnds { .. }
+        | DrawingFinding::IndexUnusual { .. }
+        | DrawingFinding::Buckles { .. }
+        | DrawingFinding::FrequencyNear { .. } => about_the_spring(of, show_in),
+        DrawingFinding::StressAbove { .. } | DrawingFinding::FatigueBelowOne { .. } => {
             about_strength(of, show_in)
         }
-        Finding::NestTouches { .. } | Finding::SameHand { .. } | Finding::HandNotStated { .. } => {
-            about_the_nest(of, show_in)
-        }
+        DrawingFinding::NestTouches { .. }
+        | DrawingFinding::SameHand { .. }
+        | DrawingFinding::HandNotStated { .. } => about_the_nest(of, show_in),
     }
 }
 
-fn about_lengths(of: &Finding, show_in: System) -> String {
+fn about_lengths(of: &DrawingFinding, show_in: System) -> String {
     match of {
-        Finding::FreeLengthNotFromLoads { drawn, implied } => format!(
+        DrawingFinding::FreeLengthNotFromLoads { drawn, implied } => format!(
             "The required loads point to a free length of {}; the drawn one is {}.",
             millimetres(*implied, show_in),
             length(Some(*drawn), show_in)
         ),
-        Finding::FreeLengthNotAsDrawn { drawn } => format!(
-            "The drawn free length {} lies outside the limits required of it.",
+        DrawingFinding::SizeNotAsDrawn { name, drawn } => format!(
+            "The drawn {} {} lies outside the limits required of it.",
+            super::characteristic(name, None, show_in),
             length(Some(*drawn), show_in)
         ),
-        Finding::LengthBelowSmallest {
+        DrawingFinding::LengthBelowSmallest {
             at_length_mm,
             smallest_mm,
         } => format!(
@@ -70,7 +71,7 @@ fn about_lengths(of: &Finding, show_in: System) -> String {
             length(Some(*at_length_mm), show_in),
             millimetres(*smallest_mm, show_in)
         ),
-        Finding::ServiceBelowSmallest {
+        DrawingFinding::ServiceBelowSmallest {
             at_length_mm,
             smallest_mm,
         } => format!(
@@ -78,16 +79,16 @@ fn about_lengths(of: &Finding, show_in: System) -> String {
             millimetres(*at_length_mm, show_in),
             millimetres(*smallest_mm, show_in)
         ),
-        Finding::WindowOutside { from, to } => format!(
+        DrawingFinding::WindowOutside { from, to } => format!(
             "The rate window runs from {} to {} of the deflection to Ln; outside 20 to 80 % the ends are not seated or coils begin to touch. 30 to 70 % of full load would fit.",
             percent(Some(*from)),
             percent(Some(*to))
         ),
-        Finding::WindowOverKnee { knee_mm } => format!(
+        DrawingFinding::WindowOverKnee { knee_mm } => format!(
             "The window of the rate has the knee at {} inside; on both sides of it the rate differs.",
             millimetres(*knee_mm, show_in)
         ),
-        Finding::SolidLengthTooShort { maximum, least } => format!(
+        DrawingFinding::SolidLengthTooShort { maximum, least } => format!(
             "A solid length of at most {} cannot be met: the coils of the thinnest wire alone are {} high.",
             length(Some(*maximum), show_in),
             millimetres(*least, show_in)
@@ -96,9 +97,9 @@ fn about_lengths(of: &Finding, show_in: System) -> String {
     }
 }
 
-fn about_the_spring(of: &Finding, show_in: System) -> String {
+fn about_the_spring(of: &DrawingFinding, show_in: System) -> String {
     match of {
-        Finding::CoilsNotFromEnds {
+        DrawingFinding::CoilsNotFromEnds {
             member,
             drawn,
             usual,
@@ -107,11 +108,11 @@ fn about_the_spring(of: &Finding, show_in: System) -> String {
             number(Some(*drawn), 3),
             number(Some(*usual), 3)
         ),
-        Finding::IndexUnusual { member, index } => format!(
+        DrawingFinding::IndexUnusual { member, index } => format!(
             "{member}: the index w = {} is outside 4 to 20, for which the standards’ formulas and tolerances are made.",
             number(Some(*index), 3)
         ),
-        Finding::Buckles {
+        DrawingFinding::Buckles {
             member,
             deflection_mm,
             wanted_mm,
@@ -130,7 +131,7 @@ fn about_the_spring(of: &Finding, show_in: System) -> String {
                 millimetres(*wanted_mm, show_in)
             )
         }
-        Finding::FrequencyNear {
+        DrawingFinding::FrequencyNear {
             member,
             natural_hz,
             driven_hz,
@@ -143,9 +144,9 @@ fn about_the_spring(of: &Finding, show_in: System) -> String {
     }
 }
 
-fn about_the_nest(of: &Finding, show_in: System) -> String {
+fn about_the_nest(of: &DrawingFinding, show_in: System) -> String {
     match of {
-        Finding::NestTouches {
+        DrawingFinding::NestTouches {
             outer,
             inner,
             clearance_mm,
@@ -165,12 +166,12 @@ fn about_the_nest(of: &Finding, show_in: System) -> String {
                 show_in
             )
         ),
-        Finding::SameHand { outer, inner } => {
+        DrawingFinding::SameHand { outer, inner } => {
             format!(
                 "{outer} and {inner} are wound the same way and can lock into one another; neighbours are wound opposite."
             )
         }
-        Finding::HandNotStated { outer, inner } => {
+        DrawingFinding::HandNotStated { outer, inner } => {
             format!(
                 "The drawing does not say which way {outer} and {inner} are wound; neighbours of a nest are wound opposite."
             )

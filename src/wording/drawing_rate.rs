@@ -3,12 +3,12 @@
 use super::drawing::{millimetres, rate};
 use super::{Place, length, number, with_uncertainty, with_unit};
 use crate::quantity::Unit;
-use crate::record::{Basis, Finding, Fitting, Needed, ReadAs};
+use crate::record::{Basis, DrawingFinding, Fitting, Needed, ReadAs};
 use crate::units::{Finite, NewtonsPerMillimetre, System};
 
-pub(super) fn about_rate(of: &Finding, show_in: System) -> String {
+pub(super) fn about_rate(of: &DrawingFinding, show_in: System) -> String {
     match of {
-        Finding::RateNotFromGeometry {
+        DrawingFinding::RateNotFromGeometry {
             basis,
             stage,
             stated,
@@ -40,7 +40,7 @@ pub(super) fn about_rate(of: &Finding, show_in: System) -> String {
                 explained(readings, needed.as_ref(), show_in)
             )
         }
-        Finding::LoadsNotFromRate {
+        DrawingFinding::LoadsNotFromRate {
             first_mm,
             second_mm,
             implied,
@@ -53,7 +53,7 @@ pub(super) fn about_rate(of: &Finding, show_in: System) -> String {
             rate(*implied, show_in),
             limits(*lower, *upper, Unit::NewtonPerMillimetre, show_in)
         ),
-        Finding::LoadNotFromRate {
+        DrawingFinding::LoadNotFromRate {
             at_length_mm,
             expected,
             lower,

@@ -2,7 +2,7 @@
 
 use super::{Place, length, number, with_unit};
 use crate::quantity::Unit;
-use crate::record::{Finding, Permissible, StressPlace};
+use crate::record::{DrawingFinding, Permissible, StressPlace};
 use crate::units::{Megapascals, System};
 
 fn mpa(value: Megapascals, show_in: System) -> String {
@@ -14,9 +14,9 @@ fn mpa(value: Megapascals, show_in: System) -> String {
     )
 }
 
-pub(super) fn about_strength(of: &Finding, show_in: System) -> String {
+pub(super) fn about_strength(of: &DrawingFinding, show_in: System) -> String {
     match of {
-        Finding::StressAbove {
+        DrawingFinding::StressAbove {
             member,
             place,
             rule,
@@ -30,7 +30,7 @@ pub(super) fn about_strength(of: &Finding, show_in: System) -> String {
             mpa(*limit_mpa, show_in),
             stress_limit(*rule)
         ),
-        Finding::FatigueBelowOne { member, margin } => format!(
+        DrawingFinding::FatigueBelowOne { member, margin } => format!(
             "{member}: the fatigue margin for infinite life is {} by Goodman’s line with Zimmerli’s data, below 1. Theory.",
             number(Some(*margin), 3)
         ),

@@ -54,7 +54,7 @@ const SLIPS: [Slip; 17] = [
     ("rate in lbf/in", &[("nominal = 10.6,", "nominal = 60.5,")], "rate_not_from_geometry", true),
     ("two loads, another rate", &[("nominal = 403.0", "nominal = 440.0")], "loads_not_from_rate", true),
     ("a load off the line", &[("nominal = 212.0", "nominal = 240.0")], "load_not_from_rate", true),
-    ("free length off its limits", &[("free_length = { nominal = 90.0, tolerance = 1.8 }", "free_length = { nominal = 95.0, tolerance = 1.8 }")], "free_length_not_as_drawn", true),
+    ("free length off its limits", &[("free_length = { nominal = 90.0, tolerance = 1.8 }", "free_length = { nominal = 95.0, tolerance = 1.8 }")], "size_not_as_drawn", true),
     ("tested too short", &[("at_length = 52.0", "at_length = 43.0")], "length_below_smallest", true),
     ("window too wide", &[("from = \"30 %\", to = \"70 %\"", "from = \"10 %\", to = \"70 %\"")], "window_outside", true),
     ("solid length too short", &[("maximum = 38.4", "maximum = 30.0")], "solid_length_too_short", true),

@@ -63,6 +63,7 @@ mod rooms;
 mod schema;
 mod springs_end_to_end;
 mod springs_published;
+mod standards_published;
 mod stats_published;
 mod terms;
 mod type_a_coverage;

@@ -1,7 +1,7 @@
 //! Worked examples of textbooks through the whole of `expect`, in millimetres and in inches.
 
 use coilassay::formula::{Ends, mass, pitch};
-use coilassay::record::{Expected, Finding, Permissible, StressPlace};
+use coilassay::record::{DrawingFinding, Expected, Permissible, StressPlace};
 
 use crate::drawn::{INCH, LBF, PSI, Spring, at_length, at_load, both, expected, text};
 use crate::published::Misses;
@@ -147,7 +147,7 @@ fn shigley_problem_10_3() {
     assert!(
         of.findings
             .iter()
-            .any(|one| matches!(one, Finding::Buckles { stated: false, .. }))
+            .any(|one| matches!(one, DrawingFinding::Buckles { stated: false, .. }))
     );
 }
 
