@@ -10,6 +10,7 @@ mod loops;
 mod measure;
 mod rate;
 mod scales;
+mod stage;
 
 pub use average::average;
 pub use budget::{Estimate, Line, Part, Uncertainty, combine};
@@ -18,3 +19,4 @@ pub use measure::{
     Absence, Characteristic, MeasureError, Measured, Measurement, Setup, measure, wanted,
 };
 pub use rate::RateFit;
+pub use stage::{StageWindow, stage_windows};

@@ -32,6 +32,8 @@ pub struct Requirement {
     pub class: Class,
     /// The standard the limits come from, in words; `None` where the drawing states them.
     pub standard: Option<String>,
+    /// For the rate of a stage, the longer and the shorter length it is fitted between, mm.
+    pub between: Option<(f64, f64)>,
 }
 
 /// The words for a class in files.
@@ -44,6 +46,11 @@ pub const CLASSES: [(&str, Class); 3] = [
 /// Reads the limits stated in `table`; `scale` turns the file's unit into the quantity's own.
 /// Every fault is noted in the table; `None` where the limits cannot be used.
 pub fn read_limits(table: Table<'_>, scale: f64) -> Option<Limits> {
+    read_limits_of(table, "nominal", scale)
+}
+
+/// The same where the nominal value stands under another key.
+pub(super) fn read_limits_of(table: Table<'_>, key: &str, scale: f64) -> Option<Limits> {
     let kinds = [
         table.has("tolerance"),
         table.has("plus") || table.has("minus"),
@@ -59,14 +66,14 @@ pub fn read_limits(table: Table<'_>, scale: f64) -> Option<Limits> {
         );
         return None;
     }
-    let nominal = table.number("nominal").map(|number| number.value * scale);
+    let nominal = table.number(key).map(|number| number.value * scale);
     let (lower, upper) = if kinds[2] {
         let bound = |key| table.number(key).map(|number| number.value * scale);
         (bound("minimum"), bound("maximum"))
     } else {
         let Some(nominal) = nominal else {
-            if !table.has("nominal") {
-                table.missing("nominal", help);
+            if !table.has(key) {
+                table.missing(key, help);
             }
             return None;
         };
@@ -75,6 +82,7 @@ pub fn read_limits(table: Table<'_>, scale: f64) -> Option<Limits> {
     };
     checked(
         table,
+        key,
         Limits {
             nominal,
             lower,
@@ -107,7 +115,7 @@ fn spread(table: Table<'_>, nominal: f64, scale: f64) -> Option<(f64, f64)> {
     Some((minus?, plus?))
 }
 
-fn checked(table: Table<'_>, limits: Limits) -> Option<Limits> {
+fn checked(table: Table<'_>, key: &str, limits: Limits) -> Option<Limits> {
     if let (Some(lower), Some(upper)) = (limits.lower, limits.upper)
         && lower >= upper
     {
@@ -120,7 +128,7 @@ fn checked(table: Table<'_>, limits: Limits) -> Option<Limits> {
         let above = limits.upper.is_some_and(|upper| nominal > upper);
         if below || above {
             table.fault(
-                &table.place("nominal"),
+                &table.place(key),
                 "the nominal value lies outside its own limits",
                 "mend the nominal value or the limits",
             );

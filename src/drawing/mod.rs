@@ -9,6 +9,7 @@ mod read_member;
 mod read_terms;
 mod requirements;
 mod service;
+mod stages;
 mod terms;
 
 pub use limits::{CLASSES, Limits, Requirement, read_limits};

@@ -14,6 +14,7 @@ use super::read_member::{Given, read_members};
 use super::read_terms::{read_acceptance, read_rate_test};
 use super::requirements::{check_classes, check_lengths, read_requirements};
 use super::service::{Service, read_service};
+use super::stages::check_stages;
 use super::terms::{Acceptance, RateTest};
 
 const LIMIT: &[&str] = &[
@@ -43,9 +44,10 @@ pub const KEYS: Keys = &[
     ("spring.active_coils", SIZED),
     ("spring.free_length", RULED),
     ("spring.shear_modulus", SIZED),
-    ("requirements", &["rate", "load", "free_length", "solid_length", "hysteresis", "set", "straightness",
+    ("requirements", &["rate", "knee", "load", "free_length", "solid_length", "hysteresis", "set", "straightness",
         "outside_diameter", "inside_diameter", "wire_diameter", "squareness", "parallelism"]),
-    ("requirements.rate", LIMIT),
+    ("requirements.rate", &["stage", "between", "nominal", "tolerance", "plus", "minus", "minimum", "maximum", "standard", "class"]),
+    ("requirements.knee", &["number", "at_length", "tolerance", "plus", "minus", "minimum", "maximum", "class"]),
     ("requirements.load", &["at_length", "nominal", "tolerance", "plus", "minus", "minimum", "maximum", "standard", "class"]),
     ("requirements.free_length", LIMIT),
     ("requirements.solid_length", LIMIT),
@@ -170,13 +172,8 @@ fn read(root: Table<'_>, input: &InputFile, own: Option<OwnTable>) -> Option<Dra
         theory.solid.get(),
     );
     check_classes(root, &requirements, acceptance.as_ref());
-    if theory.stages.len() > 1 && acceptance.is_some() {
-        head.fault(
-            &head.place("arrangement"),
-            "sets whose members engage one after the other are not yet judged by this version",
-            "all members must have the same nominal free length; without [acceptance] `expect` takes such a set",
-        );
-    }
+    let judged = acceptance.is_some();
+    check_stages(root, &requirements, &rate_test, &theory, judged);
     Some(Drawing {
         input: input.clone(),
         materials: own.map(|table| table.input),

@@ -7,6 +7,7 @@ use crate::units::System;
 
 use super::by_standard::Ruling;
 use super::limits::{CLASSES, Requirement, read_limits};
+use super::stages::{read_knees, read_rates};
 use super::terms::{Acceptance, Aqls, PlanTerms, RateTest, Window};
 
 /// The quantities stated under their own name, in the order they are judged and printed after the rate and loads.
@@ -23,7 +24,7 @@ const PLAIN: [Quantity; 10] = [
     Quantity::Parallelism,
 ];
 
-/// Reads `[requirements]`: rate first, loads from the longest length down, then the others.
+/// Reads `[requirements]`: rates first, knees, loads from the longest length down, then the others.
 pub(super) fn read_requirements(
     table: Table<'_>,
     units: System,
@@ -31,14 +32,8 @@ pub(super) fn read_requirements(
     ruling: &Ruling,
 ) -> Option<Vec<Requirement>> {
     let mut requirements = Vec::new();
-    if table.has("rate") {
-        requirements.push(read_one(
-            table.table("rate"),
-            Quantity::Rate,
-            units.rate(),
-            ruling,
-        )?);
-    }
+    requirements.extend(read_rates(table, units, ruling)?);
+    requirements.extend(read_knees(table, units)?);
     let mut loads = Vec::new();
     for load in table.tables("load") {
         loads.push(read_load(load, units, ruling)?);
@@ -111,7 +106,7 @@ fn read_load(table: Table<'_>, units: System, ruling: &Ruling) -> Option<Require
     )
 }
 
-fn read_one(
+pub(super) fn read_one(
     table: Table<'_>,
     quantity: Quantity,
     scale: f64,
@@ -124,17 +119,23 @@ fn read_one(
     } else {
         (read_limits(table, scale), None)
     };
-    let class = if table.has("class") {
-        table.word("class", &CLASSES)
-    } else {
-        Some(Class::Major)
-    };
+    let class = read_class(table);
     Some(Requirement {
         quantity,
         limits: limits?,
         class: class?,
         standard,
+        between: None,
     })
+}
+
+/// The class of a requirement; major where none is stated.
+pub(super) fn read_class(table: Table<'_>) -> Option<Class> {
+    if table.has("class") {
+        table.word("class", &CLASSES)
+    } else {
+        Some(Class::Major)
+    }
 }
 
 /// Test lengths and window lengths must lie between solid and free.

@@ -165,6 +165,7 @@ pub(super) fn stresses(
 /// The window.
 pub(super) fn window(drawing: &Drawing, bounds: Bounds) -> WindowFacts {
     let stated = match drawing.rate_test.window {
+        _ if bounds.of == WindowOf::Length => "between two lengths".to_owned(),
         Window::FullLoad(from, to) => format!(
             "{:.0} % to {:.0} % of full load Fn",
             100.0 * from,

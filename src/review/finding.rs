@@ -164,11 +164,6 @@ pub enum DrawingFinding {
         /// Where it ends.
         to: Finite,
     },
-    /// The window of a rate has a knee inside.
-    WindowOverKnee {
-        /// Length of the knee.
-        knee_mm: Millimetres,
-    },
     /// The largest permitted solid length is shorter than the coils are high.
     SolidLengthTooShort {
         /// As required.

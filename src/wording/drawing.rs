@@ -36,7 +36,6 @@ pub(crate) fn finding(of: &DrawingFinding, show_in: System) -> String {
         | DrawingFinding::LengthBelowSmallest { .. }
         | DrawingFinding::ServiceBelowSmallest { .. }
         | DrawingFinding::WindowOutside { .. }
-        | DrawingFinding::WindowOverKnee { .. }
         | DrawingFinding::SolidLengthTooShort { .. } => about_lengths(of, show_in),
         DrawingFinding::CoilsNotFromEnds { .. }
         | DrawingFinding::IndexUnusual { .. }
@@ -83,10 +82,6 @@ fn about_lengths(of: &DrawingFinding, show_in: System) -> String {
             "The rate window runs from {} to {} of the deflection to Ln; outside 20 to 80 % the ends are not seated or coils begin to touch. 30 to 70 % of full load would fit.",
             percent(Some(*from)),
             percent(Some(*to))
-        ),
-        DrawingFinding::WindowOverKnee { knee_mm } => format!(
-            "The window of the rate has the knee at {} inside; on both sides of it the rate differs.",
-            millimetres(*knee_mm, show_in)
         ),
         DrawingFinding::SolidLengthTooShort { maximum, least } => format!(
             "A solid length of at most {} cannot be met: the coils of the thinnest wire alone are {} high.",

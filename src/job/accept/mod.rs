@@ -17,7 +17,7 @@ use std::path::Path;
 use jiff::civil::Date;
 use rayon::prelude::*;
 
-use crate::characteristic::{Setup, wanted};
+use crate::characteristic::{Setup, stage_windows, wanted};
 use crate::curve::{Reduced, full_load, nominal_rate, window_of};
 use crate::doubt::doubt;
 use crate::drawing::{Drawing, Requirement, Rule};
@@ -71,6 +71,7 @@ pub struct Accepted {
 pub fn accept(path: &Path, as_written: &str, options: &Options) -> miette::Result<Accepted> {
     let files = files::open(path, as_written)?;
     let wanted = wanted(&files.drawing);
+    let stages = stage_windows(&files.drawing);
     let setup = Setup {
         rig: &files.rig,
         conditions: files.lot.conditions,
@@ -79,6 +80,7 @@ pub fn accept(path: &Path, as_written: &str, options: &Options) -> miette::Resul
         method: files.drawing.rate_test.method,
         full_load: Some(full_load(&files.drawing)),
         wanted: &wanted,
+        stages: &stages,
         caliper: &files.lot.caliper,
     };
     let how = How {
