@@ -38,9 +38,16 @@ pub mod doubt;
 
 pub mod verdict;
 
+pub mod bench;
+pub mod sampling;
+
+pub mod process;
+
 pub mod lot;
 
 pub mod record;
+
+pub mod archive;
 
 pub mod wording;
 

@@ -18,5 +18,6 @@ pub use length::OwnFree;
 pub use measure::{
     Absence, Characteristic, MeasureError, Measured, Measurement, Setup, measure, wanted,
 };
-pub use rate::RateFit;
+pub use rate::{RateFit, judged};
+pub use scales::scale_lines;
 pub use stage::{StageWindow, stage_windows};

@@ -6,6 +6,7 @@ mod by_standard;
 mod limits;
 mod open;
 mod read_member;
+mod read_plan;
 mod read_terms;
 mod requirements;
 mod service;
@@ -16,8 +17,8 @@ pub use limits::{CLASSES, Limits, Requirement, read_limits};
 pub use open::{Drawing, KEYS, open, read_units};
 pub use service::Service;
 pub use terms::{
-    AQLS, Acceptance, Aqls, Guard, Level, Method, PlanTerms, Policy, RateTest, Rule, Stroke, Way,
-    Window,
+    AQLS, AQLS_414, Acceptance, Aqls, Guard, Level, Level414, Method, PlanTerms, Policy, RateTest,
+    Rule, State, Stroke, Way, Window,
 };
 
 pub use crate::spring::{

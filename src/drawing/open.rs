@@ -64,7 +64,8 @@ pub const KEYS: Keys = &[
     ("service", &["load", "temperature", "frequency", "seating", "peened", "set_removed"]),
     ("service.load", &["from", "to"]),
     ("acceptance", &["rule", "guard", "undecided_springs", "plan"]),
-    ("acceptance.plan", &["by", "level", "aql", "state"]),
+    ("acceptance.plan", &["by", "level", "aql", "state", "reduced", "table", "designed", "limiting_quality", "consumer_risk"]),
+    ("acceptance.plan.designed", &["p1", "alpha", "p2", "beta"]),
     ("acceptance.plan.aql", &["critical", "major", "minor"]),
 ];
 

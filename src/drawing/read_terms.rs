@@ -2,10 +2,9 @@
 
 use crate::text::{At, Table};
 
-use super::limits::CLASSES;
+use super::read_plan::read_plan;
 use super::terms::{
-    AQLS, Acceptance, Aqls, Guard, Level, Method, ORDINALS, PlanTerms, Policy, RateTest, Rule,
-    Stroke, Way, Window,
+    Acceptance, Guard, Method, ORDINALS, Policy, RateTest, Rule, Stroke, Way, Window,
 };
 
 /// Reads `[rate_test]`.
@@ -168,97 +167,4 @@ pub(super) fn read_acceptance(table: Table<'_>) -> Option<Acceptance> {
         undecided: undecided?,
         plan: plan?,
     })
-}
-
-#[derive(Clone, Copy)]
-enum By {
-    Attributes,
-    EverySpring,
-    Later,
-}
-
-fn read_plan(table: Table<'_>) -> Option<PlanTerms> {
-    if !table.has("by") {
-        table.missing("by", "write by = \"attributes\" or by = \"every-spring\"");
-    }
-    let words = [
-        ("attributes", By::Attributes),
-        ("every-spring", By::EverySpring),
-        ("variables", By::Later),
-        ("zero-accept", By::Later),
-    ];
-    match table.word("by", &words)? {
-        By::EverySpring => Some(PlanTerms::EverySpring),
-        By::Later => {
-            table.fault(
-                &table.place("by"),
-                "this plan is not yet judged by this version",
-                "agree by = \"attributes\" or by = \"every-spring\"",
-            );
-            None
-        }
-        By::Attributes => {
-            if table.has("state")
-                && table.word(
-                    "state",
-                    &[("normal", true), ("tightened", false), ("reduced", false)],
-                ) == Some(false)
-            {
-                table.fault(
-                    &table.place("state"),
-                    "tightened and reduced plans are not yet judged by this version",
-                    "only state = \"normal\" is",
-                );
-            }
-            let level = if table.has("level") {
-                table.word("level", &Level::WORDS)
-            } else {
-                Some(Level::II)
-            };
-            let aql = read_aqls(table);
-            Some(PlanTerms::Attributes {
-                level: level?,
-                aql: aql?,
-            })
-        }
-    }
-}
-
-fn read_aqls(table: Table<'_>) -> Option<Aqls> {
-    if !table.has("aql") {
-        table.missing(
-            "aql",
-            "write aql = 1.0, or aql = { critical = 0.010, major = 1.0, minor = 2.5 }",
-        );
-        return None;
-    }
-    if !table.is_table("aql") {
-        return table
-            .number("aql")
-            .and_then(|aql| known_aql(table, &aql))
-            .map(Aqls::All);
-    }
-    let by = table.table("aql");
-    let mut classes = Vec::new();
-    for (word, class) in CLASSES {
-        if let Some(aql) = by.number(word) {
-            classes.push((class, known_aql(by, &aql)?));
-        }
-    }
-    Some(Aqls::ByClass(classes))
-}
-
-fn known_aql(table: Table<'_>, aql: &At<f64>) -> Option<f64> {
-    let found = AQLS
-        .into_iter()
-        .find(|known| (known - aql.value).abs() < 1e-9);
-    if found.is_none() {
-        let known: Vec<String> = AQLS.iter().map(f64::to_string).collect();
-        table.fault(
-            &aql.span,
-            format!("{} % is no AQL of ISO 2859-1", aql.value),
-            format!("one of: {}", known.join(", ")),
-        );
-    }
-    found
 }

@@ -188,10 +188,16 @@ pub(super) fn check_classes(
     requirements: &[Requirement],
     acceptance: Option<&Acceptance>,
 ) {
-    let Some(PlanTerms::Attributes {
-        aql: Aqls::ByClass(given),
-        ..
-    }) = acceptance.map(|terms| &terms.plan)
+    let Some(
+        PlanTerms::Attributes {
+            aql: Aqls::ByClass(given),
+            ..
+        }
+        | PlanTerms::Variables {
+            aql: Aqls::ByClass(given),
+            ..
+        },
+    ) = acceptance.map(|terms| &terms.plan)
     else {
         return;
     };

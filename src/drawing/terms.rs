@@ -45,6 +45,70 @@ impl Level {
     }
 }
 
+/// The acceptance quality limits of MIL-STD-414 Table B in percent nonconforming.
+pub const AQLS_414: [f64; 14] = [
+    0.04, 0.065, 0.1, 0.15, 0.25, 0.4, 0.65, 1.0, 1.5, 2.5, 4.0, 6.5, 10.0, 15.0,
+];
+
+/// Inspection level of MIL-STD-414; IV where nothing is stated.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+#[expect(missing_docs, reason = "the names are the standard's")]
+pub enum Level414 {
+    I,
+    II,
+    III,
+    IV,
+    V,
+}
+
+impl Level414 {
+    /// Every level with the word the standard uses.
+    pub const WORDS: [(&'static str, Self); 5] = [
+        ("I", Self::I),
+        ("II", Self::II),
+        ("III", Self::III),
+        ("IV", Self::IV),
+        ("V", Self::V),
+    ];
+
+    /// The word for it.
+    pub fn word(self) -> &'static str {
+        Self::WORDS
+            .iter()
+            .find(|(_, level)| *level == self)
+            .map_or("", |(word, _)| word)
+    }
+}
+
+/// State of inspection.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum State {
+    /// Normal.
+    Normal,
+    /// Tightened.
+    Tightened,
+    /// Reduced.
+    Reduced,
+}
+
+impl State {
+    /// Every state with its word.
+    pub const WORDS: [(&'static str, Self); 3] = [
+        ("normal", Self::Normal),
+        ("tightened", Self::Tightened),
+        ("reduced", Self::Reduced),
+    ];
+
+    /// The word for it.
+    pub const fn word(self) -> &'static str {
+        match self {
+            Self::Normal => "normal",
+            Self::Tightened => "tightened",
+            Self::Reduced => "reduced",
+        }
+    }
+}
+
 /// The window of the rate as the drawing states it.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub enum Window {
@@ -138,12 +202,43 @@ pub enum Aqls {
 /// The sampling plan as agreed.
 #[derive(Clone, Debug, PartialEq)]
 pub enum PlanTerms {
-    /// ISO 2859-1, single sampling, normal inspection.
+    /// ISO 2859-1, single sampling.
     Attributes {
         /// Inspection level.
         level: Level,
         /// Acceptance quality limits.
         aql: Aqls,
+        /// State of inspection, where no history says it.
+        state: State,
+        /// Whether reduced inspection is agreed, should a history earn it.
+        reduced_agreed: bool,
+    },
+    /// MIL-STD-414 Table B, standard deviation unknown: one plan for each characteristic.
+    Variables {
+        /// Inspection level.
+        level: Level414,
+        /// Acceptance quality limits.
+        aql: Aqls,
+        /// State of inspection: normal or tightened.
+        state: State,
+    },
+    /// A plan by variables designed from two points of the operating characteristic, shares 0 to 1.
+    Designed {
+        /// Quality to accept.
+        p1: f64,
+        /// Producer's risk there.
+        alpha: f64,
+        /// Quality to reject.
+        p2: f64,
+        /// Consumer's risk there.
+        beta: f64,
+    },
+    /// No spring of the sample may fail, whatever its class; shares 0 to 1.
+    ZeroAccept {
+        /// Limiting quality.
+        limiting_quality: f64,
+        /// Consumer's risk there.
+        consumer_risk: f64,
     },
     /// Every spring of the lot is measured and none may fail.
     EverySpring,

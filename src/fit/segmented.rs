@@ -15,6 +15,8 @@ const STEPS: u32 = 21;
 const STEP: f64 = 0.02;
 /// By how much more than the transition that shows is left out.
 const MARGIN: f64 = 2.0;
+/// The least zone whose leaving out is tried on the knee, as a share of the shorter side.
+const UNSEEN: f64 = 0.1;
 /// The probability below +1 standard deviation of a normal distribution.
 const ONE_SIGMA: f64 = 0.841_344_746_068_542_9;
 
@@ -31,7 +33,7 @@ pub struct Segmented {
     pub after: f64,
     /// Half-width of the transition about the knee whose points are in no line.
     pub transition: f64,
-    /// By how much the knee moves when as much again is left out.
+    /// By how much the knee moves when twice as much is left out, a tenth of the shorter side at least.
     pub moved: f64,
     /// Standard uncertainty of the knee, from the profile of the fit, with its degrees of freedom; `None` under ten
     /// independent points.
@@ -73,9 +75,11 @@ pub fn segmented(x: &[f64], y: &[f64]) -> Result<Segmented, FitError> {
     // left out, for the last of a rounding is smaller than chance and still pulls at both lines.
     let enough = |one: &&Tried| one.variance <= least * (1.0 + (2.0 / one.count).sqrt());
     let narrowest = tried.iter().find(enough).copied().unwrap_or(chosen);
-    let chosen = widened(x, y, narrowest, MARGIN).unwrap_or(narrowest);
-    let moved = widened(x, y, narrowest, MARGIN * MARGIN)
-        .map_or(0.0, |wider| (wider.knee - chosen.knee).abs());
+    let chosen = widened(x, y, narrowest, narrowest.width * MARGIN).unwrap_or(narrowest);
+    // A rounding too small to show pulls as well: at least the narrowest zones are tried.
+    let wider = (chosen.width * MARGIN).max(UNSEEN * side(x, first.knee));
+    let moved =
+        widened(x, y, narrowest, wider).map_or(0.0, |other| (other.knee - chosen.knee).abs());
     finished(x, y, chosen, moved).ok_or(few)
 }
 
@@ -90,9 +94,16 @@ struct Tried {
     count: f64,
 }
 
-/// The fit with a zone `times` as wide left out.
-fn widened(x: &[f64], y: &[f64], of: Tried, times: f64) -> Option<Tried> {
-    let width = of.width * times;
+/// The shorter of the two stretches about a knee.
+fn side(x: &[f64], knee: f64) -> f64 {
+    match (x.first(), x.last()) {
+        (Some(low), Some(high)) => (knee - low).min(high - knee),
+        _ => 0.0,
+    }
+}
+
+/// The fit with a zone of this half-width left out.
+fn widened(x: &[f64], y: &[f64], of: Tried, width: f64) -> Option<Tried> {
     let kept = outside(x, y, of.knee, width)?;
     let best = Sums::of(&kept.0, &kept.1).best(LEAST)?;
     let count = kept.0.len() as f64;
@@ -116,10 +127,7 @@ fn outside(x: &[f64], y: &[f64], knee: f64, width: f64) -> Option<(Vec<f64>, Vec
 
 /// The fits with growing transitions left out, narrowest first; the zone follows the knee once.
 fn transitions(x: &[f64], y: &[f64], start: f64) -> Vec<Tried> {
-    let (Some(low), Some(high)) = (x.first(), x.last()) else {
-        return Vec::new();
-    };
-    let side = (start - low).min(high - start);
+    let side = side(x, start);
     let mut knee = start;
     let mut tried = Vec::new();
     for step in 0..STEPS {

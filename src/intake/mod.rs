@@ -1,12 +1,19 @@
-//! The lot file as opened: which exports it names, who measured what, and what was found without the bench.
+//! The files of a job as opened, the lot's first: which exports it names, who measured what, and what was found without the bench.
 //! Elsewhere: what an export says (`rig`), what follows from it (`curve` and below).
 
+mod check;
 mod exports;
 mod findings;
 mod open;
 mod parts;
+mod study;
 
+pub use check::{
+    CHECK_KEYS, CertifiedValue, CheckFile, Judged, ReferenceCheck, ReferenceSpring, Tolerance,
+    open_check,
+};
 pub use exports::{Export, natural_order, resolve};
 pub use findings::{Caliper, FindingsError, read_findings};
 pub use open::{KEYS, Lot, open};
 pub use parts::{Conditions, Finding, NotInspected, Repeat};
+pub use study::{Assigned, Belongs, Names, STUDY_KEYS, StudyFile, open_study};

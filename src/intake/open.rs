@@ -192,7 +192,7 @@ fn read_all<T>(
     all.into_iter().collect()
 }
 
-fn named_file(root: Table<'_>, key: &str, source: &Source) -> Option<(String, PathBuf)> {
+pub(super) fn named_file(root: Table<'_>, key: &str, source: &Source) -> Option<(String, PathBuf)> {
     if !root.has(key) {
         root.missing(
             key,
@@ -204,7 +204,7 @@ fn named_file(root: Table<'_>, key: &str, source: &Source) -> Option<(String, Pa
     Some((written, path))
 }
 
-fn read_exports(root: Table<'_>, source: &Source) -> Option<Vec<Export>> {
+pub(super) fn read_exports(root: Table<'_>, source: &Source) -> Option<Vec<Export>> {
     let patterns = root.raw_texts("exports");
     if patterns.is_empty() {
         root.missing("exports", "write exports = [\"springs/*.csv\"]");

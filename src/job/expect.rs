@@ -56,6 +56,7 @@ pub fn expect(path: &Path, as_written: &str, ask: Ask, date: Date) -> miette::Re
             .iter()
             .map(|one| requirement(set, one))
             .collect(),
+        free_length_tolerance_mm: free_tolerance(&drawing),
         stages: stages(set),
         window: facts::window(&drawing, window_of(&drawing)),
         service: service(&drawing),
@@ -158,6 +159,22 @@ fn requirement(set: &Theory, of: &Requirement) -> ExpectedRequirement {
         standard: of.standard.clone(),
         theory: figure(theory),
     }
+}
+
+/// Half-width of the free length: the longest member's, or a stack's sum.
+fn free_tolerance(drawing: &Drawing) -> Millimetres {
+    let set = &drawing.theory;
+    let of = |member: &drawing::Member| member.free.tolerance;
+    let found: f64 = match set.arrangement {
+        drawing::Arrangement::Stacked => drawing.members.iter().map(of).sum(),
+        drawing::Arrangement::Single | drawing::Arrangement::Nested => drawing
+            .members
+            .iter()
+            .filter(|member| member.free.nominal >= set.free.get())
+            .map(of)
+            .fold(0.0, f64::max),
+    };
+    Millimetres::try_from(found).unwrap_or(Millimetres::ZERO)
 }
 
 fn stages(set: &Theory) -> Vec<StageFacts> {

@@ -7,10 +7,10 @@ use crate::drawing::{
 use crate::formula::stress;
 use crate::intake::{Lot, NotInspected};
 use crate::record::{
-    ConditionFacts, DrawingFacts, LotFacts, MemberFacts, RequirementFacts, RigFacts, StressFacts,
-    TheoryFacts, WindowFacts,
+    ConditionFacts, DrawingFacts, LastCheck, LotFacts, MemberFacts, RequirementFacts, RigFacts,
+    StressFacts, TheoryFacts, WindowFacts,
 };
-use crate::rig::{Accuracy, Compliance, Known, Means, Rig, Scale};
+use crate::rig::{Accuracy, Compliance, Give, Known, Means, Rig, Scale};
 use crate::units::{Finite, Megapascals, Millimetres, Newtons};
 use crate::wording::number;
 
@@ -193,14 +193,17 @@ pub(super) fn window(drawing: &Drawing, bounds: Bounds) -> WindowFacts {
     }
 }
 
-/// The rig.
-pub(super) fn rig(rig: &Rig) -> RigFacts {
-    let compliance = match rig.frame {
-        Compliance::Measured { value, standard } => {
+/// The rig; `checked` is its last passed check, where it holds.
+pub(super) fn rig(rig: &Rig, checked: Option<&LastCheck>) -> RigFacts {
+    let compliance = match &rig.frame {
+        Compliance::Measured { give, standard } => {
+            let give = match give {
+                Give::Line(per_newton) => format!("{} mm/N", plain(*per_newton)),
+                Give::Table(points) => format!("table of {} loads", points.len() - 1),
+            };
             format!(
-                "{} mm/N, standard uncertainty {} mm/N, corrected",
-                plain(value),
-                plain(standard)
+                "{give}, standard uncertainty {} mm/N, corrected",
+                plain(*standard)
             )
         }
         Compliance::NotCorrected { allowance } => format!(
@@ -221,6 +224,7 @@ pub(super) fn rig(rig: &Rig) -> RigFacts {
         travel: scale(&rig.travel, "ISO 9513", "mm"),
         travel_calibrated: calibrated(&rig.travel),
         compliance,
+        checked: checked.map(|last| format!("{} ({})", last.date, last.id)),
         travel_means: means.to_owned(),
     }
 }

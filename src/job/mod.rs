@@ -3,10 +3,21 @@
 mod accept;
 mod expect;
 mod facts;
+mod history;
+mod lots;
 mod rate;
 mod read;
+mod recheck;
+mod rig;
 mod threads;
 
-pub use accept::{Accepted, Options, accept};
+pub use accept::{Accepted, Options, Past, accept};
 pub use expect::{Ask, expect};
+pub use history::read_history;
+pub use lots::{Listing, LotsError, Query, lots};
 pub use rate::{Bench, Guess, LoadAt, RateOptions, RateResult, rate};
+pub use read::Keep;
+pub use recheck::{
+    ChangedInput, Outcome, RecheckError, Rechecked, Stored, recheck, recheck_run, stored_runs,
+};
+pub use rig::{Proposal, Repeated, RigOptions, Verified, rig_repeat, rig_verify};

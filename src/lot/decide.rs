@@ -48,7 +48,8 @@ pub fn decide(
     }
 }
 
-fn gravest(decisions: &[Decision]) -> Decision {
+/// The gravest of several decisions; undecided where there is none.
+pub fn gravest(decisions: &[Decision]) -> Decision {
     if decisions.contains(&Decision::Rejected) {
         Decision::Rejected
     } else if decisions.contains(&Decision::Undecided) || decisions.is_empty() {
@@ -118,6 +119,8 @@ fn settled(standing: &Standing) -> Option<(Decision, LotReason)> {
         class,
         measured,
         wanted,
+        to_accept: standing.to_accept(),
+        to_reject: standing.to_reject(),
     };
     (missing > 0).then_some((Decision::Undecided, reason))
 }
@@ -212,6 +215,7 @@ mod tests {
     use std::collections::BTreeSet;
 
     use super::*;
+    use crate::lot::Basis;
     use crate::quantity::Class;
 
     fn spring(failing: Option<Class>, undecided: &[Class]) -> (String, Overall) {
@@ -239,7 +243,7 @@ mod tests {
     fn terms(class: Class, sample_size: u64, accept: u64) -> ClassTerms {
         ClassTerms {
             class,
-            plan: None,
+            basis: Basis::All,
             sample_size,
             accept,
             reject: accept + 1,

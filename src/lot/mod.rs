@@ -1,21 +1,16 @@
-//! What the verdicts on springs do to a lot: plan tables, the decision, advice on undecided springs.
-//! Elsewhere: the terms as agreed (`drawing`), the verdicts (`verdict`).
+//! What the verdicts on springs do to a lot: the plan of each class, the decision, advice on undecided springs.
+//! Elsewhere: the terms as agreed (`drawing`), plan tables (`sampling`), the verdicts (`verdict`).
 
 mod advice;
 mod decide;
 mod outcome;
-mod plan;
-mod plan_table;
 mod reason;
 mod terms;
+mod variables;
 
 pub use advice::{Advice, advise};
-pub use decide::decide;
+pub use decide::{decide, gravest};
 pub use outcome::{Outcome, Standing};
-pub use plan::{
-    Aql, Arrow, CodeLetter, PlanError, SinglePlan, normal_single, probability_of_acceptance,
-};
-pub use reason::{Decision, LotReason};
-pub use terms::{ClassTerms, class_terms};
-
-pub use crate::drawing::Level;
+pub use reason::{Comparison, Decision, LotReason};
+pub use terms::{Basis, ClassTerms, aql_of_class, class_terms, one_step_tighter, variables_terms};
+pub use variables::{ByVariables, Compared, Statistic, by_variables};

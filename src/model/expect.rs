@@ -2,9 +2,9 @@
 
 use super::expect_facts::facts;
 use super::facts::labelled;
-use super::page::{Headline, Page};
+use super::page::{Page, PageDecision};
 use super::strength::{self, or_dash};
-use super::table::{Column, Row, Section, Table};
+use super::table::{Column, Row, Table};
 use super::{short, theory};
 use crate::quantity::Unit;
 use crate::record::{Expected, ExpectedRequirement, StageFacts};
@@ -12,59 +12,58 @@ use crate::review::Weight;
 use crate::units::{Finite, System};
 use crate::wording::{self, Place, figure, unit_symbol};
 
-impl Page {
-    /// The page of what a drawing leads to expect, its figures in the units of `show_in`.
-    pub fn expected(of: &Expected, show_in: System) -> Self {
-        let label = labelled(&of.drawing, of.revision.as_deref());
-        let subject = of.title.as_ref().map_or_else(
-            || format!("Drawing {label}"),
-            |title| format!("{title}, drawing {label}"),
-        );
-        let mut after = vec![
-            theory::section(&of.theory, show_in),
-            strength::strength(of, show_in),
-            strength::motion(of, show_in),
-        ];
-        if let Some(first) = after.first_mut() {
-            first.text.extend(of.modulus_notes.iter().cloned());
-            first.text.extend(warm(of));
-        }
-        after.push(inputs(of));
-        Self {
-            title: "What the drawing leads to expect".to_owned(),
-            headline: headline(of, &subject, show_in),
-            short: short(&format!("drawing {label}")),
-            subject,
-            date: of.provenance.date.clone(),
-            tool: format!("{} {}", of.provenance.tool, of.provenance.version),
-            units: super::units_line(show_in),
-            facts: vec![facts(of, show_in)],
-            standing: wording::STANDING.map(str::to_owned).to_vec(),
-            before: vec![required(of, show_in)],
-            after,
-        }
-    }
+/// The page of what a drawing leads to expect, its figures in the units of `show_in`.
+pub fn expected_page(of: &Expected, show_in: System) -> Page {
+    let label = labelled(&of.drawing, of.revision.as_deref());
+    let subject = of.title.as_ref().map_or_else(
+        || format!("Drawing {label}"),
+        |title| format!("{title}, drawing {label}"),
+    );
+    let mut page = Page::begun(
+        "expect",
+        "What the drawing leads to expect",
+        subject.clone(),
+        &of.provenance,
+        show_in,
+    );
+    page.short = short(&format!("drawing {label}"));
+    page.decision = decision(of, &subject, show_in);
+    page.cautions = said(of, Weight::Remark, show_in);
+    page.facts = vec![facts(of, show_in)];
+    page.tables = required(of, show_in);
+    page.signatures = ["Drawn by", "Reviewed by"].map(str::to_owned).to_vec();
+    let mut theory = theory::section(&of.theory, show_in);
+    theory.text.extend(of.modulus_notes.iter().cloned());
+    theory.text.extend(warm(of));
+    let mut sections = vec![
+        theory,
+        strength::strength(of, show_in),
+        strength::motion(of, show_in),
+    ];
+    sections.append(&mut page.sections);
+    page.sections = sections;
+    page
 }
 
-fn headline(of: &Expected, subject: &str, show_in: System) -> Headline {
-    let said = |weight: Weight| -> Vec<String> {
-        of.findings
-            .iter()
-            .filter(|finding| finding.weight() == weight)
-            .map(|finding| wording::finding(finding, show_in))
-            .collect()
-    };
+fn said(of: &Expected, weight: Weight, show_in: System) -> Vec<String> {
+    of.findings
+        .iter()
+        .filter(|finding| finding.weight() == weight)
+        .map(|finding| wording::drawing_finding(finding, show_in))
+        .collect()
+}
+
+fn decision(of: &Expected, subject: &str, show_in: System) -> PageDecision {
     let (code, word) = if of.agrees {
         ("accepted", "AGREES WITH ITSELF")
     } else {
         ("rejected", "CONTRADICTS ITSELF")
     };
-    Headline {
+    PageDecision {
         code,
         word: word.to_owned(),
-        subject: subject.to_owned(),
-        why: said(Weight::Contradicts),
-        remarks: said(Weight::Remark),
+        about: format!("{subject}: whether it agrees with itself, before anything is measured."),
+        why: said(of, Weight::Contradicts, show_in),
     }
 }
 
@@ -78,7 +77,7 @@ fn warm(of: &Expected) -> Option<String> {
 }
 
 /// What is required beside what theory expects.
-fn required(of: &Expected, show_in: System) -> Section {
+fn required(of: &Expected, show_in: System) -> Vec<Table> {
     let mut tables = Vec::new();
     if !of.requirements.is_empty() {
         tables.push(requirements(&of.requirements, show_in));
@@ -86,11 +85,7 @@ fn required(of: &Expected, show_in: System) -> Section {
     if of.stages.len() > 1 {
         tables.push(stages(&of.stages, show_in));
     }
-    Section {
-        title: "Required and expected".to_owned(),
-        text: Vec::new(),
-        tables,
-    }
+    tables
 }
 
 fn requirements(of: &[ExpectedRequirement], show_in: System) -> Table {
@@ -118,7 +113,7 @@ fn requirements(of: &[ExpectedRequirement], show_in: System) -> Table {
             or_dash(one.standard.as_ref()).into(),
         ])
     });
-    Table::new("Requirements", columns, rows.collect())
+    Table::new("Required and expected", columns, rows.collect())
 }
 
 fn stages(of: &[StageFacts], show_in: System) -> Table {
@@ -159,24 +154,4 @@ fn stages(of: &[StageFacts], show_in: System) -> Table {
         ])
     });
     Table::new("Stages of the set", columns, rows.collect())
-}
-
-fn inputs(of: &Expected) -> Section {
-    let columns = vec![
-        Column::words("For"),
-        Column::words("File"),
-        Column::hash("SHA-256"),
-    ];
-    let rows = of.provenance.inputs.iter().map(|input| {
-        Row::from([
-            input.role.clone().into(),
-            input.path.clone().into(),
-            input.sha256.clone().into(),
-        ])
-    });
-    Section {
-        title: "Inputs".to_owned(),
-        text: Vec::new(),
-        tables: vec![Table::new("Files read", columns, rows.collect())],
-    }
 }

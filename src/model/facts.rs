@@ -3,7 +3,7 @@
 use serde::Serialize;
 
 use crate::quantity::Unit;
-use crate::record::{AcceptRecord, ClassPlan, ConditionFacts, PlanFacts, WindowOf};
+use crate::record::{AcceptRecord, ClassPlan, ConditionFacts, PlanFacts, RigFacts, WindowOf};
 use crate::units::System;
 use crate::wording;
 use crate::wording::count;
@@ -34,7 +34,7 @@ pub(crate) fn fact(name: &str, value: impl Into<String>) -> Fact {
     }
 }
 
-fn stated(name: &str, value: Option<&String>) -> Option<Fact> {
+pub(crate) fn stated(name: &str, value: Option<&String>) -> Option<Fact> {
     value.map(|value| fact(name, value.clone()))
 }
 
@@ -156,13 +156,17 @@ fn drawing(record: &AcceptRecord, show_in: System) -> Facts {
 }
 
 fn rig(record: &AcceptRecord) -> Facts {
-    let rig = &record.rig;
+    of_bench(&record.rig)
+}
+
+/// The rig and its calibration.
+pub(crate) fn of_bench(rig: &RigFacts) -> Facts {
     let dates = |dates: &Option<String>| {
         dates
             .clone()
             .unwrap_or_else(|| "no dates stated".to_owned())
     };
-    let rows = vec![
+    let mut rows = vec![
         fact("Rig", rig.name.clone()),
         fact("Force", rig.force.clone()),
         fact("Force calibrated", dates(&rig.force_calibrated)),
@@ -171,6 +175,7 @@ fn rig(record: &AcceptRecord) -> Facts {
         fact("Frame compliance", rig.compliance.clone()),
         fact("Travel means", rig.travel_means.clone()),
     ];
+    rows.extend(stated("Last passed check", rig.checked.as_ref()));
     Facts {
         title: "Rig and calibration".to_owned(),
         rows,
@@ -180,11 +185,19 @@ fn rig(record: &AcceptRecord) -> Facts {
 fn plan(record: &AcceptRecord) -> Facts {
     let plan = &record.plan;
     let mut rows = vec![fact("By", plan.by.clone())];
+    if plan.source.replace(' ', "-") != plan.by && !plan.source.is_empty() {
+        rows.push(fact("Source", plan.source.clone()));
+    }
+    rows.extend(
+        plan.state
+            .as_ref()
+            .map(|state| fact("State of inspection", wording::state(state))),
+    );
     rows.extend(stated("Inspection level", plan.level.as_ref()));
     rows.extend(stated("Code letter", plan.code_letter.as_ref()));
     rows.push(fact("Sample size", count(plan.sample_size, "spring")));
     rows.extend(arrows(&plan.classes).map(|words| fact("Arrow of the table", words)));
-    rows.push(fact("Accept, reject", numbers(plan)));
+    rows.extend(numbers(plan).map(|numbers| fact("Accept, reject", numbers)));
     let counted = record
         .springs
         .iter()
@@ -233,15 +246,12 @@ fn arrows(classes: &[ClassPlan]) -> Option<String> {
     (!lines.is_empty()).then(|| lines.join("; "))
 }
 
-/// `major Ac 1, Re 2; minor Ac 2, Re 3`.
-fn numbers(plan: &PlanFacts) -> String {
-    if plan.classes.is_empty() {
-        return format!("Ac {}, Re {}", plan.accept, plan.reject);
-    }
+/// `major Ac 1, Re 2; minor Ac 2, Re 3`; `None` where no class is counted.
+fn numbers(plan: &PlanFacts) -> Option<String> {
     let classes: Vec<String> = plan
         .classes
         .iter()
         .map(|of| format!("{} Ac {}, Re {}", of.class.word(), of.accept, of.reject))
         .collect();
-    classes.join("; ")
+    (!classes.is_empty()).then(|| classes.join("; "))
 }

@@ -2,6 +2,7 @@
 //! Here: which facts stand where. Elsewhere: how a figure is written (`figure`), the words (`wording`), the page (`templates/`).
 
 mod budget;
+mod check;
 mod expect;
 mod expect_facts;
 mod facts;
@@ -9,20 +10,26 @@ mod fits;
 mod named;
 mod page;
 mod page_one;
+mod plan;
+mod process;
 mod provenance;
 mod springs;
 mod strength;
+mod study;
 mod supplier;
 mod table;
 mod theory;
 
 use serde::Serialize;
 
+pub use check::check_page;
+pub use expect::expected_page;
 pub(crate) use facts::labelled;
 pub use facts::{Fact, Facts};
-pub use page::{Headline, Page};
+pub use page::{Page, PageDecision};
 pub use page_one::{Deciding, Note};
 pub(crate) use springs::remarks;
+pub use study::study_page;
 pub use table::{Cell, Column, Holds, Row, Section, Table};
 
 use crate::record::AcceptRecord;
@@ -55,8 +62,14 @@ pub struct Model {
     pub notes: Vec<Note>,
     /// Lot, drawing, rig, plan.
     pub facts: Vec<Facts>,
-    /// The plan of each class.
+    /// The plan of each class, or of each characteristic where none is counted.
     pub plan: Table,
+    /// The characteristics by variables, where classes are counted too.
+    pub plan_more: Vec<Table>,
+    /// What would settle an undecided lot.
+    pub settling: Option<Section>,
+    /// What the sample says of the lot.
+    pub process: Section,
     /// Requirements with limits, counts and what was measured.
     pub requirements: Table,
     /// What page one must say besides.
@@ -94,11 +107,14 @@ impl Model {
             subject: page_one::subject(record),
             date: record.provenance.date.clone(),
             tool: format!("{} {}", record.provenance.tool, record.provenance.version),
-            units: units_line(show_in),
+            units: units(show_in),
             decision: page_one::deciding(record, show_in),
             notes: page_one::notes(record),
             facts: facts::all(record, show_in),
-            plan: page_one::plan(record),
+            plan: plan::main(record, show_in),
+            plan_more: plan::more(record, show_in),
+            settling: plan::settling(record, show_in),
+            process: process::section(record, show_in),
             requirements: page_one::requirements(record, show_in),
             cautions: record
                 .cautions
@@ -123,8 +139,7 @@ impl Model {
     }
 }
 
-/// The units a report is written in.
-fn units_line(show_in: System) -> String {
+fn units(show_in: System) -> String {
     match show_in {
         System::MmN => "mm, N, N/mm, MPa".to_owned(),
         System::InLbf => "in, lbf, lbf/in, psi (shown; judged in mm and N)".to_owned(),

@@ -1,29 +1,34 @@
-//! A report that is no lot's: a headline with its grounds, facts, sections. One template makes pages of all of them.
+//! A report on something else than a lot: title, decision, facts, tables, cautions, places to sign, sections.
 
 use serde::Serialize;
 
 use super::facts::Facts;
-use super::table::Section;
+use super::page_one::Note;
+use super::provenance;
+use super::table::{Section, Table};
+use crate::record::{Provenance, Serving};
+use crate::units::System;
+use crate::wording;
 
-/// What a report says first.
+/// The decision of a page.
 #[derive(Clone, Debug, PartialEq, Eq, Serialize)]
-pub struct Headline {
-    /// `accepted`, `rejected`, `undecided`: the emphasis, beside the word and never in its place.
+pub struct PageDecision {
+    /// How it looks: as `accepted`, `rejected` or `undecided`.
     pub code: &'static str,
     /// The word, large.
     pub word: String,
-    /// What it was said of, in a line.
-    pub subject: String,
+    /// What it is about, in one line.
+    pub about: String,
     /// The grounds.
     pub why: Vec<String>,
-    /// What is worth knowing besides.
-    pub remarks: Vec<String>,
 }
 
-/// A report as finished strings.
+/// A page as finished strings.
 #[derive(Clone, Debug, PartialEq, Serialize)]
 pub struct Page {
-    /// What kind of report.
+    /// What it is: `check`, `study`.
+    pub page: &'static str,
+    /// Title.
     pub title: String,
     /// What it is about, in one line.
     pub subject: String,
@@ -35,14 +40,63 @@ pub struct Page {
     pub tool: String,
     /// The units it is written in.
     pub units: String,
-    /// What it says first.
-    pub headline: Headline,
+    /// The decision.
+    pub decision: PageDecision,
+    /// Notes.
+    pub notes: Vec<Note>,
     /// Facts.
     pub facts: Vec<Facts>,
+    /// Tables of page one.
+    pub tables: Vec<Table>,
+    /// What page one must say besides.
+    pub cautions: Vec<String>,
     /// The cautions every report carries.
     pub standing: Vec<String>,
-    /// Sections before the charts.
-    pub before: Vec<Section>,
-    /// Sections after the charts.
-    pub after: Vec<Section>,
+    /// Places to sign.
+    pub signatures: Vec<String>,
+    /// What stands behind page one.
+    pub sections: Vec<Section>,
+}
+
+/// How a decision on a rig looks.
+pub(super) const fn look(serving: Serving) -> &'static str {
+    match serving {
+        Serving::Serves => "accepted",
+        Serving::Fails => "rejected",
+        Serving::Undecided => "undecided",
+    }
+}
+
+impl Page {
+    /// A page that says nothing yet but what every page says.
+    pub(super) fn begun(
+        page: &'static str,
+        title: &str,
+        subject: String,
+        provenance: &Provenance,
+        show_in: System,
+    ) -> Self {
+        Self {
+            page,
+            title: title.to_owned(),
+            short: super::short(&subject),
+            subject,
+            date: provenance.date.clone(),
+            tool: format!("{} {}", provenance.tool, provenance.version),
+            units: super::units(show_in),
+            decision: PageDecision {
+                code: "undecided",
+                word: String::new(),
+                about: String::new(),
+                why: Vec::new(),
+            },
+            notes: Vec::new(),
+            facts: Vec::new(),
+            tables: Vec::new(),
+            cautions: Vec::new(),
+            standing: wording::STANDING.map(str::to_owned).to_vec(),
+            signatures: ["Checked by", "Released by"].map(str::to_owned).to_vec(),
+            sections: vec![provenance::of(provenance)],
+        }
+    }
 }

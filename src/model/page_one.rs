@@ -9,7 +9,7 @@ use crate::quantity::Unit;
 use crate::record::{AcceptRecord, Decision, Reason, RequirementFacts, Verdict, find};
 use crate::units::{Finite, System};
 use crate::wording;
-use crate::wording::{ABSENT, Place, figure, number, probability, unit_symbol};
+use crate::wording::{ABSENT, Place, figure, unit_symbol};
 
 /// The decision and why.
 #[derive(Clone, Debug, PartialEq, Eq, Serialize)]
@@ -101,49 +101,10 @@ pub(crate) fn notes(record: &AcceptRecord) -> Vec<Note> {
     if record.decision == Decision::Undecided && with_verdict(record, Verdict::Undecided) > 0 {
         notes.push(note(
             "What would settle it",
-            "The table of the springs says for each undecided spring what would settle it.",
+            "See the part “What would settle it”; the table of the springs has the advice for each one.",
         ));
     }
     notes
-}
-
-/// The plan of each class.
-pub(crate) fn plan(record: &AcceptRecord) -> Table {
-    let columns = vec![
-        Column::words("Class"),
-        Column::figures("AQL", "%"),
-        Column::words("Letter"),
-        Column::figures("Sample", ""),
-        Column::figures("Ac", ""),
-        Column::figures("Re", ""),
-        Column::figures("Failing", ""),
-        Column::figures("Undecided", ""),
-        Column::figures("Accepted at AQL", ""),
-    ];
-    let rows = record.plan.classes.iter().map(|class| {
-        let letter = match (&class.code_letter, &class.used_letter) {
-            (Some(code), Some(used)) if code != used => {
-                format!("{code}, by the arrow to {used}")
-            }
-            (Some(code), _) => code.clone(),
-            (None, _) => ABSENT.to_owned(),
-        };
-        Row::from([
-            class.class.word().into(),
-            number(class.aql, 4).into(),
-            letter.into(),
-            class.sample_size.to_string().into(),
-            class.accept.to_string().into(),
-            class.reject.to_string().into(),
-            class.failing.to_string().into(),
-            class.undecided.to_string().into(),
-            probability(class.accepted_at_aql).into(),
-        ])
-    });
-    let mut table = Table::new("Plan by class", columns, rows.collect());
-    "Accepted at AQL: the probability that a lot exactly at the AQL is accepted (binomial)."
-        .clone_into(&mut table.note);
-    table
 }
 
 /// The requirements with limits, counts and what was measured.

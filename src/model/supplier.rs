@@ -19,7 +19,7 @@ pub(crate) fn page(record: &AcceptRecord, show_in: System) -> Option<Section> {
     let proven = record
         .reasons
         .iter()
-        .any(|reason| matches!(reason, LotReason::ProvenFailures { .. }));
+        .any(|reason| matches!(reason, LotReason::ProvenFailures { .. }) || by_variables(reason));
     if record.decision != Decision::Rejected || !proven {
         return None;
     }
@@ -43,6 +43,17 @@ pub(crate) fn page(record: &AcceptRecord, show_in: System) -> Option<Section> {
         text: text(record),
         tables: vec![table],
     })
+}
+
+/// Whether a plan by variables rejected a characteristic.
+const fn by_variables(reason: &LotReason) -> bool {
+    matches!(
+        reason,
+        LotReason::ByVariables {
+            decision: Decision::Rejected,
+            ..
+        }
+    )
 }
 
 fn columns() -> Vec<Column> {
@@ -81,6 +92,7 @@ fn text(record: &AcceptRecord) -> Vec<String> {
     ));
     text.extend(record.reasons.iter().filter_map(|reason| match reason {
         LotReason::ProvenFailures { class, .. } => plan(record, *class),
+        reason if by_variables(reason) => Some(wording::why(reason)),
         _ => None,
     }));
     text.extend(wording::terms(drawing).into_iter().take(1));

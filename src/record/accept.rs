@@ -7,6 +7,8 @@ use serde::{Deserialize, Serialize};
 
 use super::caution::Caution;
 use super::facts::{RigFacts, TheoryFacts, WindowFacts};
+use super::plan::PlanFacts;
+use super::process::ProcessFacts;
 use super::spring::{LedgerFacts, SpringResult};
 use crate::drawing::Policy;
 use crate::lot::{Decision, LotReason};
@@ -127,50 +129,6 @@ pub struct DrawingFacts {
     pub undecided_springs: Policy,
 }
 
-/// The plan of one class.
-#[derive(Clone, Debug, PartialEq, Serialize, Deserialize, JsonSchema)]
-pub struct ClassPlan {
-    /// Class.
-    pub class: Class,
-    /// AQL in percent nonconforming; `null` where every spring is measured or a class is zero-accept.
-    pub aql: Option<Finite>,
-    /// Code letter from lot size and level.
-    pub code_letter: Option<String>,
-    /// Letter of the plan an arrow led to.
-    pub used_letter: Option<String>,
-    /// Springs to measure.
-    pub sample_size: u64,
-    /// Acceptance number Ac.
-    pub accept: u64,
-    /// Rejection number Re.
-    pub reject: u64,
-    /// Springs proven failing in this class.
-    pub failing: u64,
-    /// Springs undecided for a requirement of this class.
-    pub undecided: u64,
-    /// Probability that a lot exactly at the AQL is accepted, 0 … 1 (binomial).
-    pub accepted_at_aql: Option<Finite>,
-}
-
-/// The sampling plan, in the terms of its source.
-#[derive(Clone, Debug, PartialEq, Serialize, Deserialize, JsonSchema)]
-pub struct PlanFacts {
-    /// `attributes` or `every-spring`.
-    pub by: String,
-    /// Inspection level.
-    pub level: Option<String>,
-    /// Code letter of the first class.
-    pub code_letter: Option<String>,
-    /// Sample size (the largest over the classes).
-    pub sample_size: u64,
-    /// Ac of the major class, or of the first one there is.
-    pub accept: u64,
-    /// Re of the same class.
-    pub reject: u64,
-    /// The plan of each class.
-    pub classes: Vec<ClassPlan>,
-}
-
 /// A file of the output folder.
 #[derive(Clone, Debug, PartialEq, Eq, Serialize, Deserialize, JsonSchema)]
 pub struct OutputFile {
@@ -224,6 +182,9 @@ pub struct AcceptRecord {
     pub rig: RigFacts,
     /// The plan.
     pub plan: PlanFacts,
+    /// What the sample says of the lot, in the order of the requirements.
+    #[serde(default)]
+    pub process: Vec<ProcessFacts>,
     /// The springs, by id.
     pub springs: Vec<SpringResult>,
     /// Provenance.

@@ -43,10 +43,17 @@ pub enum Caution {
         /// `force` or `travel`.
         scale: String,
     },
-    /// The rig file wants checks and no check is on record.
+    /// The rig file wants checks and no passed check is on record that is recent enough.
     NoCheckOnRecord {
         /// How often the rig file wants one.
         every: String,
+        /// Date and name of the last passed one, where there is any.
+        last: Option<String>,
+    },
+    /// Judged loads beyond the largest that the table of the frame's give knows.
+    FrameBeyondTable {
+        /// The springs.
+        springs: Vec<String>,
     },
     /// Loads outside the range the rig file states.
     LoadOutsideRange {

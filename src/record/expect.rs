@@ -129,6 +129,8 @@ pub struct Expected {
     pub requirements: Vec<ExpectedRequirement>,
     /// The whole theory.
     pub theory: TheoryFacts,
+    /// Half-width of the free length of the set as drawn; 0 where none is stated.
+    pub free_length_tolerance_mm: Millimetres,
     /// The stages, from the free length on.
     pub stages: Vec<StageFacts>,
     /// The window of the rate.

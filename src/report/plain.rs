@@ -10,12 +10,12 @@ const WORDS: usize = 34;
 
 /// The page; it ends with a line end, foreign strings made printable.
 pub(super) fn text(page: &Page) -> String {
-    let mut lines = vec![format!("{}: {}", page.headline.word, page.subject)];
-    for reason in &page.headline.why {
+    let mut lines = vec![format!("{}: {}", page.decision.word, page.subject)];
+    for reason in &page.decision.why {
         lines.extend(wrapped(reason, "  - ", "    "));
     }
-    for remark in &page.headline.remarks {
-        lines.extend(wrapped(&format!("Remark: {remark}"), "  - ", "    "));
+    for caution in &page.cautions {
+        lines.extend(wrapped(&format!("Caution: {caution}"), "  - ", "    "));
     }
     for facts in &page.facts {
         lines.push(String::new());
@@ -31,7 +31,11 @@ pub(super) fn text(page: &Page) -> String {
             lines.extend(wrapped(&one.value, &format!("  {name}  "), &indent));
         }
     }
-    for section in page.before.iter().chain(&page.after) {
+    if !page.tables.is_empty() {
+        lines.push(String::new());
+    }
+    lines.extend(page.tables.iter().flat_map(of_table));
+    for section in &page.sections {
         lines.extend(of_section(section));
     }
     lines.push(String::new());

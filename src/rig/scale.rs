@@ -79,8 +79,18 @@ pub(super) fn read_scale(table: Table<'_>, classes: &[(&str, f64)], unit: f64) -
     } else {
         None
     };
-    let dates = table.table("calibrated");
-    let calibrated = match (dates.date("on"), dates.date("until")) {
+    let calibrated = read_calibrated(table.table("calibrated"));
+    Some(Scale {
+        accuracy: accuracy?,
+        resolution: resolution?,
+        range,
+        calibrated,
+    })
+}
+
+/// The dates of a calibration; `None` where none are stated, or where a fault was noted.
+pub fn read_calibrated(dates: Table<'_>) -> Option<(Date, Date)> {
+    match (dates.date("on"), dates.date("until")) {
         (Some(on), Some(until)) if on.value < until.value => Some((on.value, until.value)),
         (None, None) if !dates.is_present() => None,
         _ => {
@@ -91,13 +101,7 @@ pub(super) fn read_scale(table: Table<'_>, classes: &[(&str, f64)], unit: f64) -
             );
             None
         }
-    };
-    Some(Scale {
-        accuracy: accuracy?,
-        resolution: resolution?,
-        range,
-        calibrated,
-    })
+    }
 }
 
 fn read_range(range: Table<'_>, unit: f64) -> Option<(f64, f64)> {

@@ -148,7 +148,8 @@ pub fn binomial_cdf(k: u64, n: u64, p: f64) -> Result<f64, StatsError> {
         .map_err(|_| StatsError::Share { found: p })
 }
 
-fn finite(found: f64) -> Result<f64, StatsError> {
+/// A finite argument, or the fault.
+pub(super) fn finite(found: f64) -> Result<f64, StatsError> {
     if found.is_finite() {
         Ok(found)
     } else {

@@ -20,4 +20,6 @@ pub enum StatsError {
         got: f64,
         wanted: f64,
     },
+    #[error("no value between {low} and {high} gives what was asked for")]
+    NoRoot { low: f64, high: f64 },
 }

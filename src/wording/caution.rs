@@ -23,7 +23,7 @@ pub(crate) fn caution(of: &Caution, show_in: System) -> String {
         | Caution::BeyondSample { .. }
         | Caution::GeometryNotJudged { .. }
         | Caution::IdsAlike { .. } => about_the_sample(of),
-        Caution::Drawing { finding } => super::finding(finding, show_in),
+        Caution::Drawing { finding } => super::drawing_finding(finding, show_in),
         Caution::LimitsWide { name, at_length_mm } => format!(
             "{}: the limits lie more than 30 % from nominal; was a tolerance in % meant?",
             sentence(&characteristic(name, *at_length_mm, show_in))
@@ -32,6 +32,7 @@ pub(crate) fn caution(of: &Caution, show_in: System) -> String {
         | Caution::LackOfFit { .. }
         | Caution::NoZeroReading { .. }
         | Caution::LoadOutsideRange { .. }
+        | Caution::FrameBeyondTable { .. }
         | Caution::OddRatio { .. }
         | Caution::OddCurves { .. }
         | Caution::LengthsShifted { .. } => about_the_curves(of, show_in),
@@ -60,9 +61,12 @@ fn about_the_bench(of: &Caution, show_in: System) -> String {
             "The frame compliance in the rig file makes up {} of the spring's own; is it right?",
             percent(Some(*share))
         ),
-        Caution::NoCheckOnRecord { every } => {
-            format!("The rig file asks for a check every {every}; no passed check is on record.")
-        }
+        Caution::NoCheckOnRecord { every, last } => match last {
+            Some(last) => format!(
+                "The rig file asks for a check every {every}; the last passed check on record is of {last}."
+            ),
+            None => format!("The rig file asks for a check every {every}; no passed check is on record."),
+        },
         Caution::UncertaintyLarge { name, at_length_mm, share } => format!(
             "{}: the expanded uncertainty is {} of the half tolerance; springs near a limit stay undecided.",
             sentence(&characteristic(name, *at_length_mm, show_in)),
@@ -121,6 +125,10 @@ fn about_the_curves(of: &Caution, show_in: System) -> String {
                 springs(names)
             )
         }
+        Caution::FrameBeyondTable { springs: names } => format!(
+            "Loads beyond the table of the frame's give in the rig file, whose last stretch is drawn on: {}.",
+            springs(names)
+        ),
         Caution::RobustDiffers { springs: names } => format!(
             "{}: the robust rate differs from the fitted one; look at {} residuals.",
             sentence(&springs(names)),
@@ -220,7 +228,15 @@ mod tests {
                 until: text(),
             },
             Caution::CalibrationUnknown { scale: text() },
-            Caution::NoCheckOnRecord { every: text() },
+            Caution::NoCheckOnRecord {
+                every: text(),
+                last: None,
+            },
+            Caution::NoCheckOnRecord {
+                every: text(),
+                last: Some(text()),
+            },
+            Caution::FrameBeyondTable { springs: some() },
             Caution::LoadOutsideRange { springs: some() },
             Caution::UncertaintyLarge {
                 name: name(),

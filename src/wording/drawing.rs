@@ -26,7 +26,7 @@ pub(super) fn millimetres(value: Millimetres, show_in: System) -> String {
 }
 
 /// One finding as sentences.
-pub(crate) fn finding(of: &DrawingFinding, show_in: System) -> String {
+pub(crate) fn drawing_finding(of: &DrawingFinding, show_in: System) -> String {
     match of {
         DrawingFinding::RateNotFromGeometry { .. }
         | DrawingFinding::LoadsNotFromRate { .. }

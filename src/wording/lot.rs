@@ -33,6 +33,22 @@ fn proven(failing: u64, undecided: u64) -> String {
     )
 }
 
+/// What may still come of a sample that is measured in part.
+fn yet(to_accept: Option<u64>, to_reject: Option<u64>) -> String {
+    let accept = to_accept.map_or_else(
+        || "The sample can no longer accept".to_owned(),
+        |more| format!("It accepts once {more} more prove conforming"),
+    );
+    let reject = to_reject.map_or_else(
+        || "it can no longer reject".to_owned(),
+        |more| format!("rejects once {more} more prove failing"),
+    );
+    match to_accept {
+        Some(_) => format!("{accept}, and {reject}."),
+        None => format!("{accept}; it {}.", reject.trim_start_matches("it ")),
+    }
+}
+
 /// One ground of the decision.
 pub(crate) fn why(reason: &LotReason) -> String {
     match reason {
@@ -97,12 +113,19 @@ pub(crate) fn why(reason: &LotReason) -> String {
             class,
             measured,
             wanted,
+            to_accept,
+            to_reject,
         } => format!(
-            "{}: {} measured where the plan asks for {wanted}; {} missing.",
+            "{}: {} measured where the plan asks for {wanted}; {} missing. {}",
             in_class(*class),
             count(*measured, "spring"),
-            wanted.saturating_sub(*measured)
+            wanted.saturating_sub(*measured),
+            yet(*to_accept, *to_reject)
         ),
+        LotReason::ByVariables { .. }
+        | LotReason::TooFewValues { .. }
+        | LotReason::ProvenBeside { .. }
+        | LotReason::FindingWithoutNumber { .. } => super::plan::why(reason),
         LotReason::FailureBeyondSample { spring, class } => format!(
             "Spring {spring}, measured beyond the sample, is proven to fail a {} requirement: the sample alone would accept, but this \
              lot is not accepted while a known failure stands beside it. Take it into the sample, or settle it with the supplier.",

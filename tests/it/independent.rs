@@ -20,9 +20,11 @@ fn record() -> AcceptRecord {
         date: jiff::civil::date(2026, 12, 1),
         units_confirmed: false,
         strict: false,
-        drawn: false,
+        keep: coilassay::job::Keep::default(),
         block_bytes: None,
         flags: Vec::new(),
+        last_check: None,
+        past: None,
     };
     accept(&lot, "lot.toml", &options).unwrap().record
 }
@@ -185,8 +187,8 @@ fn theory_window_and_plan_to_nine_digits() {
         "letter {}, AQL 2.5: n {}, Ac {}, Re {}",
         plan.code_letter.as_deref().unwrap(),
         plan.sample_size,
-        plan.accept,
-        plan.reject
+        plan.accept.unwrap(),
+        plan.reject.unwrap()
     );
     assert!(text.contains(&line), "{line}");
 }

@@ -83,9 +83,11 @@ fn judged() -> Vec<Judged> {
         date: jiff::civil::date(2026, 12, 1),
         units_confirmed: false,
         strict: false,
-        drawn: false,
+        keep: coilassay::job::Keep::default(),
         block_bytes: None,
         flags: Vec::new(),
+        last_check: None,
+        past: None,
     };
     let (truths, options, folder) = (&truths, &options, &folder);
     let one_lot = move |lot: u64| {

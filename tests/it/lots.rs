@@ -51,9 +51,11 @@ impl Lot {
             date: jiff::civil::date(2026, 12, 1),
             units_confirmed: false,
             strict: false,
-            drawn: false,
+            keep: coilassay::job::Keep::default(),
             block_bytes,
             flags: Vec::new(),
+            last_check: None,
+            past: None,
         };
         accept(&self.place().join("lot.toml"), "lot.toml", &options)
             .unwrap()

@@ -4,7 +4,7 @@ use std::collections::BTreeSet;
 
 use coilassay::characteristic::{Estimate, Line, Measured, Part};
 use coilassay::drawing::{Guard, Limits, Policy, Rule};
-use coilassay::lot::{ClassTerms, Decision, decide};
+use coilassay::lot::{Basis, ClassTerms, Decision, decide};
 use coilassay::quantity::Class;
 use coilassay::record::CharacteristicResult;
 use coilassay::stats::Dof;
@@ -54,7 +54,7 @@ fn few_degrees_of_freedom_widen_the_guard_band() {
 fn a_simple_failure_counts_in_its_own_class_only() {
     let terms = |class, accept| ClassTerms {
         class,
-        plan: None,
+        basis: Basis::All,
         sample_size: 3,
         accept,
         reject: accept + 1,

@@ -5,7 +5,7 @@ use crate::doubt::{is_odd, reading};
 use crate::drawing::{Drawing, Requirement, Rule};
 use crate::quantity::Quantity;
 use crate::record::{BudgetFigure, Caution, CharacteristicResult, Oddity, Reason};
-use crate::rig::Rig;
+use crate::rig::{Compliance, Rig};
 use crate::stats::median;
 use crate::units::Finite;
 
@@ -13,7 +13,7 @@ use super::super::facts::figure;
 use super::alike::alike;
 use super::drawing_cautions::of_drawing;
 use super::figures::value_of;
-use super::rig_cautions::{large_compliance, of_rig};
+use super::rig_cautions::{large_compliance, of_check, of_rig};
 use super::springs::Judged;
 use super::{Files, Options, guards};
 
@@ -46,6 +46,7 @@ pub(super) fn cautions(
         found.extend(of_requirement(requirement, rule, judged));
     }
     found.extend(of_rig(&files.rig, options.date));
+    found.extend(of_check(&files.rig, options));
     found.extend(large_compliance(&files.rig, nominal_rate(&files.drawing)));
     found.extend(of_curves(&files.rig, full_load(&files.drawing), judged));
     found.extend(of_measurements(files, judged));
@@ -178,6 +179,8 @@ fn of_curves(rig: &Rig, full_load: f64, judged: &[Judged]) -> Vec<Caution> {
     [
         named(&|spring| outside(spring) || below(spring))
             .map(|springs| Caution::LoadOutsideRange { springs }),
+        named(&|spring| beyond_table(rig, spring))
+            .map(|springs| Caution::FrameBeyondTable { springs }),
         named(&robust_differs).map(|springs| Caution::RobustDiffers { springs }),
         named(&bends).map(|springs| Caution::LackOfFit { springs }),
         odd(Oddity::StrokesLeftOut, &|spring| spring.short_strokes),
@@ -190,6 +193,24 @@ fn of_curves(rig: &Rig, full_load: f64, judged: &[Judged]) -> Vec<Caution> {
     .into_iter()
     .flatten()
     .collect()
+}
+
+/// A judged load beyond what the table of the frame's give knows.
+fn beyond_table(rig: &Rig, spring: &Judged) -> bool {
+    let Compliance::Measured { give, .. } = &rig.frame else {
+        return false;
+    };
+    let Some(most) = give.known_to() else {
+        return false;
+    };
+    let loads = spring
+        .result
+        .characteristics
+        .iter()
+        .filter(|one| one.at_length_mm.is_some());
+    loads
+        .filter_map(|one| one.value)
+        .any(|load| load.get() > most)
 }
 
 /// Robust and fitted rate differ by more than 0.5 % and more than three standard uncertainties of the fit.

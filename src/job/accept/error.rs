@@ -53,6 +53,33 @@ pub(super) enum AcceptError {
         help("agree them and write [acceptance] with rule and plan into the drawing")
     )]
     NoTerms { drawing: String },
+    #[error(
+        "inspection is discontinued: `{history}` shows that lot {lot} was the fifth not accepted while tightened"
+    )]
+    #[diagnostic(
+        code(coilassay::accept::discontinued),
+        help(
+            "once the supplier has acted, add a line with the decision resumed to the history; until then measure every spring (by = \"every-spring\")"
+        )
+    )]
+    Discontinued { history: String, lot: String },
+    #[error("past lots (`{history}`) change nothing under this plan")]
+    #[diagnostic(
+        code(coilassay::accept::history),
+        help(
+            "only by = \"attributes\" (ISO 2859-1) switches between normal, tightened and reduced; leave the history out"
+        )
+    )]
+    HistoryUnused { history: String },
+    #[error("the process figures cannot be computed")]
+    #[diagnostic(
+        code(coilassay::accept::process),
+        help("a figure in the rig file or the export is far out of any usable size")
+    )]
+    Process {
+        #[source]
+        cause: crate::stats::StatsError,
+    },
     #[error("the drawing `{drawing}` requires nothing that could be judged")]
     #[diagnostic(
         code(coilassay::accept::requirements),

@@ -2,15 +2,18 @@
 
 mod alike;
 mod cautions;
+mod deciding;
 mod drawing_cautions;
 mod error;
-mod figures;
+pub(super) mod figures;
 mod files;
 mod group;
 mod plan;
+mod process;
 mod requirements;
-mod rig_cautions;
+pub(super) mod rig_cautions;
 mod springs;
+mod variables;
 
 use std::path::Path;
 
@@ -18,22 +21,23 @@ use jiff::civil::Date;
 use rayon::prelude::*;
 
 use crate::characteristic::{Setup, stage_windows, wanted};
-use crate::curve::{Reduced, full_load, nominal_rate, window_of};
+use crate::curve::{Kept, Reduced, full_load, nominal_rate, window_of};
 use crate::doubt::doubt;
 use crate::drawing::{Drawing, Requirement, Rule};
-use crate::lot::{class_terms, decide};
 use crate::quantity::Class;
-use crate::record::{AcceptRecord, FORMAT, Kind, LedgerFacts, Provenance, SimpleAcceptance, TOOL};
+use crate::record::{AcceptRecord, FORMAT, Kind, LastCheck, LedgerFacts, Provenance, TOOL};
 use crate::rig::SpringFrom;
 use crate::text::InputFile;
 
 use super::facts;
-use super::read::{How, Reading, read};
+use super::read::{How, Keep, Reading, read};
 use super::threads::side_by_side;
 use error::AcceptError;
 use files::Files;
 use group::Spring;
 use springs::Judged;
+
+pub use deciding::Past;
 
 /// Faults of exports shown at once.
 const SHOWN: usize = 20;
@@ -47,12 +51,16 @@ pub struct Options {
     pub units_confirmed: bool,
     /// A warning on the rig ends the run.
     pub strict: bool,
-    /// Whether curves are kept for charts.
-    pub drawn: bool,
+    /// What is kept of the curves.
+    pub keep: Keep,
     /// Bytes read at once, where a test wants other blocks.
     pub block_bytes: Option<usize>,
     /// Flags that bear on the result, as given.
     pub flags: Vec<String>,
+    /// The last passed check of the rig on a reference spring, where one is on record.
+    pub last_check: Option<LastCheck>,
+    /// The lots before this one, for the switching rules.
+    pub past: Option<Past>,
 }
 
 /// A judged lot.
@@ -62,6 +70,9 @@ pub struct Accepted {
     pub record: AcceptRecord,
     /// The curves for the charts, in the order of the springs; empty where they were not wanted.
     pub curves: Vec<Reduced>,
+    /// The curves for an archive, in the order of the springs, each spring's measurements in the order of measuring; empty
+    /// where they were not wanted.
+    pub kept: Vec<Vec<Kept>>,
 }
 
 /// Judges the lot of the file at `path`, written as `as_written`.
@@ -86,7 +97,8 @@ pub fn accept(path: &Path, as_written: &str, options: &Options) -> miette::Resul
     let how = How {
         setup: &setup,
         caliper: &files.caliper.springs,
-        drawn: options.drawn,
+        keep: options.keep,
+        of_all: &[],
         block_bytes: options.block_bytes,
     };
     let (readings, sources) = read_all(&files, how)?;
@@ -192,11 +204,8 @@ fn judge(
         .into_par_iter()
         .map(judge)
         .collect::<Result<Vec<_>, _>>()?;
-    let (sampled, others) = group::sample_order(lot, &judged)?;
-    let plans = class_terms(&terms.plan, lot.size.value, &classes(files, &judged))?;
-    let outcome = decide(&plans, &sampled, &others, terms.undecided);
-    let widest = plans.iter().map(|plan| plan.sample_size).max().unwrap_or(0);
-    springs::mark_sample(&mut judged, &sampled, widest);
+    let decided = deciding::decide_lot(files, terms, &judged, options.past.as_ref())?;
+    springs::mark_sample(&mut judged, &decided.sampled, decided.plan.sample_size);
     let cautions = cautions::cautions(files, terms.rule, &judged, finding, options);
     if options.strict {
         rig_cautions::refuse(&cautions)?;
@@ -205,31 +214,41 @@ fn judge(
         .iter_mut()
         .filter_map(|spring| spring.reduced.take())
         .collect();
+    let kept = judged
+        .iter_mut()
+        .map(|spring| std::mem::take(&mut spring.kept))
+        .collect();
     let requirements = requirements::facts(drawing, &judged);
+    let process = process::facts(drawing, &judged, &decided.sampled)
+        .map_err(|cause| AcceptError::Process { cause })?;
     let record = AcceptRecord {
         format: FORMAT,
         kind: Kind::Accept,
-        decision: outcome.decision,
-        simple: SimpleAcceptance {
-            decision: outcome.simple,
-            failing: outcome.simple_failing,
-        },
+        decision: decided.decision,
+        reasons: decided.reasons,
+        simple: decided.simple,
         cautions,
         lot: facts::lot(lot),
         drawing: facts::drawing(drawing, terms, requirements),
         theory: facts::theory(drawing, full_load(drawing))?,
         window: facts::window(drawing, window_of(drawing)),
-        rig: facts::rig(rig),
-        plan: plan::facts(&terms.plan, &outcome)?,
-        reasons: outcome.reasons,
+        rig: facts::rig(rig, rig_cautions::holding(rig, options)),
+        plan: decided.plan,
+        process,
         springs: judged.into_iter().map(|spring| spring.result).collect(),
         provenance: provenance(sources, options),
         files: Vec::new(),
     };
-    Ok(Accepted { record, curves })
+    Ok(Accepted {
+        record,
+        curves,
+        kept,
+    })
 }
 
-fn provenance(sources: Sources, options: &Options) -> Provenance {
+fn provenance(mut sources: Sources, options: &Options) -> Provenance {
+    let history = options.past.as_ref().and_then(|past| past.input.clone());
+    sources.inputs.extend(history);
     Provenance {
         tool: TOOL.to_owned(),
         version: env!("CARGO_PKG_VERSION").to_owned(),
@@ -243,22 +262,26 @@ fn provenance(sources: Sources, options: &Options) -> Provenance {
 /// The classes that are decided on, gravest first: those of inspected requirements, of findings, and of proven failures.
 fn classes(files: &Files, judged: &[Judged]) -> Vec<Class> {
     let Files { lot, drawing, .. } = files;
-    let left_out = |one: &Requirement| {
-        lot.not_inspected
-            .iter()
-            .any(|not| not.quantity == one.quantity)
-    };
     let used = |class: &Class| {
         drawing
             .requirements
             .iter()
-            .any(|one| one.class == *class && !left_out(one))
+            .any(|one| one.class == *class && !left_out(files, one))
             || lot.findings.iter().any(|one| one.class == *class)
             || judged
                 .iter()
                 .any(|spring| spring.overall.failing == Some(*class))
     };
     Class::ALL.into_iter().filter(used).collect()
+}
+
+/// Whether the lot file lists a requirement as not inspected.
+fn left_out(files: &Files, one: &Requirement) -> bool {
+    files
+        .lot
+        .not_inspected
+        .iter()
+        .any(|not| not.quantity == one.quantity)
 }
 
 /// Whether the rule guards.

@@ -260,9 +260,14 @@ fn a_repeated_spring_is_drawn_under_its_own_id() {
         date: jiff::civil::date(2026, 12, 1),
         units_confirmed: false,
         strict: false,
-        drawn: true,
+        keep: coilassay::job::Keep {
+            for_charts: true,
+            for_archive: false,
+        },
         block_bytes: None,
         flags: Vec::new(),
+        last_check: None,
+        past: None,
     };
     let lot = "samples/undecided/lot.toml";
     let path = std::path::Path::new(env!("CARGO_MANIFEST_DIR")).join(lot);

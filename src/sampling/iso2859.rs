@@ -1,38 +1,17 @@
-//! Single sampling plans by attributes, normal inspection, after ISO 2859-1.
+//! Single sampling plans by attributes after ISO 2859-1: normal, tightened and reduced inspection.
 //! Here: letter, plan with arrows followed, what a plan lets through.
-//! Elsewhere: tightened and reduced inspection, the decision on a lot. Where the sample size reaches the lot size
+//! Elsewhere: which state holds (`switching`), the decision on a lot (`lot`). Where the sample size reaches the lot size
 //! the caller inspects every spring with the acceptance number unchanged.
 
 use std::fmt;
 
-use super::plan_table::{Cell, LETTERS, SIZES, cell};
-use crate::drawing::{AQLS, Level};
-use crate::quantity::Class;
+use super::PlanError;
+use super::iso2859_table::{Cell, LETTERS, cell, sizes};
+use crate::drawing::{AQLS, Level, State};
 use crate::stats::{StatsError, binomial_cdf};
 
-/// Faults of a plan asked for.
-#[derive(Clone, Debug, PartialEq, thiserror::Error, miette::Diagnostic)]
-#[expect(missing_docs, reason = "the messages say it")]
-pub enum PlanError {
-    #[error("a lot of {found} cannot be sampled, the table begins at 2")]
-    #[diagnostic(
-        code(coilassay::lot::size),
-        help(
-            "check `size` in the lot file; for so small a lot agree by = \"every-spring\" in the drawing"
-        )
-    )]
-    LotTooSmall { found: u64 },
-    #[error("AQL {found} % is not in the table, which has {}", listed())]
-    UnknownAql { found: f64 },
-    #[error("a finding or requirement is {}, and the drawing agrees no AQL for that class", class.word())]
-    #[diagnostic(
-        code(coilassay::lot::aql),
-        help("write aql = {{ {} = … }} into the drawing's plan, or give the finding a class that has one", class.word())
-    )]
-    NoAql { class: Class },
-    #[error("no plan for letter {letter} at AQL {aql} %")]
-    NoPlan { letter: CodeLetter, aql: Aql },
-}
+/// The name of the table, for faults.
+const TABLE: &str = "ISO 2859-1";
 
 /// Sample size code letter, A to R without I and O.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord)]
@@ -44,7 +23,10 @@ impl CodeLetter {
     /// # Errors
     /// [`PlanError::LotTooSmall`] under 2 springs.
     pub fn of(lot_size: u64, level: Level) -> Result<Self, PlanError> {
-        let too_small = PlanError::LotTooSmall { found: lot_size };
+        let too_small = PlanError::LotTooSmall {
+            found: lot_size,
+            least: 2,
+        };
         if lot_size < 2 {
             return Err(too_small);
         }
@@ -92,7 +74,11 @@ impl TryFrom<f64> for Aql {
     fn try_from(found: f64) -> Result<Self, PlanError> {
         // The table's number itself, whatever way 0.1 was written; 1e-9 is far under half a step of its digits.
         let known = AQLS.into_iter().find(|aql| (aql - found).abs() < 1e-9);
-        known.map(Self).ok_or(PlanError::UnknownAql { found })
+        known.map(Self).ok_or_else(|| PlanError::UnknownAql {
+            found,
+            table: TABLE,
+            known: listed(),
+        })
     }
 }
 
@@ -127,6 +113,8 @@ pub enum Arrow {
 /// A single sampling plan. An arrow in the table takes the sample size of the plan it points to.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 pub struct SinglePlan {
+    /// The state of inspection the plan is for.
+    pub state: State,
     /// The letter that lot size and level gave.
     pub printed_letter: CodeLetter,
     /// The letter whose plan is used.
@@ -141,34 +129,43 @@ pub struct SinglePlan {
     pub arrow: Arrow,
 }
 
-/// The plan for a lot of `lot_size` springs under normal inspection.
+/// The plan for a lot of `lot_size` springs.
 ///
 /// # Errors
 /// [`PlanError::LotTooSmall`] under 2 springs.
-pub fn normal_single(lot_size: u64, level: Level, aql: Aql) -> Result<SinglePlan, PlanError> {
+pub fn single(
+    lot_size: u64,
+    level: Level,
+    aql: Aql,
+    state: State,
+) -> Result<SinglePlan, PlanError> {
     let printed_letter = CodeLetter::of(lot_size, level)?;
-    let no_plan = PlanError::NoPlan {
-        letter: printed_letter,
-        aql,
+    let no_plan = || PlanError::NoPlan {
+        table: TABLE,
+        letter: printed_letter.0,
+        aql: aql.0,
+        state,
     };
-    let place = |letter: CodeLetter| SIZES.iter().position(|size| size.0 == letter.0);
+    let sizes = sizes(state);
+    let row = sizes
+        .iter()
+        .position(|(letter, _)| *letter == printed_letter.0);
     let column = AQLS
         .iter()
         .position(|known| known.total_cmp(&aql.0).is_eq());
-    let (Some(row), Some(column)) = (place(printed_letter), column) else {
-        return Err(no_plan);
-    };
-    let plan_in = |row: usize| match cell(row, column) {
-        Cell::Plan(accept) => SIZES.get(row).map(|size| (*size, accept)),
+    let (row, column) = row.zip(column).ok_or_else(no_plan)?;
+    let plan_in = |row: usize| match cell(state, row, column) {
+        Cell::Plan(accept) => sizes.get(row).map(|size| (*size, accept)),
         Cell::Down | Cell::Up => None,
     };
-    let (arrow, found) = match cell(row, column) {
+    let (arrow, found) = match cell(state, row, column) {
         Cell::Plan(_) => (Arrow::None, plan_in(row)),
-        Cell::Down => (Arrow::Down, (row..SIZES.len()).find_map(plan_in)),
+        Cell::Down => (Arrow::Down, (row..sizes.len()).find_map(plan_in)),
         Cell::Up => (Arrow::Up, (0..row).rev().find_map(plan_in)),
     };
-    let ((letter, sample_size), accept) = found.ok_or(no_plan)?;
+    let ((letter, sample_size), accept) = found.ok_or_else(no_plan)?;
     Ok(SinglePlan {
+        state,
         printed_letter,
         letter: CodeLetter(letter),
         sample_size,
@@ -176,6 +173,14 @@ pub fn normal_single(lot_size: u64, level: Level, aql: Aql) -> Result<SinglePlan
         reject: accept + 1,
         arrow,
     })
+}
+
+/// The next tighter AQL of the table; `None` below the tightest.
+pub fn tighter(aql: Aql) -> Option<Aql> {
+    AQLS.into_iter()
+        .rev()
+        .find(|known| *known < aql.0 - 1e-9)
+        .map(Aql)
 }
 
 /// Chance that `plan` accepts a stream of lots with a share `p` (0 to 1) of nonconforming springs, binomial.
