@@ -10,6 +10,14 @@ pub mod text;
 
 pub mod quantity;
 
+pub mod formula;
+
+pub mod material;
+
+pub mod standard;
+
+pub mod spring;
+
 pub mod drawing;
 
 pub mod rig;
@@ -19,6 +27,8 @@ pub mod export;
 pub mod intake;
 
 pub mod curve;
+
+pub mod review;
 
 pub mod fit;
 

@@ -10,6 +10,7 @@ mod loops;
 mod measure;
 mod rate;
 mod scales;
+mod stage;
 
 pub use average::average;
 pub use budget::{Estimate, Line, Part, Uncertainty, combine};
@@ -19,3 +20,4 @@ pub use measure::{
 };
 pub use rate::{RateFit, judged};
 pub use scales::scale_lines;
+pub use stage::{StageWindow, stage_windows};

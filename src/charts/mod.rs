@@ -5,6 +5,7 @@ mod bounds;
 mod check;
 mod compared;
 mod curves;
+mod expected;
 mod field;
 mod histogram;
 mod ids;
@@ -14,6 +15,7 @@ mod trend;
 mod values;
 
 pub(crate) use check::check;
+pub(crate) use expected::expected;
 pub(crate) use study::study;
 
 use crate::curve::{Axis, Reduced};

@@ -207,9 +207,24 @@ pub(super) struct ExpectArgs {
     /// Load and stress at this length in mm
     #[arg(long, value_name = "MM")]
     pub(super) at_length: Option<f64>,
-    /// As JSON
+    /// Folder for report.html, report.pdf, the chart and result.json; nothing is written without it
+    #[arg(long, value_name = "DIR")]
+    pub(super) out: Option<PathBuf>,
+    /// Only result.json, no report and no chart
+    #[arg(long, requires = "out")]
+    pub(super) no_report: bool,
+    /// The result as JSON on stdout, and nothing else there
     #[arg(long)]
     pub(super) json: bool,
+    /// A folder with templates of your own: report.html, report.typ
+    #[arg(long, value_name = "DIR")]
+    pub(super) templates: Option<PathBuf>,
+    /// Units that people read; JSON is always mm and N
+    #[arg(long, value_enum, default_value_t = ShowIn::MmN, value_name = "UNITS")]
+    pub(super) show_in: ShowIn,
+    /// Date on the report; else SOURCE_DATE_EPOCH, else today (UTC)
+    #[arg(long, value_name = "YYYY-MM-DD")]
+    pub(super) date: Option<Date>,
 }
 
 #[derive(Debug, Args)]

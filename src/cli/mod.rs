@@ -66,7 +66,7 @@ fn dispatch(arguments: &Arguments, out: &mut impl Write) -> miette::Result<u8> {
         Command::Accept(args) => accept::run(args, arguments.quiet, out),
         Command::Rate(args) => rate::run(args, out),
         Command::Rig { command } => rig::run(command, arguments.quiet, out),
-        Command::Expect(args) => expect::run(args, out),
+        Command::Expect(args) => expect::run(args, arguments.quiet, out),
         Command::Lots(args) => lots::run(args, out),
         Command::Recheck(args) => recheck::run(args, out),
         Command::Completions { shell } => Ok(shell::completions(*shell, out)),

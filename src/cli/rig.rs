@@ -123,7 +123,7 @@ fn repeat(args: &RigArgs, quiet: bool, out: &mut impl Write) -> miette::Result<u
     Ok(status(repeated.record.decision))
 }
 
-fn listed(files: &[OutFile]) -> Vec<OutputFile> {
+pub(super) fn listed(files: &[OutFile]) -> Vec<OutputFile> {
     let one = |file: &OutFile| OutputFile {
         path: file.path.clone(),
         sha256: hex(&Sha256::digest(&file.bytes)),

@@ -12,7 +12,7 @@ mod rig;
 mod threads;
 
 pub use accept::{Accepted, Memory, Options, Past, accept};
-pub use expect::{Ask, Expected, MemberAnswer, StressAnswer, expect};
+pub use expect::{Ask, expect};
 pub use history::read_history;
 pub use lots::{Listing, LotsError, Query, lots};
 pub use rate::{Bench, Guess, LoadAt, RateOptions, RateResult, rate};

@@ -140,6 +140,7 @@ pub fn rate(exports: &[String], options: &RateOptions) -> miette::Result<Vec<Rat
             method: Method::Fit,
             full_load: None,
             wanted: &wanted,
+            stages: &[],
             caliper: &[],
         };
         let how = How {

@@ -3,6 +3,8 @@
 
 mod budget;
 mod check;
+mod expect;
+mod expect_facts;
 mod facts;
 mod fits;
 mod frame;
@@ -13,6 +15,7 @@ mod plan;
 mod process;
 mod provenance;
 mod springs;
+mod strength;
 mod study;
 mod supplier;
 mod table;
@@ -21,6 +24,7 @@ mod theory;
 use serde::Serialize;
 
 pub use check::check_page;
+pub use expect::expected_page;
 pub(crate) use facts::labelled;
 pub use facts::{Fact, Facts};
 pub use page::{Page, PageDecision};
@@ -123,7 +127,7 @@ impl Model {
             details: springs::details(record, show_in),
             fits: fits::section(record, show_in),
             budget: budget::section(record, show_in),
-            theory: theory::section(record, show_in),
+            theory: theory::section(&record.theory, show_in),
             provenance: provenance::section(record),
             supplier: supplier::page(record, show_in),
             signatures: ["Inspected by", "Decision released by"]

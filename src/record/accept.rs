@@ -23,6 +23,8 @@ use crate::units::{Finite, Millimetres};
 pub enum Kind {
     /// `accept`.
     Accept,
+    /// `expect`.
+    Expect,
 }
 
 /// What simple acceptance would have said, and whose risk it is.

@@ -3,20 +3,17 @@
 use schemars::JsonSchema;
 use serde::{Deserialize, Serialize};
 
-use crate::units::{Finite, Millimetres, Newtons, NewtonsPerMillimetre};
+use crate::review::DrawingFinding;
+use crate::units::{Finite, Millimetres};
 
 /// Something the reader of page one must know.
 #[derive(Clone, Debug, PartialEq, Serialize, Deserialize, JsonSchema)]
 #[serde(tag = "code", rename_all = "snake_case")]
 pub enum Caution {
-    /// The stated rate is not what the geometry gives.
-    RateNotFromGeometry {
-        /// Stated nominal rate.
-        stated: NewtonsPerMillimetre,
-        /// Rate from the geometry.
-        theory: NewtonsPerMillimetre,
-        /// Expanded uncertainty (k = 2) of the theory.
-        expanded_uncertainty: NewtonsPerMillimetre,
+    /// The drawing does not agree with itself.
+    Drawing {
+        /// What does not agree.
+        finding: DrawingFinding,
     },
     /// Springs whose rate is far from what is stated, and what would give such a rate.
     OddRatio {
@@ -118,13 +115,6 @@ pub enum Caution {
         /// Which.
         what: Vec<String>,
     },
-    /// A test length below the smallest permitted length.
-    LengthBelowSmallest {
-        /// The test length.
-        at_length_mm: Millimetres,
-        /// Ln.
-        smallest_mm: Millimetres,
-    },
     /// The units were confirmed by hand over a plausibility finding.
     UnitsConfirmed {
         /// What had been found.
@@ -158,20 +148,6 @@ pub enum Caution {
         name: String,
         /// Length of a load.
         at_length_mm: Option<Millimetres>,
-    },
-    /// A required load that rate and free length do not give.
-    LoadNotFromRate {
-        /// The test length.
-        at_length_mm: Millimetres,
-        /// Nominal load as required.
-        stated: Newtons,
-        /// Nominal rate times the deflection there.
-        expected: Newtons,
-    },
-    /// The drawn free length lies outside the limits required of it.
-    FreeLengthNotAsDrawn {
-        /// As drawn.
-        drawn: Millimetres,
     },
     /// The free lengths of the whole lot lie off the drawn one by much the same.
     LengthsShifted {

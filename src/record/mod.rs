@@ -6,6 +6,7 @@ mod bench_caution;
 mod caution;
 mod check;
 mod compare;
+mod expect;
 mod facts;
 mod find;
 mod plan;
@@ -25,6 +26,9 @@ pub use check::{
     LastCheck, ReferenceFacts,
 };
 pub use compare::{ACROSS_VERSIONS, Closeness, Difference, differences};
+pub use expect::{
+    Expected, ExpectedRequirement, MemberAnswer, ServiceFacts, StageFacts, StressAnswer,
+};
 pub use facts::{MemberFacts, RigFacts, StressFacts, TheoryFacts, WindowFacts};
 pub use find::{Key, find, occurring};
 pub use plan::{ClassPlan, PlanFacts, SettlingFacts, StateFacts, VariablesFacts, ZeroAcceptFacts};
@@ -45,6 +49,10 @@ pub use crate::characteristic::Part;
 pub use crate::curve::WindowOf;
 pub use crate::drawing::Policy as Undecided;
 pub use crate::lot::{Advice, Comparison, Decision, LotReason};
+pub use crate::review::{
+    Basis, Clearance, DrawingFinding, Fatigue, FatigueMargin, Fitting, Needed, Outlook,
+    Permissible, ReadAs, SpringBuckling, StrengthGap, StrengthLine, StressPlace,
+};
 pub use crate::sampling::Reason as StateReason;
 pub use crate::verdict::{Reason, Verdict};
 

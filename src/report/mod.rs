@@ -6,6 +6,7 @@ mod error;
 mod gate;
 mod html;
 mod pdf;
+mod plain;
 mod summary;
 
 pub use csv::springs_csv;
@@ -18,7 +19,7 @@ use crate::charts;
 use crate::charts::Chart;
 use crate::curve::Reduced;
 use crate::model::{Model, Page};
-use crate::record::{AcceptRecord, CheckRecord, RepeatRecord};
+use crate::record::{AcceptRecord, CheckRecord, Expected, RepeatRecord};
 use crate::units::System;
 
 /// A template and the name of its file, for faults.
@@ -136,4 +137,22 @@ fn files(
         bytes: chart.svg.into_bytes(),
     }));
     Ok(files)
+}
+
+/// The files of what a drawing leads to expect: its page and its chart.
+///
+/// # Errors
+/// [`ReportError`] as in [`accept`].
+pub fn expected(
+    record: &Expected,
+    page: &Page,
+    show_in: System,
+    templates: &Templates,
+) -> Result<Vec<OutFile>, ReportError> {
+    files(page, charts::expected(record, show_in)?, templates)
+}
+
+/// A whole page for the terminal; it ends with a line end.
+pub fn page_text(page: &Page) -> String {
+    plain::text(page)
 }

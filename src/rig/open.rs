@@ -195,6 +195,7 @@ fn read_repeatability(root: Table<'_>, units: System) -> Option<Vec<(&'static st
         (Quantity::Hysteresis.name(), 1.0),
         (Quantity::Set.name(), units.length()),
         (Quantity::Straightness.name(), 1.0),
+        (Quantity::Knee(1).name(), units.length()),
     ];
     let words = of.map(|(name, scale)| (name, (name, scale)));
     for table in root.tables("repeatability") {

@@ -64,6 +64,9 @@ pub(crate) fn absence(of: &Reason, show_in: System) -> String {
         Reason::UncertaintyUnknown => {
             "too few independent points to give an uncertainty, and the rig file states no repeatability".to_owned()
         }
+        Reason::NoKnee => {
+            "the slopes before and after do not differ enough for a knee; is a member missing?".to_owned()
+        }
         Reason::NotMeasured => "not measured".to_owned(),
         Reason::NotInspected => "not inspected, as the lot file says".to_owned(),
     }

@@ -92,7 +92,7 @@ fn odd_rates(drawing: &Drawing, judged: &[Judged]) -> Option<Caution> {
 
 /// Nearly all free lengths off the drawn one by much the same: the springs may be wrong, or the length zero.
 fn shifted(drawing: &Drawing, judged: &[Judged]) -> Option<Caution> {
-    let drawn = drawing.members.first()?.free.nominal;
+    let drawn = drawing.theory.free.get();
     let lengths = judged
         .iter()
         .filter_map(|spring| value_of(&spring.result, Quantity::FreeLength)?.value);

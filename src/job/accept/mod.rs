@@ -21,7 +21,7 @@ use std::path::Path;
 use jiff::civil::Date;
 use rayon::prelude::*;
 
-use crate::characteristic::{Setup, wanted};
+use crate::characteristic::{Setup, stage_windows, wanted};
 use crate::curve::{Kept, Reduced, full_load, nominal_rate, window_of};
 use crate::doubt::doubt;
 use crate::drawing::{Drawing, Requirement, Rule};
@@ -85,6 +85,7 @@ pub fn accept(path: &Path, as_written: &str, options: &Options) -> miette::Resul
     let files = files::open(path, as_written)?;
     let options = &options.asked(&files)?;
     let wanted = wanted(&files.drawing);
+    let stages = stage_windows(&files.drawing);
     let setup = Setup {
         rig: &files.rig,
         conditions: files.lot.conditions,
@@ -93,6 +94,7 @@ pub fn accept(path: &Path, as_written: &str, options: &Options) -> miette::Resul
         method: files.drawing.rate_test.method,
         full_load: Some(full_load(&files.drawing)),
         wanted: &wanted,
+        stages: &stages,
         caliper: &files.lot.caliper,
     };
     let how = How {
@@ -130,6 +132,7 @@ fn read_all(files: &Files, how: How<'_>) -> miette::Result<(Readings, Sources)> 
         files.drawing.input.clone(),
         files.rig.input.clone(),
     ];
+    inputs.extend(files.drawing.materials.clone());
     inputs.extend(files.caliper.input.clone());
     let mut sources = Sources {
         inputs,

@@ -113,6 +113,7 @@ fn read(
         method: Method::Fit,
         full_load: None,
         wanted,
+        stages: &[],
         caliper: &standard,
     };
     let how = How {

@@ -148,6 +148,7 @@ fn read(
         method: drawing.map_or(Method::Fit, |drawing| drawing.rate_test.method),
         full_load: drawing.map(full_load),
         wanted: quantities,
+        stages: &[],
         caliper: &[],
     };
     let how = How {
