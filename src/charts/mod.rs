@@ -7,6 +7,7 @@ mod curves;
 mod field;
 mod histogram;
 mod ids;
+pub(crate) mod operating;
 mod share;
 mod values;
 

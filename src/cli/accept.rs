@@ -82,17 +82,21 @@ fn write(
         bytes: report::springs_csv(record),
     });
     files.sort_by(|a, b| a.path.cmp(&b.path));
-    let listed = |file: &OutFile| OutputFile {
-        path: file.path.clone(),
-        sha256: hex(&Sha256::digest(&file.bytes)),
-    };
     accepted.record.files = files.iter().map(listed).collect();
     target.write(&files, &accepted.record)?;
     Ok(())
 }
 
+/// A file as a result lists it.
+pub(super) fn listed(file: &OutFile) -> OutputFile {
+    OutputFile {
+        path: file.path.clone(),
+        sha256: hex(&Sha256::digest(&file.bytes)),
+    }
+}
+
 /// The date of the judgement: as given, else SOURCE_DATE_EPOCH, else today, in UTC.
-fn date(given: Option<Date>) -> miette::Result<Date> {
+pub(super) fn date(given: Option<Date>) -> miette::Result<Date> {
     if let Some(date) = given {
         return Ok(date);
     }

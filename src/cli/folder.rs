@@ -5,9 +5,9 @@ use std::fs::{self, File};
 use std::io::{self, BufWriter, Write};
 use std::path::{Path, PathBuf};
 
-use serde::Deserialize;
+use serde::{Deserialize, Serialize};
 
-use crate::record::{AcceptRecord, OutputFile, TOOL};
+use crate::record::{OutputFile, TOOL};
 use crate::report::OutFile;
 
 /// The file that makes a folder a result.
@@ -98,7 +98,7 @@ impl Target {
     pub(super) fn write(
         &self,
         files: &[OutFile],
-        result: &AcceptRecord,
+        result: &impl Serialize,
     ) -> Result<(), FolderError> {
         let dir = if self.dir.exists() {
             self.dir.canonicalize()
@@ -145,7 +145,7 @@ impl Target {
 ///
 /// # Errors
 /// Where `out` cannot be written.
-pub(super) fn json(result: &AcceptRecord, mut out: &mut dyn Write) -> io::Result<()> {
+pub(super) fn json(result: &impl Serialize, mut out: &mut dyn Write) -> io::Result<()> {
     serde_json::to_writer(&mut out, result)?;
     out.write_all(b"\n")
 }

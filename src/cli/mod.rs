@@ -4,6 +4,7 @@ mod accept;
 mod args;
 mod expect;
 mod folder;
+mod plan;
 mod rate;
 mod shell;
 mod show;
@@ -62,6 +63,7 @@ fn dispatch(arguments: &Arguments, out: &mut impl Write) -> miette::Result<u8> {
         Command::Accept(args) => accept::run(args, arguments.quiet, out),
         Command::Rate(args) => rate::run(args, out),
         Command::Expect(args) => expect::run(args, out),
+        Command::Plan(args) => plan::run(args, arguments.quiet, out),
         Command::Completions { shell } => Ok(shell::completions(*shell, out)),
         Command::Manual { dir } => shell::manual(dir),
     }

@@ -5,6 +5,7 @@ mod budget;
 mod facts;
 mod fits;
 mod named;
+mod offers;
 mod page_one;
 mod plan;
 mod process;
@@ -18,6 +19,7 @@ use serde::Serialize;
 
 pub(crate) use facts::labelled;
 pub use facts::{Fact, Facts};
+pub use offers::Offers;
 pub use page_one::{Deciding, Note};
 pub(crate) use springs::remarks;
 pub use table::{Cell, Column, Holds, Row, Section, Table};

@@ -22,6 +22,8 @@ use crate::units::{Finite, Millimetres};
 pub enum Kind {
     /// `accept`.
     Accept,
+    /// `plan`.
+    Plan,
 }
 
 /// What simple acceptance would have said, and whose risk it is.

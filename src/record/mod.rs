@@ -5,6 +5,7 @@ mod accept;
 mod caution;
 mod facts;
 mod find;
+mod offers;
 mod plan;
 mod process;
 mod spring;
@@ -16,6 +17,7 @@ pub use accept::{
 pub use caution::{Caution, Oddity};
 pub use facts::{MemberFacts, RigFacts, StressFacts, TheoryFacts, WindowFacts};
 pub use find::{Key, find, occurring};
+pub use offers::{BenchFacts, CurvePoint, OfferFacts, OffersRecord};
 pub use plan::{ClassPlan, PlanFacts, SettlingFacts, StateFacts, VariablesFacts, ZeroAcceptFacts};
 pub use process::{EstimatedFacts, IntervalFacts, ProcessFacts, ShapeFacts};
 pub use spring::{

@@ -5,11 +5,13 @@ mod csv;
 mod error;
 mod gate;
 mod html;
+mod offers;
 mod pdf;
 mod summary;
 
 pub use csv::springs_csv;
 pub use error::ReportError;
+pub use offers::{offers, offers_summary};
 pub use summary::summary;
 
 use crate::charts;

@@ -166,6 +166,25 @@ fn merge(
     outcome.decision = gravest(&all);
     outcome.simple = gravest(&all_simple);
     outcome.reasons.extend(reasons);
+    // what decides stands first: a terminal shows only a few
+    outcome.reasons.sort_by_key(weight);
+}
+
+/// Rejection first, then what is undecided, then acceptance.
+const fn weight(reason: &LotReason) -> u8 {
+    match reason {
+        LotReason::ProvenFailures { .. }
+        | LotReason::ByVariables {
+            decision: Decision::Rejected,
+            ..
+        } => 0,
+        LotReason::WithinAcceptance { .. }
+        | LotReason::ByVariables {
+            decision: Decision::Accepted,
+            ..
+        } => 2,
+        _ => 1,
+    }
 }
 
 /// What a plan by variables does not decide: springs proven failing are named; what was seen has no agreed number.
