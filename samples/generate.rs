@@ -20,6 +20,8 @@ mod known;
 mod known_text;
 #[path = "generate/nested.rs"]
 mod nested;
+#[path = "generate/plans.rs"]
+mod plans;
 #[path = "generate/random.rs"]
 mod random;
 #[path = "generate/rejected.rs"]
@@ -70,7 +72,8 @@ fn run(words: &[String]) -> Outcome {
             accepted::write(&place.join("accepted"))?;
             rejected::write(&place.join("rejected"))?;
             undecided::write(&place.join("undecided"))?;
-            nested::write(&place.join("nested"))
+            nested::write(&place.join("nested"))?;
+            plans::write(&place.join("plans"))
         }
         "large" => {
             let [springs, rows] = options(rest, [("--springs", 10_000), ("--rows", 1000)])?;

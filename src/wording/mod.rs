@@ -14,7 +14,7 @@ pub use figure::{
     with_uncertainty, with_unit,
 };
 pub(crate) use lot::{decided, decision_word, simple_line, terms, why};
-pub(crate) use plan::{compared, readings, state};
+pub(crate) use plan::{compared, readings, settled_early, state};
 pub(crate) use spring::{advice, disposition, rule_used, verdict_reason, verdict_word};
 
 use crate::quantity::{Quantity, Unit};
