@@ -5,6 +5,7 @@ mod args;
 mod expect;
 mod folder;
 mod lots;
+mod plan;
 mod rate;
 mod recheck;
 mod rig;
@@ -69,6 +70,7 @@ fn dispatch(arguments: &Arguments, out: &mut impl Write) -> miette::Result<u8> {
         Command::Expect(args) => expect::run(args, arguments.quiet, out),
         Command::Lots(args) => lots::run(args, out),
         Command::Recheck(args) => recheck::run(args, out),
+        Command::Plan(args) => plan::run(args, arguments.quiet, out),
         Command::Completions { shell } => Ok(shell::completions(*shell, out)),
         Command::Manual { dir } => shell::manual(dir),
     }
