@@ -16,6 +16,8 @@ pub mod rig;
 
 pub mod export;
 
+pub mod oddity;
+
 pub mod intake;
 
 pub mod curve;

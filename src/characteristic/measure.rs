@@ -10,7 +10,7 @@ use crate::stats::StatsError;
 use super::budget::{Estimate, Line, Part, with_repeatability};
 use super::length::{self, OwnFree, Solid};
 use super::rate::{self, RateFit};
-use super::{load, loops};
+use super::{load, loops, odd};
 
 /// Work gained up to this is never called a reversal, %: drift of a load cell between strokes may look like it.
 const LEAST_GAIN: f64 = 0.5;
@@ -86,6 +86,14 @@ pub enum Absence {
     OneLoadingStroke,
     /// Nothing measured it.
     NotMeasured,
+    /// The load cell was at its end before the curve came there.
+    LoadCellAtItsEnd,
+    /// The load steps, or the travel leaps back, on its stroke or before it: the spring, the grip or the scale slipped.
+    LoadSteps,
+    /// Rows are missing where it is taken from.
+    RowsMissing,
+    /// The empty platens show another load on its stroke than before the first contact.
+    ZeroShifted,
 }
 
 /// What is known of a characteristic.
@@ -184,7 +192,7 @@ pub fn measure(
                 None => Measured::Absent(Absence::NotMeasured),
             }
         } else {
-            spring.measure(quantity).map_err(failed)?
+            spring.unless_odd(quantity).map_err(failed)?
         };
         refuse_reversed(curve, quantity, &measured)?;
         characteristics.push(Characteristic { quantity, measured });
@@ -253,6 +261,32 @@ struct Spring<'a> {
 }
 
 impl Spring<'_> {
+    /// Measures, unless something odd in the curve forbids it.
+    fn unless_odd(&self, quantity: Quantity) -> Result<Measured, StatsError> {
+        let (setup, curve, path) = (self.setup, self.curve, rate::judged(self.setup, self.curve));
+        if let Some(why) = odd::withheld(setup, curve, path, self.fit.as_ref().ok(), quantity) {
+            return Ok(Measured::Absent(why));
+        }
+        if let (Quantity::LoadAt(length), Some(path)) = (quantity, path)
+            && load::origin(setup, curve, self.own)
+                .is_some_and(|origin| path.is_missing(origin.u - length.get()))
+        {
+            return Ok(Measured::Absent(Absence::RowsMissing));
+        }
+        let short = |why: &Absence| {
+            matches!(
+                why,
+                Absence::WindowNotReached { .. } | Absence::LengthNotReached
+            )
+        };
+        Ok(match self.measure(quantity)? {
+            Measured::Absent(why) if curve.saturated && short(&why) => {
+                Measured::Absent(Absence::LoadCellAtItsEnd)
+            }
+            measured => measured,
+        })
+    }
+
     fn measure(&self, quantity: Quantity) -> Result<Measured, StatsError> {
         let (setup, curve) = (self.setup, self.curve);
         let residual_sd = self.fit.as_ref().ok().map(|fit| fit.line.residual_sd);

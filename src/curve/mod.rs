@@ -6,8 +6,10 @@
 mod contact;
 mod correct;
 mod error;
+mod inspect;
 mod path;
 mod reduced;
+mod screen;
 mod site;
 mod solid;
 mod strokes;
@@ -18,6 +20,7 @@ pub use correct::{Curve, Frame, Zero, correct};
 pub use error::CurveError;
 pub use path::{Node, Path, Side};
 pub use reduced::{Axis, MOST_POINTS, Reduced, thin};
+pub use screen::OddRows;
 pub use solid::Rise;
 pub use strokes::{Stroke, Strokes, split};
 pub use window::{Bounds, WindowMiss, WindowOf, full_load, nominal_rate, window_of};

@@ -3,6 +3,7 @@
 mod accept;
 mod expect;
 mod facts;
+mod odd;
 mod rate;
 mod read;
 mod threads;

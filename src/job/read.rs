@@ -8,7 +8,9 @@ use std::sync::mpsc::sync_channel;
 use rayon::prelude::*;
 
 use crate::characteristic::{MeasureError, Measurement, Setup, measure};
-use crate::curve::{Axis, Curve, MOST_POINTS, Path as Stroke, Reduced, Zero, correct, thin};
+use crate::curve::{
+    Axis, Curve, MOST_POINTS, OddRows, Path as Stroke, Reduced, Zero, correct, thin,
+};
 use crate::export::{BLOCK_BYTES, ExportError, Ledger, RawCurve};
 use crate::intake::Export;
 use crate::quantity::Quantity;
@@ -36,6 +38,8 @@ pub(super) struct Reading {
     pub(super) loads: (f64, f64),
     /// Loading strokes.
     pub(super) strokes: usize,
+    /// What is odd in its rows.
+    pub(super) odd: Vec<OddRows>,
     /// What was measured.
     pub(super) measurement: Measurement,
     /// The curve for the charts, where they are wanted.
@@ -95,9 +99,12 @@ fn read_at(path: &Path, written: &str, how: How<'_>) -> Result<Batch, ExportErro
         path: shown.clone(),
         sha256: read.sha256,
     };
+    let mut ledger = ledger(shown, &read.ledger);
+    let measured = readings.iter().filter_map(|reading| reading.as_ref().ok());
+    super::odd::set_aside(&mut ledger, measured.flat_map(|reading| &reading.odd));
     Ok(Batch {
         readings,
-        ledger: ledger(shown, &read.ledger),
+        ledger,
         input,
     })
 }
@@ -139,6 +146,7 @@ fn reading(raw: &RawCurve, how: How<'_>) -> Result<Reading, MeasureError> {
         zero_read: matches!(curve.zero, Zero::Read { .. }),
         loads: curve.loads,
         strokes: curve.loading.len(),
+        odd: curve.odd,
         measurement,
         reduced,
     })

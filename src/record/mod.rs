@@ -15,7 +15,7 @@ pub use caution::{Caution, Oddity};
 pub use facts::{MemberFacts, RigFacts, StressFacts, TheoryFacts, WindowFacts};
 pub use find::{Key, find, occurring};
 pub use spring::{
-    BudgetFigure, CharacteristicResult, FindingResult, FitFacts, LackFacts, LedgerFacts,
+    BudgetFigure, CharacteristicResult, FindingResult, FitFacts, LackFacts, LedgerFacts, OddLines,
     RepeatFacts, SetAside, SpringResult,
 };
 

@@ -36,6 +36,7 @@ mod bad_input_curves;
 mod bad_input_exports;
 mod bad_input_files;
 mod bad_input_units;
+mod corruptions;
 mod coverage;
 mod coverage_cases;
 mod export;

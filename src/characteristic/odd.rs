@@ -1,0 +1,72 @@
+//! Which values an oddity of the curve withholds: none is made from rows that do not hold it.
+
+use crate::curve::{Curve, Path};
+use crate::oddity::Odd;
+use crate::quantity::Quantity;
+
+use super::measure::{Absence, Setup};
+use super::rate::RateFit;
+
+/// A gap within the window hides no bend up to this share of it; one within a loop, up to this share of its travel.
+const OF_WINDOW: f64 = 0.2;
+const OF_LOOP: f64 = 0.05;
+
+/// Why `quantity` has no value on this curve, whose judged stroke is `path`; `None` where nothing odd forbids it.
+pub(super) fn withheld(
+    setup: &Setup<'_>,
+    curve: &Curve,
+    path: Option<&Path>,
+    fit: Option<&RateFit>,
+    quantity: Quantity,
+) -> Option<Absence> {
+    let first = usize::try_from(setup.conditions.presetting_recorded)
+        .ok()
+        .and_then(|preset| curve.loading.get(preset));
+    let last = (curve.loading.last(), curve.unloading.last());
+    let found = |odd: bool, why: Absence| odd.then_some(why);
+    let shifted = |path: Option<&Path>| {
+        found(
+            path.is_some_and(|path| path.zero_shifted),
+            Absence::ZeroShifted,
+        )
+    };
+    // What slipped once is off from there on: a step counts against all later strokes.
+    let slipped =
+        |by: Option<&Path>| found(by.is_some_and(|by| slipped(curve, by)), Absence::LoadSteps);
+    match quantity {
+        Quantity::Rate | Quantity::Straightness => {
+            let (path, (from, to)) = (path?, fit?.window);
+            let wide = path.widest_gap(from, to) > OF_WINDOW * (to - from);
+            found(path.steps_between(from, to), Absence::LoadSteps)
+                .or_else(|| found(wide, Absence::RowsMissing))
+        }
+        Quantity::LoadAt(_) => slipped(path).or_else(|| shifted(path)),
+        Quantity::SolidLength => slipped(last.0),
+        Quantity::FreeLength => slipped(first).or_else(|| shifted(first)),
+        Quantity::Set => slipped(last.0)
+            .or_else(|| shifted(curve.loading.first()))
+            .or_else(|| shifted(last.0)),
+        Quantity::Hysteresis => {
+            let wide = |path: Option<&Path>| {
+                path.is_some_and(|path| {
+                    let (from, to) = path.reach().unwrap_or((0.0, 0.0));
+                    path.widest_gap(from, to) > OF_LOOP * (to - from)
+                })
+            };
+            found(curve.saturated, Absence::LoadCellAtItsEnd)
+                .or_else(|| slipped(last.0).or_else(|| slipped(last.1)))
+                .or_else(|| shifted(last.0).or_else(|| shifted(last.1)))
+                .or_else(|| found(wide(last.0) || wide(last.1), Absence::RowsMissing))
+        }
+        Quantity::OutsideDiameter | Quantity::InsideDiameter | Quantity::WireDiameter => None,
+    }
+}
+
+/// Whether the load steps, or the travel leaps back, on the stroke `by` or before it.
+fn slipped(curve: &Curve, by: &Path) -> bool {
+    let end = by.nodes.iter().map(|node| node.last_line).max();
+    curve
+        .odd
+        .iter()
+        .any(|rows| rows.what == Odd::LoadSteps && Some(rows.first_line) <= end)
+}
