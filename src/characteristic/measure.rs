@@ -94,6 +94,8 @@ pub enum Absence {
     RowsMissing,
     /// The empty platens show another load on its stroke than before the first contact.
     ZeroShifted,
+    /// Two strokes of the same travel differ in rate as no spring does from one stroke to the next.
+    StrokesDiffer,
 }
 
 /// What is known of a characteristic.

@@ -1,6 +1,7 @@
 //! Which values an oddity of the curve withholds: none is made from rows that do not hold it.
 
 use crate::curve::{Curve, Path};
+use crate::drawing::Way;
 use crate::oddity::Odd;
 use crate::quantity::Quantity;
 
@@ -10,6 +11,12 @@ use super::rate::RateFit;
 /// A gap within the window hides no bend up to this share of it; one within a loop, up to this share of its travel.
 const OF_WINDOW: f64 = 0.2;
 const OF_LOOP: f64 = 0.05;
+
+/// Rates of two strokes of one spring are never further apart: share of the rate, and multiple of the loads' scatter
+/// over the travel (the median of twenty tangents has an uncertainty of about eight times that).
+const APART: (f64, f64) = (0.02, 64.0);
+/// Strokes are of the same travel within this share of it.
+const SAME_TRAVEL: f64 = 0.05;
 
 /// Why `quantity` has no value on this curve, whose judged stroke is `path`; `None` where nothing odd forbids it.
 pub(super) fn withheld(
@@ -33,6 +40,9 @@ pub(super) fn withheld(
     // What slipped once is off from there on: a step counts against all later strokes.
     let slipped =
         |by: Option<&Path>| found(by.is_some_and(|by| slipped(curve, by)), Absence::LoadSteps);
+    if !quantity.by_caliper() && path.is_some_and(|path| of_two(setup, curve, path)) {
+        return Some(Absence::StrokesDiffer);
+    }
     match quantity {
         Quantity::Rate | Quantity::Straightness => {
             let (path, (from, to)) = (path?, fit?.window);
@@ -60,6 +70,30 @@ pub(super) fn withheld(
         }
         Quantity::OutsideDiameter | Quantity::InsideDiameter | Quantity::WireDiameter => None,
     }
+}
+
+/// Whether another loading stroke after presetting, of the same travel as the judged one, has another rate: by 2 %, and
+/// by eight times what the scatter of its loads does to a rate of this kind.
+fn of_two(setup: &Setup<'_>, curve: &Curve, judged: &Path) -> bool {
+    let preset = usize::try_from(setup.conditions.presetting_recorded).unwrap_or(usize::MAX);
+    let strokes = curve.loading.get(preset..).unwrap_or(&[]);
+    let (Some(rate), Some((_, end)), Some(scatter)) =
+        (judged.rate, judged.reach(), judged.scatter())
+    else {
+        return false;
+    };
+    let travel = end - judged.start;
+    let bound = (APART.0 * rate).max(APART.1 * scatter / travel);
+    let alike = |path: &&Path| {
+        let near = |a: f64, b: f64| (a - b).abs() < SAME_TRAVEL * travel;
+        near(path.start, judged.start) && path.reach().is_some_and(|reach| near(reach.1, end))
+    };
+    judged.side == Way::Loading
+        && strokes
+            .iter()
+            .filter(alike)
+            .filter_map(|path| path.rate)
+            .any(|other| (other - rate).abs() > bound)
 }
 
 /// Whether the load steps, or the travel leaps back, on the stroke `by` or before it.

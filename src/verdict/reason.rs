@@ -75,6 +75,8 @@ pub enum Reason {
     RowsMissing,
     /// The empty platens show another load on its stroke than before the first contact.
     ZeroShifted,
+    /// Two strokes of the same travel differ in rate as no spring does from one stroke to the next.
+    StrokesDiffer,
 }
 
 impl From<&Absence> for Reason {
@@ -98,6 +100,7 @@ impl From<&Absence> for Reason {
             Absence::LoadSteps => Self::LoadSteps,
             Absence::RowsMissing => Self::RowsMissing,
             Absence::ZeroShifted => Self::ZeroShifted,
+            Absence::StrokesDiffer => Self::StrokesDiffer,
         }
     }
 }
