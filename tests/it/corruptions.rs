@@ -122,7 +122,11 @@ fn judge(files: &[File], timed: bool) -> Came {
         "drawing.toml",
         drawing(REQUIREMENTS, EVERY_SPRING).as_bytes(),
     );
-    write("rig.toml", format!("{RIG}{FORCE_TRAVEL_FRAME}").as_bytes());
+    let clock = if timed { TIME } else { "" };
+    write(
+        "rig.toml",
+        format!("{RIG}{clock}{FORCE_TRAVEL_FRAME}").as_bytes(),
+    );
     write("lot.toml", LOT.as_bytes());
     for (name, bytes) in files {
         write(&format!("springs/{name}"), bytes);
