@@ -22,6 +22,8 @@ pub mod intake;
 
 pub mod curve;
 
+pub mod draft;
+
 pub mod fit;
 
 pub mod characteristic;

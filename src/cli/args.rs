@@ -40,6 +40,11 @@ pub(super) enum Command {
     Rate(RateArgs),
     /// What the drawn spring should do, before anything is measured (exit 1 if the drawing contradicts itself)
     Expect(ExpectArgs),
+    /// A commented starter file on stdout
+    Draft {
+        #[command(subcommand)]
+        kind: Draft,
+    },
     /// Completions for a shell, on stdout
     Completions {
         /// The shell
@@ -49,6 +54,16 @@ pub(super) enum Command {
     Manual {
         /// The folder
         dir: PathBuf,
+    },
+}
+
+#[derive(Debug, Subcommand)]
+pub(super) enum Draft {
+    /// A rig file that reads this export, with the reason for each guess and a line for each doubt
+    Rig {
+        /// An export as the tester wrote it
+        #[arg(value_name = "EXPORT")]
+        export: String,
     },
 }
 

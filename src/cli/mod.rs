@@ -2,6 +2,7 @@
 
 mod accept;
 mod args;
+mod draft;
 mod expect;
 mod folder;
 mod rate;
@@ -62,6 +63,7 @@ fn dispatch(arguments: &Arguments, out: &mut impl Write) -> miette::Result<u8> {
         Command::Accept(args) => accept::run(args, arguments.quiet, out),
         Command::Rate(args) => rate::run(args, out),
         Command::Expect(args) => expect::run(args, out),
+        Command::Draft { kind } => draft::run(kind, out),
         Command::Completions { shell } => Ok(shell::completions(*shell, out)),
         Command::Manual { dir } => shell::manual(dir),
     }

@@ -9,5 +9,5 @@ mod scale;
 pub use dialect::{
     Decimal, Delimiter, Dialect, Encoding, LoadColumn, Pushing, SpringFrom, TravelColumn,
 };
-pub use open::{Compliance, KEYS, Means, Rig, open};
+pub use open::{Compliance, KEYS, Means, Rig, open, parse};
 pub use scale::{Accuracy, Known, Scale, standard_of};

@@ -40,7 +40,7 @@ pub const KEYS: Keys = &[
     ("rig", &["name", "check_every"]),
     ("export", &["header_line", "units_line", "delimiter", "decimal", "encoding", "quoted", "last_line_open", "load", "travel", "time", "spring"]),
     ("export.load", &["column", "unit", "pushing"]),
-    ("export.travel", &["column", "unit", "means", "at_zero_gap"]),
+    ("export.travel", &["column", "unit", "means", "at_zero_gap", "pushing"]),
     ("export.time", &["column", "unit"]),
     ("export.spring", &["from", "column"]),
     ("force", FORCE),
@@ -128,9 +128,16 @@ pub struct Rig {
 /// # Errors
 /// A report of every fault in the file.
 pub fn open(path: &Path, as_written: &str) -> miette::Result<Rig> {
-    let source = Source::open(path, as_written)?;
+    parse(&Source::open(path, as_written)?)
+}
+
+/// The rig file whose text is `source`.
+///
+/// # Errors
+/// A report of every fault in it.
+pub fn parse(source: &Source) -> miette::Result<Rig> {
     let input = source.input("rig");
-    Ok(read_toml(&source, KEYS, |root| read(root, &input))?)
+    Ok(read_toml(source, KEYS, |root| read(root, &input))?)
 }
 
 fn read(root: Table<'_>, input: &InputFile) -> Option<Rig> {

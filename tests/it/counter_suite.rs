@@ -7,7 +7,7 @@ use coilassay::job::{Options, accept};
 use coilassay::record::{Decision, Verdict};
 
 use crate::bench::{Bench, Programme, run};
-use crate::dialects::{Form, GAP};
+use crate::dialects::Form;
 use crate::known_text::REQUIREMENTS;
 use crate::random::Random;
 use crate::rigs::{EVERY_SPRING, drawing, spring};
@@ -38,6 +38,29 @@ fn programme(random: &mut Random) -> Programme {
     }
 }
 
+/// The rows that a spring gives on the bench that writes `form`, and its free length.
+pub(crate) fn measured(
+    form: &Form,
+    (rate, line): (f64, f64),
+    random: &mut Random,
+) -> (Vec<[f64; 3]>, f64) {
+    let specimen = spring(rate, line, random);
+    let bench = Bench {
+        travel: form.scale(),
+        compliance: 0.000_12,
+        empty: random.normal(0.2),
+        noise: random.between(0.01, 0.15),
+        force_unit: form.force_unit(),
+        travel_unit: form.travel.1,
+        ..Bench::perfect()
+    };
+    let mut rows = Vec::new();
+    run(&specimen, &bench, &programme(random), random, |reading| {
+        rows.push([reading.time, reading.travel, reading.force]);
+    });
+    (rows, specimen.free())
+}
+
 fn rig(form: &Form) -> String {
     let (load, travel) = form.steps();
     let zero = match form.means {
@@ -63,27 +86,7 @@ fn decided(number: u64) -> (Result<(Decision, Verdict), String>, bool, Form) {
     } else {
         BAD[pick % BAD.len()]
     };
-    let specimen = spring(rate, line, &mut random);
-    let bench = Bench {
-        travel: form.scale(),
-        compliance: 0.000_12,
-        empty: random.normal(0.2),
-        noise: random.between(0.01, 0.15),
-        force_unit: form.force_unit(),
-        travel_unit: form.travel.1,
-        ..Bench::perfect()
-    };
-    let mut rows = Vec::new();
-    run(
-        &specimen,
-        &bench,
-        &programme(&mut random),
-        &mut random,
-        |reading| {
-            rows.push([reading.time, reading.travel, reading.force]);
-        },
-    );
-    assert!(GAP > 100.0);
+    let (rows, free) = measured(&form, (rate, line), &mut random);
     let folder = tempfile::tempdir().unwrap();
     let write = |name: &str, bytes: &[u8]| text::file(&folder.path().join(name), bytes).unwrap();
     write(
@@ -101,7 +104,7 @@ fn decided(number: u64) -> (Result<(Decision, Verdict), String>, bool, Form) {
     };
     write(
         "caliper.csv",
-        format!("spring,free_length\n,mm\nS-1,{:.3}\n", specimen.free()).as_bytes(),
+        format!("spring,free_length\n,mm\nS-1,{:.3}\n", free).as_bytes(),
     );
     let lot = format!(
         "drawing = \"drawing.toml\"\nrig = \"rig.toml\"\nexports = [\"S-1.csv\"]\n{findings}[lot]\nnumber = \"{number}\"\nsize = 1\n\

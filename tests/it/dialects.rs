@@ -176,6 +176,11 @@ impl Form {
         }
     }
 
+    /// The names of time, travel, load and spring as the header has them.
+    pub(crate) fn labelled_names(&self) -> [String; 5] {
+        self.header()
+    }
+
     fn header(&self) -> [String; 5] {
         let [time, travel, load, spring] = self.names;
         [

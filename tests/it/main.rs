@@ -41,6 +41,7 @@ mod counter_suite;
 mod coverage;
 mod coverage_cases;
 mod dialects;
+mod drafts;
 mod export;
 mod fit_published;
 mod folder;
