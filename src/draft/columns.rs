@@ -57,6 +57,8 @@ struct Seen<'f> {
     name: &'f str,
     unit: Option<UnitWord>,
     values: Option<Vec<f64>>,
+    /// Whether its cells change with nearly every row.
+    steps: bool,
 }
 
 impl Seen<'_> {
@@ -97,7 +99,15 @@ fn seen(form: &Form) -> Vec<Seen<'_>> {
         .map(column)
         .filter_map(|(place, unit, values)| {
             let name = form.names.get(place)?;
-            Some(Seen { name, unit, values })
+            let cells = || form.rows.iter().filter_map(|row| row.get(place));
+            let changes = cells().zip(cells().skip(1)).filter(|(a, b)| a != b).count();
+            let steps = changes * 2 > form.rows.len();
+            Some(Seen {
+                name,
+                unit,
+                values,
+                steps,
+            })
         })
         .collect()
 }
@@ -276,7 +286,16 @@ fn time<'f>(all: &[Seen<'f>], doubts: &mut Vec<String>) -> (Option<&'f str>, Str
 }
 
 fn spring<'f>(all: &[Seen<'f>], doubts: &mut Vec<String>) -> Option<&'f str> {
-    let mut named = all.iter().filter(|seen| seen.says(&SPRING).is_some());
+    // `Federweg` speaks of a travel, and a count of points names no springs: its cells stand together where one goes on.
+    let other = |seen: &Seen<'_>| {
+        seen.unit.is_some()
+            || seen.says(&LOAD).is_some()
+            || seen.says(&TRAVEL).is_some()
+            || seen.steps
+    };
+    let mut named = all
+        .iter()
+        .filter(|seen| seen.says(&SPRING).is_some() && !other(seen));
     let found = named.next()?;
     if let Some(other) = named.next() {
         doubts.push(format!("`{}` would fit too", shown(other.name)));
