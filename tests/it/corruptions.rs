@@ -147,7 +147,9 @@ fn came(lot: &Path) -> Came {
         Ok(accepted) => accepted.record,
         Err(fault) => {
             let inner = fault.related().and_then(|mut all| all.next());
-            let code = inner.and_then(|one| one.code()).or_else(|| fault.code());
+            let code = inner
+                .and_then(miette::Diagnostic::code)
+                .or_else(|| fault.code());
             return Came::Fault(code.map_or_else(|| fault.to_string(), |code| code.to_string()));
         }
     };

@@ -104,7 +104,7 @@ fn decided(number: u64) -> (Result<(Decision, Verdict), String>, bool, Form) {
     };
     write(
         "caliper.csv",
-        format!("spring,free_length\n,mm\nS-1,{:.3}\n", free).as_bytes(),
+        format!("spring,free_length\n,mm\nS-1,{free:.3}\n").as_bytes(),
     );
     let lot = format!(
         "drawing = \"drawing.toml\"\nrig = \"rig.toml\"\nexports = [\"S-1.csv\"]\n{findings}[lot]\nnumber = \"{number}\"\nsize = 1\n\

@@ -1,10 +1,13 @@
 //! Exports in many forms, with the `[export]` of the rig file that reads each: shared by the counter-suite and the drafts.
 
+use std::fmt::Write;
+
 use crate::bench::Travel;
 use crate::random::Random;
 
 /// How an export is written.
 #[derive(Clone, Debug)]
+#[expect(clippy::struct_excessive_bools, reason = "each is a trait of its own")]
 pub(crate) struct Form {
     pub(crate) encoding: &'static str,
     pub(crate) mark: bool,
@@ -234,7 +237,7 @@ impl Form {
         };
         match self.encoding {
             "windows-1252" => {
-                bytes.extend(text.chars().map(|c| u8::try_from(u32::from(c)).unwrap()))
+                bytes.extend(text.chars().map(|c| u8::try_from(u32::from(c)).unwrap()));
             }
             _ => bytes.extend(text.as_bytes()),
         }
@@ -252,7 +255,7 @@ impl Form {
             self.encoding
         );
         if self.units == "row" {
-            text += &format!("units_line = {}\n", line + 1);
+            writeln!(text, "units_line = {}", line + 1).unwrap();
         }
         text += if self.quoted { "quoted = true\n" } else { "" };
         text += if self.open {
@@ -261,25 +264,34 @@ impl Form {
             ""
         };
         let pushing = if self.pulls { "negative" } else { "positive" };
-        text += &format!(
-            "load = {{ column = \"{}\", unit = \"{}\", pushing = \"{pushing}\" }}\n",
-            header[2], self.load.0
-        );
-        let gap = if self.means == "platen position" {
-            format!(", at_zero_gap = {}", GAP / self.travel.1)
-        } else {
-            String::new()
+        let (load, unit) = (&header[2], self.load.0);
+        writeln!(
+            text,
+            "load = {{ column = \"{load}\", unit = \"{unit}\", pushing = \"{pushing}\" }}"
+        )
+        .unwrap();
+        let gap = match self.means {
+            "platen position" => format!(", at_zero_gap = {}", GAP / self.travel.1),
+            _ => String::new(),
         };
-        text += &format!(
-            "travel = {{ column = \"{}\", unit = \"{}\", means = \"{}\"{gap} }}\n",
-            header[1], self.travel.0, self.means
-        );
+        let (travel, unit, means) = (&header[1], self.travel.0, self.means);
+        writeln!(
+            text,
+            "travel = {{ column = \"{travel}\", unit = \"{unit}\", means = \"{means}\"{gap} }}"
+        )
+        .unwrap();
         if self.time {
-            text += &format!("time = {{ column = \"{}\", unit = \"s\" }}\n", header[0]);
+            writeln!(
+                text,
+                "time = {{ column = \"{}\", unit = \"s\" }}",
+                header[0]
+            )
+            .unwrap();
         }
-        text + &match self.column {
-            true => format!("spring = {{ column = \"{}\" }}\n", header[3]),
-            false => "spring = { from = \"file name\" }\n".to_owned(),
+        match self.column {
+            true => writeln!(text, "spring = {{ column = \"{}\" }}", header[3]).unwrap(),
+            false => writeln!(text, "spring = {{ from = \"file name\" }}").unwrap(),
         }
+        text
     }
 }

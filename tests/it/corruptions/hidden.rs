@@ -20,7 +20,7 @@ pub(crate) const WAYS: &[(&str, &str, Spoil)] = &[
     ("the travel scale reads 0.8 % high about 70 mm", "`rig verify` with a reference spring: E_n of its rate; [travel] certificate with error", |f| each(f, |[t, l, x]| [t, 70.0 + (l - 70.0) * 1.008, x])),
     ("the length zero is 0.4 mm off", "`rig verify`: E_n of the free length; [travel] zero, set_at_length; beyond 3 % page one asks", |f| each(f, |[t, l, x]| [t, l + 0.4, x])),
     ("one of the springs in another unit, without a word in its header", "units in the export's header or units line contradict the rig file; page one names the odd ratio", |f| each(&mut f[..1], |[t, l, x]| [t, l, x / 9.806_65])),
-    ("two springs' names exchanged", "the tester names the file, not a person; marked springs; a repeat of one of them", |f| { let name = f[0].0.clone(); f[0].0 = f[2].0.clone(); f[2].0 = name; }),
+    ("two springs' names exchanged", "the tester names the file, not a person; marked springs; a repeat of one of them", |f| { let name = std::mem::take(&mut f[0].0); f[0].0 = std::mem::replace(&mut f[2].0, name); }),
     ("every spring measured warm, at 60 °C", "[conditions] temperature in the lot file", |f| each(f, |[t, l, x]| [t, l, x * 0.988])),
     ("the load's zero creeps by 3 N over the recording", "the empty readings at the end of the recording; `rig verify`", |f| each(f, |[t, l, x]| [t, l, x + 0.015 * t])),
     ("the travel scale slips by 1 mm in the air before the last stroke", "[requirements] set in the drawing: the spring seems to have set by as much", |f| each(f, |[t, l, x]| [t, if t > 100.0 { l - 1.0 } else { l }, x])),
@@ -31,5 +31,5 @@ pub(crate) const WAYS: &[(&str, &str, Spoil)] = &[
             file.1 = joined(&header, &moved).into_bytes();
         }
     }),
-    ("an export renamed", "the tester names the file, not a person; the lot's `sample` list", |f| f[0].0 = "renamed.csv".to_owned()),
+    ("an export renamed", "the tester names the file, not a person; the lot's `sample` list", |f| "renamed.csv".clone_into(&mut f[0].0)),
 ];

@@ -32,7 +32,7 @@ pub(crate) const WAYS: &[(&str, Spoil)] = &[
     ("thirty rows of another spring's last loading stroke in place of its own", |f, p| {
         let (mut own, other) = (lines(&f[p]), lines(&f[next(f, p)]));
         let (start, from) = (own.len() - 110, other.len() - 110);
-        for row in 0..30 { own[start + row] = other[from + row].clone(); }
+        own[start..start + 30].clone_from_slice(&other[from..from + 30]);
         f[p].1 = own.concat();
     }),
     ("the last stroke of another spring in place of its own", |f, p| {
@@ -42,7 +42,7 @@ pub(crate) const WAYS: &[(&str, Spoil)] = &[
     ("a row of another spring among its own", |f, p| {
         let (mut own, other) = (lines(&f[p]), lines(&f[next(f, p)]));
         let row = own.len() - 90;
-        own[row] = other[other.len() - 60].clone();
+        own[row].clone_from(&other[other.len() - 60]);
         f[p].1 = own.concat();
     }),
     ("one export in another encoding", |f, p| { let t = String::from_utf8(f[p].1.clone()).unwrap(); f[p].1 = t.encode_utf16().flat_map(u16::to_be_bytes).collect(); }),

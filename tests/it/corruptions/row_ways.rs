@@ -38,7 +38,9 @@ fn at(all: &[Row], length: f64) -> usize {
 fn step(text: &str, length: f64, by: f64) -> Vec<u8> {
     on(text, |mut all| {
         let from = at(&all, length);
-        all[from..].iter_mut().for_each(|row| row[2] += by);
+        for row in &mut all[from..] {
+            row[2] += by;
+        }
         all
     })
 }
@@ -142,9 +144,9 @@ pub(crate) const WAYS: &[(&str, Spoil)] = &[
     ("travel stuck over 20 rows in the window, then right again", |t, _| stuck(t, 75.0, false)),
     ("travel stuck over 20 rows in the window, then off", |t, _| stuck(t, 75.0, true)),
     ("travel stuck about the test length, then right again", |t, _| stuck(t, 56.0, false)),
-    ("travel stuck from the window to the end", |t, _| on(t, |mut a| { let s = at(&a, 66.0); let held = a[s][1]; a[s..].iter_mut().for_each(|r| r[1] = held); a })),
-    ("load stuck over 20 rows in the window", |t, _| on(t, |mut a| { let s = at(&a, 75.0); let held = a[s][2]; a[s..s + 20].iter_mut().for_each(|r| r[2] = held); a })),
-    ("load stuck over 3 rows in the window", |t, _| on(t, |mut a| { let s = at(&a, 75.0); let held = a[s][2]; a[s..s + 3].iter_mut().for_each(|r| r[2] = held); a })),
+    ("travel stuck from the window to the end", |t, _| on(t, |mut a| { let s = at(&a, 66.0); let held = a[s][1]; for r in &mut a[s..] { r[1] = held; } a })),
+    ("load stuck over 20 rows in the window", |t, _| on(t, |mut a| { let s = at(&a, 75.0); let held = a[s][2]; for r in &mut a[s..s + 20] { r[2] = held; } a })),
+    ("load stuck over 3 rows in the window", |t, _| on(t, |mut a| { let s = at(&a, 75.0); let held = a[s][2]; for r in &mut a[s..s + 3] { r[2] = held; } a })),
     ("a stray load of + 40 N in the window", |t, _| spike(t, 62.0, 2, 40.0)),
     ("a stray load of − 8 N in the window", |t, _| spike(t, 75.0, 2, -8.0)),
     ("a stray load of + 40 N at the test length", |t, _| spike(t, 52.2, 2, 40.0)),
@@ -155,12 +157,12 @@ pub(crate) const WAYS: &[(&str, Spoil)] = &[
     ("slip of 15 N before the window", |t, _| step(t, 84.0, -15.0)),
     ("slip of 15 N before the test length", |t, _| step(t, 54.0, -15.0)),
     ("the load's zero jumps by + 12 N in the last stroke", |t, _| step(t, 72.0, 12.0)),
-    ("the length's zero jumps by 1.5 mm in the last stroke", |t, _| on(t, |mut a| { let s = at(&a, 66.0); a[s..].iter_mut().for_each(|r| r[1] += 1.5); a })),
+    ("the length's zero jumps by 1.5 mm in the last stroke", |t, _| on(t, |mut a| { let s = at(&a, 66.0); for r in &mut a[s..] { r[1] += 1.5; } a })),
     ("loads rounded to 1 N", |t, _| round(t, 2, 1.0)),
     ("loads rounded to 20 N", |t, _| round(t, 2, 20.0)),
     ("lengths rounded to 0.1 mm", |t, _| round(t, 1, 0.1)),
     ("lengths rounded to 2 mm", |t, _| round(t, 1, 2.0)),
-    ("noise of 4 N on the loads", |t, r| on(t, |mut a| { a.iter_mut().for_each(|x| x[2] += r.normal(4.0)); a })),
-    ("a burst of noise of 30 N over 10 rows in the window", |t, r| on(t, |mut a| { let s = at(&a, 72.0); a[s..s + 10].iter_mut().for_each(|x| x[2] += r.normal(30.0)); a })),
+    ("noise of 4 N on the loads", |t, r| on(t, |mut a| { for x in &mut a { x[2] += r.normal(4.0); } a })),
+    ("a burst of noise of 30 N over 10 rows in the window", |t, r| on(t, |mut a| { let s = at(&a, 72.0); for x in &mut a[s..s + 10] { x[2] += r.normal(30.0); } a })),
     ("sampled five times as densely in part of the window", |t, _| on(t, |a| { let s = at(&a, 70.0); let mut out = Vec::new(); for (n, w) in a.windows(2).enumerate() { out.push(w[0]); if (s..s + 8).contains(&n) { for k in 1..5 { let g = f64::from(k) / 5.0; out.push([w[0][0] + g * (w[1][0] - w[0][0]), w[0][1] + g * (w[1][1] - w[0][1]), w[0][2] + g * (w[1][2] - w[0][2])]); } } } out })),
 ];

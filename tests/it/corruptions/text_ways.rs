@@ -79,7 +79,7 @@ pub(crate) const WAYS: &[(&str, Spoil)] = &[
     ("a footer below the rows", |t, _| format!("{t}End of test\n").into_bytes()),
     ("a trailing delimiter on every row", |t, _| below_header(t, |b| b.replace('\n', ",\n"))),
     ("a trailing delimiter on one row", |t, _| { let mut l = lines(t); l[99].push(','); joined(&l) }),
-    ("quotes about every cell", |t, _| t.lines().map(|l| format!("\"{}\"\n", l.replace(',', "\",\""))).collect::<String>().into_bytes()),
+    ("quotes about every cell", |t, _| joined(&t.lines().map(|l| format!("\"{}\"", l.replace(',', "\",\""))).collect::<Vec<_>>())),
     ("CR instead of LF", |t, _| t.replace('\n', "\r").into_bytes()),
     ("CR LF", |t, _| t.replace('\n', "\r\n").into_bytes()),
     ("mark of UTF-8", |t, _| format!("\u{FEFF}{t}").into_bytes()),
