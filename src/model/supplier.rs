@@ -40,7 +40,7 @@ pub(crate) fn page(record: &AcceptRecord, show_in: System) -> Option<Section> {
     }
     Some(Section {
         title: "For the supplier: proven nonconformities".to_owned(),
-        text: text(record),
+        text: text(record, show_in),
         tables: vec![table],
     })
 }
@@ -72,7 +72,7 @@ fn columns() -> Vec<Column> {
 }
 
 /// What failed first, then the lot, the drawing, the plan, the rule, the rig.
-fn text(record: &AcceptRecord) -> Vec<String> {
+fn text(record: &AcceptRecord, show_in: System) -> Vec<String> {
     let (lot, drawing) = (&record.lot, &record.drawing);
     let addressed = lot
         .supplier
@@ -92,7 +92,7 @@ fn text(record: &AcceptRecord) -> Vec<String> {
     ));
     text.extend(record.reasons.iter().filter_map(|reason| match reason {
         LotReason::ProvenFailures { class, .. } => plan(record, *class),
-        reason if by_variables(reason) => Some(wording::why(reason)),
+        reason if by_variables(reason) => Some(wording::why(reason, show_in)),
         _ => None,
     }));
     text.extend(wording::terms(drawing).into_iter().take(1));

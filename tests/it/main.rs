@@ -48,6 +48,7 @@ mod lots;
 mod many_exports;
 mod mutants;
 mod one_truth;
+mod one_truth_lot;
 mod plan_command;
 mod plan_command_faults;
 mod plan_decisions;

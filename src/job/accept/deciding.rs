@@ -2,14 +2,13 @@
 
 use std::collections::{HashMap, HashSet};
 
-use crate::drawing::{Acceptance, Drawing, PlanTerms, State};
+use crate::drawing::{Acceptance, Drawing, Guard, PlanTerms, State};
 use crate::lot::{Decision, LotReason, Outcome, class_terms, decide, gravest, one_step_tighter};
 use crate::quantity::Class;
 use crate::record::{
     CharacteristicResult, PlanFacts, SettlingFacts, SimpleAcceptance, StateFacts, Verdict,
 };
 use crate::sampling::{PastLot, PlanError, Reason, next};
-use crate::stats::{Dof, student_quantile};
 use crate::text::InputFile;
 
 use super::super::facts::figure;
@@ -88,7 +87,7 @@ pub(super) fn decide_lot(
     }
     plan.accepted_tighter = tighter(terms, state, size, &classes, &sampled, &others)?;
     if outcome.decision == Decision::Undecided {
-        plan.settling = settling(&files.drawing, &sample, plan.sample_size);
+        plan.settling = settling(&files.drawing, terms.guard, &sample, plan.sample_size);
     }
     Ok(Decided {
         decision: outcome.decision,
@@ -258,13 +257,13 @@ fn tighter(
 
 /// What would settle each undecided characteristic of the sample: the nearest springs first, for fewest of them are
 /// needed.
-fn settling(drawing: &Drawing, sample: &[&Judged], size: u64) -> Vec<SettlingFacts> {
+fn settling(drawing: &Drawing, guard: Guard, sample: &[&Judged], size: u64) -> Vec<SettlingFacts> {
     let size = usize::try_from(size).unwrap_or(usize::MAX);
     let mut found: Vec<SettlingFacts> = Vec::new();
     for spring in sample.iter().take(size) {
         let open = |of: &&CharacteristicResult| of.verdict == Some(Verdict::Undecided);
         for of in spring.result.characteristics.iter().filter(open) {
-            found.extend(settled_by(drawing, &spring.result.id, of));
+            found.extend(settled_by(drawing, guard, &spring.result.id, of));
         }
     }
     found.sort_by(|a, b| share(b).total_cmp(&share(a)));
@@ -277,7 +276,12 @@ fn share(of: &SettlingFacts) -> f64 {
     both.map_or(0.0, |(wanted, now)| wanted.get() / now.get())
 }
 
-fn settled_by(drawing: &Drawing, spring: &str, of: &CharacteristicResult) -> Option<SettlingFacts> {
+fn settled_by(
+    drawing: &Drawing,
+    guard: Guard,
+    spring: &str,
+    of: &CharacteristicResult,
+) -> Option<SettlingFacts> {
     let requirement = drawing.requirements.iter().find(|one| {
         one.quantity.name() == of.name && one.quantity.at_length() == of.at_length_mm
     })?;
@@ -288,7 +292,7 @@ fn settled_by(drawing: &Drawing, spring: &str, of: &CharacteristicResult) -> Opt
             .map(|limit| (value.get() - limit).abs())
             .reduce(f64::min)
     });
-    let proof = student_quantile(0.95, Dof::Infinite).ok()?;
+    let wanted = distance.and_then(|distance| crate::lot::settling(distance, guard).ok()?);
     let own_share = of
         .own_uncertainty
         .zip(of.standard_uncertainty)
@@ -300,9 +304,7 @@ fn settled_by(drawing: &Drawing, spring: &str, of: &CharacteristicResult) -> Opt
         class: requirement.class,
         unit: of.unit,
         expanded_uncertainty: of.expanded_uncertainty,
-        wanted_uncertainty: distance
-            .filter(|distance| *distance > 0.0)
-            .and_then(|distance| figure(2.0 * distance / proof)),
+        wanted_uncertainty: wanted.and_then(figure),
         own_share,
     })
 }
