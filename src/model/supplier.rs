@@ -29,8 +29,14 @@ pub(crate) fn page(record: &AcceptRecord, show_in: System) -> Option<Section> {
         .filter(|spring| spring.in_sample && spring.verdict == Verdict::Fails)
         .flat_map(|spring| failures(spring, record, show_in))
         .collect();
-    let left_out = rows.len().saturating_sub(FITTING);
-    rows.truncate(FITTING);
+    let estimated = record
+        .reasons
+        .iter()
+        .filter(|reason| by_variables(reason))
+        .count();
+    let fitting = FITTING.saturating_sub(2 * estimated); // each ground takes two lines
+    let left_out = rows.len().saturating_sub(fitting);
+    rows.truncate(fitting);
     let mut table = Table::new("Springs proven failing", columns(), rows);
     if left_out > 0 {
         table.note = format!(

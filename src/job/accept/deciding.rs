@@ -194,48 +194,57 @@ fn beside(outcome: &mut Outcome, judged: &[Judged], sampled: &Ordered, size: u64
         .take(size)
         .filter(|(_, spring)| spring.simple == Verdict::Fails)
         .count() as u64;
-    let measured = |one: &Judged| {
-        let fails = |of: &CharacteristicResult| of.verdict == Some(Verdict::Fails);
-        one.result.characteristics.iter().any(fails)
-    };
     let springs: Vec<String> = judged
         .iter()
-        .filter(|one| measured(one))
+        .filter(|one| fails(one))
         .map(|one| one.result.id.clone())
         .collect();
     if !springs.is_empty() {
         outcome.reasons.push(LotReason::ProvenBeside { springs });
     }
-    let inside: HashSet<&str> = sampled
-        .iter()
-        .take(size)
-        .map(|(id, _)| id.as_str())
-        .collect();
-    let mut seen: Vec<LotReason> = judged
-        .iter()
-        .filter(|one| measured(one) && !inside.contains(one.result.id.as_str()))
-        .filter_map(|one| {
-            Some(LotReason::FailureBeyondSample {
-                spring: one.result.id.clone(),
-                class: one.overall.failing?,
-            })
-        })
-        .collect();
-    for one in judged {
-        let findings = one.result.findings.iter();
-        seen.extend(
-            findings
-                .filter(|finding| finding.class != Class::Critical)
-                .map(|finding| LotReason::FindingWithoutNumber {
-                    spring: one.result.id.clone(),
-                    class: finding.class,
-                }),
-        );
+    let mut open = Vec::new();
+    if outcome.decision != Decision::Rejected {
+        open.extend(failures_beyond(judged, sampled, size));
     }
-    if !seen.is_empty() {
+    open.extend(judged.iter().flat_map(findings));
+    if !open.is_empty() {
         outcome.decision = gravest(&[outcome.decision, Decision::Undecided]);
-        outcome.reasons.extend(seen);
+        outcome.reasons.extend(open);
     }
+}
+
+/// Whether a spring is proven to fail by measurement.
+fn fails(one: &Judged) -> bool {
+    let fails = |of: &CharacteristicResult| of.verdict == Some(Verdict::Fails);
+    one.result.characteristics.iter().any(fails)
+}
+
+/// Springs beyond the sample that are proven failing; those of the critical class are counted, and named there.
+fn failures_beyond(judged: &[Judged], sampled: &Ordered, size: usize) -> Vec<LotReason> {
+    let first = sampled.iter().take(size);
+    let inside: HashSet<&str> = first.map(|(id, _)| id.as_str()).collect();
+    let beyond = |one: &&Judged| !inside.contains(one.result.id.as_str()) && fails(one);
+    let reason = |one: &Judged| {
+        let class = one.overall.failing.filter(|of| *of != Class::Critical)?;
+        Some(LotReason::FailureBeyondSample {
+            spring: one.result.id.clone(),
+            class,
+        })
+    };
+    judged.iter().filter(beyond).filter_map(reason).collect()
+}
+
+/// What was seen on a spring, the critical apart, for which the terms agree no number.
+fn findings(one: &Judged) -> Vec<LotReason> {
+    let counted = |class: Class| class == Class::Critical;
+    let found = one.result.findings.iter();
+    found
+        .filter(|finding| !counted(finding.class))
+        .map(|finding| LotReason::FindingWithoutNumber {
+            spring: one.result.id.clone(),
+            class: finding.class,
+        })
+        .collect()
 }
 
 /// Whether the lot would also have been accepted with every AQL one step tighter; `None` where the plan has none.
