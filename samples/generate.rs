@@ -14,6 +14,8 @@
 mod accepted;
 #[path = "generate/bench.rs"]
 mod bench;
+#[path = "generate/check.rs"]
+mod check;
 #[path = "generate/known.rs"]
 mod known;
 #[path = "generate/known_text.rs"]
@@ -32,6 +34,8 @@ mod rigs;
 mod speed;
 #[path = "generate/spring.rs"]
 mod spring;
+#[path = "generate/study.rs"]
+mod study;
 #[path = "generate/text.rs"]
 mod text;
 #[path = "generate/undecided.rs"]
@@ -73,6 +77,8 @@ fn run(words: &[String]) -> Outcome {
             rejected::write(&place.join("rejected"))?;
             undecided::write(&place.join("undecided"))?;
             nested::write(&place.join("nested"))?;
+            check::write(&place.join("check"))?;
+            study::write(&place.join("study"))?;
             plans::write(&place.join("plans"))
         }
         "large" => {

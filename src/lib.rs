@@ -10,6 +10,14 @@ pub mod text;
 
 pub mod quantity;
 
+pub mod formula;
+
+pub mod material;
+
+pub mod standard;
+
+pub mod spring;
+
 pub mod drawing;
 
 pub mod rig;
@@ -20,6 +28,8 @@ pub mod intake;
 
 pub mod curve;
 
+pub mod review;
+
 pub mod fit;
 
 pub mod characteristic;
@@ -28,6 +38,7 @@ pub mod doubt;
 
 pub mod verdict;
 
+pub mod bench;
 pub mod sampling;
 
 pub mod process;
@@ -35,6 +46,8 @@ pub mod process;
 pub mod lot;
 
 pub mod record;
+
+pub mod archive;
 
 pub mod wording;
 

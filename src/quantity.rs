@@ -11,6 +11,10 @@ use crate::units::Millimetres;
 pub enum Quantity {
     /// Rate R in the drawing's window.
     Rate,
+    /// Rate of a stage of a set whose members engage one after the other, from 1.
+    RateOf(u8),
+    /// Length at which the next member of a set engages: 1 between the first stage and the second.
+    Knee(u8),
     /// Load F at a stated length.
     LoadAt(Millimetres),
     /// Free length L0.
@@ -29,6 +33,10 @@ pub enum Quantity {
     InsideDiameter,
     /// Wire diameter d, by caliper.
     WireDiameter,
+    /// Squareness e1: how far the free spring leans, by square and gauge.
+    Squareness,
+    /// Parallelism e2 of the ground ends, by gauge.
+    Parallelism,
 }
 
 /// The unit a quantity is reported in.
@@ -51,11 +59,42 @@ pub enum Unit {
     Percent,
 }
 
+/// The most stages a set may have.
+pub const MOST_STAGES: u8 = 4;
+
+/// Name, symbol and title, by number.
+type Numbered = [(&'static str, &'static str, &'static str); 4];
+
+const STAGES: Numbered = [
+    ("rate_stage_1", "R1", "rate of stage 1"),
+    ("rate_stage_2", "R2", "rate of stage 2"),
+    ("rate_stage_3", "R3", "rate of stage 3"),
+    ("rate_stage_4", "R4", "rate of stage 4"),
+];
+const KNEES: Numbered = [
+    ("knee", "LK", "length at the knee"),
+    ("knee_2", "LK2", "length at the second knee"),
+    ("knee_3", "LK3", "length at the third knee"),
+    ("knee_4", "LK4", "length at the fourth knee"),
+];
+
+/// The entry of a number counted from 1; the last one beyond the table.
+const fn numbered(of: &Numbered, number: u8) -> (&'static str, &'static str, &'static str) {
+    match number {
+        0 | 1 => of[0],
+        2 => of[1],
+        3 => of[2],
+        _ => of[3],
+    }
+}
+
 impl Quantity {
     /// The key used in `result.json`, in `springs.csv` and under `[requirements]`.
     pub const fn name(self) -> &'static str {
         match self {
             Self::Rate => "rate",
+            Self::RateOf(stage) => numbered(&STAGES, stage).0,
+            Self::Knee(knee) => numbered(&KNEES, knee).0,
             Self::LoadAt(_) => "load",
             Self::FreeLength => "free_length",
             Self::SolidLength => "solid_length",
@@ -65,6 +104,8 @@ impl Quantity {
             Self::OutsideDiameter => "outside_diameter",
             Self::InsideDiameter => "inside_diameter",
             Self::WireDiameter => "wire_diameter",
+            Self::Squareness => "squareness",
+            Self::Parallelism => "parallelism",
         }
     }
 
@@ -72,6 +113,14 @@ impl Quantity {
     pub fn from_name(name: &str, at: Option<Millimetres>) -> Option<Self> {
         if let Some(length) = at {
             return (name == "load").then_some(Self::LoadAt(length));
+        }
+        for number in 1..=MOST_STAGES {
+            if name == Self::RateOf(number).name() {
+                return Some(Self::RateOf(number));
+            }
+            if name == Self::Knee(number).name() {
+                return Some(Self::Knee(number));
+            }
         }
         let plain = [
             Self::Rate,
@@ -83,6 +132,8 @@ impl Quantity {
             Self::OutsideDiameter,
             Self::InsideDiameter,
             Self::WireDiameter,
+            Self::Squareness,
+            Self::Parallelism,
         ];
         plain.into_iter().find(|quantity| quantity.name() == name)
     }
@@ -91,6 +142,8 @@ impl Quantity {
     pub const fn symbol(self) -> &'static str {
         match self {
             Self::Rate => "R",
+            Self::RateOf(stage) => numbered(&STAGES, stage).1,
+            Self::Knee(knee) => numbered(&KNEES, knee).1,
             Self::LoadAt(_) => "F",
             Self::FreeLength => "L0",
             Self::SolidLength => "Lc",
@@ -100,6 +153,8 @@ impl Quantity {
             Self::OutsideDiameter => "De",
             Self::InsideDiameter => "Di",
             Self::WireDiameter => "d",
+            Self::Squareness => "e1",
+            Self::Parallelism => "e2",
         }
     }
 
@@ -107,6 +162,8 @@ impl Quantity {
     pub const fn title(self) -> &'static str {
         match self {
             Self::Rate => "rate",
+            Self::RateOf(stage) => numbered(&STAGES, stage).2,
+            Self::Knee(knee) => numbered(&KNEES, knee).2,
             Self::LoadAt(_) => "load at length",
             Self::FreeLength => "free length",
             Self::SolidLength => "solid length",
@@ -116,13 +173,15 @@ impl Quantity {
             Self::OutsideDiameter => "outside diameter",
             Self::InsideDiameter => "inside diameter",
             Self::WireDiameter => "wire diameter",
+            Self::Squareness => "squareness",
+            Self::Parallelism => "parallelism",
         }
     }
 
     /// The unit its values are in.
     pub const fn unit(self) -> Unit {
         match self {
-            Self::Rate => Unit::NewtonPerMillimetre,
+            Self::Rate | Self::RateOf(_) => Unit::NewtonPerMillimetre,
             Self::LoadAt(_) => Unit::Newton,
             Self::Hysteresis | Self::Straightness => Unit::Percent,
             _ => Unit::Millimetre,
@@ -137,11 +196,20 @@ impl Quantity {
         }
     }
 
+    /// Whether a true value of zero is possible: a perfect end has no error of squareness or parallelism.
+    pub const fn may_be_zero(self) -> bool {
+        matches!(self, Self::Squareness | Self::Parallelism)
+    }
+
     /// Whether a caliper measures it, and not the bench.
     pub const fn by_caliper(self) -> bool {
         matches!(
             self,
-            Self::OutsideDiameter | Self::InsideDiameter | Self::WireDiameter
+            Self::OutsideDiameter
+                | Self::InsideDiameter
+                | Self::WireDiameter
+                | Self::Squareness
+                | Self::Parallelism
         )
     }
 }

@@ -10,6 +10,7 @@ use crate::stats::StatsError;
 use super::budget::{Estimate, Line, Part, with_repeatability};
 use super::length::{self, OwnFree, Solid};
 use super::rate::{self, RateFit};
+use super::stage::{self, StageWindow};
 use super::{load, loops};
 
 /// Work gained up to this is never called a reversal, %: drift of a load cell between strokes may look like it.
@@ -32,6 +33,8 @@ pub struct Setup<'a> {
     pub full_load: Option<f64>,
     /// What is measured, in order.
     pub wanted: &'a [Quantity],
+    /// Windows of stages and knees; empty where the drawing has none.
+    pub stages: &'a [StageWindow],
     /// Standard uncertainty of the caliper by quantity, mm.
     pub caliper: &'a [(&'static str, f64)],
 }
@@ -84,6 +87,8 @@ pub enum Absence {
     NoFullCycle,
     /// One loading stroke only.
     OneLoadingStroke,
+    /// The two stages do not differ enough for a knee.
+    NoKnee,
     /// Nothing measured it.
     NotMeasured,
 }
@@ -183,6 +188,8 @@ pub fn measure(
                 Some(value) => Measured::Value(Estimate::new(value, lines).map_err(failed)?),
                 None => Measured::Absent(Absence::NotMeasured),
             }
+        } else if matches!(quantity, Quantity::RateOf(_) | Quantity::Knee(_)) {
+            stage::measure(setup, curve, quantity, own)?
         } else {
             spring.measure(quantity).map_err(failed)?
         };
@@ -232,13 +239,16 @@ pub fn wanted(drawing: &Drawing) -> Vec<Quantity> {
         .iter()
         .map(|one| one.quantity)
         .collect();
+    let by_stages = drawing.theory.stages.len() > 1;
     for informs in [
         Quantity::Rate,
         Quantity::FreeLength,
         Quantity::Hysteresis,
         Quantity::Set,
     ] {
-        if !wanted.contains(&informs) {
+        // Over a knee a rate without its stage means nothing.
+        let meaningless = by_stages && informs == Quantity::Rate;
+        if !meaningless && !wanted.contains(&informs) {
             wanted.push(informs);
         }
     }
@@ -276,9 +286,13 @@ impl Spring<'_> {
             Quantity::Hysteresis => loops::hysteresis(setup, curve, residual_sd)?,
             Quantity::Set => loops::set(setup, curve)?,
             Quantity::Straightness => self.straightness()?,
-            Quantity::OutsideDiameter | Quantity::InsideDiameter | Quantity::WireDiameter => {
-                Err(Absence::NotMeasured)
-            }
+            Quantity::RateOf(_)
+            | Quantity::Knee(_)
+            | Quantity::OutsideDiameter
+            | Quantity::InsideDiameter
+            | Quantity::WireDiameter
+            | Quantity::Squareness
+            | Quantity::Parallelism => Err(Absence::NotMeasured),
         };
         Ok(found.map_or_else(Measured::Absent, Measured::Value))
     }

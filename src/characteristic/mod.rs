@@ -10,6 +10,7 @@ mod loops;
 mod measure;
 mod rate;
 mod scales;
+mod stage;
 
 pub use average::average;
 pub use budget::{Estimate, Line, Part, Uncertainty, combine};
@@ -17,4 +18,6 @@ pub use length::OwnFree;
 pub use measure::{
     Absence, Characteristic, MeasureError, Measured, Measurement, Setup, measure, wanted,
 };
-pub use rate::RateFit;
+pub use rate::{RateFit, judged};
+pub use scales::scale_lines;
+pub use stage::{StageWindow, stage_windows};

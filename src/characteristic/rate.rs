@@ -53,7 +53,7 @@ fn strokes<'c>(setup: &Setup<'_>, curve: &'c Curve) -> &'c [Path] {
 }
 
 /// The judged stroke of a curve, counted after the presetting strokes; `None` where the export does not hold it.
-pub(super) fn judged<'c>(setup: &Setup<'_>, curve: &'c Curve) -> Option<&'c Path> {
+pub fn judged<'c>(setup: &Setup<'_>, curve: &'c Curve) -> Option<&'c Path> {
     let strokes = strokes(setup, curve);
     setup
         .stroke

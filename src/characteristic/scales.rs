@@ -19,7 +19,7 @@ fn rectangular(half_width: f64) -> f64 {
 }
 
 /// The lines of one scale; `sensitivity` is the value's change per relative error of the scale.
-fn scale_lines(scale: &Scale, names: [&'static str; 3], sensitivity: f64) -> Vec<Line> {
+pub fn scale_lines(scale: &Scale, names: [&'static str; 3], sensitivity: f64) -> Vec<Line> {
     let [main, error_found, drift_since] = names;
     match &scale.accuracy {
         Accuracy::DeclaredNegligible => Vec::new(),

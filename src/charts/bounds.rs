@@ -28,6 +28,18 @@ pub(super) struct Bar {
     words: String,
 }
 
+impl Bar {
+    /// Limits at a length, with their words.
+    pub(super) fn new(at: f64, lower: Option<f64>, upper: Option<f64>, words: String) -> Self {
+        Self {
+            at,
+            lower,
+            upper,
+            words,
+        }
+    }
+}
+
 /// The window in the values of a plot of these curves.
 pub(super) fn window(
     record: &AcceptRecord,

@@ -2,14 +2,22 @@
 //! Marks differ by shape as well as by colour, so that a black-and-white print says the same.
 
 mod bounds;
+mod check;
 mod compared;
 mod curves;
+mod expected;
 mod field;
 mod histogram;
 mod ids;
 pub(crate) mod operating;
 mod share;
+mod study;
+mod trend;
 mod values;
+
+pub(crate) use check::check;
+pub(crate) use expected::expected;
+pub(crate) use study::study;
 
 use crate::curve::{Axis, Reduced};
 use crate::record::{AcceptRecord, Verdict};

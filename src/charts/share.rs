@@ -32,7 +32,9 @@ pub(super) fn chart_of(
     show_in: System,
 ) -> Result<Option<Chart>, ChartError> {
     let members = &record.theory.members;
-    let Some(first) = members.first().filter(|_| members.len() > 1) else {
+    // The members of a stack all carry the whole load.
+    let shared = members.iter().map(|one| one.share.get()).sum::<f64>() < 1.5;
+    let Some(first) = members.first().filter(|_| members.len() > 1 && shared) else {
         return Ok(None);
     };
     let rows = first.stress.len();

@@ -7,7 +7,8 @@ use jiff::civil::Date;
 use miette::IntoDiagnostic;
 use sha2::{Digest, Sha256};
 
-use crate::job::{self, Accepted};
+use crate::archive::Archive;
+use crate::job::{self, Accepted, Memory, Past};
 use crate::record::{Decision, OutputFile};
 use crate::report::{self, OutFile, Template, Templates};
 use crate::text::{Source, hex};
@@ -17,23 +18,45 @@ use super::folder::{self, Target};
 
 pub(super) fn run(args: &AcceptArgs, quiet: bool, out: &mut impl Write) -> miette::Result<u8> {
     let target = args.out.as_deref().map(Target::of).transpose()?;
+    let archive = args
+        .archive
+        .as_deref()
+        .map(Archive::open_or_begin)
+        .transpose()?;
     let templates = templates(args.templates.as_deref())?;
     let options = job::Options {
         date: date(args.date)?,
         units_confirmed: args.units_confirmed,
         strict: args.strict,
-        drawn: args.out.is_some() && !args.no_report,
+        keep: job::Keep {
+            for_charts: args.out.is_some() && !args.no_report,
+            for_archive: args.archive.is_some(),
+        },
         block_bytes: None,
         flags: flags(args),
-        past: args.history.as_deref().map(job::read_history).transpose()?,
+        memory: archive.clone().map_or(Memory::Nothing, Memory::Archive),
+        past: history(args.history.as_deref())?,
     };
     let mut accepted = job::accept(&args.lot, &args.lot.to_string_lossy(), &options)?;
+    let files = if args.out.is_some() {
+        files(args, &mut accepted, &templates)?
+    } else {
+        Vec::new()
+    };
+    let run = archive
+        .map(|archive| archive.keep(&accepted.record, &accepted.kept, jiff::Timestamp::now()))
+        .transpose()?;
     if let Some(target) = &target {
-        write(target, args, &mut accepted, &templates)?;
+        target.write(&files, &accepted.record)?;
     }
-    if let (Some(dir), false) = (&args.out, quiet) {
-        // A notice; where stderr is gone there is nobody to read it.
-        let _ = writeln!(std::io::stderr(), "written: {}", dir.display());
+    if !quiet {
+        // Notices; where stderr is gone there is nobody to read them.
+        if let (Some(dir), Some(run)) = (&args.archive, &run) {
+            let _ = writeln!(std::io::stderr(), "archived in {}: {run}", dir.display());
+        }
+        if let Some(dir) = &args.out {
+            let _ = writeln!(std::io::stderr(), "written: {}", dir.display());
+        }
     }
     let record = &accepted.record;
     if args.json {
@@ -42,6 +65,12 @@ pub(super) fn run(args: &AcceptArgs, quiet: bool, out: &mut impl Write) -> miett
         write!(out, "{}", report::summary(record, args.show_in.into())).into_diagnostic()?;
     }
     Ok(status(record.decision))
+}
+
+/// The past lots of a history file.
+pub(super) fn history(file: Option<&Path>) -> miette::Result<Option<Past>> {
+    file.map(|file| job::read_history(file, &file.to_string_lossy()))
+        .transpose()
 }
 
 const fn status(decision: Decision) -> u8 {
@@ -65,12 +94,12 @@ fn flags(args: &AcceptArgs) -> Vec<String> {
         .collect()
 }
 
-fn write(
-    target: &Target,
+/// The files of the output folder, listed in the record.
+fn files(
     args: &AcceptArgs,
     accepted: &mut Accepted,
     templates: &Templates,
-) -> miette::Result<()> {
+) -> miette::Result<Vec<OutFile>> {
     let record = &accepted.record;
     let mut files = if args.no_report {
         Vec::new()
@@ -83,8 +112,7 @@ fn write(
     });
     files.sort_by(|a, b| a.path.cmp(&b.path));
     accepted.record.files = files.iter().map(listed).collect();
-    target.write(&files, &accepted.record)?;
-    Ok(())
+    Ok(files)
 }
 
 /// A file as a result lists it.
@@ -119,7 +147,7 @@ pub(super) fn date(given: Option<Date>) -> miette::Result<Date> {
 }
 
 /// The built-in templates, each replaced where the user's folder holds one of its name.
-fn templates(folder: Option<&Path>) -> miette::Result<Templates> {
+pub(super) fn templates(folder: Option<&Path>) -> miette::Result<Templates> {
     let mut templates = Templates::built_in();
     let Some(folder) = folder else {
         return Ok(templates);

@@ -40,6 +40,15 @@ pub(super) enum Command {
     Rate(RateArgs),
     /// What the drawn spring should do, before anything is measured (exit 1 if the drawing contradicts itself)
     Expect(ExpectArgs),
+    /// Finds lots in an archive, or in a table of per-lot figures
+    Lots(LotsArgs),
+    /// Recomputes sealed results from their inputs (exit 0 same, 1 different, 2 could not or an input changed)
+    Recheck(RecheckArgs),
+    /// What a rig is worth: a check on a reference spring, a repeatability study
+    Rig {
+        #[command(subcommand)]
+        command: RigCommand,
+    },
     /// Sampling plans side by side: what each takes, and what it lets through
     Plan(PlanArgs),
     /// Completions for a shell, on stdout
@@ -66,6 +75,9 @@ pub(super) struct AcceptArgs {
     /// Folder for report.html, report.pdf, springs.csv, charts and result.json; nothing is written without it
     #[arg(long, value_name = "DIR")]
     pub(super) out: Option<PathBuf>,
+    /// Archive that keeps this judgement, begun where the folder is empty or not there
+    #[arg(long, value_name = "DIR")]
+    pub(super) archive: Option<PathBuf>,
     /// Only result.json and springs.csv, no report and no charts
     #[arg(long, requires = "out")]
     pub(super) no_report: bool,
@@ -90,6 +102,58 @@ pub(super) struct AcceptArgs {
     /// You stand for the units although they look mixed up; the report says so
     #[arg(long)]
     pub(super) units_confirmed: bool,
+}
+
+#[derive(Debug, Subcommand)]
+pub(super) enum RigCommand {
+    /// Checks a rig on a reference spring, and its frame plate on plate (exit 0 serves, 1 does not, 3 undecided, 2 could not)
+    Verify(VerifyArgs),
+    /// Studies the repeatability of a rig (exit 0 serves, 1 does not, 3 undecided, 2 could not)
+    Repeat(RigArgs),
+}
+
+#[derive(Debug, Args)]
+pub(super) struct VerifyArgs {
+    #[command(flatten)]
+    pub(super) rig: RigArgs,
+    /// Archive that keeps this check and knows the earlier ones
+    #[arg(long, value_name = "DIR")]
+    pub(super) archive: Option<PathBuf>,
+}
+
+#[derive(Debug, Args)]
+#[expect(
+    clippy::struct_excessive_bools,
+    reason = "each is a flag of the command line"
+)]
+pub(super) struct RigArgs {
+    /// The check file, or the study file
+    #[arg(value_name = "FILE.toml")]
+    pub(super) file: PathBuf,
+    /// Writes what was found into the rig file, its comments kept; shows the change
+    #[arg(long)]
+    pub(super) write: bool,
+    /// Folder for report.html, report.pdf, charts and result.json; nothing is written without it
+    #[arg(long, value_name = "DIR")]
+    pub(super) out: Option<PathBuf>,
+    /// Only result.json, no report and no charts
+    #[arg(long, requires = "out")]
+    pub(super) no_report: bool,
+    /// The result as JSON on stdout, and nothing else there
+    #[arg(long)]
+    pub(super) json: bool,
+    /// A warning on the rig is a refusal (exit 2)
+    #[arg(long)]
+    pub(super) strict: bool,
+    /// Units that people read; result.json is always mm and N
+    #[arg(long, value_enum, default_value_t = ShowIn::MmN, value_name = "UNITS")]
+    pub(super) show_in: ShowIn,
+    /// A folder with templates of your own: report.html, report.typ
+    #[arg(long, value_name = "DIR")]
+    pub(super) templates: Option<PathBuf>,
+    /// Date of the judgement; else SOURCE_DATE_EPOCH, else today (UTC)
+    #[arg(long, value_name = "YYYY-MM-DD")]
+    pub(super) date: Option<Date>,
 }
 
 /// Units that people read.
@@ -145,7 +209,76 @@ pub(super) struct ExpectArgs {
     /// Load and stress at this length in mm
     #[arg(long, value_name = "MM")]
     pub(super) at_length: Option<f64>,
+    /// Folder for report.html, report.pdf, the chart and result.json; nothing is written without it
+    #[arg(long, value_name = "DIR")]
+    pub(super) out: Option<PathBuf>,
+    /// Only result.json, no report and no chart
+    #[arg(long, requires = "out")]
+    pub(super) no_report: bool,
+    /// The result as JSON on stdout, and nothing else there
+    #[arg(long)]
+    pub(super) json: bool,
+    /// A folder with templates of your own: report.html, report.typ
+    #[arg(long, value_name = "DIR")]
+    pub(super) templates: Option<PathBuf>,
+    /// Units that people read; JSON is always mm and N
+    #[arg(long, value_enum, default_value_t = ShowIn::MmN, value_name = "UNITS")]
+    pub(super) show_in: ShowIn,
+    /// Date on the report; else SOURCE_DATE_EPOCH, else today (UTC)
+    #[arg(long, value_name = "YYYY-MM-DD")]
+    pub(super) date: Option<Date>,
+}
+
+#[derive(Debug, Args)]
+pub(super) struct LotsArgs {
+    /// An archive's folder, or a table of per-lot figures (.csv or .parquet)
+    #[arg(value_name = "ARCHIVE|TABLE")]
+    pub(super) source: PathBuf,
+    /// Only lots of this drawing number
+    #[arg(long, value_name = "NUMBER")]
+    pub(super) drawing: Option<String>,
+    /// Only this lot number
+    #[arg(long, value_name = "NUMBER")]
+    pub(super) lot: Option<String>,
+    /// Only lots of this supplier
+    #[arg(long, value_name = "NAME")]
+    pub(super) supplier: Option<String>,
+    /// Received on this day or later; judged, where no date received is stated
+    #[arg(long, value_name = "YYYY-MM-DD")]
+    pub(super) since: Option<Date>,
+    /// Received on this day or earlier; judged, where no date received is stated
+    #[arg(long, value_name = "YYYY-MM-DD")]
+    pub(super) until: Option<Date>,
+    /// Only lots with this tag (may be given again)
+    #[arg(long, value_name = "TAG=VALUE", value_parser = tag)]
+    pub(super) tag: Vec<(String, String)>,
+    /// Also judgements that a later one takes the place of
+    #[arg(long)]
+    pub(super) superseded: bool,
+    /// Mean and spread of every characteristic as CSV, in the columns of a table of per-lot figures
+    #[arg(long, conflicts_with = "json")]
+    pub(super) figures: bool,
     /// As JSON
+    #[arg(long)]
+    pub(super) json: bool,
+}
+
+fn tag(text: &str) -> Result<(String, String), String> {
+    match text.split_once('=') {
+        Some((tag, value)) if !tag.is_empty() => Ok((tag.to_owned(), value.to_owned())),
+        _ => Err("write it as TAG=VALUE".to_owned()),
+    }
+}
+
+#[derive(Debug, Args)]
+pub(super) struct RecheckArgs {
+    /// A result.json, a folder that holds one, or an archive
+    #[arg(value_name = "RESULT.json|DIR")]
+    pub(super) result: PathBuf,
+    /// Folder from which the lot file's path in a result is meant
+    #[arg(long, value_name = "DIR", default_value = ".")]
+    pub(super) from: PathBuf,
+    /// As JSON, one line for each result
     #[arg(long)]
     pub(super) json: bool,
 }

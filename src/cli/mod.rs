@@ -4,8 +4,12 @@ mod accept;
 mod args;
 mod expect;
 mod folder;
+mod lots;
 mod plan;
 mod rate;
+mod recheck;
+mod rig;
+mod rig_file;
 mod shell;
 mod show;
 
@@ -62,7 +66,10 @@ fn dispatch(arguments: &Arguments, out: &mut impl Write) -> miette::Result<u8> {
     match &arguments.command {
         Command::Accept(args) => accept::run(args, arguments.quiet, out),
         Command::Rate(args) => rate::run(args, out),
-        Command::Expect(args) => expect::run(args, out),
+        Command::Rig { command } => rig::run(command, arguments.quiet, out),
+        Command::Expect(args) => expect::run(args, arguments.quiet, out),
+        Command::Lots(args) => lots::run(args, out),
+        Command::Recheck(args) => recheck::run(args, out),
         Command::Plan(args) => plan::run(args, arguments.quiet, out),
         Command::Completions { shell } => Ok(shell::completions(*shell, out)),
         Command::Manual { dir } => shell::manual(dir),

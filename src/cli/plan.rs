@@ -9,7 +9,7 @@ use crate::job::{self, Asked, BenchAsked, PlanOptions};
 use crate::report;
 use crate::sampling::Points;
 
-use super::accept::{date, listed};
+use super::accept::{date, history, listed};
 use super::args::PlanArgs;
 use super::folder::{self, Target};
 
@@ -19,7 +19,7 @@ pub(super) fn run(args: &PlanArgs, quiet: bool, out: &mut impl Write) -> miette:
         lot_size: args.lot_size,
         asked: asked(args)?,
         bench: args.bench.as_deref().map(bench).transpose()?,
-        past: args.history.as_deref().map(job::read_history).transpose()?,
+        past: history(args.history.as_deref())?,
         reduced_agreed: args.reduced_agreed,
         date: date(args.date)?,
         flags: Vec::new(),

@@ -5,9 +5,29 @@ use std::io::{IsTerminal, Write};
 use miette::{Diagnostic, GraphicalReportHandler, GraphicalTheme};
 
 use super::args::Colour;
+use crate::archive::Unreadable;
 
 /// Columns a fault is laid out for; the same on every terminal, so that two people see the same lines.
 const WIDTH: usize = 100;
+
+/// Passed-over files named at once.
+const SHOWN: usize = 20;
+
+/// Names on stderr the files of an archive that were passed over.
+pub(super) fn passed_over(files: &[Unreadable]) {
+    let mut lines: Vec<String> = files
+        .iter()
+        .take(SHOWN)
+        .map(Unreadable::to_string)
+        .collect();
+    if let Some(more @ 1..) = files.len().checked_sub(SHOWN) {
+        lines.push(format!("{more} more"));
+    }
+    let mut err = std::io::stderr().lock();
+    for line in lines {
+        let _ = writeln!(err, "passed over: {line}"); // nothing can be said where stderr itself is gone
+    }
+}
 
 /// Shows `fault` on stderr, in colour where `colour` and the terminal allow it.
 pub fn show(fault: &miette::Report, colour: Colour) {

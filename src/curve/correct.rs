@@ -118,9 +118,10 @@ pub fn correct(raw: &RawCurve, rig: &Rig) -> Result<Curve, CurveError> {
     Ok(curve)
 }
 
-/// Takes off the travel what the frame gave: s = s_ind − C·F, and L = L_ind + C·(F − F_z).
+/// Takes off the travel what the frame gave: s = s_ind − C·F, and L = L_ind + C·(F − F_z), where the give may
+/// be a table instead of C·F.
 fn take_off_frame(u: &mut [f64], load: &[f64], rig: &Rig) {
-    let Compliance::Measured { value, .. } = rig.frame else {
+    let Compliance::Measured { give, .. } = &rig.frame else {
         return;
     };
     let zeroed_at = if rig.means == Means::Deflection {
@@ -128,8 +129,9 @@ fn take_off_frame(u: &mut [f64], load: &[f64], rig: &Rig) {
     } else {
         rig.zeroed_at_load
     };
+    let at_zero = give.at(zeroed_at);
     for (x, f) in u.iter_mut().zip(load) {
-        *x -= value * (f - zeroed_at);
+        *x -= give.at(*f) - at_zero;
     }
 }
 

@@ -6,6 +6,7 @@
 mod contact;
 mod correct;
 mod error;
+mod kept;
 mod path;
 mod reduced;
 mod site;
@@ -16,6 +17,7 @@ mod window;
 pub use contact::Contact;
 pub use correct::{Curve, Frame, Zero, correct};
 pub use error::CurveError;
+pub use kept::{Kept, KeptPoint, kept_points};
 pub use path::{Node, Path, Side};
 pub use reduced::{Axis, MOST_POINTS, Reduced, thin};
 pub use solid::Rise;

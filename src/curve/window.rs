@@ -44,16 +44,23 @@ pub enum WindowMiss {
 }
 
 /// Fn in N, the load at the smallest permitted length Ln: as stated under `[rate_test] full_load`, else
-/// nominal rate (stated, or else theory's) times L0 − Ln.
+/// nominal rate (stated, or else theory's) times L0 − Ln; with several stages theory's load there.
 pub fn full_load(drawing: &Drawing) -> f64 {
     if let Some(stated) = drawing.rate_test.full_load {
         return stated;
     }
+    if drawing.theory.stages.len() > 1 {
+        return drawing.theory.load_at(drawing.theory.smallest.get());
+    }
     nominal_rate(drawing) * travel_to_smallest(drawing)
 }
 
-/// The rate that springs should have, N/mm: as stated, or else theory's.
+/// The rate that springs should have, N/mm: as stated, or else theory's; with several stages that of the longest one,
+/// which a median over the whole travel shows.
 pub fn nominal_rate(drawing: &Drawing) -> f64 {
+    if drawing.theory.stages.len() > 1 {
+        return longest_stage(drawing);
+    }
     let rate = drawing
         .requirements
         .iter()
@@ -62,16 +69,40 @@ pub fn nominal_rate(drawing: &Drawing) -> f64 {
         .unwrap_or(drawing.theory.rate.get())
 }
 
-fn travel_to_smallest(drawing: &Drawing) -> f64 {
-    let free = drawing
-        .members
-        .first()
-        .map_or(0.0, |member| member.free.nominal);
-    free - drawing.theory.smallest.get()
+fn longest_stage(drawing: &Drawing) -> f64 {
+    let set = &drawing.theory;
+    let ends = set
+        .stages
+        .iter()
+        .skip(1)
+        .map(|stage| stage.from.get())
+        .chain([set.smallest.get()]);
+    let longest = set
+        .stages
+        .iter()
+        .zip(ends)
+        .map(|(stage, end)| (stage.from.get() - end, stage.rate.get()))
+        .max_by(|a, b| a.0.total_cmp(&b.0));
+    longest.map_or(set.rate.get(), |(_, rate)| rate)
 }
 
-/// The window of `drawing` with its bounds in N or mm.
+fn travel_to_smallest(drawing: &Drawing) -> f64 {
+    drawing.theory.free.get() - drawing.theory.smallest.get()
+}
+
+/// The window of `drawing` with its bounds in N or mm. With several stages a window that is not between two lengths is
+/// that of the first stage whose rate is required.
 pub fn window_of(drawing: &Drawing) -> Bounds {
+    let of_stage = drawing.requirements.iter().find_map(|one| one.between);
+    if let (Some((from, to)), Window::FullLoad(..) | Window::Deflection(..)) =
+        (of_stage, drawing.rate_test.window)
+    {
+        return Bounds {
+            of: WindowOf::Length,
+            from,
+            to,
+        };
+    }
     match drawing.rate_test.window {
         Window::FullLoad(from, to) => {
             let full = full_load(drawing);

@@ -1,6 +1,7 @@
 //! What may stand behind an odd rate: a reading of the drawing, or a part left out. A caution, never a verdict.
 
-use crate::drawing::{Coil, Drawing, Member, rate};
+use crate::drawing::{Drawing, Member, OtherCoil};
+use crate::formula::rate;
 
 /// A rate farther than this from the expected one is odd, relative.
 const ODD: f64 = 0.1;
@@ -60,12 +61,13 @@ fn single(member: &Member, theory: f64) -> Vec<(f64, String)> {
         wire: member.wire.nominal,
         coil: member.mean_coil(),
         active: member.active.nominal,
-        shear: member.shear.modulus,
+        shear: member.material.shear,
     };
     let d = member.wire.nominal;
-    let mut made: Vec<(Made, String)> = diameters(member)
+    let mut made: Vec<(Made, String)> = member
+        .other_coils()
         .into_iter()
-        .map(|(coil, words)| (Made { coil, ..drawn() }, words.to_owned()))
+        .map(|(coil, other)| (Made { coil, ..drawn() }, diameter(other).to_owned()))
         .collect();
     let coils = [
         (
@@ -107,15 +109,12 @@ fn single(member: &Member, theory: f64) -> Vec<(f64, String)> {
         .collect()
 }
 
-/// The mean coil diameters that a drawn diameter taken for another gives, mm.
-fn diameters(member: &Member) -> Vec<(f64, &'static str)> {
-    let (d, coil) = (member.wire.nominal, member.mean_coil());
-    match member.coil {
-        Coil::Outside(_) => vec![(coil + d, "the drawn outside diameter made as mean diameter")],
-        Coil::Inside(_) => vec![(coil - d, "the drawn inside diameter made as mean diameter")],
-        Coil::Mean(_) => vec![
-            (coil - d, "the drawn mean diameter made as outside diameter"),
-            (coil + d, "the drawn mean diameter made as inside diameter"),
-        ],
+/// A drawn diameter made as another one, in words.
+const fn diameter(other: OtherCoil) -> &'static str {
+    match other {
+        OtherCoil::OutsideAsMean => "the drawn outside diameter made as mean diameter",
+        OtherCoil::InsideAsMean => "the drawn inside diameter made as mean diameter",
+        OtherCoil::MeanAsOutside => "the drawn mean diameter made as outside diameter",
+        OtherCoil::MeanAsInside => "the drawn mean diameter made as inside diameter",
     }
 }

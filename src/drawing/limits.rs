@@ -22,7 +22,7 @@ impl Limits {
 }
 
 /// One requirement of the drawing.
-#[derive(Clone, Copy, Debug, PartialEq)]
+#[derive(Clone, Debug, PartialEq)]
 pub struct Requirement {
     /// What is required.
     pub quantity: Quantity,
@@ -30,6 +30,10 @@ pub struct Requirement {
     pub limits: Limits,
     /// How grave a departure is.
     pub class: Class,
+    /// The standard the limits come from, in words; `None` where the drawing states them.
+    pub standard: Option<String>,
+    /// For the rate of a stage, the longer and the shorter length it is fitted between, mm.
+    pub between: Option<(f64, f64)>,
 }
 
 /// The words for a class in files.
@@ -42,15 +46,11 @@ pub const CLASSES: [(&str, Class); 3] = [
 /// Reads the limits stated in `table`; `scale` turns the file's unit into the quantity's own.
 /// Every fault is noted in the table; `None` where the limits cannot be used.
 pub fn read_limits(table: Table<'_>, scale: f64) -> Option<Limits> {
-    if table.has("standard") {
-        let what = "tolerances by standard are not yet judged by this version";
-        table.fault(
-            &table.place("standard"),
-            what,
-            "write the tolerance itself: tolerance = …",
-        );
-        return None;
-    }
+    read_limits_of(table, "nominal", scale)
+}
+
+/// The same where the nominal value stands under another key.
+pub(super) fn read_limits_of(table: Table<'_>, key: &str, scale: f64) -> Option<Limits> {
     let kinds = [
         table.has("tolerance"),
         table.has("plus") || table.has("minus"),
@@ -66,14 +66,14 @@ pub fn read_limits(table: Table<'_>, scale: f64) -> Option<Limits> {
         );
         return None;
     }
-    let nominal = table.number("nominal").map(|number| number.value * scale);
+    let nominal = table.number(key).map(|number| number.value * scale);
     let (lower, upper) = if kinds[2] {
         let bound = |key| table.number(key).map(|number| number.value * scale);
         (bound("minimum"), bound("maximum"))
     } else {
         let Some(nominal) = nominal else {
-            if !table.has("nominal") {
-                table.missing("nominal", help);
+            if !table.has(key) {
+                table.missing(key, help);
             }
             return None;
         };
@@ -82,6 +82,7 @@ pub fn read_limits(table: Table<'_>, scale: f64) -> Option<Limits> {
     };
     checked(
         table,
+        key,
         Limits {
             nominal,
             lower,
@@ -114,7 +115,7 @@ fn spread(table: Table<'_>, nominal: f64, scale: f64) -> Option<(f64, f64)> {
     Some((minus?, plus?))
 }
 
-fn checked(table: Table<'_>, limits: Limits) -> Option<Limits> {
+fn checked(table: Table<'_>, key: &str, limits: Limits) -> Option<Limits> {
     if let (Some(lower), Some(upper)) = (limits.lower, limits.upper)
         && lower >= upper
     {
@@ -127,7 +128,7 @@ fn checked(table: Table<'_>, limits: Limits) -> Option<Limits> {
         let above = limits.upper.is_some_and(|upper| nominal > upper);
         if below || above {
             table.fault(
-                &table.place("nominal"),
+                &table.place(key),
                 "the nominal value lies outside its own limits",
                 "mend the nominal value or the limits",
             );

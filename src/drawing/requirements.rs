@@ -1,15 +1,17 @@
 //! Reads what the drawing requires, and holds it against the rest of the drawing.
 
 use crate::quantity::{Class, Quantity};
+use crate::spring::Arrangement;
 use crate::text::Table;
 use crate::units::System;
 
+use super::by_standard::Ruling;
 use super::limits::{CLASSES, Requirement, read_limits};
-use super::open::Arrangement;
+use super::stages::{read_knees, read_rates};
 use super::terms::{Acceptance, Aqls, PlanTerms, RateTest, Window};
 
 /// The quantities stated under their own name, in the order they are judged and printed after the rate and loads.
-const PLAIN: [Quantity; 8] = [
+const PLAIN: [Quantity; 10] = [
     Quantity::FreeLength,
     Quantity::SolidLength,
     Quantity::Hysteresis,
@@ -18,21 +20,23 @@ const PLAIN: [Quantity; 8] = [
     Quantity::OutsideDiameter,
     Quantity::InsideDiameter,
     Quantity::WireDiameter,
+    Quantity::Squareness,
+    Quantity::Parallelism,
 ];
 
-/// Reads `[requirements]`: rate first, loads from the longest length down, then the others.
+/// Reads `[requirements]`: rates first, knees, loads from the longest length down, then the others.
 pub(super) fn read_requirements(
     table: Table<'_>,
     units: System,
     arrangement: Option<Arrangement>,
+    ruling: &Ruling,
 ) -> Option<Vec<Requirement>> {
     let mut requirements = Vec::new();
-    if table.has("rate") {
-        requirements.push(read_one(table.table("rate"), Quantity::Rate, units.rate())?);
-    }
+    requirements.extend(read_rates(table, units, ruling)?);
+    requirements.extend(read_knees(table, units)?);
     let mut loads = Vec::new();
     for load in table.tables("load") {
-        loads.push(read_load(load, units)?);
+        loads.push(read_load(load, units, ruling)?);
     }
     loads.sort_by(|a, b| length_of(b).total_cmp(&length_of(a)));
     for pair in loads.windows(2) {
@@ -52,9 +56,13 @@ pub(super) fn read_requirements(
         if !table.has(quantity.name()) {
             continue;
         }
-        if quantity.by_caliper() && arrangement == Some(Arrangement::Nested) {
+        let several = matches!(
+            arrangement,
+            Some(Arrangement::Nested | Arrangement::Stacked)
+        );
+        if quantity.by_caliper() && several {
             let what = format!(
-                "a {} of a nested set is not yet judged by this version",
+                "a {} is that of one spring, and this drawing has several",
                 quantity.title()
             );
             table.fault(
@@ -68,7 +76,12 @@ pub(super) fn read_requirements(
             Quantity::Hysteresis | Quantity::Straightness => 1.0,
             _ => units.length(),
         };
-        requirements.push(read_one(table.table(quantity.name()), quantity, scale)?);
+        requirements.push(read_one(
+            table.table(quantity.name()),
+            quantity,
+            scale,
+            ruling,
+        )?);
     }
     Some(requirements)
 }
@@ -80,7 +93,7 @@ fn length_of(requirement: &Requirement) -> f64 {
         .map_or(0.0, crate::units::Millimetres::get)
 }
 
-fn read_load(table: Table<'_>, units: System) -> Option<Requirement> {
+fn read_load(table: Table<'_>, units: System, ruling: &Ruling) -> Option<Requirement> {
     if !table.has("at_length") {
         table.missing("at_length", "write the test length: at_length = 48.0");
     }
@@ -89,21 +102,40 @@ fn read_load(table: Table<'_>, units: System) -> Option<Requirement> {
         table,
         Quantity::LoadAt(length.try_into().ok()?),
         units.force(),
+        ruling,
     )
 }
 
-fn read_one(table: Table<'_>, quantity: Quantity, scale: f64) -> Option<Requirement> {
-    let limits = read_limits(table, scale);
-    let class = if table.has("class") {
-        table.word("class", &CLASSES)
+pub(super) fn read_one(
+    table: Table<'_>,
+    quantity: Quantity,
+    scale: f64,
+    ruling: &Ruling,
+) -> Option<Requirement> {
+    let (limits, standard) = if ruling.rules(table) {
+        ruling
+            .limits(table, quantity, scale)
+            .map_or((None, None), |(limits, words)| (Some(limits), Some(words)))
     } else {
-        Some(Class::Major)
+        (read_limits(table, scale), None)
     };
+    let class = read_class(table);
     Some(Requirement {
         quantity,
         limits: limits?,
         class: class?,
+        standard,
+        between: None,
     })
+}
+
+/// The class of a requirement; major where none is stated.
+pub(super) fn read_class(table: Table<'_>) -> Option<Class> {
+    if table.has("class") {
+        table.word("class", &CLASSES)
+    } else {
+        Some(Class::Major)
+    }
 }
 
 /// Test lengths and window lengths must lie between solid and free.

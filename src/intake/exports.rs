@@ -1,7 +1,7 @@
 //! Which exports a lot file names, and the order of springs.
 
 use std::cmp::Ordering;
-use std::path::{Path, PathBuf};
+use std::path::{Component, Path, PathBuf};
 
 use crate::text::{Alphabet, beside, printable};
 
@@ -26,7 +26,13 @@ pub fn resolve(named_in: &Path, pattern: &str) -> Result<Vec<Export>, String> {
             path: beside(named_in, pattern),
         }]);
     }
-    let folder = named_in.parent().unwrap_or(Path::new(""));
+    // `glob` leaves out every `.`, and what it finds must begin as the folder does.
+    let folder: PathBuf = named_in
+        .parent()
+        .unwrap_or(Path::new(""))
+        .components()
+        .filter(|part| *part != Component::CurDir)
+        .collect();
     let full = beside(
         Path::new(&glob::Pattern::escape(&folder.to_string_lossy()))
             .join("x")
@@ -46,7 +52,7 @@ pub fn resolve(named_in: &Path, pattern: &str) -> Result<Vec<Export>, String> {
         if !path.is_file() {
             continue;
         }
-        let relative = path.strip_prefix(folder).unwrap_or(&path);
+        let relative = path.strip_prefix(&folder).unwrap_or(&path);
         found.push(Export {
             written: relative.to_string_lossy().replace('\\', "/"),
             path: path.clone(),

@@ -30,7 +30,7 @@ pub enum FindingsError {
     #[diagnostic(
         code(coilassay::findings::column),
         help(
-            "columns: spring, then any of free_length, outside_diameter, inside_diameter, wire_diameter"
+            "columns: spring, then any of free_length, outside_diameter, inside_diameter, wire_diameter, squareness, parallelism"
         )
     )]
     Column {
@@ -78,11 +78,13 @@ pub enum FindingsError {
     },
 }
 
-const KNOWN: [Quantity; 4] = [
+const KNOWN: [Quantity; 6] = [
     Quantity::FreeLength,
     Quantity::OutsideDiameter,
     Quantity::InsideDiameter,
     Quantity::WireDiameter,
+    Quantity::Squareness,
+    Quantity::Parallelism,
 ];
 
 /// Reads the findings file; `uncertainties` are those the lot file states for its caliper.
@@ -147,9 +149,12 @@ fn values(
         let Some(value) = table.number(row, *column)? else {
             continue;
         };
-        if value <= 0.0
-            && let Some(at) = table.spot(row, *column)
-        {
+        let too_small = if quantity.may_be_zero() {
+            value < 0.0
+        } else {
+            value <= 0.0
+        };
+        if too_small && let Some(at) = table.spot(row, *column) {
             return Err(FindingsError::Size { at, value });
         }
         values.push((*quantity, value * scale));
@@ -174,7 +179,7 @@ fn columns(table: &SmallTable) -> Result<Vec<(usize, Quantity, f64)>, FindingsEr
         let quantity = quantity.ok_or_else(|| {
             wrong(
                 name,
-                "free_length, outside_diameter, inside_diameter or wire_diameter",
+                "free_length, outside_diameter, inside_diameter, wire_diameter, squareness or parallelism",
             )
         })?;
         let found = table.units.get(place).cloned().unwrap_or_default();

@@ -24,11 +24,13 @@ pub const KEYS: Keys = &[
     ("lot", &["number", "size", "supplier", "received", "inspector", "sample_drawn", "note", "concession", "supplier_values", "tags"]),
     ("lot.tags", &["*"]),
     ("conditions", &["temperature", "presetting_strokes", "presetting_recorded"]),
-    ("caliper", &["free_length", "outside_diameter", "inside_diameter", "wire_diameter"]),
+    ("caliper", &["free_length", "outside_diameter", "inside_diameter", "wire_diameter", "squareness", "parallelism"]),
     ("caliper.free_length", INSTRUMENT),
     ("caliper.outside_diameter", INSTRUMENT),
     ("caliper.inside_diameter", INSTRUMENT),
     ("caliper.wire_diameter", INSTRUMENT),
+    ("caliper.squareness", INSTRUMENT),
+    ("caliper.parallelism", INSTRUMENT),
     ("repeat", &["spring", "export", "reason", "invalid"]),
     ("finding", &["spring", "class", "text"]),
 ];
@@ -190,7 +192,7 @@ fn read_all<T>(
     all.into_iter().collect()
 }
 
-fn named_file(root: Table<'_>, key: &str, source: &Source) -> Option<(String, PathBuf)> {
+pub(super) fn named_file(root: Table<'_>, key: &str, source: &Source) -> Option<(String, PathBuf)> {
     if !root.has(key) {
         root.missing(
             key,
@@ -202,7 +204,7 @@ fn named_file(root: Table<'_>, key: &str, source: &Source) -> Option<(String, Pa
     Some((written, path))
 }
 
-fn read_exports(root: Table<'_>, source: &Source) -> Option<Vec<Export>> {
+pub(super) fn read_exports(root: Table<'_>, source: &Source) -> Option<Vec<Export>> {
     let patterns = root.raw_texts("exports");
     if patterns.is_empty() {
         root.missing("exports", "write exports = [\"springs/*.csv\"]");

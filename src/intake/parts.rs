@@ -143,6 +143,8 @@ pub(super) fn read_caliper(table: Table<'_>, units: System) -> Option<Vec<(&'sta
         Quantity::OutsideDiameter,
         Quantity::InsideDiameter,
         Quantity::WireDiameter,
+        Quantity::Squareness,
+        Quantity::Parallelism,
     ] {
         if table.has(quantity.name()) {
             let help = "write outside_diameter = { uncertainty = 0.02, k = 2 }";

@@ -1,14 +1,19 @@
-//! `expect`: what the drawn spring should do, before anything is measured.
+//! `expect`: what the drawn springs should do, and whether the drawing agrees with itself, before anything is measured.
 
 use std::path::Path;
 
-use serde::Serialize;
+use jiff::civil::Date;
 
 use crate::curve::{full_load, window_of};
-use crate::drawing::{self, Drawing};
+use crate::drawing::{self, Drawing, Requirement, Theory};
+use crate::formula::stress;
 use crate::quantity::Quantity;
-use crate::record::{MemberFacts, TheoryFacts, WindowFacts};
-use crate::units::{Millimetres, Newtons, NewtonsPerMillimetre};
+use crate::record::{
+    Expected, ExpectedRequirement, FORMAT, Kind, MemberAnswer, MemberFacts, Provenance,
+    ServiceFacts, StageFacts, StressAnswer, TOOL,
+};
+use crate::review::{Weight, review};
+use crate::units::{Finite, Millimetres, Newtons, NewtonsPerMillimetre};
 
 use super::facts;
 
@@ -23,137 +28,231 @@ pub enum Ask {
     Length(Millimetres),
 }
 
-/// One member's answer at the deflection asked for.
-#[derive(Clone, Debug, Serialize)]
-pub struct MemberAnswer {
-    /// Its name.
-    pub name: String,
-    /// Index w.
-    pub index: f64,
-    /// Its rate.
-    pub rate_n_per_mm: NewtonsPerMillimetre,
-    /// Its load there.
-    pub load_n: Option<Newtons>,
-    /// Its stresses there, MPa.
-    pub stress_mpa: Option<StressAnswer>,
-    /// Lc.
-    pub solid_length_mm: Millimetres,
-    /// Ln.
-    pub smallest_length_mm: Millimetres,
-}
-
-/// Stresses in MPa; theory.
-#[derive(Clone, Copy, Debug, Serialize)]
-pub struct StressAnswer {
-    /// 8FD/(πd³).
-    pub uncorrected: f64,
-    /// Direct shear.
-    pub r#static: f64,
-    /// EN 13906-1.
-    pub dynamic: f64,
-    /// Wahl.
-    pub wahl: f64,
-}
-
-/// What `expect --json` prints, with the whole theory behind it.
-#[derive(Clone, Debug, Serialize)]
-pub struct Expected {
-    /// Drawing number.
-    pub drawing: String,
-    /// Rate of the set.
-    pub rate_n_per_mm: NewtonsPerMillimetre,
-    /// Deflection asked for.
-    pub deflection_mm: Option<Millimetres>,
-    /// The members there.
-    pub members: Vec<MemberAnswer>,
-    /// Whether the stated rate follows from the geometry within theory's uncertainty; absent without a stated rate.
-    pub stated_rate_n_per_mm: Option<NewtonsPerMillimetre>,
-    /// The same as a yes or no.
-    pub agrees: bool,
-    /// The whole theory.
-    pub theory: TheoryFacts,
-    /// The window of the rate.
-    pub window: WindowFacts,
-}
-
-/// Computes the theory of the drawing at `path`.
+/// Computes the theory of the drawing at `path` and reviews it.
 ///
 /// # Errors
 /// A report where the drawing cannot be used or a load or length lies outside its travel.
-pub fn expect(path: &Path, as_written: &str, ask: Ask) -> miette::Result<Expected> {
+pub fn expect(path: &Path, as_written: &str, ask: Ask, date: Date) -> miette::Result<Expected> {
     let drawing = drawing::open(path, as_written)?;
-    let deflection = deflection(&drawing, ask)?;
+    let length = asked(&drawing, ask)?;
     let theory = facts::theory(&drawing, full_load(&drawing))?;
-    let stated = drawing
-        .requirements
-        .iter()
-        .find(|one| one.quantity == Quantity::Rate)
-        .and_then(|one| one.limits.nominal);
-    let agrees = stated.is_none_or(|stated| {
-        (stated - drawing.theory.rate.get()).abs() <= 2.0 * drawing.theory.standard_uncertainty
-    });
+    let reviewed = review(&drawing);
+    let agrees = |finding: &crate::review::DrawingFinding| finding.weight() == Weight::Remark;
+    let set = &drawing.theory;
     Ok(Expected {
+        format: FORMAT,
+        kind: Kind::Expect,
         drawing: drawing.number.clone(),
-        rate_n_per_mm: drawing.theory.rate,
-        deflection_mm: deflection,
-        members: members(&drawing, deflection, &theory.members),
-        stated_rate_n_per_mm: stated.and_then(|stated| stated.try_into().ok()),
-        agrees,
+        revision: drawing.revision.clone(),
+        title: drawing.title.clone(),
+        agrees: reviewed.findings.iter().all(agrees),
+        findings: reviewed.findings,
+        rate_n_per_mm: set.rate,
+        deflection_mm: length.and_then(|length| (set.free.get() - length).try_into().ok()),
+        members: members(&drawing, length, &theory.members),
+        stated_rate_n_per_mm: stated_rate(&drawing),
+        requirements: drawing
+            .requirements
+            .iter()
+            .map(|one| requirement(set, one))
+            .collect(),
+        free_length_tolerance_mm: free_tolerance(&drawing),
+        stages: stages(set),
         window: facts::window(&drawing, window_of(&drawing)),
+        service: service(&drawing),
+        strength: reviewed.strength,
+        strength_gaps: reviewed.strength_gaps,
+        fatigue: reviewed.fatigue,
+        outlooks: reviewed.outlooks,
+        clearances: reviewed.clearances,
+        solid_order: reviewed.solid_order,
+        modulus_notes: modulus_notes(&drawing),
         theory,
+        provenance: provenance(&drawing, date),
+        files: Vec::new(),
     })
 }
 
-fn deflection(drawing: &Drawing, ask: Ask) -> miette::Result<Option<Millimetres>> {
-    let free = drawing
-        .members
-        .first()
-        .map_or(0.0, |member| member.free.nominal);
-    let solid = drawing.theory.solid.get();
-    let asked = match ask {
+/// The length of the set asked for, mm.
+fn asked(drawing: &Drawing, ask: Ask) -> miette::Result<Option<f64>> {
+    let set = &drawing.theory;
+    let (free, solid) = (set.free.get(), set.solid.get());
+    let length = match ask {
         Ask::Drawing => return Ok(None),
-        Ask::Load(load) => load.get() / drawing.theory.rate.get(),
-        Ask::Length(length) => free - length.get(),
+        Ask::Load(load) => set.length_at(load.get()),
+        Ask::Length(length) => length.get(),
     };
-    if !(0.0..=free - solid).contains(&asked) {
+    if !(solid..=free).contains(&length) {
         return Err(miette::miette!(
             code = "coilassay::expect::outside",
             help = "ask for a load or a length between free and solid",
-            "the deflection there would be {asked:.3} mm; the drawn spring has 0 to {:.3} mm",
+            "the deflection there would be {:.3} mm; the drawn spring has 0 to {:.3} mm",
+            free - length,
             free - solid
         ));
     }
-    Ok(Millimetres::try_from(asked).ok())
+    Ok(Some(length))
 }
 
-fn members(
-    drawing: &Drawing,
-    deflection: Option<Millimetres>,
-    facts: &[MemberFacts],
-) -> Vec<MemberAnswer> {
-    let mut answers = Vec::new();
-    for (drawn, (theory, fact)) in drawing
-        .members
+fn stated_rate(drawing: &Drawing) -> Option<NewtonsPerMillimetre> {
+    let rate = drawing
+        .requirements
         .iter()
-        .zip(drawing.theory.members.iter().zip(facts))
-    {
-        let load = deflection.and_then(|deflection| theory.rate.times(deflection));
-        let stress = load
-            .and_then(|load| crate::drawing::stress(load, drawn.wire.nominal, theory.coil.get()));
+        .find(|one| one.quantity == Quantity::Rate)?;
+    rate.limits.nominal?.try_into().ok()
+}
+
+fn members(drawing: &Drawing, length: Option<f64>, facts: &[MemberFacts]) -> Vec<MemberAnswer> {
+    let set = &drawing.theory;
+    let mut answers = Vec::new();
+    for (drawn, (theory, fact)) in drawing.members.iter().zip(set.members.iter().zip(facts)) {
+        let load_n: Option<Newtons> =
+            length.and_then(|length| set.member_at(theory, length).1.try_into().ok());
+        let whole = length.map(|length| set.load_at(length));
+        let stress = load_n.and_then(|load| stress(load, drawn.wire.nominal, theory.coil.get()));
         answers.push(MemberAnswer {
             name: fact.name.clone(),
-            index: theory.index,
+            index: fact.index,
             rate_n_per_mm: theory.rate,
-            load_n: load,
+            load_n,
+            load_share: load_n
+                .zip(whole)
+                .and_then(|(load, whole)| Finite::try_from(load.get() / whole).ok()),
             stress_mpa: stress.map(|stress| StressAnswer {
-                uncorrected: stress.uncorrected.get(),
-                r#static: stress.with_static.get(),
-                dynamic: stress.with_dynamic.get(),
-                wahl: stress.with_wahl.get(),
+                uncorrected: stress.uncorrected,
+                r#static: stress.with_static,
+                dynamic: stress.with_dynamic,
+                wahl: stress.with_wahl,
             }),
             solid_length_mm: theory.solid,
             smallest_length_mm: theory.smallest,
         });
     }
     answers
+}
+
+fn requirement(set: &Theory, of: &Requirement) -> ExpectedRequirement {
+    let figure = |value: Option<f64>| value.and_then(facts::figure);
+    let theory = match of.quantity {
+        Quantity::Rate => Some(set.rate.get()),
+        Quantity::RateOf(stage) => set
+            .stages
+            .get(usize::from(stage) - 1)
+            .map(|stage| stage.rate.get()),
+        Quantity::Knee(knee) => set
+            .stages
+            .get(usize::from(knee))
+            .map(|stage| stage.from.get()),
+        Quantity::LoadAt(length) => Some(set.load_at(length.get())),
+        Quantity::FreeLength => Some(set.free.get()),
+        Quantity::SolidLength => Some(set.solid.get()),
+        _ => None,
+    };
+    ExpectedRequirement {
+        name: of.quantity.name().to_owned(),
+        at_length_mm: of.quantity.at_length(),
+        unit: of.quantity.unit(),
+        nominal: figure(of.limits.nominal),
+        lower: figure(of.limits.lower),
+        upper: figure(of.limits.upper),
+        class: of.class,
+        standard: of.standard.clone(),
+        theory: figure(theory),
+    }
+}
+
+/// Half-width of the free length: the longest member's, or a stack's sum.
+fn free_tolerance(drawing: &Drawing) -> Millimetres {
+    let set = &drawing.theory;
+    let of = |member: &drawing::Member| member.free.tolerance;
+    let found: f64 = match set.arrangement {
+        drawing::Arrangement::Stacked => drawing.members.iter().map(of).sum(),
+        drawing::Arrangement::Single | drawing::Arrangement::Nested => drawing
+            .members
+            .iter()
+            .filter(|member| member.free.nominal >= set.free.get())
+            .map(of)
+            .fold(0.0, f64::max),
+    };
+    Millimetres::try_from(found).unwrap_or(Millimetres::ZERO)
+}
+
+fn stages(set: &Theory) -> Vec<StageFacts> {
+    let stage = |stage: &drawing::Stage| {
+        Some(StageFacts {
+            from_length_mm: stage.from,
+            from_load_n: set.load_at(stage.from.get()).try_into().ok()?,
+            rate_n_per_mm: stage.rate,
+            rate_standard_uncertainty: stage.spread.standard.try_into().ok()?,
+            rate_lowest: stage.spread.lowest.try_into().ok()?,
+            rate_highest: stage.spread.highest.try_into().ok()?,
+        })
+    };
+    set.stages.iter().filter_map(stage).collect()
+}
+
+fn service(drawing: &Drawing) -> ServiceFacts {
+    let (service, set) = (&drawing.service, &drawing.theory);
+    let pair = |(from, to): (f64, f64)| Some((from.try_into().ok()?, to.try_into().ok()?));
+    let lengths = |(from, to): (f64, f64)| {
+        let at = |load: f64| Millimetres::try_from(set.length_at(load)).ok();
+        Some((at(from)?, at(to)?))
+    };
+    let warm = |other: bool| -> Option<NewtonsPerMillimetre> {
+        let temperature = service.temperature?;
+        let warmed: Option<Vec<drawing::Member>> = drawing
+            .members
+            .iter()
+            .map(|member| member.at_temperature(temperature, other))
+            .collect();
+        Some(crate::spring::theory(&warmed?, set.arrangement).ok()?.rate)
+    };
+    let (used, other) = (warm(false), warm(true));
+    ServiceFacts {
+        load_n: service.load.and_then(pair),
+        length_mm: service.load.and_then(lengths),
+        temperature_c: service.temperature.and_then(facts::figure),
+        rate_at_temperature: used,
+        rate_at_temperature_other: other.filter(|other| used.is_some_and(|used| used != *other)),
+        frequency_hz: service.frequency.and_then(facts::figure),
+    }
+}
+
+/// What other tables say of G, where they disagree; members of one material in one note.
+fn modulus_notes(drawing: &Drawing) -> Vec<String> {
+    let mut notes: Vec<(String, Vec<&str>)> = Vec::new();
+    for member in &drawing.members {
+        let material = &member.material;
+        let Some(others) = &material.others else {
+            continue;
+        };
+        let note = format!(
+            "G {} MPa is used ({}). Elsewhere for such wire: {others}. The spread, ±{:.1} %, stands in theory’s uncertainty.",
+            material.shear,
+            material.source,
+            100.0 * material.spread
+        );
+        match notes.iter_mut().find(|(known, _)| *known == note) {
+            Some((_, names)) => names.push(&member.name),
+            None => notes.push((note, vec![&member.name])),
+        }
+    }
+    notes
+        .into_iter()
+        .map(|(note, names)| format!("{}: {note}", names.join(", ")))
+        .collect()
+}
+
+fn provenance(drawing: &Drawing, date: Date) -> Provenance {
+    let mut inputs = vec![drawing.input.clone()];
+    inputs.extend(drawing.materials.clone());
+    Provenance {
+        tool: TOOL.to_owned(),
+        version: env!("CARGO_PKG_VERSION").to_owned(),
+        date: date.to_string(),
+        flags: Vec::new(),
+        inputs,
+        ledgers: Vec::new(),
+        archive: None,
+    }
 }

@@ -2,14 +2,15 @@
 
 use crate::curve::{Bounds, WindowOf};
 use crate::drawing::{
-    Acceptance, Drawing, Guard, Member, MemberTheory, Method, Rule, TheoryError, Window, stress,
+    Acceptance, Drawing, Guard, Member, MemberTheory, Method, Rule, Theory, TheoryError, Window,
 };
+use crate::formula::stress;
 use crate::intake::{Lot, NotInspected};
 use crate::record::{
-    ConditionFacts, DrawingFacts, LotFacts, MemberFacts, RequirementFacts, RigFacts, StressFacts,
-    TheoryFacts, WindowFacts,
+    ConditionFacts, DrawingFacts, LastCheck, LotFacts, MemberFacts, RequirementFacts, RigFacts,
+    StressFacts, TheoryFacts, WindowFacts,
 };
-use crate::rig::{Accuracy, Compliance, Known, Means, Rig, Scale};
+use crate::rig::{Accuracy, Compliance, Give, Known, Means, Rig, Scale};
 use crate::units::{Finite, Megapascals, Millimetres, Newtons};
 use crate::wording::number;
 
@@ -90,7 +91,7 @@ pub(super) fn theory(drawing: &Drawing, full_load: f64) -> Result<TheoryFacts, T
         .members
         .iter()
         .zip(&theory.members)
-        .map(|(drawn, one)| member(drawn, one, &at))
+        .map(|(drawn, one)| member(theory, drawn, one, &at))
         .collect();
     let whole = || TheoryError::OutOfRange {
         member: "the set".to_owned(),
@@ -103,7 +104,7 @@ pub(super) fn theory(drawing: &Drawing, full_load: f64) -> Result<TheoryFacts, T
             .map_err(|_| whole())?,
         rate_lowest: theory.lowest,
         rate_highest: theory.highest,
-        free_length_mm: free(drawing).ok_or_else(whole)?,
+        free_length_mm: theory.free,
         solid_length_mm: theory.solid,
         smallest_length_mm: theory.smallest,
         full_load_n: Newtons::try_from(full_load).map_err(|_| whole())?,
@@ -111,28 +112,22 @@ pub(super) fn theory(drawing: &Drawing, full_load: f64) -> Result<TheoryFacts, T
     })
 }
 
-fn free(drawing: &Drawing) -> Option<Millimetres> {
-    drawing
-        .members
-        .first()
-        .and_then(|member| member.free.nominal.try_into().ok())
-}
-
 /// One member of a drawing with its stresses at the lengths `at`.
-pub(super) fn member(
+fn member(
+    set: &Theory,
     drawn: &Member,
     theory: &MemberTheory,
     at: &[Millimetres],
 ) -> Option<MemberFacts> {
     let stress: Option<Vec<StressFacts>> = at
         .iter()
-        .map(|length| stresses(drawn, theory, drawn.free.nominal - length.get()))
+        .map(|length| stresses(set, drawn, theory, *length))
         .collect();
     Some(MemberFacts {
         name: drawn.name.clone(),
-        material: drawn.shear.material.clone(),
-        shear_modulus_source: drawn.shear.source.clone(),
-        shear_modulus_mpa: Megapascals::try_from(drawn.shear.modulus).ok()?,
+        material: drawn.material.name.clone(),
+        shear_modulus_source: drawn.material.source.clone(),
+        shear_modulus_mpa: Megapascals::try_from(drawn.material.shear).ok()?,
         wire_mm: drawn.wire.nominal.try_into().ok()?,
         coil_mm: theory.coil,
         active_coils: figure(drawn.active.nominal)?,
@@ -146,13 +141,19 @@ pub(super) fn member(
     })
 }
 
-fn stresses(drawn: &Member, theory: &MemberTheory, deflection: f64) -> Option<StressFacts> {
-    let deflection_mm = Millimetres::try_from(deflection).ok()?;
-    let load_n = theory.rate.times(deflection_mm)?;
+/// Stresses of one member where the set has the length `at_length_mm`.
+pub(super) fn stresses(
+    set: &Theory,
+    drawn: &Member,
+    theory: &MemberTheory,
+    at_length_mm: Millimetres,
+) -> Option<StressFacts> {
+    let (deflection, load) = set.member_at(theory, at_length_mm.get());
+    let load_n = Newtons::try_from(load).ok()?;
     let found = stress(load_n, drawn.wire.nominal, theory.coil.get())?;
     Some(StressFacts {
-        at_length_mm: (drawn.free.nominal - deflection).try_into().ok()?,
-        deflection_mm,
+        at_length_mm,
+        deflection_mm: deflection.try_into().ok()?,
         load_n,
         uncorrected_mpa: found.uncorrected,
         static_mpa: found.with_static,
@@ -164,6 +165,7 @@ fn stresses(drawn: &Member, theory: &MemberTheory, deflection: f64) -> Option<St
 /// The window.
 pub(super) fn window(drawing: &Drawing, bounds: Bounds) -> WindowFacts {
     let stated = match drawing.rate_test.window {
+        _ if bounds.of == WindowOf::Length => "between two lengths".to_owned(),
         Window::FullLoad(from, to) => format!(
             "{:.0} % to {:.0} % of full load Fn",
             100.0 * from,
@@ -191,14 +193,17 @@ pub(super) fn window(drawing: &Drawing, bounds: Bounds) -> WindowFacts {
     }
 }
 
-/// The rig.
-pub(super) fn rig(rig: &Rig) -> RigFacts {
-    let compliance = match rig.frame {
-        Compliance::Measured { value, standard } => {
+/// The rig; `checked` is its last passed check, where it holds.
+pub(super) fn rig(rig: &Rig, checked: Option<&LastCheck>) -> RigFacts {
+    let compliance = match &rig.frame {
+        Compliance::Measured { give, standard } => {
+            let give = match give {
+                Give::Line(per_newton) => format!("{} mm/N", plain(*per_newton)),
+                Give::Table(points) => format!("table of {} loads", points.len() - 1),
+            };
             format!(
-                "{} mm/N, standard uncertainty {} mm/N, corrected",
-                plain(value),
-                plain(standard)
+                "{give}, standard uncertainty {} mm/N, corrected",
+                plain(*standard)
             )
         }
         Compliance::NotCorrected { allowance } => format!(
@@ -219,6 +224,7 @@ pub(super) fn rig(rig: &Rig) -> RigFacts {
         travel: scale(&rig.travel, "ISO 9513", "mm"),
         travel_calibrated: calibrated(&rig.travel),
         compliance,
+        checked: checked.map(|last| format!("{} ({})", last.date, last.id)),
         travel_means: means.to_owned(),
     }
 }

@@ -4,13 +4,22 @@ mod accept;
 mod expect;
 mod facts;
 mod history;
+mod lots;
 mod plan;
 mod rate;
 mod read;
+mod recheck;
+mod rig;
 mod threads;
 
-pub use accept::{Accepted, Options, Past, accept};
-pub use expect::{Ask, Expected, MemberAnswer, StressAnswer, expect};
+pub use accept::{Accepted, Memory, Options, Past, accept};
+pub use expect::{Ask, expect};
 pub use history::read_history;
+pub use lots::{Listing, LotsError, Query, lots};
 pub use plan::{Asked, BenchAsked, CompareError, PlanOptions, plan};
 pub use rate::{Bench, Guess, LoadAt, RateOptions, RateResult, rate};
+pub use read::Keep;
+pub use recheck::{
+    ChangedInput, Outcome, RecheckError, Rechecked, recheck, recheck_run, stored_runs,
+};
+pub use rig::{Proposal, Repeated, RigOptions, Verified, rig_repeat, rig_verify};

@@ -16,7 +16,7 @@ use crate::text::{Head, InputFile};
 use crate::units::{Finite, Millimetres, Newtons};
 
 use super::facts::figure;
-use super::read::{Batch, How, Reading, read};
+use super::read::{Batch, How, Keep, Reading, read};
 
 /// The window where there is no drawing: shares of the travel from contact to the greatest compression before solid.
 const WINDOW: (f64, f64) = (0.3, 0.7);
@@ -140,12 +140,14 @@ pub fn rate(exports: &[String], options: &RateOptions) -> miette::Result<Vec<Rat
             method: Method::Fit,
             full_load: None,
             wanted: &wanted,
+            stages: &[],
             caliper: &[],
         };
         let how = How {
             setup: &setup,
             caliper: &caliper,
-            drawn: false,
+            keep: Keep::default(),
+            of_all: &[],
             block_bytes: None,
         };
         let export = Export {

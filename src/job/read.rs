@@ -7,8 +7,11 @@ use std::sync::mpsc::sync_channel;
 
 use rayon::prelude::*;
 
-use crate::characteristic::{MeasureError, Measurement, Setup, measure};
-use crate::curve::{Axis, Curve, MOST_POINTS, Path as Stroke, Reduced, Zero, correct, thin};
+use crate::characteristic::{MeasureError, Measurement, Setup, judged, measure};
+use crate::curve::{
+    Axis, Curve, Kept, MOST_POINTS, Path as Stroke, Reduced, Zero, correct, kept_points, thin,
+};
+use crate::drawing::Way;
 use crate::export::{BLOCK_BYTES, ExportError, Ledger, RawCurve};
 use crate::intake::Export;
 use crate::quantity::Quantity;
@@ -40,6 +43,17 @@ pub(super) struct Reading {
     pub(super) measurement: Measurement,
     /// The curve for the charts, where they are wanted.
     pub(super) reduced: Option<Reduced>,
+    /// The curve for the archive, where one is kept.
+    pub(super) kept: Option<Kept>,
+}
+
+/// What is kept of a curve beside its figures.
+#[derive(Clone, Copy, Debug, Default)]
+pub struct Keep {
+    /// The curve thinned for charts.
+    pub for_charts: bool,
+    /// The curve for an archive, the points of the window whole.
+    pub for_archive: bool,
 }
 
 /// One export, read.
@@ -54,7 +68,9 @@ pub(super) struct Batch {
 pub(super) struct How<'a> {
     pub(super) setup: &'a Setup<'a>,
     pub(super) caliper: &'a BTreeMap<String, Vec<(Quantity, f64)>>,
-    pub(super) drawn: bool,
+    pub(super) keep: Keep,
+    /// What is known of every spring of these exports without the bench: a reference spring's certificate.
+    pub(super) of_all: &'a [(Quantity, f64)],
     pub(super) block_bytes: Option<usize>,
 }
 
@@ -102,7 +118,7 @@ fn read_at(path: &Path, written: &str, how: How<'_>) -> Result<Batch, ExportErro
     })
 }
 
-fn ledger(export: String, ledger: &Ledger) -> LedgerFacts {
+pub(super) fn ledger(export: String, ledger: &Ledger) -> LedgerFacts {
     let aside = |one: &crate::export::Aside| SetAside {
         reason: one.reason.as_str().to_owned(),
         first_line: one.first_line,
@@ -123,9 +139,13 @@ fn reading(raw: &RawCurve, how: How<'_>) -> Result<Reading, MeasureError> {
     let caliper = how
         .caliper
         .get(&raw.identity)
-        .map_or(&[][..], Vec::as_slice);
+        .map_or(how.of_all, Vec::as_slice);
     let mut measurement = measure(setup, &curve, caliper)?;
-    let reduced = how.drawn.then(|| reduce(&curve, &measurement));
+    let reduced = how.keep.for_charts.then(|| reduce(&curve, &measurement));
+    let kept = how
+        .keep
+        .for_archive
+        .then(|| keep(setup, &curve, &measurement));
     if let Some(fit) = &mut measurement.fit {
         fit.forget_points();
     }
@@ -141,6 +161,7 @@ fn reading(raw: &RawCurve, how: How<'_>) -> Result<Reading, MeasureError> {
         strokes: curve.loading.len(),
         measurement,
         reduced,
+        kept,
     })
 }
 
@@ -187,5 +208,20 @@ fn reduce(curve: &Curve, measurement: &Measurement) -> Reduced {
         loading: stroke(curve.loading.last()),
         unloading: stroke(curve.unloading.last()),
         residuals,
+    }
+}
+
+/// The judged stroke, its window whole, and the last stroke of the other way.
+fn keep(setup: &Setup<'_>, curve: &Curve, measurement: &Measurement) -> Kept {
+    let other = match setup.stroke.way {
+        Way::Loading => &curve.unloading,
+        Way::Unloading => &curve.loading,
+    };
+    let window = measurement.fit.as_ref().map(|fit| fit.window);
+    Kept {
+        id: curve.id.clone(),
+        export: curve.export.clone(),
+        origin: measurement.origin,
+        points: kept_points(judged(setup, curve), other.last(), window),
     }
 }

@@ -40,20 +40,14 @@ fn size(of: &CharacteristicResult) -> f64 {
 }
 
 fn table(spring: &SpringResult, of: &CharacteristicResult, show_in: System) -> Table {
-    let columns = vec![
-        Column::words("Source"),
-        Column::words("Part"),
-        Column::figures("Contribution", unit_symbol(of.unit, show_in)),
-        Column::figures("ν", ""),
-        Column::figures("Share of u²", ""),
-    ];
-    let total = of.standard_uncertainty.map_or(0.0, |u| u.get() * u.get());
-    let rows = of.budget.iter().map(|line| row(line, of, total, show_in));
     let name = wording::sentence(&wording::characteristic(&of.name, of.at_length_mm, show_in));
-    let mut table = Table::new(
+    let shown = |value: Finite| figure(Some(value), of.unit, Place::Significant(2), show_in);
+    let mut table = lines(
         format!("{name}, spring {}", spring.id),
-        columns,
-        rows.collect(),
+        &of.budget,
+        unit_symbol(of.unit, show_in),
+        of.standard_uncertainty,
+        &shown,
     );
     table.note = format!(
         "Value {} {}; u = {}, k = {}.",
@@ -70,28 +64,40 @@ fn table(spring: &SpringResult, of: &CharacteristicResult, show_in: System) -> T
     table
 }
 
-fn row(line: &BudgetFigure, of: &CharacteristicResult, total: f64, show_in: System) -> Row {
-    let part = match line.part {
-        Part::Own => "own",
-        Part::Common => "common",
+/// The lines of one budget, their sum the standard uncertainty `sum`; `shown` writes a contribution in the unit `unit`.
+pub(super) fn lines(
+    caption: String,
+    budget: &[BudgetFigure],
+    unit: &str,
+    sum: Option<Finite>,
+    shown: &dyn Fn(Finite) -> String,
+) -> Table {
+    let columns = vec![
+        Column::words("Source"),
+        Column::words("Part"),
+        Column::figures("Contribution", unit),
+        Column::figures("ν", ""),
+        Column::figures("Share of u²", ""),
+    ];
+    let square = |line: &BudgetFigure| line.contribution.get() * line.contribution.get();
+    let total = sum.map_or(0.0, |u| u.get() * u.get());
+    let row = |line: &BudgetFigure| {
+        let part = match line.part {
+            Part::Own => "own",
+            Part::Common => "common",
+        };
+        let share = match (line.counted, total > 0.0) {
+            (false, _) => "not counted".to_owned(),
+            (true, true) => percent(Some(square(line) / total)),
+            (true, false) => percent(None::<f64>),
+        };
+        Row::from([
+            wording::sentence(&line.source).into(),
+            part.into(),
+            shown(line.contribution).into(),
+            freedom(line.degrees_of_freedom).into(),
+            share.into(),
+        ])
     };
-    let square = line.contribution.get() * line.contribution.get();
-    let share = match (line.counted, total > 0.0) {
-        (false, _) => "not counted".to_owned(),
-        (true, true) => percent(Some(square / total)),
-        (true, false) => percent(None::<f64>),
-    };
-    Row::from([
-        wording::sentence(&line.source).into(),
-        part.into(),
-        figure(
-            Some(line.contribution),
-            of.unit,
-            Place::Significant(2),
-            show_in,
-        )
-        .into(),
-        freedom(line.degrees_of_freedom).into(),
-        share.into(),
-    ])
+    Table::new(caption, columns, budget.iter().map(row).collect())
 }

@@ -3,7 +3,7 @@
 use serde::Serialize;
 
 use crate::quantity::Unit;
-use crate::record::{AcceptRecord, ClassPlan, ConditionFacts, PlanFacts, WindowOf};
+use crate::record::{AcceptRecord, ClassPlan, ConditionFacts, PlanFacts, RigFacts, WindowOf};
 use crate::units::System;
 use crate::wording;
 use crate::wording::count;
@@ -27,14 +27,14 @@ pub struct Facts {
     pub rows: Vec<Fact>,
 }
 
-fn fact(name: &str, value: impl Into<String>) -> Fact {
+pub(crate) fn fact(name: &str, value: impl Into<String>) -> Fact {
     Fact {
         name: name.to_owned(),
         value: value.into(),
     }
 }
 
-fn stated(name: &str, value: Option<&String>) -> Option<Fact> {
+pub(crate) fn stated(name: &str, value: Option<&String>) -> Option<Fact> {
     value.map(|value| fact(name, value.clone()))
 }
 
@@ -156,13 +156,17 @@ fn drawing(record: &AcceptRecord, show_in: System) -> Facts {
 }
 
 fn rig(record: &AcceptRecord) -> Facts {
-    let rig = &record.rig;
+    of_bench(&record.rig)
+}
+
+/// The rig and its calibration.
+pub(crate) fn of_bench(rig: &RigFacts) -> Facts {
     let dates = |dates: &Option<String>| {
         dates
             .clone()
             .unwrap_or_else(|| "no dates stated".to_owned())
     };
-    let rows = vec![
+    let mut rows = vec![
         fact("Rig", rig.name.clone()),
         fact("Force", rig.force.clone()),
         fact("Force calibrated", dates(&rig.force_calibrated)),
@@ -171,6 +175,7 @@ fn rig(record: &AcceptRecord) -> Facts {
         fact("Frame compliance", rig.compliance.clone()),
         fact("Travel means", rig.travel_means.clone()),
     ];
+    rows.extend(stated("Last passed check", rig.checked.as_ref()));
     Facts {
         title: "Rig and calibration".to_owned(),
         rows,

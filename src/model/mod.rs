@@ -2,26 +2,37 @@
 //! Here: which facts stand where. Elsewhere: how a figure is written (`figure`), the words (`wording`), the page (`templates/`).
 
 mod budget;
+mod check;
+mod expect;
+mod expect_facts;
 mod facts;
 mod fits;
+mod frame;
 mod named;
 mod offers;
+mod page;
 mod page_one;
 mod plan;
 mod process;
 mod provenance;
 mod springs;
+mod strength;
+mod study;
 mod supplier;
 mod table;
 mod theory;
 
 use serde::Serialize;
 
+pub use check::check_page;
+pub use expect::expected_page;
 pub(crate) use facts::labelled;
 pub use facts::{Fact, Facts};
 pub use offers::Offers;
+pub use page::{Page, PageDecision};
 pub use page_one::{Deciding, Note};
 pub(crate) use springs::remarks;
+pub use study::study_page;
 pub use table::{Cell, Column, Holds, Row, Section, Table};
 
 use crate::record::AcceptRecord;
@@ -99,10 +110,7 @@ impl Model {
             subject: page_one::subject(record),
             date: record.provenance.date.clone(),
             tool: format!("{} {}", record.provenance.tool, record.provenance.version),
-            units: match show_in {
-                System::MmN => "mm, N, N/mm, MPa".to_owned(),
-                System::InLbf => "in, lbf, lbf/in, psi (shown; judged in mm and N)".to_owned(),
-            },
+            units: units(show_in),
             decision: page_one::deciding(record, show_in),
             notes: page_one::notes(record),
             facts: facts::all(record, show_in),
@@ -121,7 +129,7 @@ impl Model {
             details: springs::details(record, show_in),
             fits: fits::section(record, show_in),
             budget: budget::section(record, show_in),
-            theory: theory::section(record, show_in),
+            theory: theory::section(&record.theory, show_in),
             provenance: provenance::section(record),
             supplier: supplier::page(record, show_in),
             signatures: ["Inspected by", "Decision released by"]
@@ -131,6 +139,13 @@ impl Model {
                 .map(str::to_owned)
                 .to_vec(),
         }
+    }
+}
+
+fn units(show_in: System) -> String {
+    match show_in {
+        System::MmN => "mm, N, N/mm, MPa".to_owned(),
+        System::InLbf => "in, lbf, lbf/in, psi (shown; judged in mm and N)".to_owned(),
     }
 }
 

@@ -1,12 +1,16 @@
 //! Every input with its hash and its row ledger.
 
 use super::table::{Column, Row, Section, Table};
-use crate::record::{AcceptRecord, LedgerFacts, SetAside};
+use crate::record::{AcceptRecord, LedgerFacts, Provenance, SetAside};
 use crate::wording::ABSENT;
 
 /// The section.
 pub(crate) fn section(record: &AcceptRecord) -> Section {
-    let provenance = &record.provenance;
+    of(&record.provenance)
+}
+
+/// The section of any record's provenance.
+pub(crate) fn of(provenance: &Provenance) -> Section {
     let flags = if provenance.flags.is_empty() {
         "none".to_owned()
     } else {

@@ -2,7 +2,7 @@
 
 use super::table::{Cell, Column, Row, Section, Table};
 use crate::quantity::Unit;
-use crate::record::{AcceptRecord, MemberFacts, StressFacts, TheoryFacts};
+use crate::record::{MemberFacts, StressFacts, TheoryFacts};
 use crate::units::{Finite, System};
 use crate::wording::{Place, figure, number, percent, unit_symbol, with_uncertainty, with_unit};
 
@@ -16,8 +16,7 @@ const FORMULAS: [&str; 3] = [
 ];
 
 /// The section.
-pub(crate) fn section(record: &AcceptRecord, show_in: System) -> Section {
-    let theory = &record.theory;
+pub(crate) fn section(theory: &TheoryFacts, show_in: System) -> Section {
     let mut text = vec![summary(theory, show_in)];
     text.extend(FORMULAS.map(str::to_owned));
     let mut tables = vec![members(theory, show_in)];

@@ -3,20 +3,17 @@
 use schemars::JsonSchema;
 use serde::{Deserialize, Serialize};
 
-use crate::units::{Finite, Millimetres, Newtons, NewtonsPerMillimetre};
+use crate::review::DrawingFinding;
+use crate::units::{Finite, Millimetres};
 
 /// Something the reader of page one must know.
 #[derive(Clone, Debug, PartialEq, Serialize, Deserialize, JsonSchema)]
 #[serde(tag = "code", rename_all = "snake_case")]
 pub enum Caution {
-    /// The stated rate is not what the geometry gives.
-    RateNotFromGeometry {
-        /// Stated nominal rate.
-        stated: NewtonsPerMillimetre,
-        /// Rate from the geometry.
-        theory: NewtonsPerMillimetre,
-        /// Expanded uncertainty (k = 2) of the theory.
-        expanded_uncertainty: NewtonsPerMillimetre,
+    /// The drawing does not agree with itself.
+    Drawing {
+        /// What does not agree.
+        finding: DrawingFinding,
     },
     /// Springs whose rate is far from what is stated, and what would give such a rate.
     OddRatio {
@@ -46,12 +43,24 @@ pub enum Caution {
         /// `force` or `travel`.
         scale: String,
     },
-    /// The rig file wants checks and no check is on record.
+    /// The last check of the rig on record failed.
+    CheckFailed {
+        /// When, and on what.
+        last: String,
+    },
+    /// The rig file wants checks and no passed check is on record that is recent enough.
     NoCheckOnRecord {
         /// How often the rig file wants one.
         every: String,
+        /// Date and name of the last passed one, where there is any.
+        last: Option<String>,
     },
-    /// Loads outside the range the rig file states.
+    /// Judged loads beyond the largest that the table of the frame's give knows.
+    FrameBeyondTable {
+        /// The springs.
+        springs: Vec<String>,
+    },
+    /// Loads outside the usable range of the force scale: as stated, or by its class and resolution.
     LoadOutsideRange {
         /// The springs.
         springs: Vec<String>,
@@ -106,13 +115,6 @@ pub enum Caution {
         /// Which.
         what: Vec<String>,
     },
-    /// A test length below the smallest permitted length.
-    LengthBelowSmallest {
-        /// The test length.
-        at_length_mm: Millimetres,
-        /// Ln.
-        smallest_mm: Millimetres,
-    },
     /// The units were confirmed by hand over a plausibility finding.
     UnitsConfirmed {
         /// What had been found.
@@ -146,20 +148,6 @@ pub enum Caution {
         name: String,
         /// Length of a load.
         at_length_mm: Option<Millimetres>,
-    },
-    /// A required load that rate and free length do not give.
-    LoadNotFromRate {
-        /// The test length.
-        at_length_mm: Millimetres,
-        /// Nominal load as required.
-        stated: Newtons,
-        /// Nominal rate times the deflection there.
-        expected: Newtons,
-    },
-    /// The drawn free length lies outside the limits required of it.
-    FreeLengthNotAsDrawn {
-        /// As drawn.
-        drawn: Millimetres,
     },
     /// The free lengths of the whole lot lie off the drawn one by much the same.
     LengthsShifted {

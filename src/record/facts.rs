@@ -113,6 +113,8 @@ pub struct RigFacts {
     pub travel_calibrated: Option<String>,
     /// Frame compliance, in words.
     pub compliance: String,
+    /// The last passed check on a reference spring, `YYYY-MM-DD (name)`; `null` where none holds on the day.
+    pub checked: Option<String>,
     /// What the export's travel means: `deflection`, `length`, `platen position`.
     pub travel_means: String,
 }

@@ -7,17 +7,21 @@ mod gate;
 mod html;
 mod offers;
 mod pdf;
+mod plain;
 mod summary;
 
 pub use csv::springs_csv;
 pub use error::ReportError;
+pub use summary::{page_summary, summary};
+
 pub use offers::{offers, offers_summary};
-pub use summary::summary;
+use serde::Serialize;
 
 use crate::charts;
+use crate::charts::Chart;
 use crate::curve::Reduced;
-use crate::model::Model;
-use crate::record::AcceptRecord;
+use crate::model::{Model, Page};
+use crate::record::{AcceptRecord, CheckRecord, Expected, RepeatRecord};
 use crate::units::System;
 
 /// A template and the name of its file, for faults.
@@ -80,8 +84,42 @@ pub fn accept(
         || Model::new(record, show_in),
         || charts::all(record, curves, show_in),
     );
-    let charts = charts?;
-    let data = || serde_json::to_value(&model).map_err(ReportError::Model);
+    files(&model, charts?, templates)
+}
+
+/// The files of a check: its page, and its charts with `readings` of the plates' run (N, mm).
+///
+/// # Errors
+/// [`ReportError`] as in [`accept`].
+pub fn check(
+    record: &CheckRecord,
+    page: &Page,
+    readings: &[(f64, f64)],
+    show_in: System,
+    templates: &Templates,
+) -> Result<Vec<OutFile>, ReportError> {
+    files(page, charts::check(record, readings, show_in)?, templates)
+}
+
+/// The files of a study: its page and its charts.
+///
+/// # Errors
+/// [`ReportError`] as in [`accept`].
+pub fn study(
+    record: &RepeatRecord,
+    page: &Page,
+    show_in: System,
+    templates: &Templates,
+) -> Result<Vec<OutFile>, ReportError> {
+    files(page, charts::study(record, show_in)?, templates)
+}
+
+fn files(
+    model: &(impl Serialize + Sync),
+    charts: Vec<Chart>,
+    templates: &Templates,
+) -> Result<Vec<OutFile>, ReportError> {
+    let data = || serde_json::to_value(model).map_err(ReportError::Model);
     let (html, pdf) = rayon::join(
         || html::page(data()?, &charts, &templates.html),
         || pdf::document(data()?, &charts, &templates.typst),
@@ -101,4 +139,22 @@ pub fn accept(
         bytes: chart.svg.into_bytes(),
     }));
     Ok(files)
+}
+
+/// The files of what a drawing leads to expect: its page and its chart.
+///
+/// # Errors
+/// [`ReportError`] as in [`accept`].
+pub fn expected(
+    record: &Expected,
+    page: &Page,
+    show_in: System,
+    templates: &Templates,
+) -> Result<Vec<OutFile>, ReportError> {
+    files(page, charts::expected(record, show_in)?, templates)
+}
+
+/// A whole page for the terminal; it ends with a line end.
+pub fn page_text(page: &Page) -> String {
+    plain::text(page)
 }

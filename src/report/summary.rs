@@ -1,6 +1,6 @@
 //! The judgement for the terminal: the decision first, then why. About thirty lines for any number of springs.
 
-use crate::model::labelled;
+use crate::model::{Page, labelled};
 use crate::record::{AcceptRecord, Decision, RequirementFacts, SpringResult, Verdict};
 use crate::text::{Alphabet, printable};
 use crate::units::{Finite, System};
@@ -67,6 +67,36 @@ pub fn summary(record: &AcceptRecord, show_in: System) -> String {
             "  and {} more in the report",
             wording::count(rest(record.cautions.len(), CAUTIONS), "caution")
         ));
+    }
+    lines.into_iter().map(|line| cut(&line) + "\n").collect()
+}
+
+/// A page for the terminal: the decision, the grounds, the tables of page one, cautions.
+pub fn page_summary(page: &Page) -> String {
+    let mut lines = vec![format!("{}: {}", page.decision.word, page.subject)];
+    lines.extend(page.decision.why.iter().map(|why| format!("  {why}")));
+    lines.extend(
+        page.notes
+            .iter()
+            .map(|note| format!("  {}: {}", note.label, note.text)),
+    );
+    for table in &page.tables {
+        lines.push(format!("  {}:", table.caption));
+        for row in &table.rows {
+            let cells = row.cells.iter().zip(&table.columns).skip(1);
+            let cells: Vec<String> = cells
+                .filter(|(cell, _)| !cell.text.is_empty())
+                .map(|(cell, column)| format!("{} {}", column.title, cell.text))
+                .collect();
+            let name = row.cells.first().map_or("", |cell| cell.text.as_str());
+            lines.push(format!("    {name}: {}", cells.join(", ")));
+        }
+    }
+    let cautions = page.cautions.iter().take(CAUTIONS);
+    lines.extend(cautions.map(|caution| format!("  Caution: {caution}")));
+    if page.cautions.len() > CAUTIONS {
+        let more = wording::count(rest(page.cautions.len(), CAUTIONS), "caution");
+        lines.push(format!("  and {more} more in the report"));
     }
     lines.into_iter().map(|line| cut(&line) + "\n").collect()
 }

@@ -2,6 +2,9 @@
 //! Elsewhere: the exports themselves (`export`), corrected points (`curve`).
 
 mod dialect;
+mod edit;
+mod every;
+mod frame;
 mod open;
 mod read_dialect;
 mod scale;
@@ -9,5 +12,8 @@ mod scale;
 pub use dialect::{
     Decimal, Delimiter, Dialect, Encoding, LoadColumn, Pushing, SpringFrom, TravelColumn,
 };
-pub use open::{Compliance, KEYS, Means, Rig, open};
-pub use scale::{Accuracy, Known, Scale, standard_of};
+pub use edit::{Change, Changed, Edited, RigEditError, edit};
+pub use every::Every;
+pub use frame::{Compliance, Give};
+pub use open::{KEYS, Means, Rig, from_source, open};
+pub use scale::{Accuracy, Known, Scale, read_calibrated, standard_of};

@@ -8,6 +8,8 @@ use crate::text::{InputFile, Keys, Source, Table, read_toml};
 use crate::units::{Newtons, System};
 
 use super::dialect::Dialect;
+use super::every::{Every, read_every};
+use super::frame::{Compliance, read_frame};
 use super::read_dialect::read_export;
 use super::scale::{
     FORCE_CLASSES, Known, Scale, TRAVEL_CLASSES, declared_negligible, read_scale, standard_of,
@@ -54,7 +56,8 @@ pub const KEYS: Keys = &[
     ("travel.zero", STATED),
     ("travel.calibrated", &["on", "until"]),
     ("frame", &["compliance", "allowance"]),
-    ("frame.compliance", STATED),
+    ("frame.compliance", &["value", "table", "uncertainty", "k", "unknown"]),
+    ("frame.compliance.table", &["load", "give"]),
     ("contact", &["load"]),
     ("repeatability", &["of", "standard_deviation"]),
 ];
@@ -73,25 +76,6 @@ pub enum Means {
     },
 }
 
-/// Compliance of the frame.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub enum Compliance {
-    /// Measured: mm/N and its standard uncertainty.
-    Measured {
-        /// mm/N.
-        value: f64,
-        /// Standard uncertainty, mm/N.
-        standard: f64,
-    },
-    /// Not known, so not corrected; up to this share of the travel may be the frame's.
-    NotCorrected {
-        /// Share of travel, 0 … 1.
-        allowance: f64,
-    },
-    /// Declared negligible.
-    DeclaredNegligible,
-}
-
 /// A rig file, opened and free of faults.
 #[derive(Clone, Debug)]
 pub struct Rig {
@@ -99,8 +83,8 @@ pub struct Rig {
     pub input: InputFile,
     /// Name.
     pub name: String,
-    /// How often a check on a reference spring is wanted, as written.
-    pub check_every: Option<String>,
+    /// How often a check on a reference spring is wanted.
+    pub check_every: Option<Every>,
     /// How the export is written.
     pub dialect: Dialect,
     /// What travel means.
@@ -128,15 +112,23 @@ pub struct Rig {
 /// # Errors
 /// A report of every fault in the file.
 pub fn open(path: &Path, as_written: &str) -> miette::Result<Rig> {
-    let source = Source::open(path, as_written)?;
+    from_source(&Source::open(path, as_written)?)
+}
+
+/// Opens a rig file already read.
+///
+/// # Errors
+/// A report of every fault in the file.
+pub fn from_source(source: &Source) -> miette::Result<Rig> {
     let input = source.input("rig");
-    Ok(read_toml(&source, KEYS, |root| read(root, &input))?)
+    Ok(read_toml(source, KEYS, |root| read(root, &input))?)
 }
 
 fn read(root: Table<'_>, input: &InputFile) -> Option<Rig> {
     let units = read_units(root)?;
     let head = root.table("rig");
     let name = head.required_text("name", "write the rig's name under [rig]");
+    let check_every = read_every(head);
     let export = read_export(root.table("export"));
     let force = read_scale(root.table("force"), &FORCE_CLASSES, units.force());
     let travel = read_scale(root.table("travel"), &TRAVEL_CLASSES, units.length());
@@ -162,7 +154,7 @@ fn read(root: Table<'_>, input: &InputFile) -> Option<Rig> {
     Some(Rig {
         input: input.clone(),
         name: name?,
-        check_every: head.text("check_every"),
+        check_every,
         dialect,
         means,
         force: force?,
@@ -193,35 +185,6 @@ fn read_zero(table: Table<'_>, means: Means, unit: f64) -> Option<Known> {
     standard_of(zero, help).map(|standard| Known::Stated(standard * unit))
 }
 
-fn read_frame(table: Table<'_>, units: System) -> Option<Compliance> {
-    if !table.has("compliance") {
-        // Nothing known of the frame: 0 to 1 % of the travel unless the file states another allowance.
-        let allowance = if table.has("allowance") {
-            table.share("allowance")?.value
-        } else {
-            0.01
-        };
-        return Some(Compliance::NotCorrected { allowance });
-    }
-    let compliance = table.table("compliance");
-    if compliance.has("unknown") {
-        return declared_negligible(compliance).then_some(Compliance::DeclaredNegligible);
-    }
-    let unit = units.length() / units.force();
-    if !compliance.has("value") {
-        compliance.missing(
-            "value",
-            "write compliance = { value = 0.00021, uncertainty = 0.00002, k = 2 }",
-        );
-    }
-    let value = compliance.not_negative("value")?.value * unit;
-    let standard = standard_of(
-        compliance,
-        "write compliance = { value = 0.00021, uncertainty = 0.00002, k = 2 }",
-    )? * unit;
-    Some(Compliance::Measured { value, standard })
-}
-
 fn read_repeatability(root: Table<'_>, units: System) -> Option<Vec<(&'static str, f64)>> {
     let mut stated: Vec<(&'static str, f64)> = Vec::new();
     let of = [
@@ -232,6 +195,7 @@ fn read_repeatability(root: Table<'_>, units: System) -> Option<Vec<(&'static st
         (Quantity::Hysteresis.name(), 1.0),
         (Quantity::Set.name(), units.length()),
         (Quantity::Straightness.name(), 1.0),
+        (Quantity::Knee(1).name(), units.length()),
     ];
     let words = of.map(|(name, scale)| (name, (name, scale)));
     for table in root.tables("repeatability") {

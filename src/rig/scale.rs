@@ -59,6 +59,25 @@ pub struct Scale {
     pub calibrated: Option<(Date, Date)>,
 }
 
+impl Scale {
+    /// The smallest load a force scale is good for, N: the start of its stated range, and at least the load at which one
+    /// step is as large a share as the class allows, half of its indication error (ISO 7500-1:2018 table 2, from memory:
+    /// 0.25 % at class 0.5, 0.5 % at class 1). `None` where neither is known.
+    pub fn usable_from(&self) -> Option<f64> {
+        let by_class = match (&self.accuracy, self.resolution) {
+            (Accuracy::Class { half_width, .. }, Known::Stated(step)) => {
+                Some(step / (half_width / 2.0))
+            }
+            _ => None,
+        };
+        let stated = self.range.map(|(from, _)| from);
+        match (stated, by_class) {
+            (Some(stated), Some(by_class)) => Some(f64::max(stated, by_class)),
+            (one, other) => one.or(other),
+        }
+    }
+}
+
 /// Relative half-width of the indication error by class, ISO 7500-1:2018 table 2 (from memory).
 pub(super) const FORCE_CLASSES: [(&str, f64); 4] =
     [("0.5", 0.005), ("1", 0.01), ("2", 0.02), ("3", 0.03)];
@@ -79,8 +98,18 @@ pub(super) fn read_scale(table: Table<'_>, classes: &[(&str, f64)], unit: f64) -
     } else {
         None
     };
-    let dates = table.table("calibrated");
-    let calibrated = match (dates.date("on"), dates.date("until")) {
+    let calibrated = read_calibrated(table.table("calibrated"));
+    Some(Scale {
+        accuracy: accuracy?,
+        resolution: resolution?,
+        range,
+        calibrated,
+    })
+}
+
+/// The dates of a calibration; `None` where none are stated, or where a fault was noted.
+pub fn read_calibrated(dates: Table<'_>) -> Option<(Date, Date)> {
+    match (dates.date("on"), dates.date("until")) {
         (Some(on), Some(until)) if on.value < until.value => Some((on.value, until.value)),
         (None, None) if !dates.is_present() => None,
         _ => {
@@ -91,13 +120,7 @@ pub(super) fn read_scale(table: Table<'_>, classes: &[(&str, f64)], unit: f64) -
             );
             None
         }
-    };
-    Some(Scale {
-        accuracy: accuracy?,
-        resolution: resolution?,
-        range,
-        calibrated,
-    })
+    }
 }
 
 fn read_range(range: Table<'_>, unit: f64) -> Option<(f64, f64)> {

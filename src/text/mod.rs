@@ -15,6 +15,6 @@ pub use blocks::{Block, Blocks, Next, Tail};
 pub use excerpt::{Excerpt, Place};
 pub use fault::{Fault, Faults};
 pub use printable::{Alphabet, printable};
-pub use source::{Hasher, Head, InputFile, Source, TextError, beside, hex};
+pub use source::{Hasher, Head, InputFile, Source, TextError, beside, hex, read_bytes, sha256_of};
 pub use table::{At, Table};
 pub use toml::{Keys, read_toml};

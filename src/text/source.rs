@@ -13,6 +13,9 @@ const LARGEST_HAND_WRITTEN: u64 = 4 << 20;
 /// Bytes of an export that are looked at to see how it is written.
 const LOOKED_AT: u64 = 64 << 10;
 
+/// Bytes of a file that are hashed at once.
+const HASHED_AT_ONCE: usize = 1 << 20;
+
 /// What a judgement was made from: the path as it was written, and the SHA-256 of its bytes.
 #[derive(Clone, Debug, PartialEq, Eq, PartialOrd, Ord, Serialize, Deserialize, JsonSchema)]
 pub struct InputFile {
@@ -101,6 +104,16 @@ impl Source {
         })
     }
 
+    /// The same file with another text.
+    #[must_use]
+    pub fn with_text(&self, text: &str) -> Self {
+        Self {
+            text: text.into(),
+            sha256: hex(&sha2::Sha256::digest(text.as_bytes())),
+            ..self.clone()
+        }
+    }
+
     /// This file as a line of provenance.
     pub fn input(&self, role: &str) -> InputFile {
         InputFile {
@@ -124,6 +137,37 @@ pub fn hex(bytes: &[u8]) -> String {
             let _ = write!(text, "{byte:02x}"); // writing into a string cannot fail
             text
         })
+}
+
+/// A file that a machine wrote, read whole.
+///
+/// # Errors
+/// [`TextError::Read`] where it cannot be read; `as_written` names it.
+pub fn read_bytes(path: &Path, as_written: &str) -> Result<Vec<u8>, TextError> {
+    std::fs::read(path).map_err(|cause| TextError::Read {
+        name: super::printable(as_written, &super::Alphabet::Any),
+        cause,
+    })
+}
+
+/// SHA-256 of a file of any size, lower-case hexadecimal.
+///
+/// # Errors
+/// [`TextError::Read`] where it cannot be read; `as_written` names it.
+pub fn sha256_of(path: &Path, as_written: &str) -> Result<String, TextError> {
+    let read = |cause| TextError::Read {
+        name: super::printable(as_written, &super::Alphabet::Any),
+        cause,
+    };
+    let mut file = std::fs::File::open(path).map_err(read)?;
+    let mut hasher = Hasher::default();
+    let mut block = vec![0; HASHED_AT_ONCE];
+    loop {
+        match std::io::Read::read(&mut file, &mut block).map_err(read)? {
+            0 => return Ok(hasher.finish()),
+            some => hasher.update(block.get(..some).unwrap_or_default()),
+        }
+    }
 }
 
 /// A running SHA-256 for files that are read block by block.

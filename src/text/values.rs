@@ -5,8 +5,18 @@ use toml::de::DeValue;
 use super::table::{At, Table};
 use super::toml::nearest;
 use super::{Alphabet, printable};
+use crate::units::System;
 
 impl Table<'_> {
+    /// The `units` key that every file may state; millimetres and newtons without it.
+    pub fn system(&self) -> Option<System> {
+        if self.has("units") {
+            self.word("units", &[("mm-N", System::MmN), ("in-lbf", System::InLbf)])
+        } else {
+            Some(System::MmN)
+        }
+    }
+
     /// Text as written, for paths and column names, which must match byte for byte.
     pub fn raw_text(&self, key: &str) -> Option<At<String>> {
         let (value, span) = self.value(key)?;
@@ -59,20 +69,11 @@ impl Table<'_> {
     /// A finite number, whole or not.
     pub fn number(&self, key: &str) -> Option<At<f64>> {
         let (value, span) = self.value(key)?;
-        let number = match value {
-            DeValue::Integer(whole) => i64::from_str_radix(whole.as_str(), whole.radix())
-                .ok()
-                .map(|whole| whole as f64),
-            DeValue::Float(float) => float
-                .as_str()
-                .parse()
-                .ok()
-                .filter(|number: &f64| number.is_finite()),
-            other => {
-                self.wrong(key, &span, other, "a number");
-                return None;
-            }
-        };
+        if !matches!(value, DeValue::Integer(_) | DeValue::Float(_)) {
+            self.wrong(key, &span, value, "a number");
+            return None;
+        }
+        let number = finite(value);
         if number.is_none() {
             self.fault(
                 &span,
@@ -84,6 +85,28 @@ impl Table<'_> {
             value: number?,
             span,
         })
+    }
+
+    /// A list of finite numbers, such as `[140.0, 130.0]`.
+    pub fn numbers(&self, key: &str) -> Vec<At<f64>> {
+        let Some((value, span)) = self.value(key) else {
+            return Vec::new();
+        };
+        let Some(items) = value.as_array() else {
+            self.wrong(key, &span, value, "a list of numbers");
+            return Vec::new();
+        };
+        let mut numbers = Vec::new();
+        for item in items {
+            match finite(item.get_ref()) {
+                Some(value) => numbers.push(At {
+                    value,
+                    span: item.span(),
+                }),
+                None => self.wrong(key, &item.span(), item.get_ref(), "a finite number"),
+            }
+        }
+        numbers
     }
 
     /// A number above zero.
@@ -198,5 +221,20 @@ impl Table<'_> {
             value: percent / 100.0,
             span: written.span,
         })
+    }
+}
+
+/// A TOML number as a finite one.
+fn finite(value: &DeValue<'_>) -> Option<f64> {
+    match value {
+        DeValue::Integer(whole) => i64::from_str_radix(whole.as_str(), whole.radix())
+            .ok()
+            .map(|whole| whole as f64),
+        DeValue::Float(float) => float
+            .as_str()
+            .parse()
+            .ok()
+            .filter(|number: &f64| number.is_finite()),
+        _ => None,
     }
 }

@@ -63,6 +63,8 @@ pub enum Reason {
     },
     /// Too few independent points to give an uncertainty, and the rig file states no repeatability.
     UncertaintyUnknown,
+    /// The two stages do not differ enough for a knee: is a member missing?
+    NoKnee,
     /// The spring was not measured for this.
     NotMeasured,
     /// Listed under `not_inspected` in the lot file.
@@ -85,6 +87,7 @@ impl From<&Absence> for Reason {
             Absence::StrokeNotRecorded => Self::StrokeNotRecorded,
             Absence::NoFullCycle => Self::NoFullCycle,
             Absence::OneLoadingStroke => Self::OneLoadingStroke,
+            Absence::NoKnee => Self::NoKnee,
             Absence::NotMeasured => Self::NotMeasured,
         }
     }

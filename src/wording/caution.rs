@@ -1,10 +1,10 @@
 //! Words for what page one must say besides the decision.
 
-use super::{characteristic, count, length, list, sentence, springs};
+use super::{characteristic, count, list, sentence, springs};
 use crate::quantity::{Quantity, Unit};
 use crate::record::{Caution, Oddity};
-use crate::units::{Finite, System};
-use crate::wording::{Place, number, percent, with_uncertainty, with_unit};
+use crate::units::System;
+use crate::wording::{Place, number, percent, with_unit};
 
 /// The cautions every report carries.
 pub(crate) const STANDING: [&str; 3] = [
@@ -19,26 +19,28 @@ pub(crate) fn caution(of: &Caution, show_in: System) -> String {
         Caution::SetAsideInvalid { .. }
         | Caution::Repeated { .. }
         | Caution::NotInspected { .. }
-        | Caution::LengthBelowSmallest { .. }
         | Caution::UnitsConfirmed { .. }
         | Caution::BeyondSample { .. }
         | Caution::GeometryNotJudged { .. }
-        | Caution::IdsAlike { .. } => about_the_sample(of, show_in),
-        Caution::LimitsWide { .. }
-        | Caution::LoadNotFromRate { .. }
-        | Caution::FreeLengthNotAsDrawn { .. } => about_the_drawing(of, show_in),
+        | Caution::IdsAlike { .. } => about_the_sample(of),
+        Caution::Drawing { finding } => super::drawing_finding(finding, show_in),
+        Caution::LimitsWide { name, at_length_mm } => format!(
+            "{}: the limits lie more than 30 % from nominal; was a tolerance in % meant?",
+            sentence(&characteristic(name, *at_length_mm, show_in))
+        ),
         Caution::RobustDiffers { .. }
         | Caution::LackOfFit { .. }
         | Caution::NoZeroReading { .. }
         | Caution::LoadOutsideRange { .. }
+        | Caution::FrameBeyondTable { .. }
         | Caution::OddRatio { .. }
         | Caution::OddCurves { .. }
-        | Caution::LengthsShifted { .. }
-        | Caution::RateNotFromGeometry { .. } => about_the_curves(of, show_in),
+        | Caution::LengthsShifted { .. } => about_the_curves(of, show_in),
         Caution::ComplianceNotCorrected
         | Caution::DeclaredNegligible { .. }
         | Caution::CalibrationExpired { .. }
         | Caution::CalibrationUnknown { .. }
+        | Caution::CheckFailed { .. }
         | Caution::NoCheckOnRecord { .. }
         | Caution::UncertaintyLarge { .. }
         | Caution::ComplianceLarge { .. }
@@ -60,9 +62,15 @@ fn about_the_bench(of: &Caution, show_in: System) -> String {
             "The frame compliance in the rig file makes up {} of the spring's own; is it right?",
             percent(Some(*share))
         ),
-        Caution::NoCheckOnRecord { every } => {
-            format!("The rig file asks for a check every {every}; no passed check is on record.")
-        }
+        Caution::CheckFailed { last } => format!(
+            "The last check of this rig on record failed: {last}. What it measures now is open to doubt."
+        ),
+        Caution::NoCheckOnRecord { every, last } => match last {
+            Some(last) => format!(
+                "The rig file asks for a check every {every}; the last passed check on record is of {last}."
+            ),
+            None => format!("The rig file asks for a check every {every}; no passed check is on record."),
+        },
         Caution::UncertaintyLarge { name, at_length_mm, share } => format!(
             "{}: the expanded uncertainty is {} of the half tolerance; springs near a limit stay undecided.",
             sentence(&characteristic(name, *at_length_mm, show_in)),
@@ -71,36 +79,6 @@ fn about_the_bench(of: &Caution, show_in: System) -> String {
         Caution::CannotProve { name, at_length_mm } => format!(
             "{}: this bench cannot prove this requirement; the guard bands leave no room between the limits.",
             sentence(&characteristic(name, *at_length_mm, show_in))
-        ),
-        _ => String::new(),
-    }
-}
-
-fn about_the_drawing(of: &Caution, show_in: System) -> String {
-    let load = |value| with_unit(Some(value), Unit::Newton, Place::Stated, show_in);
-    match of {
-        Caution::LimitsWide { name, at_length_mm } => format!(
-            "{}: the limits lie more than 30 % from nominal; was a tolerance in % meant?",
-            sentence(&characteristic(name, *at_length_mm, show_in))
-        ),
-        Caution::LoadNotFromRate {
-            at_length_mm,
-            stated,
-            expected,
-        } => format!(
-            "The drawing requires {} at {}; its rate and free length give {}.",
-            load(*stated),
-            length(Some(*at_length_mm), show_in),
-            with_unit(
-                Some(*expected),
-                Unit::Newton,
-                Place::Significant(4),
-                show_in
-            )
-        ),
-        Caution::FreeLengthNotAsDrawn { drawn } => format!(
-            "The drawn free length {} lies outside the limits required of it.",
-            length(Some(*drawn), show_in)
         ),
         _ => String::new(),
     }
@@ -133,25 +111,6 @@ fn about_the_curves(of: &Caution, show_in: System) -> String {
         }
     };
     match of {
-        Caution::RateNotFromGeometry {
-            stated,
-            theory,
-            expanded_uncertainty,
-        } => {
-            let finite = |value: f64| Finite::try_from(value).ok();
-            let unit = Unit::NewtonPerMillimetre;
-            format!(
-                "The drawing states a rate of {}, its geometry gives {} {} (k = 2).",
-                with_unit(Some(*stated), unit, Place::Stated, show_in),
-                with_uncertainty(
-                    finite(theory.get()),
-                    finite(expanded_uncertainty.get()),
-                    unit,
-                    show_in
-                ),
-                super::unit_symbol(unit, show_in)
-            )
-        }
         Caution::OddRatio {
             springs: names,
             ratio,
@@ -166,10 +125,14 @@ fn about_the_curves(of: &Caution, show_in: System) -> String {
         ),
         Caution::LoadOutsideRange { springs: names } => {
             format!(
-                "Loads outside the range the rig file states: {}.",
+                "Loads outside the usable range of the force scale: {}.",
                 springs(names)
             )
         }
+        Caution::FrameBeyondTable { springs: names } => format!(
+            "Loads beyond the table of the frame's give in the rig file, whose last stretch is drawn on: {}.",
+            springs(names)
+        ),
         Caution::RobustDiffers { springs: names } => format!(
             "{}: the robust rate differs from the fitted one; look at {} residuals.",
             sentence(&springs(names)),
@@ -200,7 +163,7 @@ fn about_the_curves(of: &Caution, show_in: System) -> String {
     }
 }
 
-fn about_the_sample(of: &Caution, show_in: System) -> String {
+fn about_the_sample(of: &Caution) -> String {
     match of {
         Caution::SetAsideInvalid {
             spring,
@@ -215,19 +178,6 @@ fn about_the_sample(of: &Caution, show_in: System) -> String {
         Caution::NotInspected { what } => {
             format!("Not inspected, as the lot file says: {}.", list(what))
         }
-        Caution::LengthBelowSmallest {
-            at_length_mm,
-            smallest_mm,
-        } => format!(
-            "The test length {} lies below the smallest permitted length Ln = {}.",
-            length(Some(*at_length_mm), show_in),
-            with_unit(
-                Some(*smallest_mm),
-                Unit::Millimetre,
-                Place::Significant(4),
-                show_in
-            )
-        ),
         Caution::UnitsConfirmed { finding } => {
             format!("The units were confirmed by hand over this finding: {finding}.")
         }
@@ -253,7 +203,8 @@ fn about_the_sample(of: &Caution, show_in: System) -> String {
 mod tests {
     #![expect(clippy::unwrap_used, reason = "tests")]
     use super::*;
-    use crate::units::{Millimetres, NewtonsPerMillimetre};
+    use crate::record::DrawingFinding;
+    use crate::units::{Finite, Millimetres};
 
     fn every() -> Vec<Caution> {
         let (name, text) = (|| "load".to_owned(), || "x".to_owned());
@@ -261,13 +212,13 @@ mod tests {
             || vec!["7".to_owned()],
             Millimetres::try_from(48.0).unwrap(),
         );
-        let rate = NewtonsPerMillimetre::try_from(10.0).unwrap();
         let share = Finite::try_from(0.4).unwrap();
         vec![
-            Caution::RateNotFromGeometry {
-                stated: rate,
-                theory: rate,
-                expanded_uncertainty: rate,
+            Caution::Drawing {
+                finding: DrawingFinding::LengthBelowSmallest {
+                    at_length_mm: at,
+                    smallest_mm: at,
+                },
             },
             Caution::OddRatio {
                 springs: some(),
@@ -281,7 +232,16 @@ mod tests {
                 until: text(),
             },
             Caution::CalibrationUnknown { scale: text() },
-            Caution::NoCheckOnRecord { every: text() },
+            Caution::CheckFailed { last: text() },
+            Caution::NoCheckOnRecord {
+                every: text(),
+                last: None,
+            },
+            Caution::NoCheckOnRecord {
+                every: text(),
+                last: Some(text()),
+            },
+            Caution::FrameBeyondTable { springs: some() },
             Caution::LoadOutsideRange { springs: some() },
             Caution::UncertaintyLarge {
                 name: name(),
@@ -302,10 +262,6 @@ mod tests {
             },
             Caution::Repeated { springs: some() },
             Caution::NotInspected { what: some() },
-            Caution::LengthBelowSmallest {
-                at_length_mm: at,
-                smallest_mm: at,
-            },
             Caution::UnitsConfirmed { finding: text() },
             Caution::BeyondSample { springs: 3 },
             Caution::GeometryNotJudged {

@@ -1,21 +1,30 @@
 //! A record's data as finished text: figures with their rounding, reasons, cautions, advice, names; and the fonts it is
 //! printed in. Elsewhere: what a record means (`verdict`, `lot`), what stands where (`model`).
 
+mod bench;
 mod caution;
+mod drawing;
+mod drawing_rate;
 mod figure;
 pub(crate) mod font;
 mod lot;
 mod plan;
 mod spring;
+mod strength;
 
+pub(crate) use bench::{
+    bench_caution, check_reason, component_word, finding, repeat_reason, serving_word,
+};
 pub(crate) use caution::{STANDING, caution};
+pub(crate) use drawing::drawing_finding;
 pub use figure::{
     ABSENT, Place, figure, freedom, number, per_unit, percent, probability, unit_symbol,
     with_uncertainty, with_unit,
 };
 pub(crate) use lot::{decided, decision_word, simple_line, terms, why};
 pub(crate) use plan::{compared, readings, settled_early, state};
-pub(crate) use spring::{advice, disposition, rule_used, verdict_reason, verdict_word};
+pub(crate) use spring::{absence, advice, disposition, rule_used, verdict_reason, verdict_word};
+pub(crate) use strength::{stress_limit, stress_place, stress_rule, stress_taken};
 
 use crate::quantity::{Quantity, Unit};
 use crate::units::{Millimetres, System};

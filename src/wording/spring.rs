@@ -37,6 +37,16 @@ pub(crate) fn verdict_reason(of: &CharacteristicResult, show_in: System) -> Opti
             "the upper limit {} lies inside the guard band",
             limit(of.upper)
         ),
+        other => return Some(absence(other, show_in)),
+    };
+    Some(text)
+}
+
+/// Why there is no value, or none whose uncertainty is known.
+pub(crate) fn absence(of: &Reason, show_in: System) -> String {
+    match of {
+        Reason::BelowLower | Reason::AboveUpper => "outside a limit".to_owned(),
+        Reason::LowerWithinUncertainty | Reason::UpperWithinUncertainty => "a limit lies inside the guard band".to_owned(),
         Reason::GuardBandsMeet => "the guard bands leave no room between the limits".to_owned(),
         Reason::NoAbsoluteLength => "no absolute length: the export gives deflections and the spring has no measured free length".to_owned(),
         Reason::WindowNotReached { reached_n, wanted_n } => window_missed(*reached_n, *wanted_n, show_in),
@@ -54,10 +64,12 @@ pub(crate) fn verdict_reason(of: &CharacteristicResult, show_in: System) -> Opti
         Reason::UncertaintyUnknown => {
             "too few independent points to give an uncertainty, and the rig file states no repeatability".to_owned()
         }
+        Reason::NoKnee => {
+            "the slopes before and after do not differ enough for a knee; is a member missing?".to_owned()
+        }
         Reason::NotMeasured => "not measured".to_owned(),
         Reason::NotInspected => "not inspected, as the lot file says".to_owned(),
-    };
-    Some(text)
+    }
 }
 
 fn window_missed(reached: Option<Newtons>, wanted: Option<Newtons>, show_in: System) -> String {

@@ -2,13 +2,16 @@
 //!
 //! `cargo bench --locked` prints medians; nothing here asserts a time. Cases: 50 exports to the full report, against a
 //! script for pandas, scipy and matplotlib that does the same fits, plots and table; one file of 10 000 springs to
-//! `result.json` and `springs.csv`, against polars alone reading the same file.
+//! `result.json` and `springs.csv`, against polars alone reading the same file; lots found in an archive, against DuckDB.
+//! `cargo bench --locked -- archive` runs that last case only.
 #![expect(
     clippy::print_stdout,
     clippy::unwrap_used,
     clippy::expect_used,
     reason = "a bench prints, and stops at the first surprise"
 )]
+
+mod archive;
 
 use std::path::Path;
 use std::process::{Command, Stdio};
@@ -26,8 +29,14 @@ fn main() {
         return polars_alone(Path::new(file));
     }
     let work = tempfile::tempdir().unwrap();
+    if let [_, name, ..] = words.as_slice()
+        && name == "archive"
+    {
+        return archive::found_again(work.path());
+    }
     fifty_exports(work.path());
     one_large_file(work.path());
+    archive::found_again(work.path());
 }
 
 /// The baseline: the whole file read by polars with its own inference.
@@ -101,9 +110,10 @@ fn fifty_exports(work: &Path) {
             &theirs,
         );
     } else {
-        println!("50 exports: no python3 with pandas, scipy and matplotlib here, so no baseline");
-        let seconds: Vec<f64> = (0..PAIRS).map(|_| seconds(&mut ours()).0).collect();
-        println!("  ours {:.3} s (median of {PAIRS})", median(seconds));
+        alone(
+            "50 exports: no python3 with pandas, scipy and matplotlib here, so no baseline",
+            &ours,
+        );
     }
 }
 
@@ -135,6 +145,12 @@ fn one_large_file(work: &Path) {
         &ours,
         &polars,
     );
+}
+
+fn alone(name: &str, ours: &dyn Fn() -> Command) {
+    let seconds: Vec<f64> = (0..PAIRS).map(|_| seconds(&mut ours()).0).collect();
+    println!("{name}");
+    println!("  ours {:.3} s (median of {PAIRS})", median(seconds));
 }
 
 fn compare(name: &str, ours: &dyn Fn() -> Command, baseline: &dyn Fn() -> Command) {

@@ -106,6 +106,7 @@ fn coverage(case: &Case, number: u64) -> Vec<(Quantity, Tally)> {
         method: drawing.rate_test.method,
         full_load: Some(full_load(&drawing)),
         wanted: &judged,
+        stages: &[],
         caliper: &[("free_length", case.zero)],
     };
     let all: Vec<_> = (0..CURVES)

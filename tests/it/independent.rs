@@ -20,9 +20,10 @@ fn record() -> AcceptRecord {
         date: jiff::civil::date(2026, 12, 1),
         units_confirmed: false,
         strict: false,
-        drawn: false,
+        keep: coilassay::job::Keep::default(),
         block_bytes: None,
         flags: Vec::new(),
+        memory: coilassay::job::Memory::Nothing,
         past: None,
     };
     accept(&lot, "lot.toml", &options).unwrap().record

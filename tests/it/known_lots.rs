@@ -83,9 +83,10 @@ fn judged() -> Vec<Judged> {
         date: jiff::civil::date(2026, 12, 1),
         units_confirmed: false,
         strict: false,
-        drawn: false,
+        keep: coilassay::job::Keep::default(),
         block_bytes: None,
         flags: Vec::new(),
+        memory: coilassay::job::Memory::Nothing,
         past: None,
     };
     let (truths, options, folder) = (&truths, &options, &folder);

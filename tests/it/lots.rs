@@ -51,9 +51,10 @@ impl Lot {
             date: jiff::civil::date(2026, 12, 1),
             units_confirmed: false,
             strict: false,
-            drawn: false,
+            keep: coilassay::job::Keep::default(),
             block_bytes,
             flags: Vec::new(),
+            memory: coilassay::job::Memory::Nothing,
             past: None,
         };
         accept(&self.place().join("lot.toml"), "lot.toml", &options)

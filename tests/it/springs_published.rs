@@ -1,7 +1,7 @@
 //! Rate, stress and solid length against published examples. The formulas hold in any consistent units, so inch examples
 //! are computed in inches and pounds-force.
 
-use coilassay::drawing::{Ends, rate, solid_length, stress};
+use coilassay::formula::{Ends, Forming, rate, solid_length, stress};
 use coilassay::units::Newtons;
 
 use crate::published::Misses;
@@ -153,7 +153,12 @@ fn solid_lengths() {
         ),
     ];
     for (source, ends, total, wire, printed, within) in rows {
-        misses.relative(source, solid_length(ends, total, wire), printed, within);
+        misses.relative(
+            source,
+            solid_length(ends, Forming::Cold, total, wire),
+            printed,
+            within,
+        );
     }
     misses.none();
 }

@@ -13,7 +13,7 @@ use super::super::facts::figure;
 use super::alike::alike;
 use super::drawing_cautions::of_drawing;
 use super::figures::value_of;
-use super::rig_cautions::{large_compliance, of_rig};
+use super::rig_cautions::{beyond_table, large_compliance, of_check, of_rig};
 use super::springs::Judged;
 use super::{Files, Options, guards};
 
@@ -46,6 +46,7 @@ pub(super) fn cautions(
         found.extend(of_requirement(requirement, rule, judged));
     }
     found.extend(of_rig(&files.rig, options.date));
+    found.extend(of_check(&files.rig, options));
     found.extend(large_compliance(&files.rig, nominal_rate(&files.drawing)));
     found.extend(of_curves(&files.rig, full_load(&files.drawing), judged));
     found.extend(of_measurements(files, judged));
@@ -91,7 +92,7 @@ fn odd_rates(drawing: &Drawing, judged: &[Judged]) -> Option<Caution> {
 
 /// Nearly all free lengths off the drawn one by much the same: the springs may be wrong, or the length zero.
 fn shifted(drawing: &Drawing, judged: &[Judged]) -> Option<Caution> {
-    let drawn = drawing.members.first()?.free.nominal;
+    let drawn = drawing.theory.free.get();
     let lengths = judged
         .iter()
         .filter_map(|spring| value_of(&spring.result, Quantity::FreeLength)?.value);
@@ -166,7 +167,7 @@ fn of_curves(rig: &Rig, full_load: f64, judged: &[Judged]) -> Vec<Caution> {
             .is_some_and(|(_, most)| spring.loads.1 > most)
     };
     let below = |spring: &Judged| {
-        let least = rig.force.range.map(|(least, _)| least);
+        let least = rig.force.usable_from();
         let judged_loads = spring
             .result
             .characteristics
@@ -178,6 +179,8 @@ fn of_curves(rig: &Rig, full_load: f64, judged: &[Judged]) -> Vec<Caution> {
     [
         named(&|spring| outside(spring) || below(spring))
             .map(|springs| Caution::LoadOutsideRange { springs }),
+        named(&|spring| beyond_table(rig, spring))
+            .map(|springs| Caution::FrameBeyondTable { springs }),
         named(&robust_differs).map(|springs| Caution::RobustDiffers { springs }),
         named(&bends).map(|springs| Caution::LackOfFit { springs }),
         odd(Oddity::StrokesLeftOut, &|spring| spring.short_strokes),

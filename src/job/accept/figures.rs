@@ -81,7 +81,7 @@ fn dof(dof: Dof) -> Option<Finite> {
     }
 }
 
-fn budget(estimate: &Estimate) -> Vec<BudgetFigure> {
+pub(in crate::job) fn budget(estimate: &Estimate) -> Vec<BudgetFigure> {
     let line = |line: &Line| {
         Some(BudgetFigure {
             source: line.source.to_owned(),

@@ -5,13 +5,14 @@ mod cautions;
 mod deciding;
 mod drawing_cautions;
 mod error;
-mod figures;
+pub(super) mod figures;
 mod files;
 mod group;
+mod memory;
 mod plan;
 mod process;
 mod requirements;
-mod rig_cautions;
+pub(super) mod rig_cautions;
 mod springs;
 mod variables;
 
@@ -20,8 +21,8 @@ use std::path::Path;
 use jiff::civil::Date;
 use rayon::prelude::*;
 
-use crate::characteristic::{Setup, wanted};
-use crate::curve::{Reduced, full_load, nominal_rate, window_of};
+use crate::characteristic::{Setup, stage_windows, wanted};
+use crate::curve::{Kept, Reduced, full_load, nominal_rate, window_of};
 use crate::doubt::doubt;
 use crate::drawing::{Drawing, Requirement, Rule};
 use crate::quantity::Class;
@@ -30,7 +31,7 @@ use crate::rig::SpringFrom;
 use crate::text::InputFile;
 
 use super::facts;
-use super::read::{How, Reading, read};
+use super::read::{How, Keep, Reading, read};
 use super::threads::side_by_side;
 use error::AcceptError;
 use files::Files;
@@ -38,6 +39,7 @@ use group::Spring;
 use springs::Judged;
 
 pub use deciding::Past;
+pub use memory::Memory;
 
 /// Faults of exports shown at once.
 const SHOWN: usize = 20;
@@ -51,12 +53,14 @@ pub struct Options {
     pub units_confirmed: bool,
     /// A warning on the rig ends the run.
     pub strict: bool,
-    /// Whether curves are kept for charts.
-    pub drawn: bool,
+    /// What is kept of the curves.
+    pub keep: Keep,
     /// Bytes read at once, where a test wants other blocks.
     pub block_bytes: Option<usize>,
     /// Flags that bear on the result, as given.
     pub flags: Vec<String>,
+    /// Where earlier checks and lots are looked for.
+    pub memory: Memory,
     /// The lots before this one, for the switching rules.
     pub past: Option<Past>,
 }
@@ -68,6 +72,9 @@ pub struct Accepted {
     pub record: AcceptRecord,
     /// The curves for the charts, in the order of the springs; empty where they were not wanted.
     pub curves: Vec<Reduced>,
+    /// The curves for an archive, in the order of the springs, each spring's measurements in the order of measuring; empty
+    /// where they were not wanted.
+    pub kept: Vec<Vec<Kept>>,
 }
 
 /// Judges the lot of the file at `path`, written as `as_written`.
@@ -76,7 +83,9 @@ pub struct Accepted {
 /// A report that names file, line and column where a file or an export cannot be used, or why nothing is judged.
 pub fn accept(path: &Path, as_written: &str, options: &Options) -> miette::Result<Accepted> {
     let files = files::open(path, as_written)?;
+    let options = &options.asked(&files)?;
     let wanted = wanted(&files.drawing);
+    let stages = stage_windows(&files.drawing);
     let setup = Setup {
         rig: &files.rig,
         conditions: files.lot.conditions,
@@ -85,12 +94,14 @@ pub fn accept(path: &Path, as_written: &str, options: &Options) -> miette::Resul
         method: files.drawing.rate_test.method,
         full_load: Some(full_load(&files.drawing)),
         wanted: &wanted,
+        stages: &stages,
         caliper: &files.lot.caliper,
     };
     let how = How {
         setup: &setup,
         caliper: &files.caliper.springs,
-        drawn: options.drawn,
+        keep: options.keep,
+        of_all: &[],
         block_bytes: options.block_bytes,
     };
     let (readings, sources) = read_all(&files, how)?;
@@ -121,6 +132,7 @@ fn read_all(files: &Files, how: How<'_>) -> miette::Result<(Readings, Sources)> 
         files.drawing.input.clone(),
         files.rig.input.clone(),
     ];
+    inputs.extend(files.drawing.materials.clone());
     inputs.extend(files.caliper.input.clone());
     let mut sources = Sources {
         inputs,
@@ -195,7 +207,7 @@ fn judge(
         .into_par_iter()
         .map(judge)
         .collect::<Result<Vec<_>, _>>()?;
-    let decided = deciding::decide_lot(files, terms, &judged, options.past.as_ref())?;
+    let decided = deciding::decide_lot(files, terms, &judged, options.past().as_ref())?;
     springs::mark_sample(&mut judged, &decided.sampled, decided.plan.sample_size);
     let cautions = cautions::cautions(files, terms.rule, &judged, finding, options);
     if options.strict {
@@ -204,6 +216,10 @@ fn judge(
     let curves = judged
         .iter_mut()
         .filter_map(|spring| spring.reduced.take())
+        .collect();
+    let kept = judged
+        .iter_mut()
+        .map(|spring| std::mem::take(&mut spring.kept))
         .collect();
     let requirements = requirements::facts(drawing, &judged);
     let process = process::facts(drawing, &judged, &decided.sampled)
@@ -219,14 +235,18 @@ fn judge(
         drawing: facts::drawing(drawing, terms, requirements),
         theory: facts::theory(drawing, full_load(drawing))?,
         window: facts::window(drawing, window_of(drawing)),
-        rig: facts::rig(rig),
+        rig: facts::rig(rig, rig_cautions::holding(rig, options)),
         plan: decided.plan,
         process,
         springs: judged.into_iter().map(|spring| spring.result).collect(),
         provenance: provenance(sources, options),
         files: Vec::new(),
     };
-    Ok(Accepted { record, curves })
+    Ok(Accepted {
+        record,
+        curves,
+        kept,
+    })
 }
 
 fn provenance(mut sources: Sources, options: &Options) -> Provenance {
@@ -239,6 +259,7 @@ fn provenance(mut sources: Sources, options: &Options) -> Provenance {
         flags: options.flags.clone(),
         inputs: sources.inputs,
         ledgers: sources.ledgers,
+        archive: options.memory.told().cloned(),
     }
 }
 

@@ -3,7 +3,7 @@
 use std::collections::HashSet;
 
 use crate::characteristic::{Characteristic, Measured, Measurement, average};
-use crate::curve::Reduced;
+use crate::curve::{Kept, Reduced};
 use crate::drawing::{Acceptance, Requirement};
 use crate::lot::{Advice, advise};
 use crate::quantity::Class;
@@ -21,6 +21,8 @@ pub(super) struct Judged {
     pub(super) overall: Overall,
     pub(super) result: SpringResult,
     pub(super) reduced: Option<Reduced>,
+    /// Its measurements' curves for an archive.
+    pub(super) kept: Vec<Kept>,
     /// A first idea of its rate, N/mm.
     pub(super) plain_rate: Option<f64>,
     /// Whether the empty platen was read in every measurement.
@@ -115,7 +117,7 @@ pub(super) fn judge(
 }
 
 /// What the lot still needs of a spring's readings, beside its result.
-fn with_readings(overall: Overall, result: SpringResult, readings: Vec<Reading>) -> Judged {
+fn with_readings(overall: Overall, result: SpringResult, mut readings: Vec<Reading>) -> Judged {
     let widen = |a: (f64, f64), b: (f64, f64)| (a.0.min(b.0), a.1.max(b.1));
     let loads = readings.iter().map(|reading| reading.loads).reduce(widen);
     let any = |of: fn(&Reading) -> bool| readings.iter().any(of);
@@ -125,6 +127,14 @@ fn with_readings(overall: Overall, result: SpringResult, readings: Vec<Reading>)
         any(|one| one.measurement.gauge_differs),
     );
     let id = result.id.clone();
+    let kept = readings
+        .iter_mut()
+        .filter_map(|reading| reading.kept.take())
+        .map(|kept| Kept {
+            id: id.clone(),
+            ..kept
+        })
+        .collect();
     let last = readings.into_iter().last();
     Judged {
         overall,
@@ -137,6 +147,7 @@ fn with_readings(overall: Overall, result: SpringResult, readings: Vec<Reading>)
         reduced: last
             .and_then(|reading| reading.reduced)
             .map(|reduced| Reduced { id, ..reduced }),
+        kept,
     }
 }
 

@@ -61,6 +61,7 @@ pub fn plan(options: &PlanOptions) -> miette::Result<OffersRecord> {
             flags: options.flags.clone(),
             inputs: inputs.into_iter().collect(),
             ledgers: Vec::new(),
+            archive: None,
         },
         files: Vec::new(),
     })

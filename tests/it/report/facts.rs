@@ -117,6 +117,7 @@ pub(crate) fn rig() -> RigFacts {
         travel: "class 1 of ISO 9513, resolution 0.001 mm".to_owned(),
         travel_calibrated: Some("2026-03-02 … 2027-03-02".to_owned()),
         compliance: "0.00021 mm/N, U 0.00002 (k = 2)".to_owned(),
+        checked: Some("2026-11-28 (RS-3)".to_owned()),
         travel_means: "deflection".to_owned(),
     }
 }

@@ -260,9 +260,13 @@ fn a_repeated_spring_is_drawn_under_its_own_id() {
         date: jiff::civil::date(2026, 12, 1),
         units_confirmed: false,
         strict: false,
-        drawn: true,
+        keep: coilassay::job::Keep {
+            for_charts: true,
+            for_archive: false,
+        },
         block_bytes: None,
         flags: Vec::new(),
+        memory: coilassay::job::Memory::Nothing,
         past: None,
     };
     let lot = "samples/undecided/lot.toml";

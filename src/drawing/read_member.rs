@@ -1,94 +1,42 @@
-//! One spring of a drawing: geometry and material.
+//! Reads `[[spring]]`: geometry and material.
 
+use crate::formula::{Ends, Forming};
+use crate::material::{self, Kind, Material, OwnTable};
+use crate::spring::{Arrangement, Coil, Hand, Member, Sized};
+use crate::standard::Standard;
 use crate::text::Table;
 use crate::units::System;
 
-use super::material::{FAMILIES, SHEAR_SPREAD, Shear, family};
-use super::open::Arrangement;
+use super::by_standard::sizes;
 
-/// A drawn size with its symmetric tolerance (0 where none is stated), in mm or coils.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct Sized {
-    /// Nominal value.
-    pub nominal: f64,
-    /// Half-width of the tolerance.
-    pub tolerance: f64,
+const ENDS: [(&str, Ends); 4] = [
+    ("open", Ends::Open),
+    ("open ground", Ends::OpenGround),
+    ("closed", Ends::Closed),
+    ("closed ground", Ends::ClosedGround),
+];
+
+/// What the rest of the drawing says of its springs.
+#[derive(Clone, Copy)]
+pub(super) struct Given<'a> {
+    /// Units of the file.
+    pub units: System,
+    /// The user's own table of materials.
+    pub own: Option<&'a OwnTable>,
+    /// The standard for what has no tolerance of its own.
+    pub general: Option<Standard>,
 }
 
-/// Which coil diameter the drawing gives, in mm.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub enum Coil {
-    /// De.
-    Outside(Sized),
-    /// D.
-    Mean(Sized),
-    /// Di.
-    Inside(Sized),
-}
-
-impl Coil {
-    /// The diameter as drawn.
-    pub const fn sized(self) -> Sized {
-        match self {
-            Self::Outside(sized) | Self::Mean(sized) | Self::Inside(sized) => sized,
-        }
-    }
-}
-
-/// How the ends are made.
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
-pub enum Ends {
-    /// Plain.
-    Open,
-    /// Plain, ground.
-    OpenGround,
-    /// Closed, not ground.
-    Closed,
-    /// Closed and ground.
-    ClosedGround,
-}
-
-/// One spring of the drawing.
-#[derive(Clone, Debug, PartialEq)]
-pub struct Member {
-    /// Its name.
-    pub name: String,
-    /// Wire diameter d.
-    pub wire: Sized,
-    /// Coil diameter as drawn.
-    pub coil: Coil,
-    /// Active coils n.
-    pub active: Sized,
-    /// Total coils nt.
-    pub total: f64,
-    /// Ends.
-    pub ends: Ends,
-    /// Free length L0.
-    pub free: Sized,
-    /// Shear modulus.
-    pub shear: Shear,
-}
-
-impl Member {
-    /// Mean coil diameter D in mm.
-    pub const fn mean_coil(&self) -> f64 {
-        match self.coil {
-            Coil::Outside(outside) => outside.nominal - self.wire.nominal,
-            Coil::Mean(mean) => mean.nominal,
-            Coil::Inside(inside) => inside.nominal + self.wire.nominal,
-        }
-    }
-}
-
+/// Reads `[[spring]]`.
 pub(super) fn read_members(
     root: Table<'_>,
     arrangement: Option<Arrangement>,
-    units: System,
+    given: Given<'_>,
 ) -> Option<Vec<Member>> {
     let tables = root.tables("spring");
     let wanted = match arrangement? {
         Arrangement::Single => tables.len() == 1,
-        Arrangement::Nested => tables.len() >= 2,
+        Arrangement::Nested | Arrangement::Stacked => tables.len() >= 2,
     };
     if !wanted {
         let what = format!(
@@ -98,30 +46,24 @@ pub(super) fn read_members(
         root.fault(
             &root.place("spring"),
             what,
-            "a single spring has one [[spring]] table, a nested set one for each member",
+            "a single spring has one [[spring]] table, a nested set or a stack one for each member",
         );
         return None;
     }
     let read: Vec<Option<Member>> = tables
         .iter()
         .enumerate()
-        .map(|(place, table)| read_member(*table, place, units))
+        .map(|(place, table)| read_member(*table, place, given))
         .collect();
-    let members: Vec<Member> = read.into_iter().collect::<Option<_>>()?;
-    let free = members.first()?.free.nominal;
-    for (member, table) in members.iter().zip(&tables) {
-        if (member.free.nominal - free).abs() > 1e-9 {
-            table.fault(
-                &table.place("free_length"),
-                "later-engaging nested sets are not yet judged by this version",
-                "all members must have the same nominal free length",
-            );
-        }
-    }
-    Some(members)
+    read.into_iter().collect()
 }
 
-fn read_member(table: Table<'_>, place: usize, units: System) -> Option<Member> {
+fn read_member(table: Table<'_>, place: usize, given: Given<'_>) -> Option<Member> {
+    let Given {
+        units,
+        own,
+        general,
+    } = given;
     let length = units.length();
     let wire = read_sized(table, "wire_diameter", length, 0.0);
     let coil = read_coil(table, length);
@@ -136,18 +78,12 @@ fn read_member(table: Table<'_>, place: usize, units: System) -> Option<Member> 
     if !table.has("ends") {
         table.missing("ends", "write open, open ground, closed or closed ground");
     }
-    let ends = table.word(
-        "ends",
-        &[
-            ("open", Ends::Open),
-            ("open ground", Ends::OpenGround),
-            ("closed", Ends::Closed),
-            ("closed ground", Ends::ClosedGround),
-        ],
-    );
+    let ends = table.word("ends", &ENDS);
     let free = read_sized(table, "free_length", length, 0.0);
-    let shear = read_shear(table, units);
-    let member = Member {
+    let material = read_material(table, units, wire.map(|wire| wire.nominal), own);
+    let hand = read_hand(table);
+    let forming = read_forming(table, material.as_ref());
+    let mut member = Member {
         name: table
             .text("name")
             .unwrap_or_else(|| format!("spring {}", place + 1)),
@@ -156,9 +92,20 @@ fn read_member(table: Table<'_>, place: usize, units: System) -> Option<Member> 
         active: active?,
         total: total?.value,
         ends: ends?,
+        forming: forming?,
+        hand,
         free: free?,
-        shear: shear?,
+        material: material?,
     };
+    if !sound(table, &member) {
+        return None;
+    }
+    sizes(table, &mut member, general)?;
+    Some(member)
+}
+
+/// Notes what cannot be a spring.
+fn sound(table: Table<'_>, member: &Member) -> bool {
     if member.mean_coil() <= member.wire.nominal {
         let what = format!(
             "the mean coil diameter {:.3} mm is not larger than the wire",
@@ -169,7 +116,7 @@ fn read_member(table: Table<'_>, place: usize, units: System) -> Option<Member> 
             what,
             "check which diameter is meant: outside, mean or inside",
         );
-        return None;
+        return false;
     }
     if member.total < member.active.nominal {
         table.fault(
@@ -177,9 +124,23 @@ fn read_member(table: Table<'_>, place: usize, units: System) -> Option<Member> 
             "there are fewer total coils than active ones",
             "total_coils counts the end coils too",
         );
-        return None;
+        return false;
     }
-    Some(member)
+    true
+}
+
+/// `None` where nothing is said; a wrong word is noted.
+fn read_hand(table: Table<'_>) -> Option<Hand> {
+    table.word("hand", &[("right", Hand::Right), ("left", Hand::Left)])
+}
+
+/// Cold unless stated, or unless the material is hot-rolled bar.
+fn read_forming(table: Table<'_>, material: Option<&Material>) -> Option<Forming> {
+    if table.has("coiled") {
+        return table.word("coiled", &[("cold", Forming::Cold), ("hot", Forming::Hot)]);
+    }
+    let hot = material.is_some_and(|material| material.kind == Some(Kind::HotRolled));
+    Some(if hot { Forming::Hot } else { Forming::Cold })
 }
 
 fn read_sized(table: Table<'_>, key: &str, scale: f64, tolerance: f64) -> Option<Sized> {
@@ -241,54 +202,50 @@ fn read_coil(table: Table<'_>, length: f64) -> Option<Coil> {
     None
 }
 
-fn read_shear(table: Table<'_>, units: System) -> Option<Shear> {
+/// The material as written, at this wire diameter, or a stated shear modulus.
+fn read_material(
+    table: Table<'_>,
+    units: System,
+    wire: Option<f64>,
+    own: Option<&OwnTable>,
+) -> Option<Material> {
     if table.has("shear_modulus") {
-        if table.has("material") {
-            table.fault(
-                &table.place("shear_modulus"),
-                "both material and shear_modulus are stated",
-                "write one of them",
-            );
-            return None;
-        }
-        let source = table.required_text(
-            "shear_modulus_source",
-            "say where the shear modulus comes from: a certificate, a standard, a test",
-        );
-        let stated = read_sized(table, "shear_modulus", units.stress(), f64::NAN)?;
-        let spread = if stated.tolerance.is_nan() {
-            SHEAR_SPREAD
-        } else {
-            stated.tolerance / stated.nominal
-        };
-        return Some(Shear {
-            modulus: stated.nominal,
-            spread,
-            material: "stated G".to_owned(),
-            source: source?,
-        });
+        return read_stated(table, units);
     }
     let written = table.required_text(
         "material",
         "write material = \"EN 10270-1 SH\", or shear_modulus = … with its source",
     )?;
-    let Some(found) = family(&written) else {
-        let known: Vec<&str> = FAMILIES.iter().map(|family| family.name).collect();
+    let found = material::find(&written, wire?, own);
+    if found.is_none() {
         let help = format!(
-            "known: {}; or write shear_modulus = … with its source",
-            known.join(", ")
+            "known: {}; or a table of your own under [drawing] materials, or shear_modulus = … with its source",
+            material::known(own).join(", ")
         );
         table.fault(
             &table.place("material"),
             format!("the material \"{written}\" is not in the table"),
             help,
         );
+    }
+    found
+}
+
+fn read_stated(table: Table<'_>, units: System) -> Option<Material> {
+    if table.has("material") {
+        table.fault(
+            &table.place("shear_modulus"),
+            "both material and shear_modulus are stated",
+            "write one of them",
+        );
         return None;
-    };
-    Some(Shear {
-        modulus: found.shear,
-        spread: SHEAR_SPREAD,
-        material: written,
-        source: found.source.to_owned(),
-    })
+    }
+    let source = table.required_text(
+        "shear_modulus_source",
+        "say where the shear modulus comes from: a certificate, a standard, a test",
+    );
+    let stated = read_sized(table, "shear_modulus", units.stress(), f64::NAN)?;
+    let spread = stated.tolerance / stated.nominal;
+    let spread = (!spread.is_nan()).then_some(spread);
+    Some(material::stated(stated.nominal, spread, source?))
 }
