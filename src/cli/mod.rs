@@ -7,6 +7,7 @@ mod expect;
 mod folder;
 mod lots;
 mod plan;
+mod plan_args;
 mod rate;
 mod recheck;
 mod rig;

@@ -10,8 +10,8 @@ use crate::report;
 use crate::sampling::Points;
 
 use super::accept::{date, history, listed};
-use super::args::PlanArgs;
 use super::folder::{self, Target};
+use super::plan_args::PlanArgs;
 
 pub(super) fn run(args: &PlanArgs, quiet: bool, out: &mut impl Write) -> miette::Result<u8> {
     let target = args.out.as_deref().map(Target::of).transpose()?;

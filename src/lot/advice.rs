@@ -4,7 +4,7 @@ use schemars::JsonSchema;
 use serde::{Deserialize, Serialize};
 
 use crate::characteristic::{Measured, Uncertainty};
-use crate::drawing::Limits;
+use crate::drawing::{Guard, Limits};
 use crate::quantity::{Quantity, Unit};
 use crate::stats::{Dof, StatsError, student_quantile};
 use crate::units::{Finite, Millimetres};
@@ -54,6 +54,7 @@ pub fn advise(
     quantity: Quantity,
     measured: &Measured,
     limits: &Limits,
+    guard: Guard,
     times: u32,
 ) -> Result<Advice, StatsError> {
     let name = quantity.name().to_owned();
@@ -74,34 +75,45 @@ pub fn advise(
         .flatten()
         .map(|limit| (value - limit).abs());
     let distance = distances.fold(f64::INFINITY, f64::min);
-    if let Some(times) = repeats(&uncertainty, distance, times)? {
+    if let Some(times) = repeats(&uncertainty, distance, guard, times)? {
         return Ok(Advice::Repeat {
             name,
             at_length_mm,
             times,
         });
     }
-    let proof = student_quantile(0.95, Dof::Infinite)?;
-    let expanded_uncertainty = if distance > 0.0 {
-        Finite::try_from(2.0 * distance / proof).ok()
-    } else {
-        None
-    };
+    let wanted = settling(distance, guard)?;
     Ok(Advice::BetterBench {
         name,
         at_length_mm,
-        expanded_uncertainty,
+        expanded_uncertainty: wanted.and_then(|wanted| Finite::try_from(wanted).ok()),
         unit: quantity.unit(),
     })
+}
+
+/// The largest expanded uncertainty whose guard band stays within `distance` of the limit; `None` on the limit itself.
+///
+/// # Errors
+/// [`StatsError`] where the quantile cannot be had.
+pub fn settling(distance: f64, guard: Guard) -> Result<Option<f64>, StatsError> {
+    let share = match guard {
+        Guard::T95 => student_quantile(0.95, Dof::Infinite)? / 2.0,
+        Guard::U => 1.0,
+    };
+    Ok((distance > 0.0).then(|| distance / share))
 }
 
 /// Further measurements that bring the guard band under `distance`; `None` where no reasonable number does.
 fn repeats(
     uncertainty: &Uncertainty,
     distance: f64,
+    guard: Guard,
     times: u32,
 ) -> Result<Option<u32>, StatsError> {
-    let proof = student_quantile(0.95, uncertainty.dof)?;
+    let proof = match guard {
+        Guard::T95 => student_quantile(0.95, uncertainty.dof)?,
+        Guard::U => uncertainty.factor,
+    };
     let own = uncertainty.own * f64::from(times.max(1)).sqrt();
     for further in 1..=MOST_REPEATS {
         let own = own / f64::from(times.max(1) + further).sqrt();
@@ -110,4 +122,33 @@ fn repeats(
         }
     }
     Ok(None)
+}
+
+#[cfg(test)]
+mod tests {
+    #![expect(clippy::unwrap_used, reason = "tests")]
+    use super::*;
+
+    /// g is 1.645 u = 0.8225 U, or U itself: the advice names the U with which g reaches the limit.
+    #[test]
+    fn the_advised_uncertainty_settles_it_under_its_own_guard() {
+        let t95 = settling(1.0, Guard::T95).unwrap().unwrap();
+        assert!(
+            (t95 * 1.644_853_626_951_472 / 2.0 - 1.0).abs() < 1e-12,
+            "{t95}"
+        );
+        assert_eq!(settling(1.0, Guard::U).unwrap(), Some(1.0));
+        assert_eq!(settling(0.0, Guard::U).unwrap(), None);
+        let uncertainty = Uncertainty {
+            own: 0.5,
+            common: 0.1,
+            standard: 0.51,
+            dof: Dof::Infinite,
+            factor: 2.0,
+            expanded: 1.02,
+        };
+        // after n more: 1.645·√(0.25/(1 + n) + 0.01) or 2·√(…) below 0.6: n 1 and n 3 by hand (0.605, 0.505; 0.734, 0.608, 0.539)
+        assert_eq!(repeats(&uncertainty, 0.6, Guard::T95, 1).unwrap(), Some(2));
+        assert_eq!(repeats(&uncertainty, 0.6, Guard::U, 1).unwrap(), Some(3));
+    }
 }

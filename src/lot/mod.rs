@@ -8,7 +8,7 @@ mod reason;
 mod terms;
 mod variables;
 
-pub use advice::{Advice, advise};
+pub use advice::{Advice, advise, settling};
 pub use decide::{decide, gravest};
 pub use outcome::{Outcome, Standing};
 pub use reason::{Comparison, Decision, LotReason};

@@ -74,7 +74,7 @@ pub(crate) fn deciding(record: &AcceptRecord, show_in: System) -> Deciding {
             of(Verdict::Fails),
             of(Verdict::Undecided)
         ),
-        why: why(record),
+        why: why(record, show_in),
         springs: named::lines(record, show_in),
         simple: wording::simple_line(record),
         terms: wording::terms(&record.drawing),
@@ -82,13 +82,13 @@ pub(crate) fn deciding(record: &AcceptRecord, show_in: System) -> Deciding {
 }
 
 /// The grounds, and that springs still missing change nothing where that is so.
-fn why(record: &AcceptRecord) -> Vec<String> {
+fn why(record: &AcceptRecord, show_in: System) -> Vec<String> {
     let classes = record.plan.classes.iter();
     let early = classes.filter_map(wording::settled_early);
     record
         .reasons
         .iter()
-        .map(wording::why)
+        .map(|reason| wording::why(reason, show_in))
         .chain(early)
         .collect()
 }

@@ -174,7 +174,7 @@ pub(crate) fn settling(record: &AcceptRecord, show_in: System) -> Option<Section
         columns,
         rows.collect(),
     );
-    "U that settles it: twice the distance to the limit over 1.645, if the value stays. Of it repeatable: the share of today’s u² that \
+    "U that settles it: the U whose guard band just reaches the limit, if the value stays. Of it repeatable: the share of today’s u² that \
      repeats on this bench reduce; the rest stays."
         .clone_into(&mut table.note);
     if all.len() > LISTED {

@@ -20,7 +20,11 @@ pub(crate) fn section(record: &AcceptRecord, show_in: System) -> Section {
     let tables = if of.is_empty() {
         Vec::new()
     } else {
-        vec![spread(of, show_in), outside(of), tolerance(of, show_in)]
+        vec![
+            spread(of, show_in),
+            outside(of, show_in),
+            tolerance(of, show_in),
+        ]
     };
     Section {
         title: "What the sample says of the lot".to_owned(),
@@ -149,7 +153,7 @@ fn share(of: Finite) -> String {
     format!("{}\u{a0}%", number(Some(percent), 2))
 }
 
-fn outside(of: &[ProcessFacts]) -> Table {
+fn outside(of: &[ProcessFacts], show_in: System) -> Table {
     let columns = vec![
         Column::words("Characteristic"),
         Column::figures("Pp", ""),
@@ -169,7 +173,7 @@ fn outside(of: &[ProcessFacts]) -> Table {
             },
         );
         Row::from([
-            name(of, System::MmN),
+            name(of, show_in),
             estimated(of.pp, mark, index),
             estimated(of.ppk, mark, index),
             estimated(of.outside_by_model, mark, share),

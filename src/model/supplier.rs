@@ -29,8 +29,14 @@ pub(crate) fn page(record: &AcceptRecord, show_in: System) -> Option<Section> {
         .filter(|spring| spring.in_sample && spring.verdict == Verdict::Fails)
         .flat_map(|spring| failures(spring, record, show_in))
         .collect();
-    let left_out = rows.len().saturating_sub(FITTING);
-    rows.truncate(FITTING);
+    let estimated = record
+        .reasons
+        .iter()
+        .filter(|reason| by_variables(reason))
+        .count();
+    let fitting = FITTING.saturating_sub(2 * estimated); // each ground takes two lines
+    let left_out = rows.len().saturating_sub(fitting);
+    rows.truncate(fitting);
     let mut table = Table::new("Springs proven failing", columns(), rows);
     if left_out > 0 {
         table.note = format!(
@@ -40,7 +46,7 @@ pub(crate) fn page(record: &AcceptRecord, show_in: System) -> Option<Section> {
     }
     Some(Section {
         title: "For the supplier: proven nonconformities".to_owned(),
-        text: text(record),
+        text: text(record, show_in),
         tables: vec![table],
     })
 }
@@ -72,7 +78,7 @@ fn columns() -> Vec<Column> {
 }
 
 /// What failed first, then the lot, the drawing, the plan, the rule, the rig.
-fn text(record: &AcceptRecord) -> Vec<String> {
+fn text(record: &AcceptRecord, show_in: System) -> Vec<String> {
     let (lot, drawing) = (&record.lot, &record.drawing);
     let addressed = lot
         .supplier
@@ -92,7 +98,7 @@ fn text(record: &AcceptRecord) -> Vec<String> {
     ));
     text.extend(record.reasons.iter().filter_map(|reason| match reason {
         LotReason::ProvenFailures { class, .. } => plan(record, *class),
-        reason if by_variables(reason) => Some(wording::why(reason)),
+        reason if by_variables(reason) => Some(wording::why(reason, show_in)),
         _ => None,
     }));
     text.extend(wording::terms(drawing).into_iter().take(1));

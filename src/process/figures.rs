@@ -14,6 +14,8 @@ use crate::stats::{
 const SPRINGS_SHARE: f64 = 0.5;
 /// Most springs for which the distributions behind the intervals were proven.
 const MOST: usize = 100_000;
+/// A spread below this share of the mean is what rounding leaves of equal values.
+const EQUAL: f64 = 1e-12;
 /// Fewest springs of a capability figure.
 const FEWEST: usize = 3;
 
@@ -119,7 +121,9 @@ pub fn figures(of: &[Observation], limits: &Limits) -> Result<Option<Figures>, S
         limits,
         n: of.len() as u64,
         mean: centre,
-        s: standard_deviation(&values).unwrap_or(0.0),
+        s: standard_deviation(&values)
+            .filter(|s| *s > EQUAL * centre.abs())
+            .unwrap_or(0.0),
         own: mean(&squares).unwrap_or(0.0),
         factor: common_factor(of, CONFIDENCE)?,
     };
@@ -142,8 +146,16 @@ pub fn figures(of: &[Observation], limits: &Limits) -> Result<Option<Figures>, S
         own: sample.own.sqrt(),
         springs: if several { sample.springs()? } else { None },
         hidden,
-        shape: shape(&values)?,
-        outliers: outliers(&values)?,
+        shape: if spreads || !several {
+            shape(&values)?
+        } else {
+            Shape::NoSpread
+        },
+        outliers: if spreads {
+            outliers(&values)?
+        } else {
+            Vec::new()
+        },
         outside: sample.outside()?,
         capability: if capable { sample.capability()? } else { None },
         tolerance: if spreads {

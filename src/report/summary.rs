@@ -29,7 +29,7 @@ pub fn summary(record: &AcceptRecord, show_in: System) -> String {
             .reasons
             .iter()
             .take(4)
-            .map(|reason| format!("  {}", wording::why(reason))),
+            .map(|reason| format!("  {}", wording::why(reason, show_in))),
     );
     let classes = || record.plan.classes.iter();
     let mut besides: Vec<String> = classes().filter_map(wording::settled_early).collect();

@@ -3,6 +3,7 @@
 use super::{count, sentence};
 use crate::quantity::Class;
 use crate::record::{AcceptRecord, Decision, DrawingFacts, LotReason, Undecided};
+use crate::units::System;
 
 /// The word of a decision, as it stands large on page one.
 pub(crate) const fn decision_word(decision: Decision) -> &'static str {
@@ -50,7 +51,7 @@ fn yet(to_accept: Option<u64>, to_reject: Option<u64>) -> String {
 }
 
 /// One ground of the decision.
-pub(crate) fn why(reason: &LotReason) -> String {
+pub(crate) fn why(reason: &LotReason, show_in: System) -> String {
     match reason {
         LotReason::ProvenFailures {
             class,
@@ -125,7 +126,7 @@ pub(crate) fn why(reason: &LotReason) -> String {
         LotReason::ByVariables { .. }
         | LotReason::TooFewValues { .. }
         | LotReason::ProvenBeside { .. }
-        | LotReason::FindingWithoutNumber { .. } => super::plan::why(reason),
+        | LotReason::FindingWithoutNumber { .. } => super::plan::why(reason, show_in),
         LotReason::FailureBeyondSample { spring, class } => format!(
             "Spring {spring}, measured beyond the sample, is proven to fail a {} requirement: the sample alone would accept, but this \
              lot is not accepted while a known failure stands beside it. Take it into the sample, or settle it with the supplier.",

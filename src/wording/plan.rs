@@ -58,7 +58,7 @@ pub(crate) fn compared(kind: Option<Comparison>, value: Option<Finite>) -> Strin
 }
 
 /// Grounds of a decision by variables and what stands beside it.
-pub(super) fn why(reason: &LotReason) -> String {
+pub(super) fn why(reason: &LotReason, show_in: System) -> String {
     match reason {
         LotReason::ByVariables {
             name,
@@ -70,7 +70,7 @@ pub(super) fn why(reason: &LotReason) -> String {
             better,
             wanted,
         } => by_variables(
-            &named(name, *at_length_mm),
+            &named(name, *at_length_mm, show_in),
             *decision,
             *kind,
             [*found, *worse, *better, *wanted],
@@ -82,7 +82,7 @@ pub(super) fn why(reason: &LotReason) -> String {
             wanted,
             plan,
         } => {
-            let name = named(name, *at_length_mm);
+            let name = named(name, *at_length_mm, show_in);
             let measured = count(*measured, "spring");
             match wanted {
                 Some(wanted) if wanted == plan => {
@@ -113,8 +113,8 @@ pub(super) fn why(reason: &LotReason) -> String {
     }
 }
 
-fn named(name: &str, at: Option<Millimetres>) -> String {
-    sentence(&super::characteristic(name, at, System::MmN))
+fn named(name: &str, at: Option<Millimetres>, show_in: System) -> String {
+    sentence(&super::characteristic(name, at, show_in))
 }
 
 fn by_variables(name: &str, decision: Decision, kind: Comparison, of: [Finite; 4]) -> String {

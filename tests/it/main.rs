@@ -59,6 +59,7 @@ mod many_exports;
 mod materials_published;
 mod mutants;
 mod one_truth;
+mod one_truth_lot;
 mod plan_command;
 mod plan_command_faults;
 mod plan_decisions;

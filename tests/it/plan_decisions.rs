@@ -151,3 +151,45 @@ fn scatter_of_the_bench_asks_for_more_springs() {
         (Decision::Accepted, Decision::Rejected)
     );
 }
+
+/// A larger common uncertainty turns no undecided characteristic into a decided one, and no decision into its contrary.
+#[test]
+fn a_worse_bench_decides_nothing_more() {
+    let mut random = Random::new(13, 1);
+    let plan = variables_plan(300, Level414::IV, 1.0, State::Normal).unwrap();
+    let mut seen = [0_u32; 3];
+    for round in 0..600 {
+        let centre = random.between(-1.5, 1.5);
+        let values: Vec<f64> = (0..20).map(|_| centre + random.normal(1.0)).collect();
+        let edges = match round % 3 {
+            0 => limits(Some(-2.6), Some(2.6)),
+            1 => limits(None, Some(2.2)),
+            _ => limits(Some(-2.2), None),
+        };
+        let at = |common: f64| {
+            let sample: Vec<_> = values
+                .iter()
+                .map(|value| observation(*value, 0.0, common))
+                .collect();
+            by_variables(&plan, &sample, &edges, Rule::Guarded)
+                .unwrap()
+                .decision
+        };
+        let mut before = at(0.0);
+        assert_ne!(before, Decision::Undecided, "a perfect bench decides");
+        for common in [0.02, 0.1, 0.3, 1.0, 4.0] {
+            let now = at(common);
+            assert!(
+                now == before || now == Decision::Undecided,
+                "{before:?} became {now:?}"
+            );
+            before = now;
+            seen[match now {
+                Decision::Accepted => 0,
+                Decision::Rejected => 1,
+                Decision::Undecided => 2,
+            }] += 1;
+        }
+    }
+    assert!(seen.iter().all(|count| *count > 100), "{seen:?}");
+}

@@ -259,3 +259,50 @@ fn undecided_springs_are_carried_through() {
         assert!(share.is_none_or(|share| (0.0..=1.0).contains(&share)));
     }
 }
+
+/// What a plan by variables does not count still stands in the way of an acceptance: a failure beyond the sample, and one of
+/// a requirement that was left out of the inspection.
+#[test]
+fn known_failures_are_not_accepted_in_silence() {
+    let plan = "{ by = \"variables\", table = \"MIL-STD-414 B\", aql = 2.5 }";
+    let spoilt = |last: bool| {
+        let case = good(plan);
+        let spring = if last {
+            "springs/TG-20.csv"
+        } else {
+            "springs/TG-02.csv"
+        };
+        let text = case.text(spring);
+        let mut lines: Vec<String> = text.lines().map(str::to_owned).collect();
+        for line in lines.iter_mut().skip(1) {
+            let cells: Vec<&str> = line.split(',').collect();
+            let load: f64 = cells[2].parse().unwrap();
+            *line = format!("{},{},{:.4}", cells[0], cells[1], load * 1.15);
+        }
+        case.set(spring, lines.join("\n") + "\n");
+        case
+    };
+    // n is 15 or a little more: the twentieth spring lies beyond the sample of the rate
+    let case = spoilt(true);
+    case.top("not_inspected = [{ requirement = \"solid_length\", reason = \"x\" }, { requirement = \"set\", reason = \"x\" }, { requirement = \"free_length\", reason = \"x\" }]\n");
+    let (code, record) = case.judged(&[]);
+    assert_eq!(code, Some(3), "{}", record["reasons"]);
+    assert!(
+        record["reasons"]
+            .to_string()
+            .contains("failure_beyond_sample"),
+        "{}",
+        record["reasons"]
+    );
+    let case = spoilt(false);
+    case.top("not_inspected = [{ requirement = \"rate\", reason = \"x\" }]\n");
+    let (_, record) = case.judged(&[]);
+    let rate = |record: &Value| {
+        let variables = record["plan"]["variables"].as_array().unwrap();
+        variables.iter().any(|one| one["name"] == "rate")
+    };
+    assert!(rate(&record), "a proven failure is decided on all the same");
+    let case = good(plan);
+    case.top("not_inspected = [{ requirement = \"rate\", reason = \"x\" }]\n");
+    assert!(!rate(&case.judged(&[]).1), "what conforms stays left out");
+}

@@ -1,6 +1,7 @@
 //! Sets whose members engage one after the other, through the whole of `accept`: rate by stage, knee, refusals. The curves
 //! are the sample generator's, which shares no code with the crate.
 
+use std::fmt::Write;
 use std::fs;
 use std::path::Path;
 
@@ -167,7 +168,7 @@ impl Lot {
             };
             let mut text = "Length [mm],Load [N]\n".to_owned();
             run(&specimen, &bench, &programme, &mut random, |reading| {
-                text += &format!("{:.3},{:.2}\n", reading.travel, reading.force);
+                writeln!(text, "{:.3},{:.2}", reading.travel, reading.force).unwrap();
             });
             fs::write(place.join(format!("sets/{}.csv", id + 1)), text).unwrap();
             truth.push(specimen);

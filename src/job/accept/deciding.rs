@@ -2,19 +2,16 @@
 
 use std::collections::{HashMap, HashSet};
 
-use crate::drawing::{Acceptance, Drawing, PlanTerms, State};
+use crate::drawing::{Acceptance, PlanTerms, State};
 use crate::lot::{Decision, LotReason, Outcome, class_terms, decide, gravest, one_step_tighter};
 use crate::quantity::Class;
-use crate::record::{
-    CharacteristicResult, PlanFacts, SettlingFacts, SimpleAcceptance, StateFacts, Verdict,
-};
+use crate::record::{CharacteristicResult, PlanFacts, SimpleAcceptance, StateFacts, Verdict};
 use crate::sampling::{PastLot, PlanError, Reason, next};
-use crate::stats::{Dof, student_quantile};
 use crate::text::InputFile;
 
-use super::super::facts::figure;
 use super::error::AcceptError;
 use super::group::{Ordered, sample_order};
+use super::settling::settling;
 use super::springs::Judged;
 use super::{Files, classes, plan, variables};
 
@@ -88,7 +85,7 @@ pub(super) fn decide_lot(
     }
     plan.accepted_tighter = tighter(terms, state, size, &classes, &sampled, &others)?;
     if outcome.decision == Decision::Undecided {
-        plan.settling = settling(&files.drawing, &sample, plan.sample_size);
+        plan.settling = settling(&files.drawing, terms.guard, &sample, plan.sample_size);
     }
     Ok(Decided {
         decision: outcome.decision,
@@ -195,48 +192,57 @@ fn beside(outcome: &mut Outcome, judged: &[Judged], sampled: &Ordered, size: u64
         .take(size)
         .filter(|(_, spring)| spring.simple == Verdict::Fails)
         .count() as u64;
-    let measured = |one: &Judged| {
-        let fails = |of: &CharacteristicResult| of.verdict == Some(Verdict::Fails);
-        one.result.characteristics.iter().any(fails)
-    };
     let springs: Vec<String> = judged
         .iter()
-        .filter(|one| measured(one))
+        .filter(|one| fails(one))
         .map(|one| one.result.id.clone())
         .collect();
     if !springs.is_empty() {
         outcome.reasons.push(LotReason::ProvenBeside { springs });
     }
-    let inside: HashSet<&str> = sampled
-        .iter()
-        .take(size)
-        .map(|(id, _)| id.as_str())
-        .collect();
-    let mut seen: Vec<LotReason> = judged
-        .iter()
-        .filter(|one| measured(one) && !inside.contains(one.result.id.as_str()))
-        .filter_map(|one| {
-            Some(LotReason::FailureBeyondSample {
-                spring: one.result.id.clone(),
-                class: one.overall.failing?,
-            })
-        })
-        .collect();
-    for one in judged {
-        let findings = one.result.findings.iter();
-        seen.extend(
-            findings
-                .filter(|finding| finding.class != Class::Critical)
-                .map(|finding| LotReason::FindingWithoutNumber {
-                    spring: one.result.id.clone(),
-                    class: finding.class,
-                }),
-        );
+    let mut open = Vec::new();
+    if outcome.decision != Decision::Rejected {
+        open.extend(failures_beyond(judged, sampled, size));
     }
-    if !seen.is_empty() {
+    open.extend(judged.iter().flat_map(findings));
+    if !open.is_empty() {
         outcome.decision = gravest(&[outcome.decision, Decision::Undecided]);
-        outcome.reasons.extend(seen);
+        outcome.reasons.extend(open);
     }
+}
+
+/// Whether a spring is proven to fail by measurement.
+fn fails(one: &Judged) -> bool {
+    let fails = |of: &CharacteristicResult| of.verdict == Some(Verdict::Fails);
+    one.result.characteristics.iter().any(fails)
+}
+
+/// Springs beyond the sample that are proven failing; those of the critical class are counted, and named there.
+fn failures_beyond(judged: &[Judged], sampled: &Ordered, size: usize) -> Vec<LotReason> {
+    let first = sampled.iter().take(size);
+    let inside: HashSet<&str> = first.map(|(id, _)| id.as_str()).collect();
+    let beyond = |one: &&Judged| !inside.contains(one.result.id.as_str()) && fails(one);
+    let reason = |one: &Judged| {
+        let class = one.overall.failing.filter(|of| *of != Class::Critical)?;
+        Some(LotReason::FailureBeyondSample {
+            spring: one.result.id.clone(),
+            class,
+        })
+    };
+    judged.iter().filter(beyond).filter_map(reason).collect()
+}
+
+/// What was seen on a spring, the critical apart, for which the terms agree no number.
+fn findings(one: &Judged) -> Vec<LotReason> {
+    let counted = |class: Class| class == Class::Critical;
+    let found = one.result.findings.iter();
+    found
+        .filter(|finding| !counted(finding.class))
+        .map(|finding| LotReason::FindingWithoutNumber {
+            spring: one.result.id.clone(),
+            class: finding.class,
+        })
+        .collect()
 }
 
 /// Whether the lot would also have been accepted with every AQL one step tighter; `None` where the plan has none.
@@ -254,55 +260,4 @@ fn tighter(
     let plans = class_terms(&plan, state, size, classes)?;
     let outcome = decide(&plans, sampled, others, terms.undecided);
     Ok(Some(outcome.decision == Decision::Accepted))
-}
-
-/// What would settle each undecided characteristic of the sample: the nearest springs first, for fewest of them are
-/// needed.
-fn settling(drawing: &Drawing, sample: &[&Judged], size: u64) -> Vec<SettlingFacts> {
-    let size = usize::try_from(size).unwrap_or(usize::MAX);
-    let mut found: Vec<SettlingFacts> = Vec::new();
-    for spring in sample.iter().take(size) {
-        let open = |of: &&CharacteristicResult| of.verdict == Some(Verdict::Undecided);
-        for of in spring.result.characteristics.iter().filter(open) {
-            found.extend(settled_by(drawing, &spring.result.id, of));
-        }
-    }
-    found.sort_by(|a, b| share(b).total_cmp(&share(a)));
-    found
-}
-
-/// How much of today's uncertainty may stay; the larger, the easier.
-fn share(of: &SettlingFacts) -> f64 {
-    let both = of.wanted_uncertainty.zip(of.expanded_uncertainty);
-    both.map_or(0.0, |(wanted, now)| wanted.get() / now.get())
-}
-
-fn settled_by(drawing: &Drawing, spring: &str, of: &CharacteristicResult) -> Option<SettlingFacts> {
-    let requirement = drawing.requirements.iter().find(|one| {
-        one.quantity.name() == of.name && one.quantity.at_length() == of.at_length_mm
-    })?;
-    let limits = requirement.limits;
-    let distance = of.value.and_then(|value| {
-        let limits = [limits.lower, limits.upper].into_iter().flatten();
-        limits
-            .map(|limit| (value.get() - limit).abs())
-            .reduce(f64::min)
-    });
-    let proof = student_quantile(0.95, Dof::Infinite).ok()?;
-    let own_share = of
-        .own_uncertainty
-        .zip(of.standard_uncertainty)
-        .and_then(|(own, all)| figure((own.get() / all.get()).powi(2)));
-    Some(SettlingFacts {
-        spring: spring.to_owned(),
-        name: of.name.clone(),
-        at_length_mm: of.at_length_mm,
-        class: requirement.class,
-        unit: of.unit,
-        expanded_uncertainty: of.expanded_uncertainty,
-        wanted_uncertainty: distance
-            .filter(|distance| *distance > 0.0)
-            .and_then(|distance| figure(2.0 * distance / proof)),
-        own_share,
-    })
 }

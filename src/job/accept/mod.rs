@@ -13,6 +13,7 @@ mod plan;
 mod process;
 mod requirements;
 pub(super) mod rig_cautions;
+mod settling;
 mod springs;
 mod variables;
 

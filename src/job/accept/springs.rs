@@ -188,8 +188,13 @@ impl<'a> Verdicts<'a> {
         if let Some((requirement, judged)) = &found
             && judged.verdict == Verdict::Undecided
         {
-            self.advice
-                .push(advise(quantity, measured, &requirement.limits, times)?);
+            self.advice.push(advise(
+                quantity,
+                measured,
+                &requirement.limits,
+                terms.guard,
+                times,
+            )?);
         }
         let judged = found.as_ref().map(|(_, judged)| judged);
         let silent = requirement.is_none() && !matches!(measured, Measured::Value(_));
