@@ -76,6 +76,9 @@ fn table(sheet: &mut Sheet, form: &Form, open: bool) {
         Delimiter::Comma => (",", "commas"),
         Delimiter::Semicolon => (";", "semicolons"),
         Delimiter::Tab => ("\\t", "tabs"),
+        Delimiter::Pipe => ("|", "upright strokes"),
+        Delimiter::Blanks => ("blanks", "runs of blanks"),
+        Delimiter::TwoBlanks => ("two blanks", "two blanks or more"),
     };
     let width = form.names.len();
     sheet.key(

@@ -6,7 +6,7 @@ use std::sync::Arc;
 use crate::curve::correct;
 use crate::draft::{Columns, Form, columns, form, meaning, write};
 use crate::export::{BLOCK_BYTES, ExportError, RawCurve, read};
-use crate::rig::{Dialect, LoadColumn, Pushing, SpringFrom, TravelColumn};
+use crate::rig::{Dialect, LoadColumn, Pushing, Rarer, SpringFrom, TravelColumn};
 use crate::text::{Head, Source};
 
 /// The text of a rig file that reads the export at `written`.
@@ -96,5 +96,6 @@ fn plain(form: &Form, columns: &Columns) -> Dialect {
             .spring
             .clone()
             .map_or(SpringFrom::FileName, SpringFrom::Column),
+        rarer: Rarer::default(),
     }
 }

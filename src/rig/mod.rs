@@ -4,10 +4,12 @@
 mod dialect;
 mod open;
 mod read_dialect;
+mod read_rarer;
 mod scale;
 
 pub use dialect::{
-    Decimal, Delimiter, Dialect, Encoding, LoadColumn, Pushing, SpringFrom, TravelColumn,
+    Decimal, Delimiter, Dialect, Each, Encoding, LoadColumn, Pushing, Rarer, SpringFrom, TableEnd,
+    Tables, TravelColumn,
 };
 pub use open::{Compliance, KEYS, Means, Rig, open, parse};
 pub use scale::{Accuracy, Known, Scale, standard_of};

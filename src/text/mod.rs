@@ -11,10 +11,10 @@ mod table;
 mod toml;
 mod values;
 
-pub use blocks::{Block, Blocks, Next, Tail};
+pub use blocks::{Block, Blocks, Decoding, Next, Tail};
 pub use excerpt::{Excerpt, Place};
 pub use fault::{Fault, Faults};
 pub use printable::{Alphabet, printable};
-pub use source::{Hasher, Head, InputFile, Source, TextError, beside, hex};
+pub use source::{Hasher, Head, InputFile, Source, TextError, beside, hex, read_bytes};
 pub use table::{At, Table};
 pub use toml::{Keys, read_toml};

@@ -111,6 +111,32 @@ impl Source {
     }
 }
 
+/// All bytes of a file that is read whole, and their SHA-256.
+///
+/// # Errors
+/// [`TextError`] where it cannot be read, is empty or holds more than `most` bytes.
+pub fn read_bytes(
+    path: &Path,
+    as_written: &str,
+    most: u64,
+) -> Result<(Vec<u8>, String), TextError> {
+    let name = super::printable(as_written, &super::Alphabet::Any);
+    let read = |cause| TextError::Read {
+        name: name.clone(),
+        cause,
+    };
+    let size = std::fs::metadata(path).map_err(read)?.len();
+    if size > most {
+        return Err(TextError::TooLarge { name, bytes: size });
+    }
+    let bytes = std::fs::read(path).map_err(read)?;
+    if bytes.is_empty() {
+        return Err(TextError::Empty { name });
+    }
+    let sha256 = hex(&sha2::Sha256::digest(&bytes));
+    Ok((bytes, sha256))
+}
+
 /// `path` as it stands in the folder of `file`, unless it is absolute.
 pub fn beside(file: &Path, path: &str) -> PathBuf {
     file.parent().unwrap_or(Path::new("")).join(path)
