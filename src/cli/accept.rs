@@ -13,6 +13,7 @@ use crate::report::{self, OutFile, Template, Templates};
 use crate::text::{Source, hex};
 
 use super::args::AcceptArgs;
+use super::bar;
 use super::folder::{self, Target};
 
 pub(super) fn run(args: &AcceptArgs, quiet: bool, out: &mut impl Write) -> miette::Result<u8> {
@@ -26,7 +27,8 @@ pub(super) fn run(args: &AcceptArgs, quiet: bool, out: &mut impl Write) -> miett
         block_bytes: None,
         flags: flags(args),
     };
-    let mut accepted = job::accept(&args.lot, &args.lot.to_string_lossy(), &options)?;
+    let judge = || job::accept(&args.lot, &args.lot.to_string_lossy(), &options);
+    let mut accepted = bar::beside(quiet, judge)?;
     if let Some(target) = &target {
         write(target, args, &mut accepted, &templates)?;
     }

@@ -247,6 +247,7 @@ fn next_plain(
     input.by_ref().take(block_bytes as u64).read_to_end(held)?;
     let fresh = held.get(known..).unwrap_or_default();
     hasher.update(fresh);
+    super::progress::note(fresh.len());
     Ok(fresh.len())
 }
 

@@ -172,6 +172,26 @@ fn exports(folder: &Path) -> Vec<PathBuf> {
 }
 
 #[test]
+fn a_draft_reads_workbooks() {
+    let folder = tempfile::tempdir().unwrap();
+    let sheets = Path::new(env!("CARGO_MANIFEST_DIR")).join("tests/data/sheets");
+    for name in ["good.ods", "plain.xlsx"] {
+        let copy = folder.path().join(name);
+        std::fs::copy(sheets.join(name), &copy).unwrap();
+        let (text, rig) = drafted(&copy).unwrap();
+        assert!(
+            text.contains("sheet = \"Run 1\"") && !text.contains("delimiter ="),
+            "{text}"
+        );
+        assert_eq!(
+            springs(&copy, &rig.dialect).unwrap()[0].load.len(),
+            8,
+            "{text}"
+        );
+    }
+}
+
+#[test]
 fn what_is_no_table_is_refused_by_name() {
     let folder = tempfile::tempdir().unwrap();
     for (text, wanted) in [

@@ -25,7 +25,7 @@ use crate::lot::{class_terms, decide};
 use crate::quantity::Class;
 use crate::record::{AcceptRecord, FORMAT, Kind, LedgerFacts, Provenance, SimpleAcceptance, TOOL};
 use crate::rig::SpringFrom;
-use crate::text::InputFile;
+use crate::text::{InputFile, announce};
 
 use super::facts;
 use super::read::{How, Reading, read};
@@ -109,6 +109,7 @@ type Readings = Vec<Result<Reading, crate::characteristic::MeasureError>>;
 fn read_all(files: &Files, how: How<'_>) -> miette::Result<(Readings, Sources)> {
     let repeats = files.lot.repeats.iter().map(|repeat| &repeat.export);
     let exports: Vec<_> = files.lot.exports.iter().chain(repeats).collect();
+    announce(exports.iter().map(|export| export.path.as_path()));
     let batches = side_by_side(&exports, |export| read(export, how));
     let mut inputs = vec![
         files.lot.input(),
