@@ -198,7 +198,7 @@ fn footer(head: &Head, found: &Found, trailing: bool) -> Option<String> {
         cells.len() == width && numbers.count() >= 2
     };
     let lines: Vec<&str> = head.tail.lines().collect();
-    let last = lines.iter().rposition(|line| is_row(&line))?;
+    let last = lines.iter().rposition(is_row)?;
     let mut below = lines.iter().skip(last + 1);
     let first = below.find(|line| !line.trim().is_empty())?;
     let end = first.find(|letter: char| letter == ':' || letter.is_ascii_digit());

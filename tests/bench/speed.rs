@@ -171,7 +171,7 @@ fn reading_alone(lot: &Path) -> f64 {
         .map(|entry| entry.unwrap().path());
     let rig = rig
         .into_iter()
-        .find(|path| path.to_string_lossy().contains("bench"))
+        .find(|path| path.ends_with("rig.toml"))
         .unwrap();
     let rig = coilassay::rig::open(&rig, "rig").unwrap();
     let exports: Vec<_> = std::fs::read_dir(lot.join("springs"))
