@@ -188,7 +188,7 @@ fn reading_alone(lot: &Path) -> f64 {
     let mut rows = 0;
     for path in &exports {
         let mut each = |some: Vec<coilassay::export::RawCurve>| {
-            rows += some.iter().map(|one| one.load.len()).sum::<usize>()
+            rows += some.iter().map(|one| one.load.len()).sum::<usize>();
         };
         coilassay::export::read(
             path,

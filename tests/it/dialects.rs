@@ -328,9 +328,10 @@ impl Form {
             )
             .unwrap();
         }
-        match self.column {
-            true => writeln!(text, "spring = {{ column = \"{}\" }}", header[3]).unwrap(),
-            false => writeln!(text, "spring = {{ from = \"file name\" }}").unwrap(),
+        if self.column {
+            writeln!(text, "spring = {{ column = \"{}\" }}", header[3]).unwrap();
+        } else {
+            writeln!(text, "spring = {{ from = \"file name\" }}").unwrap();
         }
         text
     }

@@ -17,7 +17,7 @@ const DIALECTS: u64 = 120;
 fn springs(path: &Path, dialect: &Dialect) -> Result<Vec<RawCurve>, String> {
     let mut all = Vec::new();
     let done = read(path, "x.csv", dialect, BLOCK_BYTES, &mut |some| {
-        all.extend(some)
+        all.extend(some);
     });
     done.map(|_| all).map_err(|fault| fault.to_string())
 }

@@ -232,12 +232,12 @@ fn a_table_for_each_spring() {
         ]
     );
     let numbered = tables(Each::Spring, TableEnd::BlankLine, SpringFrom::TableNumber);
-    let names: Vec<String> = good(text, &numbered)
+    let called: Vec<String> = good(text, &numbered)
         .0
         .into_iter()
         .map(|one| one.identity)
         .collect();
-    assert_eq!(names, ["17-1", "17-2"]);
+    assert_eq!(called, ["17-1", "17-2"]);
     let nameless = String::from_utf8_lossy(text).replace("Specimen: B\n", "");
     refused(
         nameless.as_bytes(),

@@ -28,7 +28,7 @@ fn dialect() -> Dialect {
 fn read_book(path: &Path, dialect: &Dialect) -> Outcome {
     let mut springs: Vec<RawCurve> = Vec::new();
     let read = read(path, "book.xlsx", dialect, BLOCK_BYTES, &mut |some| {
-        springs.extend(some)
+        springs.extend(some);
     })?;
     Ok((springs, read))
 }
@@ -117,7 +117,7 @@ fn cells_that_hold_no_number_are_named_as_the_sheet_names_them() {
     refused(&with(at, |s| { s.write_blank(6, 1, &Format::new()).unwrap(); s.clear_cell(6, 1); }), "cell", "cell B7, column `Load`: found nothing");
     refused(&with(at, |s| { s.write_formula(6, 1, rust_xlsxwriter::Formula::new("1/0").set_result("#DIV/0!")).unwrap(); }), "cell", "cell B7, column `Load`: found the");
     let date = Format::new().set_num_format("yyyy-mm-dd");
-    refused(&with(at, |s| { s.write_with_format(6, 1, &ExcelDateTime::from_ymd(2026, 12, 1).unwrap(), &date).unwrap(); }), "cell", "cell B7, column `Load`: found a date");
+    refused(&with(at, |s| { s.write_with_format(6, 1, ExcelDateTime::from_ymd(2026, 12, 1).unwrap(), &date).unwrap(); }), "cell", "cell B7, column `Load`: found a date");
     refused(&with(at, |s| { s.write(9, 0, "x").unwrap(); }), "cell", "cell A10, column `Travel`: found the text `x`");
     refused(&fixture("text.ods"), "cell", "cell B7, column `Load`: found the text `15,75`");
     refused(&fixture("empty.ods"), "cell", "cell B7, column `Load`: found nothing");
