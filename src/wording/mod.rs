@@ -5,6 +5,7 @@ mod caution;
 mod figure;
 pub(crate) mod font;
 mod lot;
+mod odd;
 mod spring;
 
 pub(crate) use caution::{STANDING, caution};
@@ -13,6 +14,7 @@ pub use figure::{
     with_uncertainty, with_unit,
 };
 pub(crate) use lot::{decided, decision_word, simple_line, terms, why};
+pub(crate) use odd::odd_lines;
 pub(crate) use spring::{advice, disposition, rule_used, verdict_reason, verdict_word};
 
 use crate::quantity::{Quantity, Unit};

@@ -51,6 +51,7 @@ mod known_lots;
 mod lots;
 mod many_exports;
 mod mutants;
+mod odd_curves;
 mod one_truth;
 mod plan_published;
 mod prints;
