@@ -14,6 +14,7 @@ use crate::report::{self, OutFile, Template, Templates};
 use crate::text::{Source, hex};
 
 use super::args::AcceptArgs;
+use super::bar;
 use super::folder::{self, Target};
 
 pub(super) fn run(args: &AcceptArgs, quiet: bool, out: &mut impl Write) -> miette::Result<u8> {
@@ -37,7 +38,8 @@ pub(super) fn run(args: &AcceptArgs, quiet: bool, out: &mut impl Write) -> miett
         memory: archive.clone().map_or(Memory::Nothing, Memory::Archive),
         past: history(args.history.as_deref())?,
     };
-    let mut accepted = job::accept(&args.lot, &args.lot.to_string_lossy(), &options)?;
+    let judge = || job::accept(&args.lot, &args.lot.to_string_lossy(), &options);
+    let mut accepted = bar::beside(quiet, judge)?;
     let files = if args.out.is_some() {
         files(args, &mut accepted, &templates)?
     } else {

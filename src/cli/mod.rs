@@ -2,6 +2,7 @@
 
 mod accept;
 mod args;
+mod bar;
 mod draft;
 mod expect;
 mod folder;

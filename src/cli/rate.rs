@@ -9,7 +9,7 @@ use crate::job::{self, Bench, RateOptions, RateResult};
 use crate::quantity::Unit;
 use crate::rig::Means;
 use crate::units::{ForceUnit, LengthUnit, Millimetres, System};
-use crate::wording::{Place, figure, with_uncertainty};
+use crate::wording::{Place, figure, odd_lines, with_uncertainty};
 
 use super::args::RateArgs;
 
@@ -121,6 +121,9 @@ fn print(result: &RateResult, out: &mut impl Write) -> std::io::Result<()> {
             shown,
         );
         writeln!(out, "    F at {} mm = {text} N", load.at_length_mm.get())?;
+    }
+    for odd in &result.odd {
+        writeln!(out, "    {}", odd_lines(odd))?;
     }
     Ok(())
 }

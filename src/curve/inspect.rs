@@ -19,8 +19,8 @@ const SHIFTED: (f64, f64) = (0.5, 6.0);
 pub(super) type Stretch = (f64, f64);
 
 impl Path {
-    /// Takes stray readings off the nodes.
-    pub(super) fn take_off_stray(&mut self) {
+    /// Takes stray readings off the nodes; says whether there were any.
+    pub(super) fn take_off_stray(&mut self) -> bool {
         let points = points(&self.nodes);
         let found = self
             .scatter()
@@ -32,6 +32,7 @@ impl Path {
                 self.odd.push(rows(Odd::Stray, &node, &node));
             }
         }
+        !found.is_empty()
     }
 
     /// Notes gaps, steps in load and uneven sampling on the nodes from contact on.

@@ -100,6 +100,7 @@ mod tests {
             gaps: Vec::new(),
             steps: Vec::new(),
             zero_shifted: false,
+            scatter: None,
         }
     }
 

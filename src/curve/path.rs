@@ -55,6 +55,8 @@ pub struct Path {
     pub(super) steps: Vec<f64>,
     /// Whether the empty platens show another load on this stroke than before the first contact.
     pub zero_shifted: bool,
+    /// What [`Path::scatter`] gives.
+    pub(super) scatter: Option<f64>,
 }
 
 /// A curve's corrected points, before they are split into strokes.
@@ -158,6 +160,23 @@ fn part_stuck(dwells: &[Dwell], resolution: f64) -> (Vec<Node>, Vec<OddRows>) {
     (nodes, odd)
 }
 
+/// What [`Path::scatter`] says of some nodes, N.
+fn scatter_of(nodes: &[Node]) -> Option<f64> {
+    let off = |three: &[Node]| match three {
+        [a, b, c] if c.u > a.u => {
+            let share = (b.u - a.u) / (c.u - a.u);
+            let chord = a.load + share * (c.load - a.load);
+            // The variance of the distance, over that of one load.
+            let variance = 1.0 + share * share + (1.0 - share) * (1.0 - share);
+            Some((b.load - chord).abs() / variance.sqrt())
+        }
+        _ => None,
+    };
+    let sizes: Vec<f64> = nodes.windows(3).filter_map(off).collect();
+    // For normal scatter the median size is 0.6745 standard deviations.
+    Some(crate::stats::median(sizes)? / 0.674_489_75)
+}
+
 impl Path {
     /// The path of one stroke, the points in `range`. Consecutive points within half a resolution of travel are one
     /// dwell, so that sampling density does not weigh.
@@ -173,11 +192,15 @@ impl Path {
             gaps: Vec::new(),
             steps: Vec::new(),
             zero_shifted: false,
+            scatter: None,
         };
         if side == Way::Unloading {
             path.nodes.reverse();
         }
-        path.take_off_stray();
+        path.scatter = scatter_of(&path.nodes);
+        if path.take_off_stray() {
+            path.scatter = scatter_of(&path.nodes);
+        }
         path.contact = contact::find(&path, points.contact_load);
         let begins = path.reach().map_or(0.0, |(begins, _)| begins);
         path.start = path.contact.map_or(begins, |contact| contact.u);
@@ -215,19 +238,7 @@ impl Path {
     /// Standard deviation of a single load about a smooth curve, N: from the median distance of a node from the chord
     /// between its neighbours, which a line does not have and a bend hardly. `None` under three nodes.
     pub fn scatter(&self) -> Option<f64> {
-        let off = |three: &[Node]| match three {
-            [a, b, c] if c.u > a.u => {
-                let share = (b.u - a.u) / (c.u - a.u);
-                let chord = a.load + share * (c.load - a.load);
-                // The variance of the distance, over that of one load.
-                let variance = 1.0 + share * share + (1.0 - share) * (1.0 - share);
-                Some((b.load - chord).abs() / variance.sqrt())
-            }
-            _ => None,
-        };
-        let sizes: Vec<f64> = self.nodes.windows(3).filter_map(off).collect();
-        // For normal scatter the median size is 0.6745 standard deviations.
-        Some(crate::stats::median(sizes)? / 0.674_489_75)
+        self.scatter
     }
 
     /// The nodes with `from ≤ u ≤ to`.

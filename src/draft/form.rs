@@ -1,7 +1,7 @@
 //! How an export is written, from its first lines: delimiter, decimal mark, names, units, quotes.
 
 use crate::export::{UnitWord, unit_word};
-use crate::rig::{Decimal, Delimiter, Encoding};
+use crate::rig::{Decimal, Delimiter, Encoding, Rarer};
 use crate::text::Head;
 
 use super::DraftError;
@@ -10,7 +10,15 @@ use super::DraftError;
 const LOOKED_AT: usize = 2000;
 /// Rows a table has at least.
 const ROWS: usize = 3;
-const DELIMITERS: [Delimiter; 3] = [Delimiter::Tab, Delimiter::Semicolon, Delimiter::Comma];
+/// Those tried, and preferred in this order.
+const DELIMITERS: [Delimiter; 6] = [
+    Delimiter::Tab,
+    Delimiter::Semicolon,
+    Delimiter::Comma,
+    Delimiter::Pipe,
+    Delimiter::TwoBlanks,
+    Delimiter::Blanks,
+];
 
 /// How an export is written, and its rows so far.
 #[derive(Clone, Debug)]
@@ -37,6 +45,8 @@ pub struct Form {
     pub units: Vec<String>,
     /// The rows among the first lines, as cells.
     pub rows: Vec<Vec<String>>,
+    /// What few testers do.
+    pub rarer: Rarer,
     /// What speaks against a guess.
     pub doubts: Vec<String>,
 }
@@ -49,6 +59,25 @@ struct Found {
     rows: Vec<Vec<String>>,
     /// Cells that are numbers, over all rows.
     numbers: usize,
+    /// Whether a line of as many cells, words among them, stands above.
+    named: bool,
+}
+
+impl Found {
+    /// Whether these marks make a better table than others: one with names, more numbers, a mark that can be seen, fewer cells.
+    fn beats(&self, other: &Self) -> bool {
+        let width = |found: &Self| found.rows.first().map_or(0, Vec::len);
+        let rank = |found: &Self| {
+            let marked = found.delimiter.blanks().is_none();
+            (
+                found.named,
+                found.numbers,
+                marked,
+                usize::MAX - width(found),
+            )
+        };
+        rank(self) > rank(other)
+    }
 }
 
 /// How the export whose first lines are `head` is written.
@@ -67,11 +96,11 @@ pub fn form(head: &Head) -> Result<Form, DraftError> {
                 continue;
             }
             let found = table(&lines, delimiter, decimal);
-            let more = |found: &Found| {
-                best.as_ref()
-                    .is_none_or(|best| found.numbers > best.numbers)
+            best = match (found, best) {
+                (Some(found), Some(best)) if !found.beats(&best) => Some(best),
+                (None, best) => best,
+                (found, _) => found,
             };
-            best = found.filter(more).or(best);
         }
     }
     let Some(found) = best else {
@@ -79,10 +108,16 @@ pub fn form(head: &Head) -> Result<Form, DraftError> {
             name: head.name.clone(),
         });
     };
+    let mut found = found;
+    let trailing = take_off_trailing(&mut found, &lines);
     let width = found.rows.first().map_or(0, Vec::len);
     let above = |back: usize| {
         let line = lines.get(found.start.checked_sub(back)?)?;
-        Some(cells(line, found.delimiter)).filter(|cells| cells.len() == width)
+        let mut cells = cells(line, found.delimiter);
+        if trailing && cells.len() == width + 1 {
+            cells.pop();
+        }
+        Some(cells).filter(|cells| cells.len() == width)
     };
     let is_units = |cells: &Vec<String>| {
         let known = |cell: &String| unit_word(cell).is_some_and(|unit| unit != UnitWord::Other);
@@ -101,31 +136,74 @@ pub fn form(head: &Head) -> Result<Form, DraftError> {
         });
     }
     let line = |back: usize| (found.start + 1).saturating_sub(back) as u64;
-    let doubts = doubts(&found);
+    let in_quotes = |at: Option<usize>| {
+        at.and_then(|at| lines.get(at))
+            .is_some_and(|line| line.contains('"'))
+    };
     Ok(Form {
         name: head.name.clone(),
-        encoding: if head.is_utf8 {
-            Encoding::Utf8
-        } else {
-            Encoding::Windows1252
+        encoding: match (head.is_utf16, head.is_utf8) {
+            (true, _) => Encoding::Utf16,
+            (false, true) => Encoding::Utf8,
+            (false, false) => Encoding::Windows1252,
         },
-        delimiter: found.delimiter,
-        decimal: found.decimal,
-        quoted: lines
-            .get(found.start)
-            .is_some_and(|line| line.contains('"'))
-            || names.is_some()
-                && lines
-                    .get(found.start - back)
-                    .is_some_and(|line| line.contains('"')),
+        quoted: in_quotes(Some(found.start))
+            || names.is_some() && in_quotes(found.start.checked_sub(back)),
         header_line: if names.is_some() { line(back) } else { 0 },
         units_line: units.as_ref().map(|_| line(1)),
         first_row: line(0),
         names: names.unwrap_or_else(|| (1..=width).map(|place| place.to_string()).collect()),
         units: units.unwrap_or_default(),
+        rarer: Rarer {
+            trailing_delimiter: trailing,
+            carriage_returns: head.carriage_returns,
+            footer: footer(head, &found, trailing),
+            ..Rarer::default()
+        },
+        doubts: doubts(&found),
+        delimiter: found.delimiter,
+        decimal: found.decimal,
         rows: found.rows,
-        doubts,
     })
+}
+
+/// Takes off the empty cell behind a delimiter that ends every row; whether there is one. A name above it makes it a
+/// column like others.
+fn take_off_trailing(found: &mut Found, lines: &[&str]) -> bool {
+    let empty = |cells: &Vec<String>| cells.len() > 2 && cells.last().is_some_and(String::is_empty);
+    let width = found.rows.first().map_or(0, Vec::len);
+    let above = lines.get(..found.start).unwrap_or_default();
+    let named = above
+        .iter()
+        .rev()
+        .map(|line| cells(line, found.delimiter))
+        .any(|cells| cells.len() == width && !empty(&cells));
+    if named || !found.rows.iter().all(empty) {
+        return false;
+    }
+    for row in &mut found.rows {
+        row.pop();
+    }
+    true
+}
+
+/// How the first line below the last row begins, up to what may change from file to file: a colon, a digit.
+fn footer(head: &Head, found: &Found, trailing: bool) -> Option<String> {
+    let width = found.rows.first().map_or(0, Vec::len) + usize::from(trailing);
+    let is_row = |line: &&str| {
+        let cells = cells(line, found.delimiter);
+        let numbers = cells
+            .iter()
+            .filter(|cell| number(cell, found.decimal).is_some());
+        cells.len() == width && numbers.count() >= 2
+    };
+    let lines: Vec<&str> = head.tail.lines().collect();
+    let last = lines.iter().rposition(is_row)?;
+    let mut below = lines.iter().skip(last + 1);
+    let first = below.find(|line| !line.trim().is_empty())?;
+    let end = first.find(|letter: char| letter == ':' || letter.is_ascii_digit());
+    let words = first.get(..end.unwrap_or(first.len()))?.trim();
+    (words.len() > 1).then(|| words.to_owned())
 }
 
 /// The longest run of lines with the same number of cells, two of them numbers at least.
@@ -147,7 +225,14 @@ fn table(lines: &[&str], delimiter: Delimiter, decimal: Decimal) -> Option<Found
         let (length, numbers) = (rows.len().max(1), rows.len() * holds);
         let better = best.as_ref().is_none_or(|best| numbers > best.numbers);
         if holds >= 2 && rows.len() >= ROWS && better {
+            let words = |back: usize| {
+                let above = start.checked_sub(back).and_then(|at| split.get(at));
+                above.is_some_and(|cells| {
+                    cells.len().abs_diff(width) <= 1 && cells.len() > 1 && count(cells) == 0
+                })
+            };
             best = Some(Found {
+                named: words(1) || words(2),
                 delimiter,
                 decimal,
                 start,
@@ -185,16 +270,38 @@ fn doubts(found: &Found) -> Vec<String> {
 /// A line's cells, without blanks and quotes around them.
 fn cells(line: &str, delimiter: Delimiter) -> Vec<String> {
     let mark = char::from(delimiter.byte());
+    let least = delimiter.blanks();
+    let is_blank = |letter: char| letter == ' ' || letter == '\t';
+    let line = if least.is_some() { line.trim() } else { line };
     let mut cells = vec![String::new()];
-    let mut inside = false;
+    let (mut inside, mut run) = (false, String::new());
     for letter in line.chars() {
+        let parts = match least {
+            _ if inside => false,
+            None => letter == mark,
+            Some(least) => {
+                if is_blank(letter) {
+                    run.push(letter);
+                    continue;
+                }
+                run.chars().count() >= least || run.contains('\t')
+            }
+        };
+        if parts {
+            cells.push(String::new());
+        }
         if letter == '"' {
             inside = !inside;
-        } else if letter == mark && !inside {
-            cells.push(String::new());
-        } else if let Some(cell) = cells.last_mut() {
-            cell.push(letter);
         }
+        if let Some(cell) = cells.last_mut() {
+            if !parts {
+                cell.push_str(&run);
+            }
+            if letter != '"' && !(parts && least.is_none()) {
+                cell.push(letter);
+            }
+        }
+        run.clear();
     }
     cells.iter().map(|cell| cell.trim().to_owned()).collect()
 }

@@ -72,37 +72,58 @@ fn table(sheet: &mut Sheet, form: &Form, open: bool) {
             "every cell there is a unit or empty",
         );
     }
+    match &form.rarer.sheet {
+        Some(name) => sheet.key(
+            "sheet",
+            &quoted(name),
+            "the first sheet of the workbook on which a table is seen",
+        ),
+        None => marks(sheet, form, open),
+    }
+    if let Some(footer) = &form.rarer.footer {
+        sheet.doubt("do all exports end with such a line? One that does not is refused as cut off");
+        sheet.key(
+            "footer",
+            &quoted(footer),
+            "so begins the first line below the rows",
+        );
+    }
+}
+
+/// What a text is written with.
+fn marks(sheet: &mut Sheet, form: &Form, open: bool) {
     let (mark, name) = match form.delimiter {
         Delimiter::Comma => (",", "commas"),
         Delimiter::Semicolon => (";", "semicolons"),
         Delimiter::Tab => ("\\t", "tabs"),
+        Delimiter::Pipe => ("|", "upright strokes"),
+        Delimiter::Blanks => ("blanks", "runs of blanks"),
+        Delimiter::TwoBlanks => ("two blanks", "two blanks or more"),
     };
     let width = form.names.len();
-    sheet.key(
-        "delimiter",
-        &format!("\"{mark}\""),
-        &format!("{name} part every row into {width} cells"),
-    );
+    let why = format!("{name} part every row into {width} cells");
+    sheet.key("delimiter", &format!("\"{mark}\""), &why);
+    if form.rarer.trailing_delimiter {
+        sheet.key("trailing_delimiter", "true", "every row ends with one");
+    }
     let (mark, name) = match form.decimal {
         Decimal::Point => (".", "points"),
         Decimal::Comma => (",", "commas"),
     };
     sheet.doubts(&form.doubts);
-    sheet.key(
-        "decimal",
-        &format!("\"{mark}\""),
-        &format!("with {name} most cells are numbers"),
-    );
-    sheet.key(
-        "encoding",
-        &format!("\"{}\"", form.encoding.name()),
-        "the first 64 KB decode so",
-    );
+    let why = format!("with {name} most cells are numbers");
+    sheet.key("decimal", &format!("\"{mark}\""), &why);
+    let encoding = format!("\"{}\"", form.encoding.name());
+    sheet.key("encoding", &encoding, "the first 64 KB decode so");
+    if form.rarer.carriage_returns {
+        sheet.key("line_end", "\"cr\"", "there is no line feed in the file");
+    }
     if form.quoted {
         sheet.key("quoted", "true", "cells stand in quotes");
     }
     if open {
-        sheet.key("last_line_open", "true", "the last line has no line end; a file cut off in the middle of a number looks the same");
+        let why = "the last line has no line end; a file cut off in the middle of a number looks the same";
+        sheet.key("last_line_open", "true", why);
     }
 }
 

@@ -91,6 +91,31 @@ fn why(bare: &str, decimal: Decimal) -> NoNumber {
     NoNumber::Text
 }
 
+/// A number without its thousands marks: whole groups of three digits before the decimal mark, and none behind it.
+/// `None` where the marks stand elsewhere.
+pub(super) fn ungrouped(cell: &str, mark: char, decimal: Decimal) -> Option<String> {
+    let bare = cell.trim_start_matches([' ', '\t']);
+    if !bare.contains(mark) {
+        return Some(cell.to_owned());
+    }
+    let point = match decimal {
+        Decimal::Point => '.',
+        Decimal::Comma => ',',
+    };
+    let (whole, rest) = bare.find(point).map_or((bare, ""), |at| bare.split_at(at));
+    let digits = whole.trim_start_matches(['+', '-', '"']);
+    let mut groups = digits.split(mark);
+    let all_digits = |group: &str| group.bytes().all(|byte| byte.is_ascii_digit());
+    let first = groups
+        .next()
+        .is_some_and(|group| (1..=3).contains(&group.len()) && all_digits(group));
+    let grouped = first
+        && groups.all(|group| {
+            group.trim_end_matches('"').len() == 3 && all_digits(group.trim_end_matches('"'))
+        });
+    (grouped && !rest.contains(mark)).then(|| whole.replace(mark, "") + rest)
+}
+
 impl Context<'_> {
     /// The number in `cell` of a line; on a fault, the fault with its place.
     pub(super) fn number(
@@ -102,8 +127,19 @@ impl Context<'_> {
         factor: f64,
     ) -> Result<f64, ExportError> {
         let written = text.get(cell.clone()).unwrap_or_default();
-        let held = content(written, self.dialect.quoted);
-        let reason = match number(&held, self.dialect.decimal, factor) {
+        let mut held = content(written, self.dialect.quoted);
+        if self.dialect.delimiter.padded() {
+            held = held.trim().to_owned().into();
+        }
+        let decimal = self.dialect.decimal;
+        let plain = match self.dialect.rarer.thousands {
+            Some(mark) => ungrouped(&held, mark, decimal),
+            None => Some(held.to_string()),
+        };
+        let found = plain.map_or(Err(NoNumber::Thousands), |plain| {
+            number(&plain, decimal, factor)
+        });
+        let reason = match found {
             Ok(value) => return Ok(value),
             Err(reason) => reason,
         };

@@ -17,8 +17,10 @@ pub struct RawCurve {
     pub identity: String,
     /// The export, as written.
     pub export: String,
-    /// Line of the first point, 1-based; point i lies on line `first_line + i`.
+    /// Line of the first point, 1-based; point i lies on line `first_line + i`, but for `breaks`.
     pub first_line: u64,
+    /// Where lines lie between two points (several tables): the point behind them and its line.
+    pub breaks: Vec<(usize, u64)>,
     /// Loads in N, pushing positive.
     pub load: Vec<f64>,
     /// Travel in mm, as indicated.
@@ -36,6 +38,8 @@ pub(super) struct Progress {
     begun: HashMap<String, u64>,
     blank: Option<u64>,
     points: u64,
+    /// A table begins: its clock is its own.
+    new_clock: bool,
 }
 
 /// Rows of one spring within a piece.
@@ -66,6 +70,33 @@ impl Progress {
         self.blank.get_or_insert(line);
     }
 
+    /// The blank lines noted are accounted for.
+    pub(super) fn forget_blank(&mut self) {
+        self.blank = None;
+    }
+
+    /// The name that the rows of the file go by, unless a column names them.
+    pub(super) fn whole_file(&self) -> Option<&str> {
+        self.whole_file.as_deref()
+    }
+
+    /// A table begins: its clock is its own.
+    pub(super) fn new_table(&mut self) {
+        self.new_clock = true;
+    }
+
+    /// The rows to come are those of the spring called `name`, which begins on `line`; gives the spring before.
+    ///
+    /// # Errors
+    /// The line on which a spring of this name began already.
+    pub(super) fn next_spring(&mut self, name: &str, line: u64) -> Result<Option<RawCurve>, u64> {
+        if let Some(began) = self.begun.insert(name.to_owned(), line) {
+            return Err(began);
+        }
+        self.whole_file = Some(name.to_owned());
+        Ok(self.open.take())
+    }
+
     /// The name of the spring whose rows are being read.
     pub(super) fn current_name(&self) -> Option<&str> {
         self.open.as_ref().map(|open| open.identity.as_str())
@@ -73,6 +104,9 @@ impl Progress {
 
     /// The time of its last point.
     pub(super) fn last_time(&self) -> Option<f64> {
+        if self.new_clock {
+            return None;
+        }
         self.open.as_ref()?.time.as_ref()?.last().copied()
     }
 
@@ -98,6 +132,7 @@ impl Progress {
     ) -> Result<Vec<RawCurve>, Suspect> {
         let segments = self.segments(columns, first_line, quoted)?;
         self.check_time(columns, &segments)?;
+        self.new_clock = false;
         let mut done = Vec::new();
         for segment in segments {
             if let Some(identity) = segment.begins {
@@ -106,6 +141,7 @@ impl Progress {
                     identity,
                     export: self.export.clone(),
                     first_line: first_line + segment.start as u64,
+                    breaks: Vec::new(),
                     load: Vec::new(),
                     travel: Vec::new(),
                     time: columns.time.as_ref().map(|_| Vec::new()),
@@ -113,6 +149,7 @@ impl Progress {
                 done.extend(self.open.replace(next));
             }
             if let Some(open) = &mut self.open {
+                open.note_break(first_line + segment.start as u64);
                 open.extend(columns, segment.start..segment.end);
                 self.points += (segment.end - segment.start) as u64;
             }
@@ -216,7 +253,17 @@ impl Progress {
 impl RawCurve {
     /// The line of the export that row `row` (from 0) stands on.
     pub fn line(&self, row: usize) -> u64 {
-        self.first_line + row as u64
+        let before = self.breaks.iter().rev().find(|(first, _)| *first <= row);
+        let (first, line) = before.copied().unwrap_or((0, self.first_line));
+        line + (row - first) as u64
+    }
+
+    /// Notes where the next point stands on another line than the one below the last.
+    fn note_break(&mut self, line: u64) {
+        let next = self.load.len();
+        if self.line(next) != line {
+            self.breaks.push((next, line));
+        }
     }
 
     fn extend(&mut self, columns: &Columns, rows: std::ops::Range<usize>) {

@@ -16,8 +16,8 @@ pub enum ExportError {
     #[error("`{name}` is empty")]
     #[diagnostic(code(coilassay::export::empty), help("export the measurement again"))]
     Empty { name: String },
-    #[error("`{name}` is UTF-16 or UTF-32, not yet read by this version")]
-    #[diagnostic(code(coilassay::export::utf16), help("export it, or save it, as UTF-8"))]
+    #[error("`{name}` begins with the mark of UTF-16 or UTF-32, the rig file says another encoding")]
+    #[diagnostic(code(coilassay::export::utf16), help("write encoding = \"utf-16\" in the rig file"))]
     Utf16 { name: String },
     #[error("`{name}` begins with the mark of UTF-8, the rig file says windows-1252")]
     #[diagnostic(code(coilassay::export::mark), help("write encoding = \"utf-8\" in the rig file"))]
@@ -115,6 +115,36 @@ pub enum ExportError {
     #[error("{at}: spring `{id}` returns, after lines of another spring; it began on line {began}")]
     #[diagnostic(code(coilassay::export::returns), help("all lines of a spring stand together; was it measured twice under one name?"), forward(at))]
     SpringReturns { at: Spot, id: String, began: u64 },
+    #[error("{at}: a row outside a table: it has the cells and numbers of one, but no line of column names above it since the last table ended")]
+    #[diagnostic(code(coilassay::export::row_outside), help("did a blank line or the end's mark come into the rows, or was the line of names lost? Compare `tables` in the rig file with the export"), forward(at))]
+    RowOutside { at: Spot },
+    #[error("`{name}`: no line begins with `{footer}`, which the rig file names as the footer")]
+    #[diagnostic(code(coilassay::export::no_footer), help("the export was cut off: export it again; for a tester that writes no footer, remove `footer` from the rig file"))]
+    NoFooter { name: String, footer: String },
+    #[error("{at}: no line above this table begins with `{label}`, after which the {what} stands")]
+    #[diagnostic(code(coilassay::export::nothing_stated), help("compare the words in the rig file with the lines above the table"), forward(at))]
+    NothingStated { at: Spot, label: String, what: &'static str },
+    #[error("{at}: a second line begins with `{label}`, after which the {what} stands, above one table")]
+    #[diagnostic(code(coilassay::export::stated_twice), help("write more of the line in the rig file, so that one line begins so"), forward(at))]
+    StatedTwice { at: Spot, label: String, what: &'static str },
+    #[error("{at}: spring `{id}` has a second table; its first began on line {began}")]
+    #[diagnostic(code(coilassay::export::table_twice), help("was it measured twice under one name? Otherwise each = \"cycle\" in the rig file"), forward(at))]
+    TableTwice { at: Spot, id: String, began: u64 },
+    #[error("`{name}` is no workbook that can be read: {cause}")]
+    #[diagnostic(code(coilassay::export::workbook), help("xlsx and ods are read; for text remove `sheet` from the rig file"))]
+    NoWorkbook { name: String, cause: String },
+    #[error("`{name}` has no sheet `{sheet}`; its sheets are {known}")]
+    #[diagnostic(code(coilassay::export::sheet), help("write the name on the sheet's tab as `sheet` in the rig file"))]
+    NoSheet { name: String, sheet: String, known: String },
+    #[error("`{name}`, sheet `{sheet}`: {rows} rows of {columns} columns, more than a table of measurements has")]
+    #[diagnostic(code(coilassay::export::sheet_size), help("is there a stray cell far away from the table? Clear it, or export as text"))]
+    SheetTooLarge { name: String, sheet: String, rows: u64, columns: u64 },
+    #[error("`{name}`, sheet `{sheet}`, cell {cell}, column `{column}`: found {found}, wanted a number")]
+    #[diagnostic(code(coilassay::export::cell), help("a cell of a number column holds a number, as one: mend the sheet or export again; a missing point is never filled in"))]
+    NoNumberCell { name: String, sheet: String, cell: String, column: String, found: String },
+    #[error("`{name}`, sheet `{sheet}`, cell {cell}, column `{column}`: a formula without a stored value")]
+    #[diagnostic(code(coilassay::export::formula), help("formulas are not computed here: open the workbook where it was made, let it compute, and save it"))]
+    NoStoredValue { name: String, sheet: String, cell: String, column: String },
     #[error("`{name}`: lines {first} to {last} cannot be read as a table, and no single cell is to blame")]
     #[diagnostic(code(coilassay::export::unreadable), help("please report this with the export; split the file to find the line"))]
     Unreadable { name: String, first: u64, last: u64 },

@@ -4,12 +4,15 @@ use super::error::ExportError;
 use super::layout::{HeadLine, Layout};
 use super::ledger::{Ledger, WhyAside};
 use super::lines::{Context, is_blank, lines};
+use super::stated::Stated;
 
 /// What is known of a file's head so far.
 #[derive(Debug, Default)]
 pub(super) struct Head {
-    header: Option<HeadLine>,
-    units: Option<HeadLine>,
+    pub(super) header: Option<HeadLine>,
+    pub(super) units: Option<HeadLine>,
+    /// Lines that state something by the rig file's words.
+    pub(super) stated: Stated,
 }
 
 impl Head {
@@ -58,6 +61,7 @@ impl Head {
             self.units = Some(HeadLine { number, text });
             WhyAside::Units
         } else {
+            self.stated.note(context, number, &text);
             WhyAside::Metadata
         }
     }

@@ -72,7 +72,7 @@ impl Layout {
     fn find(context: &Context<'_>, header: &Row<'_>) -> Result<Self, ExportError> {
         let dialect = context.dialect;
         let spring = match &dialect.spring {
-            SpringFrom::FileName => None,
+            SpringFrom::FileName | SpringFrom::LineAfter(_) | SpringFrom::TableNumber => None,
             SpringFrom::Column(name) => Some(header.position(SPRING, name)?),
         };
         let time = dialect.time.as_ref();
@@ -236,7 +236,18 @@ impl<'c> Row<'c> {
                 first: first + 1,
                 second: second + 1,
             }),
-            (None, _) => Err(self.unknown(role, name)),
+            (None, _) => self.but_for_case(role, name),
+        }
+    }
+
+    /// The one column called `name` but for capitals: testers change them from one version to the next.
+    fn but_for_case(&self, role: &'static str, name: &str) -> Result<usize, ExportError> {
+        let wanted = name.trim().to_lowercase();
+        let alike = |cell: &&String| cell.to_lowercase() == wanted;
+        let place = self.names.iter().position(|cell| alike(&cell));
+        match place {
+            Some(place) if self.names.iter().filter(alike).count() == 1 => Ok(place),
+            _ => Err(self.unknown(role, name)),
         }
     }
 

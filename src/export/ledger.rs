@@ -11,6 +11,10 @@ pub enum WhyAside {
     Units,
     /// Nothing, after the last point.
     BlankAtTheEnd,
+    /// Between two tables.
+    BetweenTables,
+    /// Below the table.
+    Footer,
 }
 
 impl WhyAside {
@@ -21,6 +25,8 @@ impl WhyAside {
             Self::Header => "header",
             Self::Units => "units",
             Self::BlankAtTheEnd => "blank at the end",
+            Self::BetweenTables => "between tables",
+            Self::Footer => "footer",
         }
     }
 }

@@ -92,7 +92,7 @@ impl Context<'_> {
             return Err(self.lone_return(line, at));
         }
         match self.dialect.encoding {
-            Encoding::Utf8 => std::str::from_utf8(line.bytes)
+            Encoding::Utf8 | Encoding::Utf16 => std::str::from_utf8(line.bytes)
                 .map(Cow::Borrowed)
                 .map_err(|fault| self.undecodable(line, fault.valid_up_to())),
             Encoding::Windows1252 => {
@@ -108,7 +108,9 @@ impl Context<'_> {
     /// Some bytes as text for an excerpt, and the stretch of the byte at `at` in it.
     fn around(&self, bytes: &[u8], at: usize) -> (String, Range<usize>) {
         let text = |bytes: Option<&[u8]>| match self.dialect.encoding {
-            Encoding::Utf8 => String::from_utf8_lossy(bytes.unwrap_or_default()).into_owned(),
+            Encoding::Utf8 | Encoding::Utf16 => {
+                String::from_utf8_lossy(bytes.unwrap_or_default()).into_owned()
+            }
             Encoding::Windows1252 => decode_1252(bytes.unwrap_or_default()).into_owned(),
         };
         let (before, byte) = (text(bytes.get(..at)), text(bytes.get(at..=at)));
@@ -136,8 +138,7 @@ impl Context<'_> {
     /// # Errors
     /// Quotes that do not pair up, where the dialect has quotes.
     pub(super) fn cells(&self, line: u64, text: &str) -> Result<Vec<Range<usize>>, ExportError> {
-        let (delimiter, quoted) = (self.dialect.delimiter, self.dialect.quoted);
-        cells(text, delimiter, quoted).map_err(|(at, what)| ExportError::Quotes {
+        cells_of(text, self.dialect).map_err(|(at, what)| ExportError::Quotes {
             at: self.spot(line, text, at..at + 1, None),
             what,
         })
@@ -149,6 +150,63 @@ pub(super) fn decode_1252(bytes: &[u8]) -> Cow<'_, str> {
     encoding_rs::WINDOWS_1252
         .decode_without_bom_handling(bytes)
         .0
+}
+
+/// The stretches of the cells of `text` as `dialect` parts them; an empty one behind a trailing delimiter is none.
+///
+/// # Errors
+/// As [`cells`].
+pub(super) fn cells_of(
+    text: &str,
+    dialect: &Dialect,
+) -> Result<Vec<Range<usize>>, (usize, &'static str)> {
+    let mut found = match dialect.delimiter.blanks() {
+        Some(least) => parted_by_blanks(text, least, dialect.quoted)?,
+        None => cells(text, dialect.delimiter, dialect.quoted)?,
+    };
+    let trailing = dialect.rarer.trailing_delimiter && found.len() > 1;
+    if trailing && found.last().is_some_and(Range::is_empty) {
+        found.pop();
+    }
+    Ok(found)
+}
+
+/// The stretches between runs of `least` blanks or more, or of tabs; blanks at both ends part nothing.
+fn parted_by_blanks(
+    text: &str,
+    least: usize,
+    quoted: bool,
+) -> Result<Vec<Range<usize>>, (usize, &'static str)> {
+    let bytes = text.as_bytes();
+    let is_blank = |at: usize| matches!(bytes.get(at), Some(b' ' | b'\t'));
+    let mut found = Vec::new();
+    let mut at = 0;
+    while at < bytes.len() {
+        if is_blank(at) {
+            at += 1;
+            continue;
+        }
+        let start = at;
+        if quoted && bytes.get(at) == Some(&b'"') {
+            at += quoted_length(bytes.get(at..).unwrap_or_default(), at)?;
+        } else {
+            while at < bytes.len() {
+                let run = (at..bytes.len()).take_while(|at| is_blank(*at)).count();
+                if run >= least
+                    || bytes.get(at) == Some(&b'\t')
+                    || run > 0 && at + run == bytes.len()
+                {
+                    break;
+                }
+                at += run.max(1);
+            }
+        }
+        found.push(start..at);
+    }
+    if found.is_empty() {
+        found.push(0..0);
+    }
+    Ok(found)
 }
 
 /// The stretches of the cells of `text`, quotes included; on a fault of quoting its place and what is wrong.

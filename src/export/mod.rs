@@ -9,23 +9,27 @@ mod labels;
 mod layout;
 mod ledger;
 mod lines;
+mod sections;
 mod sketch;
 mod small;
 mod spot;
+mod stated;
 mod table;
 mod walk;
+mod workbook;
 
 use std::path::Path;
 
 use polars::prelude::SchemaRef;
 
-use crate::text::{Alphabet, Block, Blocks, Next, Tail, printable};
+use crate::text::{Alphabet, Block, Blocks, Decoding, Next, Tail, printable};
 
 use crate::rig::{Decimal, Delimiter, Dialect, Encoding, SpringFrom};
 use curves::Progress;
 use head::Head;
 use layout::Layout;
 use lines::{Context, LONGEST_LINE};
+use sections::Sections;
 use table::Suspect;
 
 pub use curves::RawCurve;
@@ -35,6 +39,7 @@ pub use ledger::{Aside, Ledger, WhyAside};
 pub use sketch::{Columns, Look, look, sketch};
 pub use small::{SmallTable, read_small};
 pub use spot::Spot;
+pub use workbook::{is_workbook, sheets};
 
 /// Bytes read at once unless a test wants otherwise: large enough to keep every core busy, a few fit any memory.
 pub const BLOCK_BYTES: usize = 8 << 20;
@@ -62,8 +67,15 @@ pub fn read(
     block_bytes: usize,
     each: &mut dyn FnMut(Vec<RawCurve>),
 ) -> Result<Read, ExportError> {
+    if let Some(sheet) = &dialect.rarer.sheet {
+        return workbook::read(path, as_written, dialect, sheet, each);
+    }
     let mut reading = Reading::begin(as_written, dialect)?;
-    let mut blocks = Blocks::open(path, as_written, block_bytes, LONGEST_LINE + 1)?;
+    let decoding = Decoding {
+        utf16: dialect.encoding == Encoding::Utf16,
+        carriage_returns: dialect.rarer.carriage_returns,
+    };
+    let mut blocks = Blocks::open(path, as_written, block_bytes, LONGEST_LINE + 1, decoding)?;
     loop {
         match blocks.next_lines()? {
             Next::Block(block) => {
@@ -89,6 +101,7 @@ struct Reading<'d> {
     table: Option<(Layout, SchemaRef)>,
     progress: Progress,
     ledger: Ledger,
+    sections: Sections,
 }
 
 impl<'d> Reading<'d> {
@@ -105,8 +118,8 @@ impl<'d> Reading<'d> {
             _ => {}
         }
         let whole_file = match dialect.spring {
-            SpringFrom::Column(_) => None,
-            SpringFrom::FileName => {
+            SpringFrom::Column(_) | SpringFrom::LineAfter(_) => None,
+            SpringFrom::FileName | SpringFrom::TableNumber => {
                 let stem = Path::new(name)
                     .file_stem()
                     .map(std::ffi::OsStr::to_string_lossy);
@@ -122,6 +135,7 @@ impl<'d> Reading<'d> {
             table: None,
             progress: Progress::new(name, whole_file),
             ledger: Ledger::default(),
+            sections: Sections::default(),
         })
     }
 
@@ -139,6 +153,9 @@ impl<'d> Reading<'d> {
         let mut first_line = self.ledger.lines + 1;
         let open = u64::from(block.tail != Tail::Ended && !piece.is_empty());
         self.ledger.lines += table::count_lines(piece) as u64 + open;
+        if sections::needed(self.context.dialect) {
+            return self.take_sections(piece, first_line);
+        }
         if self.table.is_none() {
             let (head, ledger) = (&mut self.head, &mut self.ledger);
             let (taken, layout) = head.take(&self.context, piece, first_line, ledger)?;
@@ -161,6 +178,7 @@ impl<'d> Reading<'d> {
                 Err(ExportError::Marked { name: name() })
             }
             ([0xEF, 0xBB, 0xBF, rest @ ..], Encoding::Utf8) => Ok(rest),
+            (_, Encoding::Utf16) => Ok(piece),
             ([0xFF, 0xFE, ..] | [0xFE, 0xFF, ..], _) => Err(ExportError::Utf16 { name: name() }),
             _ => Ok(piece),
         }
@@ -193,7 +211,7 @@ impl<'d> Reading<'d> {
                 return Err(Suspect);
             }
             let dialect = self.context.dialect;
-            let text = table::decode(&self.context, body)?;
+            let text = table::plain(dialect, layout, table::decode(&self.context, body)?)?;
             table::check_shape(dialect, layout, &text)?;
             let columns = table::parse(dialect, layout, schema, &text)?;
             done = self.progress.take(&columns, first_line, dialect.quoted)?;
@@ -232,6 +250,7 @@ impl<'d> Reading<'d> {
             return Err(ExportError::Empty { name });
         }
         self.check_head()?;
+        self.check_sections()?;
         if let Some(blank) = self.progress.blank_since() {
             for line in blank..=lines {
                 self.ledger.set_aside(WhyAside::BlankAtTheEnd, line);

@@ -5,7 +5,7 @@ use crate::text::Head;
 use crate::units::{ForceUnit, LengthUnit};
 
 use crate::rig::{
-    Decimal, Delimiter, Dialect, Encoding, LoadColumn, Pushing, SpringFrom, TravelColumn,
+    Decimal, Delimiter, Dialect, Encoding, LoadColumn, Pushing, Rarer, SpringFrom, TravelColumn,
 };
 
 /// Lines looked at.
@@ -99,6 +99,7 @@ pub fn sketch(head: &Head, columns: &Columns) -> Option<Dialect> {
                 },
                 time: None,
                 spring: SpringFrom::FileName,
+                rarer: Rarer::default(),
             });
         }
     }

@@ -6,7 +6,7 @@ use super::error::ExportError;
 use super::lines::{Context, Line, content, is_blank, lines};
 use super::spot::show;
 use crate::rig::{
-    Decimal, Delimiter, Dialect, Encoding, LoadColumn, Pushing, SpringFrom, TravelColumn,
+    Decimal, Delimiter, Dialect, Encoding, LoadColumn, Pushing, Rarer, SpringFrom, TravelColumn,
 };
 use crate::text::Source;
 use crate::units::{ForceUnit, LengthUnit};
@@ -91,6 +91,7 @@ fn hand_written() -> Dialect {
         },
         time: None,
         spring: SpringFrom::FileName,
+        rarer: Rarer::default(),
     }
 }
 

@@ -10,8 +10,11 @@ use polars::prelude::{
     SchemaRef, SerReader, StringChunked,
 };
 
+use super::cells::ungrouped;
 use super::layout::Layout;
-use super::lines::{Context, LONGEST_LINE, UNDEFINED_1252, cells, decode_1252, is_blank, lines};
+use super::lines::{
+    Context, LONGEST_LINE, UNDEFINED_1252, cells, cells_of, decode_1252, is_blank, lines,
+};
 use crate::rig::{Decimal, Dialect, Encoding};
 use crate::units::Finite;
 
@@ -83,7 +86,7 @@ pub(super) fn count_lines(bytes: &[u8]) -> usize {
 /// The text of `body`, ended by a line end.
 pub(super) fn decode<'p>(context: &Context<'_>, body: &'p [u8]) -> Result<Cow<'p, str>, Suspect> {
     let text = match context.dialect.encoding {
-        Encoding::Utf8 => std::str::from_utf8(body)
+        Encoding::Utf8 | Encoding::Utf16 => std::str::from_utf8(body)
             .map(Cow::Borrowed)
             .map_err(|_| Suspect)?,
         Encoding::Windows1252 => {
@@ -100,6 +103,44 @@ pub(super) fn decode<'p>(context: &Context<'_>, body: &'p [u8]) -> Result<Cow<'p
         return Ok(Cow::Owned(text.into_owned() + "\n"));
     }
     Err(Suspect)
+}
+
+/// `text` with one delimiter between two cells, none behind the last, and numbers without thousands marks: as polars
+/// takes it. Most dialects have it so already.
+pub(super) fn plain<'t>(
+    dialect: &Dialect,
+    layout: &Layout,
+    text: Cow<'t, str>,
+) -> Result<Cow<'t, str>, Suspect> {
+    let rarer = &dialect.rarer;
+    let thousands = rarer.thousands;
+    let padded = dialect.delimiter.padded();
+    if dialect.delimiter.blanks().is_none()
+        && !padded
+        && !rarer.trailing_delimiter
+        && thousands.is_none()
+    {
+        return Ok(text);
+    }
+    let mut plain = String::with_capacity(text.len());
+    for line in text.lines() {
+        let found = cells_of(line, dialect).map_err(|_| Suspect)?;
+        for (column, cell) in found.into_iter().enumerate() {
+            if column > 0 {
+                plain.push(char::from(dialect.delimiter.byte()));
+            }
+            let written = line.get(cell).unwrap_or_default();
+            let written = if padded { written.trim() } else { written };
+            match thousands.filter(|_| layout.is_number(column)) {
+                Some(mark) => {
+                    plain.push_str(&ungrouped(written, mark, dialect.decimal).ok_or(Suspect)?);
+                }
+                None => plain.push_str(written),
+            }
+        }
+        plain.push('\n');
+    }
+    Ok(Cow::Owned(plain))
 }
 
 /// Refuses what polars reads as something else: missing cells at the end of a line, quotes that do not pair up,

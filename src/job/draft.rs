@@ -4,8 +4,8 @@ use std::path::Path;
 use std::sync::Arc;
 
 use crate::curve::correct;
-use crate::draft::{Columns, Form, columns, form, meaning, write};
-use crate::export::{BLOCK_BYTES, ExportError, RawCurve, read};
+use crate::draft::{Columns, DraftError, Form, columns, form, meaning, write};
+use crate::export::{BLOCK_BYTES, ExportError, RawCurve, is_workbook, read, sheets};
 use crate::rig::{Dialect, LoadColumn, Pushing, SpringFrom, TravelColumn};
 use crate::text::{Head, Source};
 
@@ -17,7 +17,7 @@ use crate::text::{Head, Source};
 pub fn draft_rig(written: &str) -> miette::Result<String> {
     let path = Path::new(written);
     let head = Head::read(path, written)?;
-    let form = form(&head)?;
+    let form = form_of(path, written, &head)?;
     let columns = columns(&form)?;
     let mut dialect = plain(&form, &columns);
     let first = match first_spring(path, written, &dialect) {
@@ -34,6 +34,33 @@ pub fn draft_rig(written: &str) -> miette::Result<String> {
     let mut text = write(&form, &columns, &meaning, dialect.last_line_open, springs);
     text.extend(tried(path, written, &text)?.map(|fault| format!("# DOUBT: read so, {fault}\n")));
     Ok(text)
+}
+
+/// How an export is written; of a workbook, the first sheet on which a table is seen.
+fn form_of(path: &Path, written: &str, head: &Head) -> miette::Result<Form> {
+    if !is_workbook(&head.start) {
+        return Ok(form(head)?);
+    }
+    let mut seen = Err(None);
+    for (sheet, text) in sheets(path, written)? {
+        let head = Head {
+            tail: text.clone(),
+            text,
+            is_utf8: true,
+            ..head.clone()
+        };
+        seen = match form(&head) {
+            Ok(mut form) => {
+                form.rarer.sheet = Some(sheet);
+                return Ok(form);
+            }
+            Err(fault) => Err(Some(fault)),
+        };
+    }
+    let none = || DraftError::NoTable {
+        name: head.name.clone(),
+    };
+    Ok(seen.map_err(|fault: Option<DraftError>| fault.unwrap_or_else(none))?)
 }
 
 /// Reads the export with the draft; what is wrong with its curves then.
@@ -96,5 +123,6 @@ fn plain(form: &Form, columns: &Columns) -> Dialect {
             .spring
             .clone()
             .map_or(SpringFrom::FileName, SpringFrom::Column),
+        rarer: form.rarer.clone(),
     }
 }

@@ -11,6 +11,7 @@ use crate::drawing::{Method, Stroke, Way};
 use crate::export::{Columns, Look, look, sketch};
 use crate::intake::{Conditions, Export};
 use crate::quantity::Quantity;
+use crate::record::OddLines;
 use crate::rig::{self, Accuracy, Compliance, Known, Means, Rig, Scale};
 use crate::text::{Head, InputFile};
 use crate::units::{Finite, Millimetres, Newtons};
@@ -77,6 +78,8 @@ pub struct RateResult {
     pub largest_load_n: Option<Newtons>,
     /// Loads asked for.
     pub loads: Vec<LoadAt>,
+    /// What is odd in its rows.
+    pub odd: Vec<OddLines>,
     /// Whether U holds what is known of the rig, or only the scatter.
     pub rig_known: bool,
 }
@@ -292,6 +295,7 @@ fn result(reading: &Reading, rig_known: bool) -> RateResult {
         straightness_percent: fit.and_then(|fit| figure(100.0 * fit.straightness)),
         largest_load_n: reading.loads.1.try_into().ok(),
         loads: loads.collect(),
+        odd: super::odd::lines(&reading.odd, &reading.export),
         rig_known,
     }
 }

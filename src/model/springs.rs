@@ -8,6 +8,8 @@ use crate::units::{Finite, System};
 use crate::wording;
 use crate::wording::{ABSENT, Place, figure, freedom, probability, unit_symbol, with_uncertainty};
 
+/// Odd stretches of an export named in a spring's remarks; the result lists all.
+const ODD: usize = 3;
 /// Characteristics side by side in the table of the springs.
 const ABREAST: usize = 5;
 
@@ -108,6 +110,10 @@ pub(crate) fn remarks(spring: &SpringResult, show_in: System) -> String {
             .iter()
             .map(|advice| format!("to settle {}", wording::advice(advice, show_in))),
     );
+    said.extend(spring.odd.iter().take(ODD).map(wording::odd_lines));
+    if spring.odd.len() > ODD {
+        said.push(format!("{} more odd stretches", spring.odd.len() - ODD));
+    }
     said.extend(measured(spring));
     if !spring.in_sample {
         said.push("beyond the sample, does not count".to_owned());

@@ -85,11 +85,16 @@ pub fn uneven(u: &[f64]) -> bool {
     };
     let from = start + MIDDLE.0 * (end - start);
     let wide = (MIDDLE.1 - MIDDLE.0) * (end - start) / 4.0;
-    let count = |part: f64| {
-        let low = from + part * wide;
-        u.iter().filter(|u| **u >= low && **u < low + wide).count()
-    };
-    let counts = [count(0.0), count(1.0), count(2.0), count(3.0)];
+    let mut counts = [0_usize; 4];
+    for at in u {
+        let place = (at - from) / wide;
+        // Below the first part `place` is negative, and no part is found.
+        let part =
+            (0..4_u8).find(|part| place >= f64::from(*part) && place < f64::from(*part) + 1.0);
+        if let Some(count) = part.and_then(|part| counts.get_mut(usize::from(part))) {
+            *count += 1;
+        }
+    }
     let (least, most) = counts.iter().fold((usize::MAX, 0), |(least, most), one| {
         (least.min(*one), most.max(*one))
     });

@@ -28,6 +28,56 @@ pub struct Dialect {
     pub time: Option<String>,
     /// Where the name of a spring comes from.
     pub spring: SpringFrom,
+    /// What few testers do.
+    pub rarer: Rarer,
+}
+
+/// What few testers do; nothing of it unless the rig file says so.
+#[derive(Clone, Debug, Default, PartialEq, Eq)]
+pub struct Rarer {
+    /// Every row ends with a delimiter.
+    pub trailing_delimiter: bool,
+    /// What parts thousands in numbers.
+    pub thousands: Option<char>,
+    /// How the first line below the table begins; without it the file is cut off.
+    pub footer: Option<String>,
+    /// Lines end with a carriage return alone.
+    pub carriage_returns: bool,
+    /// What stands before the unit of loads, and of travels, in a line above the table.
+    pub unit_after: (Option<String>, Option<String>),
+    /// The file holds several tables.
+    pub tables: Option<Tables>,
+    /// The file is a workbook, and this sheet holds the table.
+    pub sheet: Option<String>,
+}
+
+/// Several tables in one file, each below a line of column names like the first.
+#[derive(Clone, Debug, PartialEq, Eq)]
+pub struct Tables {
+    /// What one of them is.
+    pub each: Each,
+    /// What ends one.
+    pub end: TableEnd,
+}
+
+/// What one of several tables is.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Each {
+    /// A spring.
+    Spring,
+    /// A cycle of the one spring, or of the springs that a column names.
+    Cycle,
+}
+
+/// What ends one of several tables.
+#[derive(Clone, Debug, PartialEq, Eq)]
+pub enum TableEnd {
+    /// A blank line.
+    BlankLine,
+    /// The column names of the next one.
+    NextNames,
+    /// A line that begins so.
+    Line(String),
 }
 
 /// What stands between two cells.
@@ -39,15 +89,36 @@ pub enum Delimiter {
     Semicolon,
     /// A tab.
     Tab,
+    /// `|`
+    Pipe,
+    /// Blanks or tabs, however many.
+    Blanks,
+    /// Two blanks or more, or a tab; names may hold single blanks.
+    TwoBlanks,
 }
 
 impl Delimiter {
-    /// The delimiter as a byte of the file.
+    /// The delimiter as a byte of the file; a tab, where runs of blanks are turned into one.
     pub const fn byte(self) -> u8 {
         match self {
             Self::Comma => b',',
             Self::Semicolon => b';',
-            Self::Tab => b'\t',
+            Self::Tab | Self::Blanks | Self::TwoBlanks => b'\t',
+            Self::Pipe => b'|',
+        }
+    }
+
+    /// Whether cells are padded with blanks on both sides.
+    pub const fn padded(self) -> bool {
+        matches!(self, Self::Pipe)
+    }
+
+    /// The least length of a run of blanks that is one delimiter.
+    pub const fn blanks(self) -> Option<usize> {
+        match self {
+            Self::Blanks => Some(1),
+            Self::TwoBlanks => Some(2),
+            _ => None,
         }
     }
 }
@@ -68,6 +139,8 @@ pub enum Encoding {
     Utf8,
     /// Windows code page 1252 (Western Europe).
     Windows1252,
+    /// UTF-16 with its mark.
+    Utf16,
 }
 
 impl Encoding {
@@ -76,6 +149,7 @@ impl Encoding {
         match self {
             Self::Utf8 => "utf-8",
             Self::Windows1252 => "windows-1252",
+            Self::Utf16 => "utf-16",
         }
     }
 }
@@ -118,4 +192,8 @@ pub enum SpringFrom {
     FileName,
     /// A column, whose cells change where the next spring begins.
     Column(String),
+    /// A line above the table that begins so; the name is what follows.
+    LineAfter(String),
+    /// The file's name and the number of its table.
+    TableNumber,
 }

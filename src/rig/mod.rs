@@ -7,10 +7,12 @@ mod every;
 mod frame;
 mod open;
 mod read_dialect;
+mod read_rarer;
 mod scale;
 
 pub use dialect::{
-    Decimal, Delimiter, Dialect, Encoding, LoadColumn, Pushing, SpringFrom, TravelColumn,
+    Decimal, Delimiter, Dialect, Each, Encoding, LoadColumn, Pushing, Rarer, SpringFrom, TableEnd,
+    Tables, TravelColumn,
 };
 pub use edit::{Change, Changed, Edited, RigEditError, edit};
 pub use every::Every;

@@ -7,6 +7,7 @@ use super::dialect::{
     Decimal, Delimiter, Dialect, Encoding, LoadColumn, Pushing, SpringFrom, TravelColumn,
 };
 use super::open::Means;
+use super::read_rarer::read_rarer;
 
 pub(super) fn read_export(table: Table<'_>) -> Option<(Dialect, Means)> {
     if !table.is_present() {
@@ -27,6 +28,7 @@ pub(super) fn read_export(table: Table<'_>) -> Option<(Dialect, Means)> {
     let load = read_load(table.table("load"));
     let travel = read_travel(table.table("travel"));
     let spring = read_spring(table.table("spring"));
+    let rarer = read_rarer(table);
     let time = table.table("time");
     let time = if time.is_present() {
         Some(column(time)?)
@@ -46,6 +48,7 @@ pub(super) fn read_export(table: Table<'_>) -> Option<(Dialect, Means)> {
         travel,
         time,
         spring: spring?,
+        rarer: rarer?,
     };
     check_lines(table, &dialect)?;
     Some((dialect, means))
@@ -53,8 +56,14 @@ pub(super) fn read_export(table: Table<'_>) -> Option<(Dialect, Means)> {
 
 /// Delimiter, decimal mark and encoding.
 fn read_marks(table: Table<'_>) -> Option<(Delimiter, Decimal, Encoding)> {
+    if table.has("sheet") {
+        return no_marks(table);
+    }
     for (key, help) in [
-        ("delimiter", "write delimiter = \",\" or \";\" or \"\\t\""),
+        (
+            "delimiter",
+            "write delimiter = \",\" or \";\" or \"\\t\" or \"|\" or \"blanks\" or \"two blanks\"",
+        ),
         ("decimal", "write decimal = \".\" or \",\""),
     ] {
         if !table.has(key) {
@@ -65,12 +74,16 @@ fn read_marks(table: Table<'_>) -> Option<(Delimiter, Decimal, Encoding)> {
         (",", Delimiter::Comma),
         (";", Delimiter::Semicolon),
         ("\t", Delimiter::Tab),
+        ("|", Delimiter::Pipe),
+        ("blanks", Delimiter::Blanks),
+        ("two blanks", Delimiter::TwoBlanks),
     ];
     let delimiter = table.word("delimiter", &delimiters);
     let decimal = table.word("decimal", &[(".", Decimal::Point), (",", Decimal::Comma)]);
     let encodings = [
         ("utf-8", Encoding::Utf8),
         ("windows-1252", Encoding::Windows1252),
+        ("utf-16", Encoding::Utf16),
     ];
     let encoding = if table.has("encoding") {
         table.word("encoding", &encodings)
@@ -88,6 +101,31 @@ fn read_marks(table: Table<'_>) -> Option<(Delimiter, Decimal, Encoding)> {
         return None;
     }
     Some((delimiter, decimal, encoding?))
+}
+
+/// A workbook has cells and types of its own: no marks.
+fn no_marks(table: Table<'_>) -> Option<(Delimiter, Decimal, Encoding)> {
+    let textual = [
+        "delimiter",
+        "decimal",
+        "encoding",
+        "quoted",
+        "last_line_open",
+        "trailing_delimiter",
+        "thousands",
+        "line_end",
+        "tables",
+    ];
+    if let Some(key) = textual.into_iter().find(|key| table.has(key)) {
+        let what = format!("`{key}` is said of a workbook's sheet, which has no such thing");
+        table.fault(
+            &table.place(key),
+            what,
+            "remove it, or `sheet` if the export is text",
+        );
+        return None;
+    }
+    Some((Delimiter::Tab, Decimal::Point, Encoding::Utf8))
 }
 
 fn check_lines(table: Table<'_>, dialect: &Dialect) -> Option<()> {
@@ -226,12 +264,21 @@ fn read_travel(table: Table<'_>) -> Option<(TravelColumn, Means)> {
 }
 
 fn read_spring(table: Table<'_>) -> Option<SpringFrom> {
-    let help = "write spring = { from = \"file name\" } or spring = { column = \"Specimen\" }";
-    match (table.has("from"), table.has("column")) {
-        (true, false) => table
-            .word("from", &[("file name", ())])
-            .map(|()| SpringFrom::FileName),
-        (false, true) => column(table).map(SpringFrom::Column),
+    let help = "write spring = { from = \"file name\" }, { from = \"table number\" }, { column = \"Specimen\" } or { after = \"Specimen:\" }";
+    match (table.has("from"), table.has("column"), table.has("after")) {
+        (true, false, false) => {
+            let words = [
+                ("file name", SpringFrom::FileName),
+                ("table number", SpringFrom::TableNumber),
+            ];
+            let places = [("file name", 0_usize), ("table number", 1)];
+            let place = table.word("from", &places)?;
+            words.into_iter().nth(place).map(|(_, from)| from)
+        }
+        (false, true, false) => column(table).map(SpringFrom::Column),
+        (false, false, true) => table
+            .required_text("after", help)
+            .map(SpringFrom::LineAfter),
         _ => {
             table.fault(
                 &table.span(),

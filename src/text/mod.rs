@@ -6,15 +6,17 @@ mod blocks;
 mod excerpt;
 mod fault;
 mod printable;
+mod progress;
 mod source;
 mod table;
 mod toml;
 mod values;
 
-pub use blocks::{Block, Blocks, Next, Tail};
+pub use blocks::{Block, Blocks, Decoding, Next, Tail};
 pub use excerpt::{Excerpt, Place};
 pub use fault::{Fault, Faults};
 pub use printable::{Alphabet, printable};
+pub use progress::{announce, progress};
 pub use source::{Hasher, Head, InputFile, Source, TextError, beside, hex, read_bytes, sha256_of};
 pub use table::{At, Table};
 pub use toml::{Keys, read_toml};

@@ -12,6 +12,8 @@ use sha2::Digest;
 const LARGEST_HAND_WRITTEN: u64 = 4 << 20;
 /// Bytes of an export that are looked at to see how it is written.
 const LOOKED_AT: u64 = 64 << 10;
+/// Bytes at its end that are looked at.
+const TAIL: u64 = 4 << 10;
 
 /// Bytes of a file that are hashed at once.
 const HASHED_AT_ONCE: usize = 1 << 20;
@@ -124,6 +126,32 @@ impl Source {
     }
 }
 
+/// All bytes of a file that is read whole, and their SHA-256.
+///
+/// # Errors
+/// [`TextError`] where it cannot be read, is empty or holds more than `most` bytes.
+pub fn read_bytes(
+    path: &Path,
+    as_written: &str,
+    most: u64,
+) -> Result<(Vec<u8>, String), TextError> {
+    let name = super::printable(as_written, &super::Alphabet::Any);
+    let read = |cause| TextError::Read {
+        name: name.clone(),
+        cause,
+    };
+    let size = std::fs::metadata(path).map_err(read)?.len();
+    if size > most {
+        return Err(TextError::TooLarge { name, bytes: size });
+    }
+    let bytes = std::fs::read(path).map_err(read)?;
+    if bytes.is_empty() {
+        return Err(TextError::Empty { name });
+    }
+    let sha256 = hex(&sha2::Sha256::digest(&bytes));
+    Ok((bytes, sha256))
+}
+
 /// `path` as it stands in the folder of `file`, unless it is absolute.
 pub fn beside(file: &Path, path: &str) -> PathBuf {
     file.parent().unwrap_or(Path::new("")).join(path)
@@ -137,17 +165,6 @@ pub fn hex(bytes: &[u8]) -> String {
             let _ = write!(text, "{byte:02x}"); // writing into a string cannot fail
             text
         })
-}
-
-/// A file that a machine wrote, read whole.
-///
-/// # Errors
-/// [`TextError::Read`] where it cannot be read; `as_written` names it.
-pub fn read_bytes(path: &Path, as_written: &str) -> Result<Vec<u8>, TextError> {
-    std::fs::read(path).map_err(|cause| TextError::Read {
-        name: super::printable(as_written, &super::Alphabet::Any),
-        cause,
-    })
 }
 
 /// SHA-256 of a file of any size, lower-case hexadecimal.
@@ -195,6 +212,14 @@ pub struct Head {
     pub text: String,
     /// Whether they are UTF-8; Windows-1252 otherwise.
     pub is_utf8: bool,
+    /// Whether they are UTF-16 with its mark.
+    pub is_utf16: bool,
+    /// Whether carriage returns alone end the lines.
+    pub carriage_returns: bool,
+    /// The last 4 KB as text, cut anywhere.
+    pub tail: String,
+    /// The very first bytes.
+    pub start: Vec<u8>,
 }
 
 impl Head {
@@ -215,11 +240,30 @@ impl Head {
         if bytes.is_empty() {
             return Err(TextError::Empty { name });
         }
-        let whole = bytes
+        let start = bytes.get(..4).unwrap_or(&bytes).to_vec();
+        let is_whole = (bytes.len() as u64) < LOOKED_AT;
+        let wide = match start.as_slice() {
+            [0xFF, 0xFE, ..] => Some(encoding_rs::UTF_16LE),
+            [0xFE, 0xFF, ..] => Some(encoding_rs::UTF_16BE),
+            _ => None,
+        };
+        if let Some(encoding) = wide {
+            let (text, ..) = encoding.decode(&bytes); // a half character at the end is cut with its line
+            bytes = text.into_owned().into_bytes();
+        }
+        let carriage_returns = !bytes.contains(&b'\n') && bytes.contains(&b'\r');
+        if carriage_returns {
+            for byte in bytes.iter_mut().filter(|byte| **byte == b'\r') {
+                *byte = b'\n';
+            }
+        }
+        let end = bytes
             .iter()
             .rposition(|byte| *byte == b'\n')
             .map_or(bytes.len(), |end| end + 1);
-        let body = bytes.get(..whole).unwrap_or(&bytes);
+        let body = bytes
+            .get(..if is_whole { bytes.len() } else { end })
+            .unwrap_or(&bytes);
         let body = body.strip_prefix(b"\xEF\xBB\xBF").unwrap_or(body);
         let (text, is_utf8) = match std::str::from_utf8(body) {
             Ok(text) => (text.to_owned(), true),
@@ -231,10 +275,42 @@ impl Head {
                 false,
             ),
         };
+        let tail = if is_whole {
+            text.clone()
+        } else {
+            tail(path, wide, carriage_returns).map_err(read)?
+        };
         Ok(Self {
             name,
             text,
             is_utf8,
+            is_utf16: wide.is_some(),
+            carriage_returns,
+            tail,
+            start,
         })
     }
+}
+
+/// The last bytes of a file as text, whatever does not decode made printable.
+fn tail(
+    path: &Path,
+    wide: Option<&'static encoding_rs::Encoding>,
+    carriage_returns: bool,
+) -> std::io::Result<String> {
+    let mut file = std::fs::File::open(path)?;
+    let size = file.metadata()?.len();
+    let from = size.saturating_sub(TAIL) / 2 * 2; // whole units of UTF-16
+    std::io::Seek::seek(&mut file, std::io::SeekFrom::Start(from))?;
+    let mut bytes = Vec::new();
+    std::io::Read::read_to_end(&mut std::io::Read::take(file, TAIL + 2), &mut bytes)?;
+    let text = match wide {
+        Some(encoding) => encoding.decode_without_bom_handling(&bytes).0.into_owned(),
+        None => String::from_utf8_lossy(&bytes).into_owned(),
+    };
+    Ok(if carriage_returns {
+        text.replace('\r', "\n")
+    } else {
+        text
+    })
 }

@@ -8,6 +8,7 @@ mod drawing_rate;
 mod figure;
 pub(crate) mod font;
 mod lot;
+mod odd;
 mod plan;
 mod spring;
 mod strength;
@@ -22,6 +23,7 @@ pub use figure::{
     with_uncertainty, with_unit,
 };
 pub(crate) use lot::{decided, decision_word, simple_line, terms, why};
+pub(crate) use odd::odd_lines;
 pub(crate) use plan::{compared, readings, settled_early, state};
 pub(crate) use spring::{absence, advice, disposition, rule_used, verdict_reason, verdict_word};
 pub(crate) use strength::{stress_limit, stress_place, stress_rule, stress_taken};

@@ -37,6 +37,8 @@ fn main() {
     fifty_exports(work.path());
     one_large_file(work.path());
     archive::found_again(work.path());
+    thousand_small(work.path());
+    ten_times_larger(work.path());
 }
 
 /// The baseline: the whole file read by polars with its own inference.
@@ -151,6 +153,107 @@ fn alone(name: &str, ours: &dyn Fn() -> Command) {
     let seconds: Vec<f64> = (0..PAIRS).map(|_| seconds(&mut ours()).0).collect();
     println!("{name}");
     println!("  ours {:.3} s (median of {PAIRS})", median(seconds));
+}
+
+/// 1000 exports of 100 rows: what reading and judging each costs beyond the bytes, on top of a lot of one.
+fn thousand_small(work: &Path) {
+    let lot = work.join("thousand");
+    let place = lot.to_string_lossy();
+    samples(&["many", &place, "--springs", "1000", "--rows", "100"]);
+    let judged = || {
+        accept(
+            &lot.join("lot.toml"),
+            &work.join("result"),
+            &["--no-report"],
+        )
+    };
+    let mut direct = Vec::new();
+    for _ in 0..PAIRS {
+        direct.push(reading_alone(&lot));
+    }
+    let whole: Vec<f64> = (0..PAIRS).map(|_| seconds(&mut judged()).0).collect();
+    println!("1000 exports x 100 rows");
+    println!(
+        "  reading alone {:.3} ms each beyond reading the bytes, the whole run {:.3} s (medians of {PAIRS})",
+        median(direct),
+        median(whole)
+    );
+}
+
+/// Milliseconds per export that the reader takes beyond reading the bytes of the files.
+fn reading_alone(lot: &Path) -> f64 {
+    let rig = std::fs::read_dir(lot)
+        .unwrap()
+        .map(|entry| entry.unwrap().path());
+    let rig = rig
+        .into_iter()
+        .find(|path| path.ends_with("rig.toml"))
+        .unwrap();
+    let rig = coilassay::rig::open(&rig, "rig").unwrap();
+    let exports: Vec<_> = std::fs::read_dir(lot.join("springs"))
+        .unwrap()
+        .map(|entry| entry.unwrap().path())
+        .collect();
+    let start = Instant::now();
+    let bytes: usize = exports
+        .iter()
+        .map(|path| std::fs::read(path).unwrap().len())
+        .sum();
+    let plain = start.elapsed().as_secs_f64();
+    let start = Instant::now();
+    let mut rows = 0;
+    for path in &exports {
+        let mut each = |some: Vec<coilassay::export::RawCurve>| {
+            rows += some.iter().map(|one| one.load.len()).sum::<usize>();
+        };
+        coilassay::export::read(
+            path,
+            "x.csv",
+            &rig.dialect,
+            coilassay::export::BLOCK_BYTES,
+            &mut each,
+        )
+        .unwrap();
+    }
+    assert!(bytes > 0 && rows > 0);
+    1e3 * (start.elapsed().as_secs_f64() - plain) / exports.len() as f64
+}
+
+/// The same 10 000 springs with ten times the rows: 2.8 GB by the same road.
+fn ten_times_larger(work: &Path) {
+    let folder = work.join("huge");
+    std::fs::create_dir_all(&folder).unwrap();
+    let file = folder.join("big.csv");
+    samples(&[
+        "large",
+        &file.to_string_lossy(),
+        "--springs",
+        "10000",
+        "--rows",
+        "10000",
+    ]);
+    let run = |lot: &str| {
+        seconds(&mut accept(
+            &work.join(lot),
+            &work.join("result"),
+            &["--no-report"],
+        ))
+    };
+    run("large/lot.toml");
+    let small: Vec<f64> = (0..3).map(|_| run("large/lot.toml").0).collect();
+    let (huge, memory): (Vec<f64>, Vec<u64>) = (0..3).map(|_| run("huge/lot.toml")).unzip();
+    let size = std::fs::metadata(&file).unwrap().len();
+    println!(
+        "10 000 springs x 10 000 rows in one file, {} MB",
+        size / 1_000_000
+    );
+    println!(
+        "  {:.2} s, {:.2} times the file of 1000 rows each; peak memory {} MB (medians of 3)",
+        median(huge.clone()),
+        median(huge) / median(small),
+        memory.iter().max().unwrap() / 1024
+    );
+    std::fs::remove_file(&file).unwrap();
 }
 
 fn compare(name: &str, ours: &dyn Fn() -> Command, baseline: &dyn Fn() -> Command) {

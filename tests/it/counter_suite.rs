@@ -155,7 +155,10 @@ fn two_hundred_good_exports_are_judged_rightly() {
             ),
             (
                 "delimiter",
-                form.delimiter.replace('\t', "tab").replace("  ", "blanks"),
+                form.delimiter
+                    .replace('\t', "tab")
+                    .replace("   ", "blanks")
+                    .replace("  ", "blanks"),
             ),
             ("decimal mark", form.decimal.to_owned()),
             (

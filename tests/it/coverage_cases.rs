@@ -230,6 +230,7 @@ pub(crate) fn draw(case: &Case, random: &mut Random) -> (Specimen, RawCurve, f64
         id: "1".to_owned(),
         identity: "1".to_owned(),
         export: "1.csv".to_owned(),
+        breaks: Vec::new(),
         first_line: 2,
         load: Vec::new(),
         travel: Vec::new(),

@@ -31,6 +31,8 @@ pub(crate) struct Form {
     pub(crate) open: bool,
     pub(crate) blank: bool,
     pub(crate) scientific: bool,
+    pub(crate) trailing: bool,
+    pub(crate) footer: bool,
 }
 
 /// The reading of a platen position with the platens touching, mm.
@@ -64,31 +66,40 @@ impl Form {
     pub(crate) fn drawn(random: &mut Random) -> Self {
         let decimal = one(random, &[".", ".", ","]);
         let delimiters: &[&str] = if decimal == "," {
-            &[";", "\t"]
+            &[";", "\t", "|", "   "]
         } else {
-            &[",", ";", "\t"]
+            &[",", ";", "\t", "|", "  "]
         };
         let names = one(random, &NAMES);
         let encoding = if names[1].is_ascii() {
-            one(random, &["utf-8", "utf-8", "windows-1252"])
+            one(random, &["utf-8", "utf-8", "windows-1252", "utf-16"])
         } else {
-            one(random, &["utf-8", "windows-1252"])
+            one(random, &["utf-8", "windows-1252", "utf-16"])
         };
         let mut yes = |share: f64| random.unit() < share;
         let (mark, quoted, pulls, load_first, time) =
             (yes(0.3), yes(0.2), yes(0.25), yes(0.4), yes(0.5));
         let (column, extra, open, blank, scientific) =
             (yes(0.3), yes(0.3), yes(0.2), yes(0.3), yes(0.1));
+        let (trailing, footer) = (yes(0.15), yes(0.2));
         let (inch, metadata) = (yes(0.25), if yes(0.5) { 3 } else { 0 });
+        let delimiter = one(random, delimiters);
+        let blanks = delimiter.starts_with(' ');
+        let units = one(random, &["header", "row", "nowhere"]);
         Self {
             encoding,
             mark: mark && encoding == "utf-8",
-            delimiter: one(random, delimiters),
+            delimiter,
             decimal,
-            line_end: one(random, &["\n", "\n", "\r\n"]),
+            line_end: one(random, &["\n", "\n", "\r\n", "\r"]),
             quoted,
             metadata,
-            units: one(random, &["header", "row", "nowhere"]),
+            // A cell of blanks between blanks is none.
+            units: if blanks && units == "row" {
+                "header"
+            } else {
+                units
+            },
             names,
             load: one(random, &LOADS),
             travel: LENGTHS[usize::from(inch)],
@@ -101,9 +112,11 @@ impl Form {
             time,
             column,
             extra,
-            open: open && !blank,
+            open: open && !blank && !footer,
             blank,
             scientific,
+            trailing: trailing && !blanks,
+            footer,
         }
     }
 
@@ -169,7 +182,7 @@ impl Form {
         if self.quoted {
             all = all.iter().map(|cell| format!("\"{cell}\"")).collect();
         }
-        all.join(self.delimiter)
+        all.join(self.delimiter) + if self.trailing { self.delimiter } else { "" }
     }
 
     fn labelled(&self, name: &str, unit: &str) -> String {
@@ -230,6 +243,10 @@ impl Form {
         if self.blank {
             text += self.line_end;
         }
+        if self.footer {
+            text += "End of test: OK";
+            text += self.line_end;
+        }
         let mut bytes = if self.mark {
             b"\xEF\xBB\xBF".to_vec()
         } else {
@@ -238,6 +255,10 @@ impl Form {
         match self.encoding {
             "windows-1252" => {
                 bytes.extend(text.chars().map(|c| u8::try_from(u32::from(c)).unwrap()));
+            }
+            "utf-16" => {
+                let units = std::iter::once(0xFEFF).chain(text.encode_utf16());
+                bytes.extend(units.flat_map(u16::to_le_bytes));
             }
             _ => bytes.extend(text.as_bytes()),
         }
@@ -250,7 +271,11 @@ impl Form {
         let line = self.metadata + 1;
         let mut text = format!(
             "[export]\nheader_line = {line}\ndelimiter = \"{}\"\ndecimal = \"{}\"\nencoding = \"{}\"\n",
-            self.delimiter.replace('\t', "\\t"),
+            if self.delimiter.starts_with(' ') {
+                "two blanks".to_owned()
+            } else {
+                self.delimiter.replace('\t', "\\t")
+            },
             self.decimal,
             self.encoding
         );
@@ -258,6 +283,21 @@ impl Form {
             writeln!(text, "units_line = {}", line + 1).unwrap();
         }
         text += if self.quoted { "quoted = true\n" } else { "" };
+        text += if self.trailing {
+            "trailing_delimiter = true\n"
+        } else {
+            ""
+        };
+        text += if self.footer {
+            "footer = \"End of test\"\n"
+        } else {
+            ""
+        };
+        text += if self.line_end == "\r" {
+            "line_end = \"cr\"\n"
+        } else {
+            ""
+        };
         text += if self.open {
             "last_line_open = true\n"
         } else {
@@ -288,9 +328,10 @@ impl Form {
             )
             .unwrap();
         }
-        match self.column {
-            true => writeln!(text, "spring = {{ column = \"{}\" }}", header[3]).unwrap(),
-            false => writeln!(text, "spring = {{ from = \"file name\" }}").unwrap(),
+        if self.column {
+            writeln!(text, "spring = {{ column = \"{}\" }}", header[3]).unwrap();
+        } else {
+            writeln!(text, "spring = {{ from = \"file name\" }}").unwrap();
         }
         text
     }

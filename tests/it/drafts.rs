@@ -17,7 +17,7 @@ const DIALECTS: u64 = 120;
 fn springs(path: &Path, dialect: &Dialect) -> Result<Vec<RawCurve>, String> {
     let mut all = Vec::new();
     let done = read(path, "x.csv", dialect, BLOCK_BYTES, &mut |some| {
-        all.extend(some)
+        all.extend(some);
     });
     done.map(|_| all).map_err(|fault| fault.to_string())
 }
@@ -169,6 +169,26 @@ fn exports(folder: &Path) -> Vec<PathBuf> {
     }
     found.sort();
     found
+}
+
+#[test]
+fn a_draft_reads_workbooks() {
+    let folder = tempfile::tempdir().unwrap();
+    let sheets = Path::new(env!("CARGO_MANIFEST_DIR")).join("tests/data/sheets");
+    for name in ["good.ods", "plain.xlsx"] {
+        let copy = folder.path().join(name);
+        std::fs::copy(sheets.join(name), &copy).unwrap();
+        let (text, rig) = drafted(&copy).unwrap();
+        assert!(
+            text.contains("sheet = \"Run 1\"") && !text.contains("delimiter ="),
+            "{text}"
+        );
+        assert_eq!(
+            springs(&copy, &rig.dialect).unwrap()[0].load.len(),
+            8,
+            "{text}"
+        );
+    }
 }
 
 #[test]

@@ -7,8 +7,10 @@
     reason = "tests"
 )]
 
+mod forms;
 mod refusals;
 mod relations;
+mod sheets;
 mod small;
 
 use std::io::Write;
@@ -16,7 +18,7 @@ use std::ops::Range;
 
 use coilassay::export::{BLOCK_BYTES, ExportError, RawCurve, Read, WhyAside, read};
 use coilassay::rig::{
-    Decimal, Delimiter, Dialect, Encoding, LoadColumn, Pushing, SpringFrom, TravelColumn,
+    Decimal, Delimiter, Dialect, Encoding, LoadColumn, Pushing, Rarer, SpringFrom, TravelColumn,
 };
 use coilassay::units::{ForceUnit, LengthUnit};
 use miette::{Diagnostic, GraphicalReportHandler, GraphicalTheme};
@@ -43,6 +45,7 @@ fn plain() -> Dialect {
         },
         time: None,
         spring: SpringFrom::Column("Specimen".into()),
+        rarer: Rarer::default(),
     }
 }
 

@@ -58,6 +58,7 @@ mod lots;
 mod many_exports;
 mod materials_published;
 mod mutants;
+mod odd_curves;
 mod one_truth;
 mod one_truth_lot;
 mod plan_command;

@@ -29,7 +29,7 @@ use crate::drawing::{Drawing, Requirement, Rule};
 use crate::quantity::Class;
 use crate::record::{AcceptRecord, FORMAT, Kind, LedgerFacts, Provenance, TOOL};
 use crate::rig::SpringFrom;
-use crate::text::InputFile;
+use crate::text::{InputFile, announce};
 
 use super::facts;
 use super::read::{How, Keep, Reading, read};
@@ -127,6 +127,7 @@ type Readings = Vec<Result<Reading, crate::characteristic::MeasureError>>;
 fn read_all(files: &Files, how: How<'_>) -> miette::Result<(Readings, Sources)> {
     let repeats = files.lot.repeats.iter().map(|repeat| &repeat.export);
     let exports: Vec<_> = files.lot.exports.iter().chain(repeats).collect();
+    announce(exports.iter().map(|export| export.path.as_path()));
     let batches = side_by_side(&exports, |export| read(export, how));
     let mut inputs = vec![
         files.lot.input(),

@@ -23,7 +23,7 @@ pub(super) struct Sealed {
 impl Sealed {
     pub(super) fn read(file: &Path) -> miette::Result<Self> {
         let name = crate::text::printable(&file.to_string_lossy(), &crate::text::Alphabet::Any);
-        let bytes = read_bytes(file, &name)?;
+        let (bytes, _) = read_bytes(file, &name, u64::MAX)?;
         let no_result = |why: String| RecheckError::NoResult {
             file: name.clone(),
             why,

@@ -333,7 +333,7 @@ fn what_is_no_result_is_refused() {
             serde_json::to_vec(&whole).unwrap()[..2000].to_vec(),
             "is no result of coilassay",
         ),
-        ("empty", Vec::new(), "is no result of coilassay"),
+        ("empty", Vec::new(), "is empty"),
         ("a list", b"[1]".to_vec(), "it states no `format`"),
     ];
     let change = |key: &[&str], to: Value| {

@@ -54,8 +54,8 @@ fn faults_of_the_head() {
         (b"Specimen,Load,Load,Travel\na,1,2,3\n", "doubled", "column 2 or column 3", "Load"),
         (b"\"Specimen\",\"Load\",\"Travel\"\na,1,2\n", "column", "no column `Specimen`", "\"Specimen\",\"Load\",\"Travel\""),
         (b"Specimen,Load,Tra\xFFvel\na,1,2\n", "encoding", "line 1: the byte 0xFF is no utf-8", "\u{FFFD}"),
-        (b"\xFF\xFES\0\n\0", "utf16", "not yet read by this version", ""),
-        (b"\xFE\xFF\0S\0\n", "utf16", "not yet read by this version", ""),
+        (b"\xFF\xFES\0\n\0", "utf16", "the mark of UTF-16 or UTF-32", ""),
+        (b"\xFE\xFF\0S\0\n", "utf16", "the mark of UTF-16 or UTF-32", ""),
         (b"S\0p\0\n\0", "nul", "line 1: a NUL byte", "\u{FFFD}"),
     ]);
     let later = Dialect { header_line: 9, ..plain() };
@@ -77,7 +77,7 @@ fn faults_of_the_head() {
 fn nearest_names_are_offered() {
     for (header, advice) in [
         ("Specimen,Laod,Travel", "did you mean `Laod`?"),
-        ("Specimen,LOAD,Travel", "did you mean `LOAD`?"),
+        ("Specimen,LOADS,Travel", "did you mean `LOADS`?"),
         ("Specimen,Load [N],Travel", "did you mean `Load [N]`?"),
         ("Specimen;Load;Travel", "`delimiter`"),
         ("\"Specimen\",\"Load\",\"Travel\"", "quoted = true"),

@@ -3,7 +3,9 @@
 use std::fmt::Write;
 
 use coilassay::export::{BLOCK_BYTES, ExportError};
-use coilassay::rig::{Decimal, Delimiter, Dialect, Encoding, SpringFrom};
+use coilassay::rig::{
+    Decimal, Delimiter, Dialect, Each, Encoding, Rarer, SpringFrom, TableEnd, Tables,
+};
 use proptest::prelude::*;
 
 use super::{Outcome, plain, read_in, told};
@@ -153,6 +155,57 @@ proptest! {
             let read: Vec<(String, Vec<f64>)> = springs.iter().map(|spring| (spring.identity.clone(), spring.load.clone())).collect();
             prop_assert_eq!(Some(read), by_hand(text));
         }
+    }
+
+    /// Any bytes are read or refused in the rarer forms too, and what comes out is no longer than what went in.
+    #[test]
+    fn any_bytes_in_rarer_forms(bytes in prop::collection::vec(prop_oneof![any::<u8>(), prop::sample::select(b"\n\r,;|\"1.e- '\tEL".to_vec())], 0..400), delimiter in 0..3_usize, traits in any::<[bool; 5]>(), block_bytes in 1..50_usize) {
+        let delimiter = [Delimiter::Pipe, Delimiter::Blanks, Delimiter::TwoBlanks][delimiter];
+        let [trailing, thousands, footer, returns, tables] = traits;
+        let mut dialect = Dialect { delimiter, quoted: trailing, last_line_open: true, spring: SpringFrom::FileName, ..plain() };
+        dialect.rarer = Rarer {
+            trailing_delimiter: trailing,
+            thousands: thousands.then_some('\''),
+            footer: footer.then(|| "E".to_owned()),
+            carriage_returns: returns,
+            tables: tables.then_some(Tables { each: Each::Cycle, end: TableEnd::BlankLine }),
+            ..Rarer::default()
+        };
+        let header: &[u8] = match delimiter {
+            Delimiter::Pipe => b"Load|Travel\n",
+            _ => b"Load  Travel\n",
+        };
+        let bytes = [header, &bytes].concat();
+        let whole = read_in(&bytes, &dialect, BLOCK_BYTES);
+        prop_assert!(a_proper_answer(&whole), "{}", told(&whole));
+        prop_assert_eq!(told(&read_in(&bytes, &dialect, block_bytes)), told(&whole));
+        if let Ok((springs, _)) = &whole {
+            let points: usize = springs.iter().map(|spring| spring.load.len()).sum();
+            prop_assert!(4 * points <= bytes.len());
+        }
+    }
+
+    /// UTF-16 of any bytes is read or refused.
+    #[test]
+    fn any_bytes_as_utf_16(bytes in prop::collection::vec(any::<u8>(), 0..300), block_bytes in 1..50_usize) {
+        let dialect = Dialect { encoding: Encoding::Utf16, spring: SpringFrom::FileName, ..plain() };
+        let head: Vec<u8> = std::iter::once(0xFEFF).chain("Load,Travel\n".encode_utf16()).flat_map(u16::to_le_bytes).collect();
+        let bytes = [head, bytes].concat();
+        let whole = read_in(&bytes, &dialect, BLOCK_BYTES);
+        let again = read_in(&bytes, &dialect, block_bytes);
+        prop_assert_eq!(whole.is_ok(), again.is_ok());
+        if whole.is_ok() {
+            prop_assert_eq!(told(&again), told(&whole));
+        }
+    }
+
+    /// A workbook of any bytes is refused, or read.
+    #[test]
+    fn any_bytes_as_workbook(bytes in prop::collection::vec(any::<u8>(), 1..300), zip in any::<bool>()) {
+        let mut dialect = Dialect { spring: SpringFrom::FileName, ..plain() };
+        dialect.rarer.sheet = Some("Run 1".to_owned());
+        let bytes = if zip { [&b"PK\x03\x04"[..], &bytes].concat() } else { bytes };
+        prop_assert!(read_in(&bytes, &dialect, BLOCK_BYTES).is_err());
     }
 
     /// Any bytes at all are read or refused.
