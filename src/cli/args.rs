@@ -49,6 +49,11 @@ pub(super) enum Command {
         #[command(subcommand)]
         command: RigCommand,
     },
+    /// A commented starter file, on stdout or as a file that is not there yet
+    Draft {
+        #[command(subcommand)]
+        kind: Draft,
+    },
     /// Completions for a shell, on stdout
     Completions {
         /// The shell
@@ -58,6 +63,22 @@ pub(super) enum Command {
     Manual {
         /// The folder
         dir: PathBuf,
+    },
+}
+
+#[derive(Debug, Subcommand)]
+pub(super) enum Draft {
+    /// A drawing with every key explained
+    Drawing {
+        /// The new file; without it the text goes to stdout
+        #[arg(value_name = "FILE")]
+        file: Option<PathBuf>,
+    },
+    /// A lot file with every key explained
+    Lot {
+        /// The new file; without it the text goes to stdout
+        #[arg(value_name = "FILE")]
+        file: Option<PathBuf>,
     },
 }
 

@@ -2,6 +2,7 @@
 
 mod accept;
 mod args;
+mod draft;
 mod expect;
 mod folder;
 mod lots;
@@ -69,6 +70,7 @@ fn dispatch(arguments: &Arguments, out: &mut impl Write) -> miette::Result<u8> {
         Command::Expect(args) => expect::run(args, arguments.quiet, out),
         Command::Lots(args) => lots::run(args, out),
         Command::Recheck(args) => recheck::run(args, out),
+        Command::Draft { kind } => draft::run(kind, out),
         Command::Completions { shell } => Ok(shell::completions(*shell, out)),
         Command::Manual { dir } => shell::manual(dir),
     }

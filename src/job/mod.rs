@@ -1,6 +1,7 @@
 //! One folder or file per command: the only places that string rooms together.
 
 mod accept;
+mod draft_files;
 mod expect;
 mod facts;
 mod history;
@@ -12,6 +13,7 @@ mod rig;
 mod threads;
 
 pub use accept::{Accepted, Options, Past, accept};
+pub use draft_files::{Starter, starter};
 pub use expect::{Ask, expect};
 pub use history::read_history;
 pub use lots::{Listing, LotsError, Query, lots};
