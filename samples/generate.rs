@@ -14,6 +14,8 @@
 mod accepted;
 #[path = "generate/bench.rs"]
 mod bench;
+#[path = "generate/check.rs"]
+mod check;
 #[path = "generate/known.rs"]
 mod known;
 #[path = "generate/known_text.rs"]
@@ -30,6 +32,8 @@ mod rigs;
 mod speed;
 #[path = "generate/spring.rs"]
 mod spring;
+#[path = "generate/study.rs"]
+mod study;
 #[path = "generate/text.rs"]
 mod text;
 #[path = "generate/undecided.rs"]
@@ -70,7 +74,9 @@ fn run(words: &[String]) -> Outcome {
             accepted::write(&place.join("accepted"))?;
             rejected::write(&place.join("rejected"))?;
             undecided::write(&place.join("undecided"))?;
-            nested::write(&place.join("nested"))
+            nested::write(&place.join("nested"))?;
+            check::write(&place.join("check"))?;
+            study::write(&place.join("study"))
         }
         "large" => {
             let [springs, rows] = options(rest, [("--springs", 10_000), ("--rows", 1000)])?;

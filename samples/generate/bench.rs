@@ -62,7 +62,13 @@ impl Bench {
     ///
     /// The frame gives way by `C·F`, so the true distance is larger than the scale knows:
     /// indicated length = true length − C·(F − F_z); indicated deflection = true + C·F.
-    fn read(&self, length: f64, force: f64, start: f64, random: &mut Random) -> (f64, f64) {
+    pub(crate) fn read(
+        &self,
+        length: f64,
+        force: f64,
+        start: f64,
+        random: &mut Random,
+    ) -> (f64, f64) {
         let apparent = length - self.compliance * (force - self.zeroed_at_load);
         let indicated = self.set_at_length
             + (apparent - self.set_at_length) * (1.0 + self.travel_scale)

@@ -9,9 +9,9 @@ use super::place::Archive;
 use super::read::run_of;
 use super::springs::Run;
 use super::sums::Sums;
-use super::{curves, frame, springs, walk};
+use super::{checks, curves, frame, springs, walk};
 use crate::curve::Kept;
-use crate::record::{AcceptRecord, Closeness, Difference};
+use crate::record::{AcceptRecord, CheckRecord, Closeness, Difference};
 
 /// A run as it lies in the archive.
 #[derive(Clone, Debug)]
@@ -20,39 +20,59 @@ pub struct StoredRun {
     pub run: Run,
     /// Where its record lies.
     pub record: PathBuf,
-    springs: PathBuf,
-    curves: PathBuf,
     archive: PathBuf,
+    /// The file that makes it a run, below its tree.
+    below: PathBuf,
+    tree: &'static str,
+}
+
+/// Runs as they lie in the archive.
+#[derive(Debug, Default)]
+pub struct StoredRuns {
+    /// The runs: lots, then checks of rigs, each in the order of the folders.
+    pub runs: Vec<StoredRun>,
+    /// Files that were passed over.
+    pub unreadable: Vec<Unreadable>,
 }
 
 impl Archive {
-    /// Every run, in the order of the folders; files that are no run are named.
+    /// Every run.
     ///
     /// # Errors
     /// [`ArchiveError::Read`] where a folder cannot be listed.
-    pub fn stored_runs(&self) -> Result<(Vec<StoredRun>, Vec<Unreadable>), ArchiveError> {
-        let tree = self.root().join("springs");
-        let files = walk::runs(&tree, "parquet", None)?;
-        let (mut runs, mut unreadable) = (Vec::new(), files.foreign);
-        for path in files.runs {
-            match run_of(self.root(), &path) {
-                Ok(run) => runs.push(self.stored(run, &tree, path)),
-                Err(fault) => unreadable.push(fault.into()),
+    pub fn stored_runs(&self) -> Result<StoredRuns, ArchiveError> {
+        let (lots, rigs) = (self.root().join("springs"), self.root().join("checks"));
+        let mut stored = StoredRuns::default();
+        for (tree, root, files) in [
+            ("springs", &lots, walk::runs(&lots, "parquet", None)?),
+            ("checks", &rigs, walk::checks(&rigs, "parquet")?),
+        ] {
+            stored.unreadable.extend(files.foreign);
+            for path in files.runs {
+                let read = match tree {
+                    "springs" => run_of(self.root(), &path),
+                    _ => self.run_of_check(&path),
+                };
+                match read {
+                    Ok(run) => stored.runs.push(StoredRun {
+                        run,
+                        record: self.record_of(path.strip_prefix(root).unwrap_or(&path)),
+                        archive: self.root().to_owned(),
+                        below: path.strip_prefix(root).unwrap_or(&path).to_owned(),
+                        tree,
+                    }),
+                    Err(fault) => stored.unreadable.push(fault.into()),
+                }
             }
         }
-        Ok((runs, unreadable))
+        Ok(stored)
     }
 
-    fn stored(&self, run: Run, tree: &Path, springs: PathBuf) -> StoredRun {
-        let below = springs.strip_prefix(tree).unwrap_or(&springs);
-        let other = |tree: &str, end: &str| self.root().join(tree).join(below).with_extension(end);
-        StoredRun {
-            run,
-            record: other("records", "json"),
-            curves: other("curves", "parquet"),
-            archive: self.root().to_owned(),
-            springs,
-        }
+    fn record_of(&self, below: &Path) -> PathBuf {
+        self.root()
+            .join("records")
+            .join(below)
+            .with_extension("json")
     }
 }
 
@@ -62,34 +82,55 @@ impl StoredRun {
     /// # Errors
     /// [`ArchiveError`] where its checksums cannot be read.
     pub fn altered(&self) -> Result<Vec<Difference>, ArchiveError> {
-        Ok(Sums::of(&self.archive, &self.springs)?.altered())
+        Ok(self.sums()?.altered())
+    }
+
+    fn sums(&self) -> Result<Sums, ArchiveError> {
+        Sums::of(&self.archive, &self.table(self.tree))
+    }
+
+    fn table(&self, tree: &str) -> PathBuf {
+        self.archive.join(tree).join(&self.below)
     }
 
     /// Where the tables of this run differ from those that `record` and `kept` give.
     ///
     /// # Errors
     /// [`ArchiveError`] where a table cannot be read.
-    pub fn differences(
+    pub fn lot_differences(
         &self,
         record: &AcceptRecord,
         kept: &[Vec<Kept>],
         closeness: Closeness,
     ) -> Result<Vec<Difference>, ArchiveError> {
+        let mut found = self.against("springs", springs::frame(record, &self.run), closeness)?;
+        found.extend(self.against("curves", curves::frame(record, kept, &self.run), closeness)?);
+        Ok(found)
+    }
+
+    /// Where the table of this check differs from the one that `record` gives.
+    ///
+    /// # Errors
+    /// [`ArchiveError`] where the table cannot be read.
+    pub fn check_differences(
+        &self,
+        record: &CheckRecord,
+        closeness: Closeness,
+    ) -> Result<Vec<Difference>, ArchiveError> {
+        self.against("checks", checks::frame(record, &self.run), closeness)
+    }
+
+    fn against(
+        &self,
+        tree: &str,
+        now: PolarsResult<DataFrame>,
+        closeness: Closeness,
+    ) -> Result<Vec<Difference>, ArchiveError> {
         let table = |cause| ArchiveError::Frame { cause };
+        let path = self.table(tree);
+        let stored = frame::read(&self.sums()?.read(&path)?, &path, None)?;
         let mut found = Vec::new();
-        let pairs = [
-            ("springs", &self.springs, springs::frame(record, &self.run)),
-            (
-                "curves",
-                &self.curves,
-                curves::frame(record, kept, &self.run),
-            ),
-        ];
-        for (tree, path, now) in pairs {
-            let bytes = Sums::of(&self.archive, &self.springs)?.read(path)?;
-            let stored = frame::read(&bytes, path, None)?;
-            compare(tree, &stored, &now.map_err(table)?, closeness, &mut found).map_err(table)?;
-        }
+        compare(tree, &stored, &now.map_err(table)?, closeness, &mut found).map_err(table)?;
         Ok(found)
     }
 }

@@ -4,9 +4,9 @@ use std::io::{self, Cursor, Write};
 use std::path::Path;
 
 use polars::prelude::{
-    Column, CompatLevel, CsvWriter, DataFrame, Float64Chunked, Int64Chunked, KeyValueMetadata,
-    ParallelStrategy, ParquetCompression, ParquetReader, ParquetWriter, PolarsError, SchemaExt,
-    SerReader, SerWriter, StringChunked,
+    BooleanChunked, Column, CompatLevel, CsvWriter, DataFrame, Float64Chunked, Int64Chunked,
+    KeyValueMetadata, ParallelStrategy, ParquetCompression, ParquetReader, ParquetWriter,
+    PolarsError, SchemaExt, SerReader, SerWriter, StringChunked,
 };
 use polars_parquet::write::schema_to_metadata_key;
 use serde::Serialize;
@@ -139,6 +139,14 @@ pub(super) fn f64s<'f>(
 /// A column of whole numbers.
 pub(super) fn i64s<'f>(frame: &'f DataFrame, name: &str) -> Result<&'f Int64Chunked, PolarsError> {
     frame.column(name)?.i64()
+}
+
+/// A column of yes and no.
+pub(super) fn bools<'f>(
+    frame: &'f DataFrame,
+    name: &str,
+) -> Result<&'f BooleanChunked, PolarsError> {
+    frame.column(name)?.bool()
 }
 
 /// A table being put together, one row after the other; every column is as long as there are rows.

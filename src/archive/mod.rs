@@ -10,6 +10,8 @@
 //! curves/drawing_key=…/lot_key=…/<run>.parquet             one row per point
 //! records/drawing_key=…/lot_key=…/<run>.json               the result, as `result.json` holds it
 //! records/drawing_key=…/lot_key=…/<run>.sha256             checksums of the run's files, as `sha256sum -c` reads them
+//! checks/rig_key=…/<run>.parquet                           one row per quantity of a check on a reference spring
+//! records/rig_key=…/<run>.json, .sha256                    the check as its `result.json` holds it; checksums
 //! staging/<run>/                                           a run being written
 //! ```
 //!
@@ -17,11 +19,13 @@
 //! run of the highest `run_number`.
 
 mod check;
+mod checks;
 mod curves;
 mod error;
 mod figures;
 mod frame;
 mod key;
+mod past;
 mod place;
 mod read;
 mod springs;
@@ -30,7 +34,8 @@ mod table;
 mod walk;
 mod write;
 
-pub use check::StoredRun;
+pub use check::{StoredRun, StoredRuns};
+pub use checks::KeptCheck;
 pub use error::{ArchiveError, Unreadable};
 pub use figures::{Figure, LotFigures};
 pub use key::key;

@@ -18,7 +18,7 @@ use crate::quantity::Unit;
 use crate::record::{AcceptRecord, Decision};
 
 /// The columns that a reading takes up; the others are for other engines.
-const COLUMNS: [&str; 23] = [
+const COLUMNS: [&str; 25] = [
     LAYOUT_COLUMN,
     "run",
     "run_number",
@@ -32,6 +32,8 @@ const COLUMNS: [&str; 23] = [
     "rig",
     "tags",
     "decision",
+    "plan_accept",
+    "accepted_tighter",
     "spring",
     "characteristic",
     "at_length_mm",
@@ -116,6 +118,10 @@ pub struct LotRun {
     pub run: Run,
     /// The lot.
     pub head: LotHead,
+    /// Ac of its plan.
+    pub plan_accept: Option<i64>,
+    /// Whether the lot would also have been accepted with the AQL one step tighter.
+    pub accepted_tighter: Option<bool>,
     /// Ids of the springs, in the order of the result.
     pub springs: Vec<String>,
     /// The characteristics, in the order of the result.
@@ -123,12 +129,22 @@ pub struct LotRun {
 }
 
 /// What a reading found; the runs in the order of drawing, lot, supplier and run.
-#[derive(Clone, Debug, Default)]
+#[derive(Debug, Default)]
 pub struct Found {
     /// The runs.
     pub runs: Vec<LotRun>,
-    /// Files that were passed over.
-    pub unreadable: Vec<Unreadable>,
+    /// Files of runs that cannot be read.
+    pub broken: Vec<ArchiveError>,
+    /// Files that are no part of an archive.
+    pub foreign: Vec<Unreadable>,
+}
+
+impl Found {
+    /// Everything that was passed over.
+    pub fn passed_over(self) -> (Vec<LotRun>, Vec<Unreadable>) {
+        let broken = self.broken.into_iter().map(Unreadable::from);
+        (self.runs, broken.chain(self.foreign).collect())
+    }
 }
 
 impl Archive {
@@ -145,12 +161,13 @@ impl Archive {
             .collect();
         let mut found = Found {
             runs: Vec::with_capacity(read.len()),
-            unreadable: files.foreign,
+            broken: Vec::new(),
+            foreign: files.foreign,
         };
         for one in read {
             match one {
                 Ok(run) => found.runs.push(run),
-                Err(fault) => found.unreadable.push(fault.into()),
+                Err(fault) => found.broken.push(fault),
             }
         }
         found.runs.sort_by(|a, b| {
@@ -182,7 +199,7 @@ pub(super) fn latest_of(
     folder: &Path,
     record: &AcceptRecord,
 ) -> Result<Option<Run>, ArchiveError> {
-    let files = walk::runs_of_lot(&archive.root().join("springs").join(folder), "parquet")?;
+    let files = walk::runs_in(&archive.root().join("springs").join(folder), "parquet")?;
     let (drawing, lot) = (&record.drawing.number, &record.lot.number);
     let wanted = (
         drawing.as_str(),
@@ -254,6 +271,8 @@ fn lot_run(frame: &DataFrame) -> Result<LotRun, PolarsError> {
             tags: serde_json::from_str(&must("tags")?).map_err(|_| wrong("tags"))?,
             decision: decision.and_then(unword).ok_or_else(|| wrong("decision"))?,
         },
+        plan_accept: i64s(frame, "plan_accept")?.get(0),
+        accepted_tighter: frame::bools(frame, "accepted_tighter")?.get(0),
         springs,
         series,
     })

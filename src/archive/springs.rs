@@ -87,6 +87,15 @@ fn lot(record: &AcceptRecord, run: &Run, rows: usize) -> Columns {
         .same("rig", record.rig.name.clone(), rows)
         .same("tags", tags, rows)
         .same("decision", word(&record.decision), rows)
+        .same(
+            "plan_accept",
+            record
+                .plan
+                .accept
+                .and_then(|accept| i64::try_from(accept).ok()),
+            rows,
+        )
+        .same("accepted_tighter", record.plan.accepted_tighter, rows)
 }
 
 fn springs(columns: Columns, rows: &[Row<'_>]) -> Columns {

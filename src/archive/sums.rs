@@ -33,18 +33,17 @@ fn slashed(path: &Path) -> String {
 }
 
 impl Sums {
-    /// The checksums of the run whose springs file lies at `springs` below the folder `archive`.
+    /// The checksums of the run one of whose files lies at `file`, in a tree below the folder `archive`.
     ///
     /// # Errors
     /// [`ArchiveError`] where there are none, or no such lines.
-    pub(super) fn of(archive: &Path, springs: &Path) -> Result<Self, ArchiveError> {
-        let below = springs
-            .strip_prefix(archive.join("springs"))
-            .unwrap_or(springs);
+    pub(super) fn of(archive: &Path, file: &Path) -> Result<Self, ArchiveError> {
+        let below = file.strip_prefix(archive).unwrap_or(file);
+        let below: PathBuf = below.iter().skip(1).collect(); // without the name of its tree
         let path = archive.join("records").join(below).with_extension(END);
         let text = std::fs::read_to_string(&path).map_err(|cause| match cause.kind() {
             ErrorKind::NotFound => ArchiveError::Unreadable {
-                file: shown(springs),
+                file: shown(file),
                 why: "there are no checksums of it among the records".to_owned(),
             },
             _ => reading(&path)(cause),

@@ -29,12 +29,25 @@ pub(super) fn runs(tree: &Path, end: &str, drawing: Option<&str>) -> Result<File
     };
     for drawing in drawings {
         let lots = files.folders(&drawing, "lot_key=")?;
-        let read: Result<Vec<Files>, _> =
-            lots.par_iter().map(|lot| runs_of_lot(lot, end)).collect();
+        let read: Result<Vec<Files>, _> = lots.par_iter().map(|lot| runs_in(lot, end)).collect();
         for lot in read? {
             files.runs.extend(lot.runs);
             files.foreign.extend(lot.foreign);
         }
+    }
+    Ok(files)
+}
+
+/// The checks below `tree`, whose files end in `end`; below `rig_key=…` and nowhere else.
+///
+/// # Errors
+/// [`ArchiveError::Read`] where a folder cannot be listed. A tree that is not there is empty.
+pub(super) fn checks(tree: &Path, end: &str) -> Result<Files, ArchiveError> {
+    let mut files = Files::default();
+    for rig in files.folders(tree, "rig_key=")? {
+        let found = runs_in(&rig, end)?;
+        files.runs.extend(found.runs);
+        files.foreign.extend(found.foreign);
     }
     Ok(files)
 }
@@ -57,11 +70,11 @@ impl Files {
     }
 }
 
-/// The runs of one lot's folder; one that is not there holds none.
+/// The runs of the folder of one lot or rig; one that is not there holds none.
 ///
 /// # Errors
 /// [`ArchiveError::Read`] where it cannot be listed.
-pub(super) fn runs_of_lot(folder: &Path, end: &str) -> Result<Files, ArchiveError> {
+pub(super) fn runs_in(folder: &Path, end: &str) -> Result<Files, ArchiveError> {
     let mut files = Files::default();
     for (path, is_folder) in sorted(folder)? {
         if !is_folder && path.extension().is_some_and(|found| found == end) {

@@ -11,9 +11,9 @@ use sha2::{Digest, Sha256};
 use super::error::{ArchiveError, writing};
 use super::place::Archive;
 use super::springs::Run;
-use super::{curves, frame, key, read, springs, sums};
+use super::{checks, curves, frame, key, read, springs, sums};
 use crate::curve::Kept;
-use crate::record::AcceptRecord;
+use crate::record::{AcceptRecord, CheckRecord, Provenance};
 use crate::text::hex;
 
 impl Archive {
@@ -30,9 +30,9 @@ impl Archive {
         let folder = lot_folder(&record.drawing.number, &record.lot.number);
         let latest = read::latest_of(self, &folder, record)?;
         let run = Run {
-            id: id(record, judged_at),
+            id: id(&record.provenance, judged_at),
             number: latest.as_ref().map_or(0, |run| run.number) + 1,
-            judged_at: judged_at.strftime("%Y-%m-%dT%H:%M:%S.%6fZ").to_string(),
+            judged_at: stamp(judged_at),
             supersedes: latest.map(|run| run.id),
         };
         let table = |cause| ArchiveError::Frame { cause };
@@ -42,6 +42,32 @@ impl Archive {
             staged.json("records", record)?;
             staged.parquet("curves", &mut curves)?;
             staged.parquet("springs", &mut springs)?;
+            staged.sums()
+        })?;
+        Ok(run)
+    }
+
+    /// Keeps a check of a rig.
+    ///
+    /// # Errors
+    /// [`ArchiveError`]; then the archive is as it was.
+    pub fn keep_check(
+        &self,
+        record: &CheckRecord,
+        judged_at: jiff::Timestamp,
+    ) -> Result<Run, ArchiveError> {
+        let run = Run {
+            id: id(&record.provenance, judged_at),
+            number: 1,
+            judged_at: stamp(judged_at),
+            supersedes: None,
+        };
+        let folder = PathBuf::from(format!("rig_key={}", key::key(&record.rig)));
+        let mut table =
+            checks::frame(record, &run).map_err(|cause| ArchiveError::Frame { cause })?;
+        self.move_in(&folder, &run.id, |staged| {
+            staged.json("records", record)?;
+            staged.parquet("checks", &mut table)?;
             staged.sums()
         })?;
         Ok(run)
@@ -155,12 +181,17 @@ pub(super) fn lot_folder(drawing: &str, lot: &str) -> PathBuf {
     Path::new(&folder("drawing_key", drawing)).join(folder("lot_key", lot))
 }
 
+/// A time as text that sorts.
+fn stamp(at: jiff::Timestamp) -> String {
+    at.strftime("%Y-%m-%dT%H:%M:%S.%6fZ").to_string()
+}
+
 /// A name that sorts by time and that no other run has: when, and a digest of what and by whom.
-fn id(record: &AcceptRecord, judged_at: jiff::Timestamp) -> String {
+fn id(provenance: &Provenance, judged_at: jiff::Timestamp) -> String {
     let mut hasher = Sha256::new();
     hasher.update(std::process::id().to_be_bytes());
     hasher.update(judged_at.as_nanosecond().to_be_bytes());
-    for input in &record.provenance.inputs {
+    for input in &provenance.inputs {
         hasher.update(input.sha256.as_bytes());
     }
     let digest = hex(&hasher.finalize());

@@ -32,6 +32,8 @@ pub enum Finding {
     BeyondShare,
     /// Reference and repeats are too uncertain to show an error as small as is allowed.
     CannotTell,
+    /// The mean agrees, but a measurement by itself does not: they may not all be of this spring.
+    Scattered,
     /// No value, or none whose uncertainty is known.
     NotMeasured,
 }
@@ -54,7 +56,7 @@ impl Finding {
         match self {
             Self::Serves => Serving::Serves,
             Self::Disagrees | Self::BeyondShare => Serving::Fails,
-            Self::CannotTell | Self::NotMeasured => Serving::Undecided,
+            Self::CannotTell | Self::Scattered | Self::NotMeasured => Serving::Undecided,
         }
     }
 }
@@ -90,6 +92,21 @@ pub struct Comparison {
     pub shows: Option<f64>,
     /// What it came to.
     pub finding: Finding,
+}
+
+impl Comparison {
+    /// The comparison of a mean, beside that of each measurement by itself: a mean hides what they do.
+    #[must_use]
+    pub fn beside(self, each: &[Self]) -> Self {
+        let off = |one: &Self| one.e_n.is_none_or(|e_n| e_n.abs() > 1.0);
+        if self.finding == Finding::Serves && each.iter().any(off) {
+            return Self {
+                finding: Finding::Scattered,
+                ..self
+            };
+        }
+        self
+    }
 }
 
 /// Compares a measured value with the certificate's; `allowed` is the largest error allowed, where one is stated.

@@ -6,6 +6,7 @@ mod anova;
 mod check;
 mod error;
 mod frame;
+mod knots;
 mod passes;
 mod ranges;
 mod study;

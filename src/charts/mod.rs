@@ -11,6 +11,7 @@ mod histogram;
 mod ids;
 mod share;
 mod study;
+mod trend;
 mod values;
 
 pub(crate) use check::check;

@@ -12,7 +12,7 @@ use crate::wording::{font, per_unit, percent, unit_symbol};
 /// Height of the plot of the measurements.
 const TALL: f64 = 150.0;
 /// Height of a row of the shares.
-const ROW: f64 = 24.0;
+const ROW: f64 = 36.0;
 /// Share of the tolerance up to which a bench serves, for the line in the chart.
 const SERVES: f64 = 0.3;
 
@@ -263,13 +263,13 @@ fn draw_shares(
     for (number, (name, study, tolerance)) in rows.iter().enumerate() {
         let middle = top + ROW * (number as f64 + 0.5);
         sheet.text(name, (plot.x.paper.0 - 8.0, middle), Anchor::End, INK)?;
-        bar(sheet, &plot, *study, (middle - 9.0, middle - 0.5), FIELD)?;
+        bar(sheet, &plot, *study, (middle - 14.0, middle - 1.0), FIELD)?;
         if let Some(tolerance) = tolerance {
             bar(
                 sheet,
                 &plot,
                 *tolerance,
-                (middle + 0.5, middle + 9.0),
+                (middle + 1.0, middle + 14.0),
                 WINDOW,
             )?;
         }

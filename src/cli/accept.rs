@@ -8,7 +8,7 @@ use miette::IntoDiagnostic;
 use sha2::{Digest, Sha256};
 
 use crate::archive::Archive;
-use crate::job::{self, Accepted};
+use crate::job::{self, Accepted, Memory};
 use crate::record::{Decision, OutputFile};
 use crate::report::{self, OutFile, Template, Templates};
 use crate::text::{Source, hex};
@@ -24,6 +24,10 @@ pub(super) fn run(args: &AcceptArgs, quiet: bool, out: &mut impl Write) -> miett
         .map(Archive::open_or_begin)
         .transpose()?;
     let templates = templates(args.templates.as_deref())?;
+    let past = args
+        .history
+        .as_deref()
+        .map(|path| job::read_history(path, &path.to_string_lossy()));
     let options = job::Options {
         date: date(args.date)?,
         units_confirmed: args.units_confirmed,
@@ -34,8 +38,8 @@ pub(super) fn run(args: &AcceptArgs, quiet: bool, out: &mut impl Write) -> miett
         },
         block_bytes: None,
         flags: flags(args),
-        last_check: None,
-        past: args.history.as_deref().map(job::read_history).transpose()?,
+        memory: archive.clone().map_or(Memory::Nothing, Memory::Archive),
+        past: past.transpose()?,
     };
     let mut accepted = job::accept(&args.lot, &args.lot.to_string_lossy(), &options)?;
     let files = if args.out.is_some() {

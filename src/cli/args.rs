@@ -126,9 +126,18 @@ pub(super) struct AcceptArgs {
 #[derive(Debug, Subcommand)]
 pub(super) enum RigCommand {
     /// Checks a rig on a reference spring, and its frame plate on plate (exit 0 serves, 1 does not, 3 undecided, 2 could not)
-    Verify(RigArgs),
+    Verify(VerifyArgs),
     /// Studies the repeatability of a rig (exit 0 serves, 1 does not, 3 undecided, 2 could not)
     Repeat(RigArgs),
+}
+
+#[derive(Debug, Args)]
+pub(super) struct VerifyArgs {
+    #[command(flatten)]
+    pub(super) rig: RigArgs,
+    /// Archive that keeps this check and knows the earlier ones
+    #[arg(long, value_name = "DIR")]
+    pub(super) archive: Option<PathBuf>,
 }
 
 #[derive(Debug, Args)]

@@ -6,14 +6,15 @@ use miette::IntoDiagnostic;
 use serde::Serialize;
 use sha2::{Digest, Sha256};
 
+use crate::archive::{Archive, KeptCheck};
 use crate::job::{self, Proposal, RigOptions};
 use crate::model::{check_page, study_page};
-use crate::record::{OutputFile, Serving};
+use crate::record::{EarlierCheck, OutputFile, Serving};
 use crate::report::{self, OutFile};
 use crate::text::hex;
 
 use super::accept::{date, templates};
-use super::args::{RigArgs, RigCommand};
+use super::args::{RigArgs, RigCommand, VerifyArgs};
 use super::folder::{self, Target};
 use super::rig_file;
 
@@ -41,26 +42,40 @@ fn options(args: &RigArgs) -> miette::Result<RigOptions> {
     })
 }
 
-fn verify(args: &RigArgs, quiet: bool, out: &mut impl Write) -> miette::Result<u8> {
+fn verify(of: &VerifyArgs, quiet: bool, out: &mut impl Write) -> miette::Result<u8> {
+    let args = &of.rig;
     let target = args.out.as_deref().map(Target::of).transpose()?;
+    let archive = of.archive.as_deref();
+    let archive = archive.map(Archive::open_or_begin).transpose()?;
     let templates = templates(args.templates.as_deref())?;
     let written = args.file.to_string_lossy();
-    let mut verified = job::rig_verify(&args.file, &written, &options(args)?, Vec::new())?;
+    let earlier = match &archive {
+        Some(archive) => earlier(archive)?,
+        None => Vec::new(),
+    };
+    let mut verified = job::rig_verify(&args.file, &written, &options(args)?, earlier)?;
     let page = check_page(&verified.record, args.show_in.into());
+    let files = if target.is_none() || args.no_report {
+        Vec::new()
+    } else {
+        let show_in = args.show_in.into();
+        report::check(
+            &verified.record,
+            &page,
+            &verified.readings,
+            show_in,
+            &templates,
+        )?
+    };
+    verified.record.files = listed(&files);
+    let now = jiff::Timestamp::now();
+    let kept = archive.map(|archive| archive.keep_check(&verified.record, now));
+    if let Some(run) = kept.transpose()?
+        && !quiet
+    {
+        let _ = writeln!(std::io::stderr(), "archived: {run}"); // a notice
+    }
     if let Some(target) = &target {
-        let files = if args.no_report {
-            Vec::new()
-        } else {
-            let show_in = args.show_in.into();
-            report::check(
-                &verified.record,
-                &page,
-                &verified.readings,
-                show_in,
-                &templates,
-            )?
-        };
-        verified.record.files = listed(&files);
         target.write(&files, &verified.record)?;
     }
     let proposal = verified.proposal.as_ref();
@@ -73,6 +88,12 @@ fn verify(args: &RigArgs, quiet: bool, out: &mut impl Write) -> miette::Result<u
         out,
     )?;
     Ok(status(verified.record.decision))
+}
+
+/// What the archive knows of earlier checks, of every rig.
+fn earlier(archive: &Archive) -> miette::Result<Vec<EarlierCheck>> {
+    let checks = archive.checks()?.into_iter();
+    Ok(checks.flat_map(KeptCheck::into_earlier).collect())
 }
 
 fn repeat(args: &RigArgs, quiet: bool, out: &mut impl Write) -> miette::Result<u8> {

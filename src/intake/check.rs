@@ -5,14 +5,13 @@ use std::path::{Path, PathBuf};
 use jiff::civil::Date;
 
 use crate::drawing::read_units;
-use crate::quantity::Quantity;
-use crate::rig::{read_calibrated, standard_of};
 use crate::text::{Keys, Source, Table, beside, read_toml};
-use crate::units::{Millimetres, System};
+use crate::units::System;
 
 use super::exports::{Export, resolve};
 use super::open::{named_file, read_exports};
 use super::parts::{Conditions, read_conditions};
+use super::reference::{ReferenceSpring, read_reference};
 
 const CERTIFIED: &[&str] = &["value", "uncertainty", "k"];
 
@@ -20,7 +19,7 @@ const CERTIFIED: &[&str] = &["value", "uncertainty", "k"];
 #[rustfmt::skip] // keeps the list a list
 pub const CHECK_KEYS: Keys = &[
     ("", &["units", "rig", "exports", "plates", "drawings", "tolerances", "share", "earlier", "check", "reference", "conditions"]),
-    ("check", &["inspector", "note"]),
+    ("check", &["on", "inspector", "note"]),
     ("tolerances", &["rate", "load", "free_length"]),
     ("reference", &["name", "certificate", "calibrated", "rate", "load", "free_length"]),
     ("reference.calibrated", &["on", "until"]),
@@ -40,32 +39,6 @@ pub enum Tolerance {
     Relative(f64),
     /// In the quantity's unit.
     Absolute(f64),
-}
-
-/// A certified value: the value and its standard uncertainty.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct CertifiedValue {
-    /// Which quantity.
-    pub quantity: Quantity,
-    /// The value, in its unit.
-    pub value: f64,
-    /// U/k.
-    pub standard: f64,
-}
-
-/// A certified reference spring.
-#[derive(Clone, Debug)]
-pub struct ReferenceSpring {
-    /// Its name.
-    pub name: String,
-    /// Certificate.
-    pub certificate: Option<String>,
-    /// Calibrated on, and until.
-    pub calibrated: Option<(Date, Date)>,
-    /// Lengths between which the rate is certified, mm, the longer first.
-    pub between: Option<(f64, f64)>,
-    /// Rate, loads from the longest length down, free length.
-    pub values: Vec<CertifiedValue>,
 }
 
 /// What the tolerances to be judged are taken from.
@@ -103,6 +76,8 @@ pub struct CheckFile {
     pub share: f64,
     /// Results of earlier checks.
     pub earlier: Vec<Export>,
+    /// The day it was measured, where the file says so.
+    pub on: Option<Date>,
     /// Who checked.
     pub inspector: Option<String>,
     /// A note to print.
@@ -149,6 +124,7 @@ fn read(root: Table<'_>, source: &Source) -> Option<CheckFile> {
         SHARE
     };
     let check = root.table("check");
+    let on = check.date("on").map(|on| on.value);
     Some(CheckFile {
         source: source.clone(),
         rig: rig?,
@@ -156,6 +132,7 @@ fn read(root: Table<'_>, source: &Source) -> Option<CheckFile> {
         plates,
         share,
         earlier: read_earlier(root, source),
+        on,
         inspector: check.text("inspector"),
         note: check.text("note"),
         conditions: read_conditions(root.table("conditions"))?,
@@ -245,115 +222,4 @@ fn read_tolerance(table: Table<'_>, key: &str, unit: f64) -> Option<Tolerance> {
     table
         .positive(key)
         .map(|number| Tolerance::Absolute(number.value * unit))
-}
-
-fn read_reference(table: Table<'_>, units: System) -> Option<ReferenceSpring> {
-    let name = table.required_text("name", "write the reference spring's name: name = \"RS-3\"");
-    let rate = certified(table, "rate", Quantity::Rate, units.rate());
-    let free = certified(table, "free_length", Quantity::FreeLength, units.length());
-    let loads = read_loads(table, units);
-    let between = read_between(table.table("rate"), units);
-    let calibrated = read_calibrated(table.table("calibrated"));
-    let (rate, free, loads) = (rate?, free?, loads?);
-    for load in &loads {
-        let at = load.quantity.at_length().map_or(0.0, Millimetres::get);
-        if at >= free.value {
-            let what = "a certified load lies at or beyond the certified free length";
-            table.fault(
-                &table.place("load"),
-                what,
-                "check lengths and units of the certificate",
-            );
-            return None;
-        }
-    }
-    let mut values = vec![rate];
-    values.extend(loads);
-    values.push(free);
-    Some(ReferenceSpring {
-        name: name?,
-        certificate: table.text("certificate"),
-        calibrated,
-        between,
-        values,
-    })
-}
-
-/// The lengths the rate is certified between; `None` where they are not stated, or where a fault was noted.
-fn read_between(rate: Table<'_>, units: System) -> Option<(f64, f64)> {
-    if !rate.has("from") && !rate.has("to") {
-        return None;
-    }
-    let help = "write from and to, the longer length first: from = 80.0, to = 60.0";
-    for key in ["from", "to"] {
-        if !rate.has(key) {
-            rate.missing(key, help);
-        }
-    }
-    let (from, to) = (rate.positive("from")?.value, rate.positive("to")?.value);
-    if from <= to {
-        rate.fault(&rate.place("from"), "`from` is not the longer length", help);
-        return None;
-    }
-    Some((from * units.length(), to * units.length()))
-}
-
-fn read_loads(table: Table<'_>, units: System) -> Option<Vec<CertifiedValue>> {
-    let help = "write two or more [[reference.load]] with at_length, value, uncertainty and k";
-    let mut loads = Vec::new();
-    for load in table.tables("load") {
-        if !load.has("at_length") {
-            load.missing("at_length", help);
-        }
-        let at = load.positive("at_length")?.value * units.length();
-        let quantity = Quantity::LoadAt(at.try_into().ok()?);
-        loads.push(value_of(load, quantity, units.force())?);
-    }
-    let at = |one: &CertifiedValue| one.quantity.at_length().map_or(0.0, Millimetres::get);
-    loads.sort_by(|a, b| at(b).total_cmp(&at(a)));
-    let apart = loads
-        .windows(2)
-        .all(|pair| matches!(pair, [a, b] if at(a) - at(b) > 1e-9));
-    if loads.len() < 2 || !apart {
-        let what = format!("{} certified loads at lengths of their own", loads.len());
-        let what = if apart {
-            what
-        } else {
-            "two certified loads at one length".to_owned()
-        };
-        table.fault(
-            &table.place("load"),
-            format!("{what}, where two or more are wanted"),
-            help,
-        );
-        return None;
-    }
-    Some(loads)
-}
-
-fn certified(table: Table<'_>, key: &str, quantity: Quantity, unit: f64) -> Option<CertifiedValue> {
-    if !table.has(key) {
-        table.missing(
-            key,
-            format!(
-                "write {key} = {{ value = …, uncertainty = …, k = 2 }} as the certificate has it"
-            ),
-        );
-        return None;
-    }
-    value_of(table.table(key), quantity, unit)
-}
-
-fn value_of(table: Table<'_>, quantity: Quantity, unit: f64) -> Option<CertifiedValue> {
-    let help = "write value, uncertainty and k as the certificate has them";
-    if !table.has("value") {
-        table.missing("value", help);
-    }
-    let value = table.positive("value");
-    let standard = standard_of(table, help);
-    Some(CertifiedValue {
-        quantity,
-        value: value?.value * unit,
-        standard: standard? * unit,
-    })
 }

@@ -6,14 +6,13 @@ mod exports;
 mod findings;
 mod open;
 mod parts;
+mod reference;
 mod study;
 
-pub use check::{
-    CHECK_KEYS, CertifiedValue, CheckFile, Judged, ReferenceCheck, ReferenceSpring, Tolerance,
-    open_check,
-};
+pub use check::{CHECK_KEYS, CheckFile, Judged, ReferenceCheck, Tolerance, open_check};
 pub use exports::{Export, natural_order, resolve};
 pub use findings::{Caliper, FindingsError, read_findings};
 pub use open::{KEYS, Lot, open};
 pub use parts::{Conditions, Finding, NotInspected, Repeat};
+pub use reference::{CertifiedValue, ReferenceSpring};
 pub use study::{Assigned, Belongs, Names, STUDY_KEYS, StudyFile, open_study};

@@ -253,5 +253,6 @@ fn provenance(drawing: &Drawing, date: Date) -> Provenance {
         flags: Vec::new(),
         inputs,
         ledgers: Vec::new(),
+        archive: None,
     }
 }

@@ -14,7 +14,7 @@ use super::accept::Past;
 /// The header, and with it the order of the columns.
 const HEADER: &str = "date,lot,decision,accept,accepted_tighter";
 
-/// Reads past lots from the file at `path`, in the order of their decisions.
+/// Reads past lots from the file at `path`, written as `as_written`, in the order of their decisions.
 ///
 /// Columns: date of the decision (YYYY-MM-DD), lot number, decision (accepted, rejected, undecided, or resumed for a line
 /// that is no lot but says that the supplier has acted), Ac of its plan, and whether it would also have been accepted with
@@ -22,8 +22,8 @@ const HEADER: &str = "date,lot,decision,accept,accepted_tighter";
 ///
 /// # Errors
 /// Every fault of the file together, each at its place.
-pub fn read_history(path: &Path) -> miette::Result<Past> {
-    let source = Source::open(path, &path.to_string_lossy())?;
+pub fn read_history(path: &Path, as_written: &str) -> miette::Result<Past> {
+    let source = Source::open(path, as_written)?;
     let mut reader = Reader {
         source: &source,
         faults: Vec::new(),

@@ -58,13 +58,10 @@ pub fn lots(source: &Path, query: &Query) -> Result<Listing, LotsError> {
         (read_table(source)?, Vec::new())
     } else {
         let found = Archive::open(source)?.runs(query.drawing.as_deref())?;
-        let runs = if query.superseded {
-            found.runs
-        } else {
-            latest(found.runs)
-        };
+        let (runs, unreadable) = found.passed_over();
+        let runs = if query.superseded { runs } else { latest(runs) };
         let wanted = runs.into_iter().filter(|run| query.wants(&run.head));
-        (wanted.map(LotFigures::from).collect(), found.unreadable)
+        (wanted.map(LotFigures::from).collect(), unreadable)
     };
     lots.retain(|lot| query.wants(&lot.head));
     lots.sort_by_key(|lot| lot.head.when()); // stable: the order within a day stays

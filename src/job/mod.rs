@@ -12,7 +12,7 @@ mod recheck;
 mod rig;
 mod threads;
 
-pub use accept::{Accepted, Options, Past, accept};
+pub use accept::{Accepted, Memory, Options, Past, accept};
 pub use draft_files::{Starter, starter};
 pub use expect::{Ask, expect};
 pub use history::read_history;
@@ -20,6 +20,6 @@ pub use lots::{Listing, LotsError, Query, lots};
 pub use rate::{Bench, Guess, LoadAt, RateOptions, RateResult, rate};
 pub use read::Keep;
 pub use recheck::{
-    ChangedInput, Outcome, RecheckError, Rechecked, Stored, recheck, recheck_run, stored_runs,
+    ChangedInput, Outcome, RecheckError, Rechecked, recheck, recheck_run, stored_runs,
 };
 pub use rig::{Proposal, Repeated, RigOptions, Verified, rig_repeat, rig_verify};

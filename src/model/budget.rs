@@ -46,6 +46,7 @@ fn table(spring: &SpringResult, of: &CharacteristicResult, show_in: System) -> T
         format!("{name}, spring {}", spring.id),
         &of.budget,
         unit_symbol(of.unit, show_in),
+        of.standard_uncertainty,
         &shown,
     );
     table.note = format!(
@@ -63,11 +64,12 @@ fn table(spring: &SpringResult, of: &CharacteristicResult, show_in: System) -> T
     table
 }
 
-/// The lines of one budget; `shown` writes a contribution in the unit `unit`.
+/// The lines of one budget, their sum the standard uncertainty `sum`; `shown` writes a contribution in the unit `unit`.
 pub(super) fn lines(
     caption: String,
     budget: &[BudgetFigure],
     unit: &str,
+    sum: Option<Finite>,
     shown: &dyn Fn(Finite) -> String,
 ) -> Table {
     let columns = vec![
@@ -78,8 +80,7 @@ pub(super) fn lines(
         Column::figures("Share of u²", ""),
     ];
     let square = |line: &BudgetFigure| line.contribution.get() * line.contribution.get();
-    let counted = budget.iter().filter(|line| line.counted);
-    let total = counted.map(square).fold(0.0, |sum, one| sum + one);
+    let total = sum.map_or(0.0, |u| u.get() * u.get());
     let row = |line: &BudgetFigure| {
         let part = match line.part {
             Part::Own => "own",

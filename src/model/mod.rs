@@ -7,6 +7,7 @@ mod expect;
 mod expect_facts;
 mod facts;
 mod fits;
+mod frame;
 mod named;
 mod page;
 mod page_one;

@@ -10,6 +10,7 @@ use super::facts::{RigFacts, TheoryFacts, WindowFacts};
 use super::plan::PlanFacts;
 use super::process::ProcessFacts;
 use super::spring::{LedgerFacts, SpringResult};
+use super::told::Told;
 use crate::drawing::Policy;
 use crate::lot::{Decision, LotReason};
 use crate::quantity::{Class, Unit};
@@ -153,6 +154,9 @@ pub struct Provenance {
     pub inputs: Vec<InputFile>,
     /// The row ledger of every export.
     pub ledgers: Vec<LedgerFacts>,
+    /// What an archive told; `null` where none was asked.
+    #[serde(default)]
+    pub archive: Option<Told>,
 }
 
 /// `result.json` of `accept`.

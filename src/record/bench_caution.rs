@@ -45,7 +45,11 @@ pub enum BenchCaution {
     FreeLengthNotChecked,
     /// The reference spring was measured only once: its scatter is not seen.
     MeasuredOnce,
-    /// The check file says nothing of presetting strokes before the study.
+    /// The measurements of the reference spring differ by more than their own uncertainty says.
+    MeasurementsDiffer,
+    /// The check file does not say when it was measured.
+    DayNotStated,
+    /// The study file says nothing of presetting strokes before the study.
     PresettingNotStated,
     /// One operator: what operators add is not seen.
     OneOperator,

@@ -43,6 +43,11 @@ pub enum Caution {
         /// `force` or `travel`.
         scale: String,
     },
+    /// The last check of the rig on record failed.
+    CheckFailed {
+        /// When, and on what.
+        last: String,
+    },
     /// The rig file wants checks and no passed check is on record that is recent enough.
     NoCheckOnRecord {
         /// How often the rig file wants one.
@@ -55,7 +60,7 @@ pub enum Caution {
         /// The springs.
         springs: Vec<String>,
     },
-    /// Loads outside the range the rig file states.
+    /// Loads outside the usable range of the force scale: as stated, or by its class and resolution.
     LoadOutsideRange {
         /// The springs.
         springs: Vec<String>,

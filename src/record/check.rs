@@ -81,7 +81,9 @@ pub struct GivePoint {
 pub struct FrameFacts {
     /// Slope of the straight line.
     pub compliance_mm_per_n: Finite,
-    /// Its expanded uncertainty; `null` where the run is too short to give one.
+    /// Its standard uncertainty; `null` where the run is too short to give one.
+    pub standard_uncertainty_mm_per_n: Option<Finite>,
+    /// Its expanded uncertainty.
     pub expanded_uncertainty_mm_per_n: Option<Finite>,
     /// k for 95.45 %.
     pub coverage_factor: Option<Finite>,
@@ -182,7 +184,7 @@ pub struct CheckRecord {
     pub reasons: Vec<CheckReason>,
     /// Whether this counts as a passed check: the decision is `serves` and a reference spring was measured.
     pub passed: bool,
-    /// Day of the check.
+    /// Day of the check: when it was measured, as the check file states it, else when it was judged.
     #[schemars(with = "String")]
     pub judged_at: Date,
     /// The rig's name.

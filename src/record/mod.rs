@@ -13,6 +13,7 @@ mod plan;
 mod process;
 mod repeat;
 mod spring;
+mod told;
 
 pub use accept::{
     AcceptRecord, ConditionFacts, DrawingFacts, Kind, LotFacts, OutputFile, Provenance,
@@ -42,6 +43,8 @@ pub use spring::{
 };
 
 pub use crate::bench::{Finding, Serving};
+pub use told::Told;
+
 pub use crate::characteristic::Part;
 pub use crate::curve::WindowOf;
 pub use crate::drawing::Policy as Undecided;

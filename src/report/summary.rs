@@ -77,7 +77,7 @@ pub fn page_summary(page: &Page) -> String {
             let cells = row.cells.iter().zip(&table.columns).skip(1);
             let cells: Vec<String> = cells
                 .filter(|(cell, _)| !cell.text.is_empty())
-                .map(|(cell, column)| format!("{} {}", column.title.to_lowercase(), cell.text))
+                .map(|(cell, column)| format!("{} {}", column.title, cell.text))
                 .collect();
             let name = row.cells.first().map_or("", |cell| cell.text.as_str());
             lines.push(format!("    {name}: {}", cells.join(", ")));

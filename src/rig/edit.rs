@@ -89,13 +89,23 @@ pub fn edit(source: &Source, changes: &[Change]) -> Result<Edited, RigEditError>
         };
         done.ok_or_else(|| unfit("what it says of the frame or of repeatability is no table"))?;
     }
-    let text = document.to_string();
+    let text = with_ends_of(&source.text, &document.to_string());
     let lines = difference(&source.text, &text);
     Ok(Edited {
         source: source.with_text(&text),
         was: source.sha256.clone(),
         lines,
     })
+}
+
+/// The new text with the line ends of the old one: `toml_edit` writes `\n` alone.
+fn with_ends_of(old: &str, new: &str) -> String {
+    let plain = new.replace("\r\n", "\n");
+    if old.contains("\r\n") {
+        plain.replace('\n', "\r\n")
+    } else {
+        plain
+    }
 }
 
 fn unit_of(quantity: &str, units: System) -> f64 {
@@ -129,7 +139,7 @@ fn frame(document: &mut DocumentMut, give: &Give, standard: f64, units: System) 
         }
     }
     set(compliance, "uncertainty", expanded);
-    set(compliance, "k", 2.0);
+    compliance.insert("k", value(2));
     if let Some(Value::InlineTable(inline)) =
         frame.get_mut("compliance").and_then(Item::as_value_mut)
     {
@@ -165,7 +175,7 @@ fn set(table: &mut dyn TableLike, key: &str, figure: f64) {
 }
 
 fn repeatability(document: &mut DocumentMut, of: &str, figure: f64) -> Option<()> {
-    let figure = rounded_up(figure, DIGITS.0 + DIGITS.1);
+    let figure = to_place(figure, last_place(figure, DIGITS.0 + DIGITS.1));
     let stated = document
         .entry("repeatability")
         .or_insert(Item::ArrayOfTables(ArrayOfTables::new()));

@@ -59,6 +59,25 @@ pub struct Scale {
     pub calibrated: Option<(Date, Date)>,
 }
 
+impl Scale {
+    /// The smallest load a force scale is good for, N: the start of its stated range, and at least the load at which one
+    /// step is as large a share as the class allows, half of its indication error (ISO 7500-1:2018 table 2, from memory:
+    /// 0.25 % at class 0.5, 0.5 % at class 1). `None` where neither is known.
+    pub fn usable_from(&self) -> Option<f64> {
+        let by_class = match (&self.accuracy, self.resolution) {
+            (Accuracy::Class { half_width, .. }, Known::Stated(step)) => {
+                Some(step / (half_width / 2.0))
+            }
+            _ => None,
+        };
+        let stated = self.range.map(|(from, _)| from);
+        match (stated, by_class) {
+            (Some(stated), Some(by_class)) => Some(f64::max(stated, by_class)),
+            (one, other) => one.or(other),
+        }
+    }
+}
+
 /// Relative half-width of the indication error by class, ISO 7500-1:2018 table 2 (from memory).
 pub(super) const FORCE_CLASSES: [(&str, f64); 4] =
     [("0.5", 0.005), ("1", 0.01), ("2", 0.02), ("3", 0.03)];

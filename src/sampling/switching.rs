@@ -8,7 +8,8 @@ use serde::{Deserialize, Serialize};
 use crate::drawing::State;
 
 /// What came out for a lot on original inspection.
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize, JsonSchema)]
+#[serde(rename_all = "lowercase")]
 pub enum Outcome {
     /// Accepted.
     Accepted,
@@ -21,9 +22,10 @@ pub enum Outcome {
 }
 
 /// One past lot, as far as switching needs it.
-#[derive(Clone, Debug, PartialEq, Eq)]
+#[derive(Clone, Debug, PartialEq, Eq, Serialize, Deserialize, JsonSchema)]
 pub struct PastLot {
     /// Date of the decision.
+    #[schemars(with = "String")]
     pub date: Date,
     /// Lot number.
     pub lot: String,

@@ -21,6 +21,7 @@ pub(crate) const fn finding(of: Finding) -> &'static str {
         Finding::Disagrees => "DISAGREES",
         Finding::BeyondShare => "TOO FAR OFF",
         Finding::CannotTell => "cannot tell",
+        Finding::Scattered => "scattered",
         Finding::NotMeasured => "not measured",
     }
 }
@@ -51,6 +52,9 @@ pub(crate) fn check_reason(of: &CheckReason, record: &CheckRecord, show_in: Syst
                 Finding::CannotTell => {
                     "the scatter of the measurement and the certificate's uncertainty are together larger than the allowed error, so \
                      that this check could not show it"
+                }
+                Finding::Scattered => {
+                    "the mean agrees with the certificate, but a measurement by itself does not; are they all of this spring?"
                 }
                 Finding::NotMeasured => "no value whose uncertainty is known",
                 Finding::Serves => "agrees",
@@ -166,6 +170,12 @@ fn of_the_layout(of: &BenchCaution) -> String {
              this rig."
                 .to_owned()
         }
+        BenchCaution::DayNotStated => {
+            "The check file does not say when it was measured (on = … under [check]); the day of the judgement stands for it.".to_owned()
+        }
+        BenchCaution::MeasurementsDiffer => {
+            "The measurements of the reference spring differ by more than their own uncertainty says; their spread is counted.".to_owned()
+        }
         BenchCaution::MeasuredOnce => {
             "The reference spring was measured once; its scatter is what the rig file and the fit say, not seen.".to_owned()
         }
@@ -222,6 +232,8 @@ mod tests {
             },
             BenchCaution::FreeLengthNotChecked,
             BenchCaution::MeasuredOnce,
+            BenchCaution::MeasurementsDiffer,
+            BenchCaution::DayNotStated,
             BenchCaution::PresettingNotStated,
             BenchCaution::OneOperator,
             BenchCaution::NegativeComponent {

@@ -40,6 +40,7 @@ pub(crate) fn caution(of: &Caution, show_in: System) -> String {
         | Caution::DeclaredNegligible { .. }
         | Caution::CalibrationExpired { .. }
         | Caution::CalibrationUnknown { .. }
+        | Caution::CheckFailed { .. }
         | Caution::NoCheckOnRecord { .. }
         | Caution::UncertaintyLarge { .. }
         | Caution::ComplianceLarge { .. }
@@ -60,6 +61,9 @@ fn about_the_bench(of: &Caution, show_in: System) -> String {
         Caution::ComplianceLarge { share } => format!(
             "The frame compliance in the rig file makes up {} of the spring's own; is it right?",
             percent(Some(*share))
+        ),
+        Caution::CheckFailed { last } => format!(
+            "The last check of this rig on record failed: {last}. What it measures now is open to doubt."
         ),
         Caution::NoCheckOnRecord { every, last } => match last {
             Some(last) => format!(
@@ -121,7 +125,7 @@ fn about_the_curves(of: &Caution, show_in: System) -> String {
         ),
         Caution::LoadOutsideRange { springs: names } => {
             format!(
-                "Loads outside the range the rig file states: {}.",
+                "Loads outside the usable range of the force scale: {}.",
                 springs(names)
             )
         }
@@ -228,6 +232,7 @@ mod tests {
                 until: text(),
             },
             Caution::CalibrationUnknown { scale: text() },
+            Caution::CheckFailed { last: text() },
             Caution::NoCheckOnRecord {
                 every: text(),
                 last: None,

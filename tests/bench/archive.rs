@@ -53,7 +53,7 @@ fn fill(dir: &Path) {
         units_confirmed: false,
         strict: false,
         keep: Keep::default(),
-        last_check: None,
+        memory: coilassay::job::Memory::Nothing,
         past: None,
         block_bytes: None,
         flags: Vec::new(),

@@ -92,6 +92,12 @@ fn every_outcome_of_a_comparison() {
         Some(0.1),
     );
     assert_eq!(coarse.finding, Finding::CannotTell);
+    // A mean that agrees hides two measurements that do not.
+    let reference = certified(10.0, 0.01);
+    let each = [9.8, 10.2].map(|value| compare(&reference, &measured(value, 0.01, 0.05), None));
+    let mean = compare(&reference, &measured(10.0, 0.01, 0.05), Some(0.1));
+    assert_eq!(mean.beside(&each).finding, Finding::Scattered);
+    assert_eq!(mean.beside(&[mean]).finding, Finding::Serves);
     assert_eq!(
         overall([Serving::Serves, Serving::Undecided, Serving::Fails]),
         Serving::Fails

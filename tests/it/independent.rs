@@ -23,7 +23,7 @@ fn record() -> AcceptRecord {
         keep: coilassay::job::Keep::default(),
         block_bytes: None,
         flags: Vec::new(),
-        last_check: None,
+        memory: coilassay::job::Memory::Nothing,
         past: None,
     };
     accept(&lot, "lot.toml", &options).unwrap().record

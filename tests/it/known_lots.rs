@@ -86,7 +86,7 @@ fn judged() -> Vec<Judged> {
         keep: coilassay::job::Keep::default(),
         block_bytes: None,
         flags: Vec::new(),
-        last_check: None,
+        memory: coilassay::job::Memory::Nothing,
         past: None,
     };
     let (truths, options, folder) = (&truths, &options, &folder);

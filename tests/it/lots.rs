@@ -54,7 +54,7 @@ impl Lot {
             keep: coilassay::job::Keep::default(),
             block_bytes,
             flags: Vec::new(),
-            last_check: None,
+            memory: coilassay::job::Memory::Nothing,
             past: None,
         };
         accept(&self.place().join("lot.toml"), "lot.toml", &options)

@@ -29,6 +29,31 @@ fn the_files_of_the_readme_open() {
     let bench = rig::open(&file("rig.toml", "[export]"), "rig.toml")
         .unwrap_or_else(|fault| panic!("{fault:?}"));
     assert_eq!(bench.name, "Bench 1");
+    for exports in ["reference", "study"] {
+        std::fs::create_dir(folder.path().join(exports)).unwrap();
+        std::fs::write(folder.path().join(exports).join("1.csv"), "").unwrap();
+    }
+    let check = intake::open_check(&file("check.toml", "[[reference.load]]"), "check.toml")
+        .unwrap_or_else(|fault| panic!("{fault:?}"));
+    assert_eq!(check.reference.unwrap().spring.values.len(), 4);
+    let study = intake::open_study(&file("study.toml", "[study]"), "study.toml")
+        .unwrap_or_else(|fault| panic!("{fault:?}"));
+    assert_eq!(study.exports.len(), 1);
+    let table = block("[rig]").replace(
+        "compliance = { value = 0.00012, uncertainty = 0.00001, k = 2 }",
+        "",
+    );
+    let frame = block("[frame.compliance]");
+    std::fs::write(folder.path().join("rig-2.toml"), table + &frame).unwrap();
+    let bench = rig::open(&folder.path().join("rig-2.toml"), "rig-2.toml")
+        .unwrap_or_else(|fault| panic!("{fault:?}"));
+    assert!(matches!(
+        bench.frame,
+        rig::Compliance::Measured {
+            give: rig::Give::Table(_),
+            ..
+        }
+    ));
     std::fs::create_dir(folder.path().join("springs")).unwrap();
     std::fs::write(folder.path().join("springs/TG-01.csv"), "").unwrap();
     let lot = intake::open(&file("lot.toml", "[[repeat]]"), "lot.toml")

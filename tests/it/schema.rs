@@ -40,6 +40,75 @@ fn the_schema_is_what_the_types_say() {
     );
 }
 
+/// The results of `rig verify` and `rig repeat`: schemas as the types say, the samples keep to them, every key is met.
+#[test]
+fn the_schemas_of_the_rig() {
+    let schemas = [
+        (
+            "rig-verify.schema.json",
+            serde_json::to_value(schemars::schema_for!(coilassay::record::CheckRecord)).unwrap(),
+            ["verify", "samples/check/check.toml"],
+            [
+                "ComparisonFacts",
+                "FrameFacts",
+                "ReferenceFacts",
+                "RigFacts",
+            ]
+            .as_slice(),
+        ),
+        (
+            "rig-repeat.schema.json",
+            serde_json::to_value(schemars::schema_for!(coilassay::record::RepeatRecord)).unwrap(),
+            ["repeat", "samples/study/study.toml"],
+            [
+                "StudyFacts",
+                "VarianceRow",
+                "VariationShare",
+                "RangeFacts",
+                "ProposedFigure",
+                "StudyValue",
+            ]
+            .as_slice(),
+        ),
+    ];
+    for (file, made, [command, input], objects) in schemas {
+        let path = root(&format!("templates/{file}"));
+        if std::env::var_os("UPDATE_SCHEMA").is_some() {
+            let text = serde_json::to_string_pretty(&made).unwrap();
+            std::fs::write(&path, text + "\n").unwrap();
+        }
+        let published: Value =
+            serde_json::from_str(&std::fs::read_to_string(&path).unwrap()).unwrap();
+        assert!(
+            published == made,
+            "templates/{file} is not what the types say"
+        );
+        let output = Command::cargo_bin("coilassay")
+            .unwrap()
+            .args(["rig", command, "--json", "--date", "2026-12-01"])
+            .arg(root(input))
+            .output()
+            .unwrap();
+        let mut record: Value = serde_json::from_slice(&output.stdout).unwrap();
+        let schema = jsonschema::validator_for(&published).unwrap();
+        let faults: Vec<String> = schema
+            .iter_errors(&record)
+            .map(|fault| fault.to_string())
+            .collect();
+        assert!(faults.is_empty(), "{file}: {faults:#?}");
+        let (mut wanted, mut met) = (BTreeSet::new(), BTreeSet::new());
+        keys(&published["properties"], &mut wanted);
+        for name in objects {
+            keys(&published["$defs"][name]["properties"], &mut wanted);
+        }
+        all_keys(&record, &mut met);
+        let never: Vec<&String> = wanted.difference(&met).collect();
+        assert!(never.is_empty(), "{file}: never met: {never:?}");
+        record["decision"] = Value::from("fine");
+        assert!(!schema.is_valid(&record), "a word that is none passes");
+    }
+}
+
 #[test]
 fn every_sample_keeps_to_the_schema() {
     let schema = jsonschema::validator_for(&published()).unwrap();

@@ -5,7 +5,7 @@ use crate::doubt::{is_odd, reading};
 use crate::drawing::{Drawing, Requirement, Rule};
 use crate::quantity::Quantity;
 use crate::record::{BudgetFigure, Caution, CharacteristicResult, Oddity, Reason};
-use crate::rig::{Compliance, Rig};
+use crate::rig::Rig;
 use crate::stats::median;
 use crate::units::Finite;
 
@@ -13,7 +13,7 @@ use super::super::facts::figure;
 use super::alike::alike;
 use super::drawing_cautions::of_drawing;
 use super::figures::value_of;
-use super::rig_cautions::{large_compliance, of_check, of_rig};
+use super::rig_cautions::{beyond_table, large_compliance, of_check, of_rig};
 use super::springs::Judged;
 use super::{Files, Options, guards};
 
@@ -167,7 +167,7 @@ fn of_curves(rig: &Rig, full_load: f64, judged: &[Judged]) -> Vec<Caution> {
             .is_some_and(|(_, most)| spring.loads.1 > most)
     };
     let below = |spring: &Judged| {
-        let least = rig.force.range.map(|(least, _)| least);
+        let least = rig.force.usable_from();
         let judged_loads = spring
             .result
             .characteristics
@@ -193,24 +193,6 @@ fn of_curves(rig: &Rig, full_load: f64, judged: &[Judged]) -> Vec<Caution> {
     .into_iter()
     .flatten()
     .collect()
-}
-
-/// A judged load beyond what the table of the frame's give knows.
-fn beyond_table(rig: &Rig, spring: &Judged) -> bool {
-    let Compliance::Measured { give, .. } = &rig.frame else {
-        return false;
-    };
-    let Some(most) = give.known_to() else {
-        return false;
-    };
-    let loads = spring
-        .result
-        .characteristics
-        .iter()
-        .filter(|one| one.at_length_mm.is_some());
-    loads
-        .filter_map(|one| one.value)
-        .any(|load| load.get() > most)
 }
 
 /// Robust and fitted rate differ by more than 0.5 % and more than three standard uncertainties of the fit.

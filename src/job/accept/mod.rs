@@ -8,6 +8,7 @@ mod error;
 pub(super) mod figures;
 mod files;
 mod group;
+mod memory;
 mod plan;
 mod process;
 mod requirements;
@@ -25,7 +26,7 @@ use crate::curve::{Kept, Reduced, full_load, nominal_rate, window_of};
 use crate::doubt::doubt;
 use crate::drawing::{Drawing, Requirement, Rule};
 use crate::quantity::Class;
-use crate::record::{AcceptRecord, FORMAT, Kind, LastCheck, LedgerFacts, Provenance, TOOL};
+use crate::record::{AcceptRecord, FORMAT, Kind, LedgerFacts, Provenance, TOOL};
 use crate::rig::SpringFrom;
 use crate::text::InputFile;
 
@@ -38,6 +39,7 @@ use group::Spring;
 use springs::Judged;
 
 pub use deciding::Past;
+pub use memory::Memory;
 
 /// Faults of exports shown at once.
 const SHOWN: usize = 20;
@@ -57,8 +59,8 @@ pub struct Options {
     pub block_bytes: Option<usize>,
     /// Flags that bear on the result, as given.
     pub flags: Vec<String>,
-    /// The last passed check of the rig on a reference spring, where one is on record.
-    pub last_check: Option<LastCheck>,
+    /// Where earlier checks and lots are looked for.
+    pub memory: Memory,
     /// The lots before this one, for the switching rules.
     pub past: Option<Past>,
 }
@@ -81,6 +83,7 @@ pub struct Accepted {
 /// A report that names file, line and column where a file or an export cannot be used, or why nothing is judged.
 pub fn accept(path: &Path, as_written: &str, options: &Options) -> miette::Result<Accepted> {
     let files = files::open(path, as_written)?;
+    let options = &options.asked(&files)?;
     let wanted = wanted(&files.drawing);
     let stages = stage_windows(&files.drawing);
     let setup = Setup {
@@ -204,7 +207,7 @@ fn judge(
         .into_par_iter()
         .map(judge)
         .collect::<Result<Vec<_>, _>>()?;
-    let decided = deciding::decide_lot(files, terms, &judged, options.past.as_ref())?;
+    let decided = deciding::decide_lot(files, terms, &judged, options.past().as_ref())?;
     springs::mark_sample(&mut judged, &decided.sampled, decided.plan.sample_size);
     let cautions = cautions::cautions(files, terms.rule, &judged, finding, options);
     if options.strict {
@@ -256,6 +259,7 @@ fn provenance(mut sources: Sources, options: &Options) -> Provenance {
         flags: options.flags.clone(),
         inputs: sources.inputs,
         ledgers: sources.ledgers,
+        archive: options.memory.told().cloned(),
     }
 }
 

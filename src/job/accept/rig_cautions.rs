@@ -8,6 +8,7 @@ use crate::rig::{Accuracy, Compliance, Known, Means, Rig, Scale};
 use super::super::facts::figure;
 use super::Options;
 use super::error::AcceptError;
+use super::springs::Judged;
 
 /// Compliance times rate beyond which the frame is doubted.
 const SOFT: f64 = 0.05;
@@ -57,7 +58,7 @@ pub(in crate::job) fn of_rig(rig: &Rig, date: Date) -> Vec<Caution> {
 
 /// The last passed check, where it was made early enough before the judgement and not after it.
 pub(super) fn holding<'a>(rig: &Rig, options: &'a Options) -> Option<&'a LastCheck> {
-    let last = options.last_check.as_ref()?;
+    let last = options.memory.told()?.last_check.as_ref()?;
     let holds = match &rig.check_every {
         Some(every) => every
             .holds_until(last.date)
@@ -67,16 +68,21 @@ pub(super) fn holding<'a>(rig: &Rig, options: &'a Options) -> Option<&'a LastChe
     (holds && last.date <= options.date).then_some(last)
 }
 
-/// No passed check within the time the rig file asks for.
+/// A failed check that no passed one follows, or no passed check within the time the rig file asks for.
 pub(super) fn of_check(rig: &Rig, options: &Options) -> Option<Caution> {
+    let text = |last: &LastCheck| format!("{} ({})", last.date, last.id);
+    let told = options.memory.told();
+    if let Some(failed) = told.and_then(|told| told.failed_check.as_ref()) {
+        return Some(Caution::CheckFailed { last: text(failed) });
+    }
     let every = rig.check_every.as_ref()?;
     if holding(rig, options).is_some() {
         return None;
     }
-    let last = options.last_check.as_ref();
+    let last = told.and_then(|told| told.last_check.as_ref());
     Some(Caution::NoCheckOnRecord {
         every: every.written.clone(),
-        last: last.map(|last| format!("{} ({})", last.date, last.id)),
+        last: last.map(text),
     })
 }
 
@@ -109,6 +115,9 @@ pub(in crate::job) fn refused(cautions: &[Caution]) -> Option<String> {
         )),
         Caution::CalibrationUnknown { scale } => Some(format!(
             "the rig file states no calibration of the {scale} scale"
+        )),
+        Caution::CheckFailed { last } => Some(format!(
+            "the last check of the rig on record failed: {last}"
         )),
         Caution::NoCheckOnRecord { every, last } => Some(match last {
             Some(last) => format!(
@@ -150,4 +159,22 @@ pub(super) fn large_compliance(rig: &Rig, rate: f64) -> Option<Caution> {
     } else {
         None
     }
+}
+
+/// A judged load beyond what the table of the frame's give knows.
+pub(super) fn beyond_table(rig: &Rig, spring: &Judged) -> bool {
+    let Compliance::Measured { give, .. } = &rig.frame else {
+        return false;
+    };
+    let Some(most) = give.known_to() else {
+        return false;
+    };
+    let loads = spring
+        .result
+        .characteristics
+        .iter()
+        .filter(|one| one.at_length_mm.is_some());
+    loads
+        .filter_map(|one| one.value)
+        .any(|load| load.get() > most)
 }

@@ -2,7 +2,7 @@
 
 use std::collections::BTreeMap;
 
-use crate::bench::{Certified, compare};
+use crate::bench::{Certified, Comparison, compare};
 use crate::characteristic::{Characteristic, Estimate, Measured, Measurement, Setup, average};
 use crate::curve::{Bounds, WindowOf};
 use crate::drawing::{Method, Stroke, Way};
@@ -60,7 +60,13 @@ pub(super) fn compared(
     for one in values {
         let measured = averaged.iter().find(|found| found.quantity == one.quantity);
         let allowed = tightest.half(one).map(|half| half * file.share);
-        comparisons.push(comparison(one, measured, allowed)?);
+        let each = |reading: &Measurement| {
+            let mut all = reading.characteristics.iter();
+            all.find(|found| found.quantity == one.quantity)
+                .map(|found| found.measured.clone())
+        };
+        let each: Vec<Measured> = all.iter().filter_map(|reading| each(reading)).collect();
+        comparisons.push(comparison(one, measured, &each, allowed)?);
     }
     Ok(Compared {
         comparisons,
@@ -146,6 +152,7 @@ fn window_words(spring: &ReferenceSpring) -> String {
 fn comparison(
     of: &CertifiedValue,
     measured: Option<&Characteristic>,
+    each: &[Measured],
     allowed: Option<f64>,
 ) -> Result<ComparisonFacts, RigJobError> {
     let missing = || RigJobError::NotFinite {
@@ -158,7 +165,11 @@ fn comparison(
         value: of.value,
         standard: of.standard,
     };
-    let found = compare(&certified, measured, allowed);
+    let each: Vec<Comparison> = each
+        .iter()
+        .map(|one| compare(&certified, one, None))
+        .collect();
+    let found = compare(&certified, measured, allowed).beside(&each);
     let estimate: Option<&Estimate> = match measured {
         Measured::Value(estimate) => Some(estimate),
         Measured::Below(_) | Measured::Absent(_) => None,
@@ -193,20 +204,21 @@ fn comparison(
 /// What the readings make necessary to say: loads outside the range of the force scale, strokes left out, no zero.
 fn cautions(spring: &ReferenceSpring, rig: &Rig, readings: &[Reading]) -> Vec<Caution> {
     let mut found = Vec::new();
-    if let Some((least, most)) = rig.force.range {
-        let certified = spring
-            .values
-            .iter()
-            .filter(|one| one.quantity.at_length().is_some());
-        let below = certified.into_iter().any(|one| one.value < least);
-        let names = |of: &dyn Fn(&Reading) -> bool| -> Vec<String> {
-            let some = readings.iter().filter(|one| of(one));
-            some.map(|one| one.id.clone()).collect()
-        };
-        let springs = names(&|one| below || one.loads.1 > most);
-        if !springs.is_empty() {
-            found.push(Caution::LoadOutsideRange { springs });
-        }
+    let least = rig.force.usable_from();
+    let mut loads = spring
+        .values
+        .iter()
+        .filter(|one| one.quantity.at_length().is_some());
+    let below = loads.any(|one| least.is_some_and(|least| one.value < least));
+    let most = rig.force.range.map(|(_, most)| most);
+    let above = |one: &Reading| most.is_some_and(|most| one.loads.1 > most);
+    let springs: Vec<String> = readings
+        .iter()
+        .filter(|one| below || above(one))
+        .map(|one| one.id.clone())
+        .collect();
+    if !springs.is_empty() {
+        found.push(Caution::LoadOutsideRange { springs });
     }
     let unread: Vec<String> = readings
         .iter()

@@ -1,5 +1,7 @@
 //! Why nothing is said of a rig.
 
+use jiff::civil::Date;
+
 use crate::bench::BenchError;
 use crate::characteristic::MeasureError;
 use crate::export::ExportError;
@@ -105,6 +107,12 @@ pub(super) enum RigJobError {
         #[source]
         cause: serde_json::Error,
     },
+    #[error("the check was measured on {on}, but is judged on {date}, before that")]
+    #[diagnostic(
+        code(coilassay::rig::day),
+        help("write the day of the measuring: on = 2026-12-01 under [check]")
+    )]
+    Measured { on: Date, date: Date },
     #[error("{what}")]
     #[diagnostic(
         code(coilassay::rig::strict),

@@ -1,13 +1,16 @@
 //! `rig verify` and `rig repeat`: what a rig is worth, and what goes into its file.
 
+mod assigned;
 mod compare;
 mod error;
 mod exports;
 mod plates;
 mod repeat;
+mod repeat_outcome;
 mod shares;
 mod tolerances;
 mod verify;
+mod verify_outcome;
 
 use jiff::civil::Date;
 
@@ -48,5 +51,6 @@ fn provenance(inputs: Vec<InputFile>, sources: Sources, options: &RigOptions) ->
         flags: options.flags.clone(),
         inputs,
         ledgers: sources.ledgers,
+        archive: None,
     }
 }

@@ -87,6 +87,7 @@ pub(super) fn facts(frame: &Frame, rig: &Rig) -> Result<FrameFacts, RigJobError>
     let millimetres = |value: f64| Millimetres::try_from(value).map_err(|_| missing());
     Ok(FrameFacts {
         compliance_mm_per_n: figure(frame.compliance.value).ok_or_else(missing)?,
+        standard_uncertainty_mm_per_n: sum.and_then(|sum| figure(sum.standard)),
         expanded_uncertainty_mm_per_n: sum.and_then(|sum| figure(sum.expanded)),
         coverage_factor: sum.and_then(|sum| figure(sum.factor)),
         from_n: newtons(low)?,

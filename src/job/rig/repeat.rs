@@ -3,33 +3,28 @@
 use std::collections::BTreeMap;
 use std::path::Path;
 
-use crate::bench::{Crossed, Observation, Serving, overall};
-use crate::characteristic::{Measured, Setup, wanted};
+use crate::bench::{Crossed, Observation};
+use crate::characteristic::{Setup, wanted};
 use crate::curve::{Bounds, WindowOf, full_load, window_of};
 use crate::drawing::{self, Drawing, Method, Requirement, Stroke, Way};
-use crate::export::read_small;
-use crate::intake::{Assigned, Belongs, StudyFile, natural_order, open_study};
+use crate::intake::{StudyFile, open_study};
 use crate::quantity::Quantity;
 use crate::record::{
-    BenchCaution, FORMAT, ProposedFigure, RepeatKind, RepeatReason, RepeatRecord, StudyFacts,
-    StudyValue,
+    BenchCaution, FORMAT, ProposedFigure, RepeatKind, RepeatRecord, StudyFacts, StudyValue,
 };
 use crate::rig::{self, Change, Rig, edit};
-use crate::text::{InputFile, Source};
-use crate::units::Finite;
+use crate::text::Source;
 
 use super::super::accept::rig_cautions::{of_rig, refused};
 use super::super::facts::{self, figure};
 use super::super::read::{How, Keep, Reading};
+use super::assigned::{Placed, laid_out, placed, value_of};
 use super::error::RigJobError;
 use super::exports::{Sources, measurements};
-use super::shares::{Analysed, GOOD, analysed};
+use super::repeat_outcome::{decision, of_layout, of_study, reasons};
+use super::shares::{Analysed, analysed};
 use super::{Proposal, RigOptions, provenance};
 
-/// Degrees of freedom under which a standard deviation is itself uncertain by more than a fifth.
-const FEW: f64 = 10.0;
-/// Distinct categories under which parts are hardly told apart (AIAG MSA, from memory).
-const CATEGORIES: u32 = 5;
 /// The window of the rate where there is no drawing: as `rate` has it.
 const WINDOW: (f64, f64) = (0.3, 0.7);
 
@@ -40,12 +35,6 @@ pub struct Repeated {
     pub record: RepeatRecord,
     /// The rig file with the within-spring standard deviations in it.
     pub proposal: Option<Proposal>,
-}
-
-/// A measurement and where it belongs.
-struct Placed {
-    reading: Reading,
-    belongs: Belongs,
 }
 
 /// Studies the rig of the study file at `path`, written as `as_written`.
@@ -172,130 +161,6 @@ fn read(
     measurements(&file.exports, how, sources)
 }
 
-/// Every measurement with its part, operator and trial, in natural order of these.
-fn placed(
-    file: &StudyFile,
-    readings: Vec<Reading>,
-    inputs: &mut Vec<InputFile>,
-) -> Result<Vec<Placed>, RigJobError> {
-    for (place, one) in readings.iter().enumerate() {
-        if readings.iter().take(place).any(|other| other.id == one.id) {
-            return Err(RigJobError::Twice {
-                measurement: one.id.clone(),
-            });
-        }
-    }
-    let mut placed = Vec::new();
-    match &file.assigned {
-        Assigned::Names(names) => {
-            for reading in readings {
-                let belongs = names.read(&reading.id).ok_or_else(|| RigJobError::Name {
-                    measurement: reading.id.clone(),
-                })?;
-                placed.push(Placed { reading, belongs });
-            }
-        }
-        Assigned::Table((written, path)) => {
-            let mut rows = table(path, written, inputs)?;
-            for reading in readings {
-                let belongs = rows
-                    .remove(&reading.id)
-                    .ok_or_else(|| RigJobError::Unassigned {
-                        measurement: reading.id.clone(),
-                    })?;
-                placed.push(Placed { reading, belongs });
-            }
-            if let Some(measurement) = rows.into_keys().next() {
-                return Err(RigJobError::NoMeasurement { measurement });
-            }
-        }
-    }
-    placed.sort_by(|a, b| {
-        let (a, b) = (&a.belongs, &b.belongs);
-        natural_order(&a.operator, &b.operator)
-            .then_with(|| natural_order(&a.part, &b.part))
-            .then_with(|| natural_order(&a.trial, &b.trial))
-    });
-    Ok(placed)
-}
-
-/// The table of the study: what belongs where, by measurement.
-fn table(
-    path: &Path,
-    written: &str,
-    inputs: &mut Vec<InputFile>,
-) -> Result<BTreeMap<String, Belongs>, RigJobError> {
-    let table = read_small(path, written).map_err(|fault| RigJobError::Export(Box::new(fault)))?;
-    let wanted: Vec<&str> = table.header.iter().map(String::as_str).collect();
-    let operators = match wanted.as_slice() {
-        ["measurement", "part", "operator", "trial"] => true,
-        ["measurement", "part", "trial"] => false,
-        _ => {
-            return Err(RigJobError::Columns {
-                name: table.name.clone(),
-                found: table.header.join(", "),
-            });
-        }
-    };
-    inputs.push(InputFile {
-        role: "study table".to_owned(),
-        path: table.name.clone(),
-        sha256: table.sha256.clone(),
-    });
-    let mut rows = BTreeMap::new();
-    for (_, cells) in table.rows {
-        let mut cells = cells.into_iter();
-        let mut next = || cells.next().unwrap_or_default();
-        let (measurement, part) = (next(), next());
-        let operator = if operators { next() } else { String::new() };
-        let belongs = Belongs {
-            part,
-            operator,
-            trial: next(),
-        };
-        if rows.insert(measurement.clone(), belongs).is_some() {
-            return Err(RigJobError::Twice { measurement });
-        }
-    }
-    Ok(rows)
-}
-
-/// The observations of one value of each measurement.
-///
-/// # Errors
-/// The measurements that have none.
-fn laid_out(
-    placed: &[Placed],
-    of: impl Fn(&Reading) -> Option<f64>,
-) -> Result<Vec<Observation>, Vec<String>> {
-    let mut missing = Vec::new();
-    let mut found = Vec::new();
-    for one in placed {
-        match of(&one.reading) {
-            Some(value) => found.push(Observation {
-                part: one.belongs.part.clone(),
-                operator: one.belongs.operator.clone(),
-                trial: one.belongs.trial.clone(),
-                value,
-            }),
-            None => missing.push(one.reading.id.clone()),
-        }
-    }
-    if missing.is_empty() {
-        Ok(found)
-    } else {
-        Err(missing)
-    }
-}
-
-fn value_of(reading: &Reading, quantity: Quantity) -> Option<f64> {
-    let all = &reading.measurement.characteristics;
-    match &all.iter().find(|one| one.quantity == quantity)?.measured {
-        Measured::Value(estimate) => Some(estimate.value),
-        Measured::Below(_) | Measured::Absent(_) => None,
-    }
-}
-
 /// Every quantity that every measurement has a value of, and what is to be said of the others.
 fn studies(
     placed: &[Placed],
@@ -343,91 +208,6 @@ fn values(observations: Vec<Observation>) -> Result<Vec<StudyValue>, RigJobError
     };
     let all: Option<Vec<StudyValue>> = observations.into_iter().map(value).collect();
     all.ok_or(RigJobError::NotFinite { of: "study" })
-}
-
-/// What is to be said of one quantity besides its figures.
-fn of_study(one: &Analysed) -> Vec<BenchCaution> {
-    let (name, at_length_mm) = (one.facts.name.clone(), one.facts.at_length_mm);
-    let mut found = Vec::new();
-    if let Some(share) = one.share.filter(|share| *share > GOOD).and_then(figure) {
-        found.push(BenchCaution::LargeShare {
-            name: name.clone(),
-            at_length_mm,
-            share,
-        });
-    }
-    if let Some(categories) = one.facts.categories.filter(|number| *number < CATEGORIES) {
-        found.push(BenchCaution::FewCategories {
-            name,
-            at_length_mm,
-            categories,
-        });
-    }
-    found
-}
-
-/// What is to be said of the study's layout.
-fn of_layout(file: &StudyFile, layout: &Crossed, first: Option<&Analysed>) -> Vec<BenchCaution> {
-    let mut found = Vec::new();
-    let preset = file.conditions.presetting_strokes.unwrap_or(0) > 0
-        || file.conditions.presetting_recorded > 0;
-    if !preset {
-        found.push(BenchCaution::PresettingNotStated);
-    }
-    if layout.operators.len() < 2 {
-        found.push(BenchCaution::OneOperator);
-    }
-    if let Some(dof) = first.map(|one| one.dof).filter(|dof| *dof < FEW) {
-        // JCGM 100:2008, E.4.3: the relative uncertainty of a standard deviation of ν degrees of freedom is 1/√(2ν).
-        let relative = figure(1.0 / (2.0 * dof).sqrt());
-        if let (Some(degrees_of_freedom), Some(relative)) = (figure(dof), relative) {
-            found.push(BenchCaution::FewRepeats {
-                degrees_of_freedom,
-                relative,
-            });
-        }
-    }
-    found
-}
-
-fn reasons(studies: &[Analysed], drawing: Option<&Drawing>) -> Vec<RepeatReason> {
-    let mut found = Vec::new();
-    let required = drawing.iter().flat_map(|drawing| &drawing.requirements);
-    let on_bench = required.filter(|one| !one.quantity.by_caliper());
-    for one in on_bench.filter(|one| one.limits.half_width().is_some()) {
-        let (name, at_length_mm) = (one.quantity.name().to_owned(), one.quantity.at_length());
-        let study = studies
-            .iter()
-            .find(|study| study.facts.name == name && study.facts.at_length_mm == at_length_mm);
-        match study {
-            None => found.push(RepeatReason::NotAnalysed { name, at_length_mm }),
-            Some(study) if study.facts.serving == Some(Serving::Fails) => {
-                let share = study.share.and_then(figure).unwrap_or(Finite::ZERO);
-                found.push(RepeatReason::BeyondTolerance {
-                    name,
-                    at_length_mm,
-                    share,
-                });
-            }
-            Some(_) => {}
-        }
-    }
-    if found.is_empty() {
-        let largest = studies.iter().filter_map(|one| one.share).reduce(f64::max);
-        found.push(match largest.and_then(figure) {
-            Some(largest) => RepeatReason::WithinTolerance { largest },
-            None => RepeatReason::NoTolerance,
-        });
-    }
-    found
-}
-
-fn decision(reasons: &[RepeatReason]) -> Serving {
-    overall(reasons.iter().map(|reason| match reason {
-        RepeatReason::WithinTolerance { .. } => Serving::Serves,
-        RepeatReason::BeyondTolerance { .. } => Serving::Fails,
-        RepeatReason::NotAnalysed { .. } | RepeatReason::NoTolerance => Serving::Undecided,
-    }))
 }
 
 /// What goes into the rig file: of several loads the largest, for one figure stands for all lengths.

@@ -2,23 +2,23 @@
 
 use std::path::Path;
 
-use crate::bench::{Finding, Serving, overall};
+use jiff::civil::Date;
+
+use crate::bench::Serving;
 use crate::curve::thin;
-use crate::intake::{CheckFile, ReferenceSpring, open_check};
-use crate::record::{
-    BenchCaution, Caution, CheckKind, CheckReason, CheckRecord, ComparisonFacts, EarlierCheck,
-    FORMAT, FrameFacts,
-};
+use crate::intake::{CheckFile, open_check};
+use crate::record::{CheckKind, CheckRecord, EarlierCheck, FORMAT, FrameFacts};
 use crate::rig::{self, Change, Rig, edit};
 use crate::text::{InputFile, Source};
 
-use super::super::accept::rig_cautions::{of_rig, refused};
+use super::super::accept::rig_cautions::of_rig;
 use super::super::facts;
-use super::compare::{Compared, checked, compared};
+use super::compare::{Compared, compared};
 use super::error::RigJobError;
 use super::exports::Sources;
 use super::plates;
 use super::tolerances::{Tightest, tightest};
+use super::verify_outcome::{cautions, decision, reasons, refuse};
 use super::{Proposal, RigOptions, provenance};
 
 /// Readings of the plates' run that a chart keeps.
@@ -69,19 +69,33 @@ pub fn rig_verify(
     let proposal = change
         .map(|change| propose(&rig_source, &change))
         .transpose()?;
-    let record = record(
-        (&file, &rig),
-        (found, frame_facts, words),
-        all,
-        provenance(inputs, sources, options),
-        options,
-    )?;
+    let provenance = provenance(inputs, sources, options);
+    let measured = RigOptions {
+        date: day(&file, options)?,
+        ..options.clone()
+    };
+    let found = (found, frame_facts, words);
+    let record = record((&file, &rig), found, all, provenance, &measured)?;
     let readings = frame.map_or(Vec::new(), |frame| thin(&frame.readings, DRAWN));
     Ok(Verified {
         record,
         proposal,
         readings,
     })
+}
+
+/// The day that the check speaks of: the day it was measured. A check measured long ago and judged today holds from then.
+///
+/// # Errors
+/// [`RigJobError::Measured`] where that day is still to come.
+fn day(file: &CheckFile, options: &RigOptions) -> Result<Date, RigJobError> {
+    match file.on {
+        Some(on) if on > options.date => Err(RigJobError::Measured {
+            on,
+            date: options.date,
+        }),
+        on => Ok(on.unwrap_or(options.date)),
+    }
 }
 
 /// The rig file with a change in it, proven to open.
@@ -181,125 +195,4 @@ fn record(
         provenance,
         files: Vec::new(),
     })
-}
-
-fn covers(spring: &ReferenceSpring, options: &RigOptions) -> bool {
-    spring
-        .calibrated
-        .is_none_or(|(on, until)| on <= options.date && options.date <= until)
-}
-
-fn refuse(
-    cautions: &[Caution],
-    spring: Option<&ReferenceSpring>,
-    options: &RigOptions,
-) -> Result<(), RigJobError> {
-    let expired = spring
-        .filter(|spring| !covers(spring, options))
-        .map(|spring| {
-            format!(
-                "the certificate of reference spring {} does not cover the day of the check",
-                spring.name
-            )
-        });
-    expired
-        .or_else(|| refused(cautions))
-        .map_or(Ok(()), |what| Err(RigJobError::Strict { what }))
-}
-
-fn reasons(
-    comparisons: &[ComparisonFacts],
-    frame: Option<&FrameFacts>,
-    spring: Option<&ReferenceSpring>,
-    options: &RigOptions,
-) -> Vec<CheckReason> {
-    let mut found = Vec::new();
-    for finding in [
-        Finding::Disagrees,
-        Finding::BeyondShare,
-        Finding::CannotTell,
-        Finding::NotMeasured,
-    ] {
-        let places = (0..).zip(comparisons);
-        let of = places.filter(|(_, one)| one.finding == finding);
-        let comparisons: Vec<u32> = of.map(|(place, _)| place).collect();
-        if !comparisons.is_empty() {
-            found.push(CheckReason::Compared {
-                finding,
-                comparisons,
-            });
-        }
-    }
-    if frame.and_then(plates::differs).is_some() {
-        found.push(CheckReason::FrameDiffers);
-    }
-    match spring {
-        None => found.push(CheckReason::NoReference),
-        Some(spring) if !covers(spring, options) => found.push(CheckReason::ReferenceNotValid),
-        Some(_) if found.is_empty() => found.push(CheckReason::AllAgree {
-            compared: u32::try_from(comparisons.len()).unwrap_or(u32::MAX),
-        }),
-        Some(_) => {}
-    }
-    found
-}
-
-fn decision(comparisons: &[ComparisonFacts], reasons: &[CheckReason]) -> Serving {
-    let of_reasons = reasons.iter().filter_map(|reason| match reason {
-        CheckReason::FrameDiffers => Some(Serving::Fails),
-        CheckReason::NoReference | CheckReason::ReferenceNotValid => Some(Serving::Undecided),
-        CheckReason::AllAgree { .. } | CheckReason::Compared { .. } => None,
-    });
-    overall(
-        comparisons
-            .iter()
-            .map(|one| one.finding.serving())
-            .chain(of_reasons),
-    )
-}
-
-fn cautions(
-    of_bench: Vec<Caution>,
-    (file, rig): (&CheckFile, &Rig),
-    comparisons: &[ComparisonFacts],
-    frame: Option<&FrameFacts>,
-    measurements: Option<u32>,
-    options: &RigOptions,
-) -> Vec<BenchCaution> {
-    let mut found = Vec::new();
-    if let Some(check) = &file.reference {
-        let spring = &check.spring;
-        let reference = spring.name.clone();
-        match spring.calibrated {
-            None => found.push(BenchCaution::ReferenceUndated { reference }),
-            Some((_, until)) if !covers(spring, options) => {
-                let until = until.to_string();
-                found.push(BenchCaution::ReferenceExpired { reference, until });
-            }
-            Some(_) => {}
-        }
-        if spring.values.iter().any(|one| !checked(rig, one)) {
-            found.push(BenchCaution::FreeLengthNotChecked);
-        }
-    }
-    if measurements == Some(1) {
-        found.push(BenchCaution::MeasuredOnce);
-    }
-    if let Some(e_n) = frame.and_then(plates::differs) {
-        found.push(BenchCaution::FrameDiffers { e_n });
-    }
-    if frame.is_some_and(|frame| frame.expanded_uncertainty_mm_per_n.is_none()) {
-        found.push(BenchCaution::FrameUncertaintyUnknown);
-    }
-    let without = comparisons.iter().filter(|one| one.allowed_error.is_none());
-    found.extend(without.map(|one| BenchCaution::NoTolerance {
-        name: one.name.clone(),
-        at_length_mm: one.at_length_mm,
-    }));
-    found.extend(
-        of_bench
-            .into_iter()
-            .map(|caution| BenchCaution::Rig { caution }),
-    );
-    found
 }

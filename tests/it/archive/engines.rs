@@ -88,8 +88,7 @@ type Figures = Vec<(String, f64)>;
 
 /// Our own: mean rate of each lot, and the rate of each spring, by name.
 fn ours(case: &Case) -> (Figures, Figures) {
-    let archive = coilassay::archive::Archive::open(&root(case)).unwrap();
-    let runs = coilassay::archive::latest(archive.runs(None).unwrap().runs);
+    let runs = coilassay::archive::latest(super::read(&root(case)).runs);
     let (mut means, mut rates) = (Vec::new(), Vec::new());
     for run in &runs {
         let rate = run

@@ -4,9 +4,7 @@ use std::fs;
 use std::process::{Command, Stdio};
 use std::time::{Duration, Instant};
 
-use coilassay::archive::Archive;
-
-use super::{files, keep, root, skipped, text, tool};
+use super::{files, keep, read, root, skipped, text, tool};
 use crate::bad_input::Case;
 use crate::folder::held;
 
@@ -50,7 +48,7 @@ fn killed_at_200_instants_only_the_unfinished_run_is_lost() {
         child.kill().unwrap();
         let finished = child.wait().unwrap().code();
         killed += u32::from(finished.is_none());
-        let found = Archive::open(&archive).unwrap().runs(None).unwrap();
+        let found = read(&archive);
         assert!(found.unreadable.is_empty(), "{:?}", found.unreadable);
         let now = found.runs.len();
         assert!(
@@ -64,10 +62,7 @@ fn killed_at_200_instants_only_the_unfinished_run_is_lost() {
         known = now;
     }
     assert!(killed > 20, "only {killed} of {KILLS} were killed");
-    let numbers: Vec<i64> = Archive::open(&archive)
-        .unwrap()
-        .runs(None)
-        .unwrap()
+    let numbers: Vec<i64> = read(&archive)
         .runs
         .iter()
         .map(|run| run.run.number)
@@ -102,7 +97,7 @@ fn eight_processes_write_at_once() {
         let err = String::from_utf8(output.stderr).unwrap();
         assert_eq!(output.status.code(), Some(3), "{err}");
     }
-    let found = Archive::open(&root(&case)).unwrap().runs(None).unwrap();
+    let found = read(&root(&case));
     assert_eq!((found.runs.len(), found.unreadable.len()), (8, 0));
     assert_eq!(coilassay::archive::latest(found.runs).len(), 1);
     assert_eq!(tool(&case, &["recheck", "archive"]).code, Some(0));

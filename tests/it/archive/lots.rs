@@ -2,10 +2,10 @@
 
 use std::collections::BTreeSet;
 
-use coilassay::archive::{Archive, LAYOUT, key};
+use coilassay::archive::{LAYOUT, key};
 use serde_json::Value;
 
-use super::{files, keep, root, text, tool};
+use super::{files, keep, read, root, text, tool};
 use crate::bad_input::Case;
 
 /// One lot after the other, each under another name.
@@ -107,7 +107,7 @@ fn a_lot_judged_again_is_a_new_run_and_readers_take_the_latest() {
             ("1", "East", "H-9"),
         ],
     );
-    let found = Archive::open(&root(&case)).unwrap().runs(None).unwrap();
+    let found = read(&root(&case));
     assert!(found.unreadable.is_empty());
     let runs: Vec<(&str, i64, bool)> = found
         .runs
@@ -150,7 +150,7 @@ fn the_springs_file_holds_every_figure_of_the_result() {
     let case = Case::of("rejected");
     let ran = case.run(&["--archive", "archive", "--json"]);
     let result: Value = serde_json::from_slice(&ran.out).unwrap();
-    let found = Archive::open(&root(&case)).unwrap().runs(None).unwrap();
+    let found = read(&root(&case));
     let [run] = found.runs.as_slice() else {
         panic!("one run")
     };
@@ -283,12 +283,7 @@ fn the_layout_is_the_documented_one() {
         (mark["tool"].as_str(), mark["layout"].as_i64()),
         (Some("coilassay"), Some(LAYOUT))
     );
-    let run = Archive::open(&archive)
-        .unwrap()
-        .runs(None)
-        .unwrap()
-        .runs
-        .remove(0);
+    let run = read(&archive).runs.remove(0);
     let folder = format!("drawing_key={}/lot_key={}", key("TG-118"), key("0425"));
     for (tree, end) in [
         ("springs", "parquet"),

@@ -3,6 +3,7 @@
 mod engines;
 mod interrupted;
 mod lots;
+mod memory;
 mod recheck;
 mod spoilt;
 
@@ -10,6 +11,7 @@ use std::fs;
 use std::io::Write;
 use std::path::{Path, PathBuf};
 
+use coilassay::archive::{Archive, LotRun, Unreadable};
 use sha2::{Digest, Sha256};
 
 use crate::bad_input::{Case, Ran};
@@ -47,6 +49,18 @@ pub(crate) fn tool(case: &Case, words: &[&str]) -> Ran {
         out: output.stdout,
         err: String::from_utf8(output.stderr).unwrap(),
     }
+}
+
+/// What an archive holds.
+pub(crate) struct Read {
+    pub(crate) runs: Vec<LotRun>,
+    pub(crate) unreadable: Vec<Unreadable>,
+}
+
+pub(crate) fn read(archive: &Path) -> Read {
+    let found = Archive::open(archive).unwrap().runs(None).unwrap();
+    let (runs, unreadable) = found.passed_over();
+    Read { runs, unreadable }
 }
 
 /// Writes the checksums of the run whose record is `record` anew, as the files are now.

@@ -2,10 +2,9 @@
 
 use std::fs;
 
-use coilassay::archive::Archive;
 use polars::prelude::{Column, DataFrame, ParquetWriter};
 
-use super::{files, keep, root, sum_anew, text, tool};
+use super::{files, keep, read, root, sum_anew, text, tool};
 use crate::bad_input::{Case, squeezed};
 
 fn two_lots() -> Case {
@@ -120,7 +119,7 @@ fn a_run_under_another_runs_name_is_not_taken() {
     let other = file.with_file_name("20300101T000000.000000Z-00000000.parquet");
     fs::copy(&file, &other).unwrap();
     let unreadable = || {
-        let found = Archive::open(&archive).unwrap().runs(None).unwrap();
+        let found = read(&archive);
         assert_eq!((found.runs.len(), found.unreadable.len()), (2, 1));
         found.unreadable[0].why.clone()
     };
@@ -147,7 +146,7 @@ fn a_truncated_file_is_named_wherever_it_ends() {
         .chain(whole.len() - 12..whole.len())
     {
         fs::write(&file, &whole[..end]).unwrap();
-        let found = Archive::open(&root(&case)).unwrap().runs(None).unwrap();
+        let found = read(&root(&case));
         assert_eq!(
             (found.runs.len(), found.unreadable.len()),
             (1, 1),
@@ -179,7 +178,7 @@ fn a_flipped_byte_is_never_a_figure_without_a_word() {
         let mut bytes = whole.clone();
         bytes[place] ^= 0x5A;
         fs::write(&file, &bytes).unwrap();
-        let found = Archive::open(&archive).unwrap().runs(None).unwrap();
+        let found = read(&archive);
         assert_eq!(
             (found.runs.len(), found.unreadable.len()),
             (1, 1),

@@ -168,6 +168,7 @@ pub(crate) fn record(ids: &[String], off: impl Fn(usize) -> f64) -> AcceptRecord
             date: "2026-12-01".to_owned(),
             flags: vec!["--show-in".to_owned(), "mm-N".to_owned()],
             inputs: inputs(ids),
+            archive: None,
             ledgers: ids.iter().map(|id| facts::ledger(id)).collect(),
         },
         files: Vec::new(),

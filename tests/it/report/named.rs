@@ -266,7 +266,7 @@ fn a_repeated_spring_is_drawn_under_its_own_id() {
         },
         block_bytes: None,
         flags: Vec::new(),
-        last_check: None,
+        memory: coilassay::job::Memory::Nothing,
         past: None,
     };
     let lot = "samples/undecided/lot.toml";
