@@ -22,6 +22,8 @@ mod known;
 mod known_text;
 #[path = "generate/nested.rs"]
 mod nested;
+#[path = "generate/plans.rs"]
+mod plans;
 #[path = "generate/random.rs"]
 mod random;
 #[path = "generate/rejected.rs"]
@@ -76,7 +78,8 @@ fn run(words: &[String]) -> Outcome {
             undecided::write(&place.join("undecided"))?;
             nested::write(&place.join("nested"))?;
             check::write(&place.join("check"))?;
-            study::write(&place.join("study"))
+            study::write(&place.join("study"))?;
+            plans::write(&place.join("plans"))
         }
         "large" => {
             let [springs, rows] = options(rest, [("--springs", 10_000), ("--rows", 1000)])?;

@@ -84,7 +84,8 @@ fn export(specimen: &Specimen, random: &mut Random) -> std::io::Result<Vec<u8>> 
     Ok(out)
 }
 
-const REQUIREMENTS: &str = r#"[requirements]
+/// What the drawing requires, and its rate test.
+pub(crate) const REQUIREMENTS: &str = r#"[requirements]
 rate = { nominal = 10.6, tolerance = "5 %", class = "major" }
 free_length = { nominal = 90.0, tolerance = 1.8, class = "minor" }
 solid_length = { maximum = 38.4, class = "minor" }
@@ -146,7 +147,8 @@ of = "free_length"
 standard_deviation = 0.03
 "#;
 
-const LOT: &str = r#"drawing = "tg-204.toml"
+/// The lot file.
+pub(crate) const LOT: &str = r#"drawing = "tg-204.toml"
 rig = "bench-1.toml"
 exports = ["springs/*.csv"]
 findings = "caliper.csv"

@@ -9,6 +9,7 @@ mod expected;
 mod field;
 mod histogram;
 mod ids;
+pub(crate) mod operating;
 mod share;
 mod study;
 mod trend;

@@ -8,7 +8,7 @@ use miette::IntoDiagnostic;
 use sha2::{Digest, Sha256};
 
 use crate::archive::Archive;
-use crate::job::{self, Accepted, Memory};
+use crate::job::{self, Accepted, Memory, Past};
 use crate::record::{Decision, OutputFile};
 use crate::report::{self, OutFile, Template, Templates};
 use crate::text::{Source, hex};
@@ -24,10 +24,6 @@ pub(super) fn run(args: &AcceptArgs, quiet: bool, out: &mut impl Write) -> miett
         .map(Archive::open_or_begin)
         .transpose()?;
     let templates = templates(args.templates.as_deref())?;
-    let past = args
-        .history
-        .as_deref()
-        .map(|path| job::read_history(path, &path.to_string_lossy()));
     let options = job::Options {
         date: date(args.date)?,
         units_confirmed: args.units_confirmed,
@@ -39,7 +35,7 @@ pub(super) fn run(args: &AcceptArgs, quiet: bool, out: &mut impl Write) -> miett
         block_bytes: None,
         flags: flags(args),
         memory: archive.clone().map_or(Memory::Nothing, Memory::Archive),
-        past: past.transpose()?,
+        past: history(args.history.as_deref())?,
     };
     let mut accepted = job::accept(&args.lot, &args.lot.to_string_lossy(), &options)?;
     let files = if args.out.is_some() {
@@ -69,6 +65,12 @@ pub(super) fn run(args: &AcceptArgs, quiet: bool, out: &mut impl Write) -> miett
         write!(out, "{}", report::summary(record, args.show_in.into())).into_diagnostic()?;
     }
     Ok(status(record.decision))
+}
+
+/// The past lots of a history file.
+pub(super) fn history(file: Option<&Path>) -> miette::Result<Option<Past>> {
+    file.map(|file| job::read_history(file, &file.to_string_lossy()))
+        .transpose()
 }
 
 const fn status(decision: Decision) -> u8 {
@@ -109,12 +111,16 @@ fn files(
         bytes: report::springs_csv(record),
     });
     files.sort_by(|a, b| a.path.cmp(&b.path));
-    let listed = |file: &OutFile| OutputFile {
-        path: file.path.clone(),
-        sha256: hex(&Sha256::digest(&file.bytes)),
-    };
     accepted.record.files = files.iter().map(listed).collect();
     Ok(files)
+}
+
+/// A file as a result lists it.
+pub(super) fn listed(file: &OutFile) -> OutputFile {
+    OutputFile {
+        path: file.path.clone(),
+        sha256: hex(&Sha256::digest(&file.bytes)),
+    }
 }
 
 /// The date of the judgement: as given, else SOURCE_DATE_EPOCH, else today, in UTC.

@@ -6,6 +6,7 @@ mod draft;
 mod expect;
 mod folder;
 mod lots;
+mod plan;
 mod rate;
 mod recheck;
 mod rig;
@@ -71,6 +72,7 @@ fn dispatch(arguments: &Arguments, out: &mut impl Write) -> miette::Result<u8> {
         Command::Lots(args) => lots::run(args, out),
         Command::Recheck(args) => recheck::run(args, out),
         Command::Draft { kind } => draft::run(kind, out),
+        Command::Plan(args) => plan::run(args, arguments.quiet, out),
         Command::Completions { shell } => Ok(shell::completions(*shell, out)),
         Command::Manual { dir } => shell::manual(dir),
     }

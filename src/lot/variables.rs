@@ -92,7 +92,8 @@ pub fn by_variables(
         decision: Decision::Undecided,
     };
     if (first.len() as u64) < plan.sample_size {
-        return Ok(missing(first.len()));
+        let size = usize::try_from(plan.sample_size).unwrap_or(usize::MAX);
+        return Ok(missing(observations.iter().take(size).flatten().count()));
     }
     let (wanted, reach) = match rule {
         Rule::Simple => (plan.sample_size, 0.0),
@@ -141,10 +142,11 @@ pub fn by_variables(
     })
 }
 
-/// The values among the first `size` springs.
+/// The values of the first `size` springs, up to a spring without one: none is passed over in favour of the next.
 fn taken(observations: &[Option<Observation>], size: u64) -> Vec<Observation> {
     let size = usize::try_from(size).unwrap_or(usize::MAX);
-    observations.iter().take(size).flatten().cloned().collect()
+    let first = observations.iter().take(size);
+    first.map_while(Clone::clone).collect()
 }
 
 /// Springs wanted on this bench. Where its scatter explains all that was seen, no number is enough.

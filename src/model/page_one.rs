@@ -74,11 +74,23 @@ pub(crate) fn deciding(record: &AcceptRecord, show_in: System) -> Deciding {
             of(Verdict::Fails),
             of(Verdict::Undecided)
         ),
-        why: record.reasons.iter().map(wording::why).collect(),
+        why: why(record),
         springs: named::lines(record, show_in),
         simple: wording::simple_line(record),
         terms: wording::terms(&record.drawing),
     }
+}
+
+/// The grounds, and that springs still missing change nothing where that is so.
+fn why(record: &AcceptRecord) -> Vec<String> {
+    let classes = record.plan.classes.iter();
+    let early = classes.filter_map(wording::settled_early);
+    record
+        .reasons
+        .iter()
+        .map(wording::why)
+        .chain(early)
+        .collect()
 }
 
 /// The lot's note, the concession, what was not inspected.
@@ -99,10 +111,12 @@ pub(crate) fn notes(record: &AcceptRecord) -> Vec<Note> {
         notes.push(note("Not inspected", &lot.not_inspected.join("; ")));
     }
     if record.decision == Decision::Undecided && with_verdict(record, Verdict::Undecided) > 0 {
-        notes.push(note(
-            "What would settle it",
-            "See the part “What would settle it”; the table of the springs has the advice for each one.",
-        ));
+        let text = if record.plan.settling.is_empty() {
+            "The table of the springs says for each undecided spring what would settle it."
+        } else {
+            "See the part “What would settle it”; the table of the springs has the advice for each one."
+        };
+        notes.push(note("What would settle it", text));
     }
     notes
 }

@@ -110,7 +110,7 @@ fn one(of: &VariablesFacts, show_in: System) -> Row {
     let n = if of.measured == of.sample_size {
         of.sample_size.to_string()
     } else {
-        format!("{} of {}", of.measured, of.sample_size)
+        format!("{} (plan {})", of.measured, of.sample_size)
     };
     let measured = |value: Option<Finite>| {
         figure(

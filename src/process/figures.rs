@@ -5,9 +5,8 @@ use super::shape::{Shape, outliers, shape};
 use super::{CONFIDENCE, CONTENT};
 use crate::drawing::Limits;
 use crate::stats::{
-    Dof, StatsError, clopper_pearson, cpk_bounds, distance_bounds, mean, normal_cdf,
-    normal_quantile, one_sided_factor, spread_factors, standard_deviation, student_quantile,
-    two_sided_factor,
+    Dof, StatsError, clopper_pearson, mean, normal_quantile, one_sided_factor, spread_factors,
+    standard_deviation, student_quantile, two_sided_factor,
 };
 
 /// Share of s² that must be the springs' own for figures that divide by their standard deviation: with less, what the
@@ -89,13 +88,13 @@ pub struct Figures {
 }
 
 /// A sample in the making of its figures.
-struct Sample<'a> {
-    of: &'a [Observation],
-    limits: &'a Limits,
-    n: u64,
+pub(super) struct Sample<'a> {
+    pub(super) of: &'a [Observation],
+    pub(super) limits: &'a Limits,
+    pub(super) n: u64,
     mean: f64,
     /// s.
-    s: f64,
+    pub(super) s: f64,
     /// Mean square of the own uncertainties.
     own: f64,
     /// Factor of the common part.
@@ -162,7 +161,7 @@ pub fn figures(of: &[Observation], limits: &Limits) -> Result<Option<Figures>, S
 
 impl Sample<'_> {
     /// The springs' variance where the values have the standard deviation `s`.
-    fn variance(&self, s: f64) -> f64 {
+    pub(super) fn variance(&self, s: f64) -> f64 {
         (s * s - self.own).max(0.0)
     }
 
@@ -174,14 +173,14 @@ impl Sample<'_> {
     }
 
     /// The springs' standard deviation of some values; `None` where the bench's scatter explains all.
-    fn sigma(&self, values: &[f64]) -> Option<f64> {
+    pub(super) fn sigma(&self, values: &[f64]) -> Option<f64> {
         let sigma = self.variance(standard_deviation(values)?).sqrt();
         (sigma > 0.0).then_some(sigma)
     }
 
     /// A sampled interval about `value`, each end moved out by the common part in squares: the interval of a sum from the
     /// intervals of its parts (the method of variance estimates recovery; Zou and Donner, from memory).
-    fn widened(&self, value: f64, sampled: (f64, f64), common: f64) -> Interval {
+    pub(super) fn widened(&self, value: f64, sampled: (f64, f64), common: f64) -> Interval {
         let common = self.factor * common;
         Interval {
             lower: value - (value - sampled.0).hypot(common),
@@ -237,83 +236,6 @@ impl Sample<'_> {
         }))
     }
 
-    /// How far the mean lies inside a limit, in the springs' standard deviations; each bound at the one-sided `tail`.
-    fn distance(&self, limit: f64, side: f64, tail: f64) -> Result<Option<Estimated>, StatsError> {
-        let of = |values: &[f64]| Some(side * (limit - mean(values)?) / self.sigma(values)?);
-        let values: Vec<f64> = self.of.iter().map(|one| one.value).collect();
-        let (Some(value), Some(sigma)) = (of(&values), self.sigma(&values)) else {
-            return Ok(None);
-        };
-        let Some(common) = common_uncertainty(self.of, of) else {
-            return Ok(None);
-        };
-        let ratio = self.s / sigma;
-        let (least, most) = distance_bounds(value / ratio, self.n, tail)?;
-        let interval = self.widened(value, (least * ratio, most * ratio), common);
-        Ok(Some(Estimated { value, interval }))
-    }
-
-    fn capability(&self) -> Result<Option<Capability>, StatsError> {
-        let tail = (1.0 - CONFIDENCE) / 2.0;
-        let (lower, upper) = (self.limits.lower, self.limits.upper);
-        let tail = if lower.is_some() && upper.is_some() {
-            tail / 2.0 // the shares of both tails are added: each bound holds with twice the certainty
-        } else {
-            tail
-        };
-        let mut sides = Vec::new();
-        for (limit, side) in [(lower, -1.0), (upper, 1.0)] {
-            if let Some(limit) = limit {
-                sides.extend(self.distance(limit, side, tail)?);
-            }
-        }
-        let Some(nearest) = sides
-            .iter()
-            .copied()
-            .min_by(|a, b| a.value.total_cmp(&b.value))
-        else {
-            return Ok(None);
-        };
-        let outside = beyond(&sides)?;
-        let (pp, ppk) = match (lower, upper) {
-            (Some(lower), Some(upper)) => (self.pp(upper - lower)?, self.ppk(lower, upper)?),
-            _ => (None, Some(nearest.over(3.0))),
-        };
-        Ok(ppk.map(|ppk| Capability { pp, ppk, outside }))
-    }
-
-    /// Pp; its sampled interval is that of the springs' deviation turned over.
-    fn pp(&self, width: f64) -> Result<Option<Estimated>, StatsError> {
-        let of = |values: &[f64]| Some(width / (6.0 * self.sigma(values)?));
-        let (least, most) = spread_factors(self.n, CONFIDENCE)?;
-        let at = |factor: f64| width / (6.0 * self.variance(self.s * factor).sqrt());
-        self.index(of, |_, _, _| Ok((at(most), at(least))))
-    }
-
-    fn ppk(&self, lower: f64, upper: f64) -> Result<Option<Estimated>, StatsError> {
-        let of = |values: &[f64]| {
-            let centre = mean(values)?;
-            Some((upper - centre).min(centre - lower) / (3.0 * self.sigma(values)?))
-        };
-        self.index(of, cpk_bounds)
-    }
-
-    fn index(
-        &self,
-        of: impl Fn(&[f64]) -> Option<f64>,
-        bounds: impl Fn(f64, u64, f64) -> Result<(f64, f64), StatsError>,
-    ) -> Result<Option<Estimated>, StatsError> {
-        let values: Vec<f64> = self.of.iter().map(|one| one.value).collect();
-        let Some(value) = of(&values) else {
-            return Ok(None);
-        };
-        let Some(common) = common_uncertainty(self.of, of) else {
-            return Ok(None);
-        };
-        let interval = self.widened(value, bounds(value, self.n, CONFIDENCE)?, common);
-        Ok(Some(Estimated { value, interval }))
-    }
-
     /// Mean ± k·s, moved out by the common part of mean ± z·s. s is that of the values: the bench's own scatter in it
     /// makes the interval wider than the springs need, never narrower.
     fn tolerance(
@@ -332,31 +254,4 @@ impl Sample<'_> {
             .zip(end(1.0))
             .map(|(lower, upper)| Interval { lower, upper }))
     }
-}
-
-impl Estimated {
-    fn over(self, divisor: f64) -> Self {
-        Self {
-            value: self.value / divisor,
-            interval: Interval {
-                lower: self.interval.lower / divisor,
-                upper: self.interval.upper / divisor,
-            },
-        }
-    }
-}
-
-/// The share beyond the limits from the distances to them.
-fn beyond(sides: &[Estimated]) -> Result<Estimated, StatsError> {
-    let sum = |of: fn(&Estimated) -> f64| {
-        let shares = sides.iter().map(|side| normal_cdf(-of(side)));
-        shares.sum::<Result<f64, StatsError>>()
-    };
-    Ok(Estimated {
-        value: sum(|side| side.value)?.min(1.0),
-        interval: Interval {
-            lower: sum(|side| side.interval.upper)?,
-            upper: sum(|side| side.interval.lower)?.min(1.0),
-        },
-    })
 }

@@ -2,6 +2,7 @@
 //! values that stand out; each interval with the bench's common uncertainty whole.
 //! Elsewhere: the distributions (`stats`), the decision (`lot`), words (`wording`).
 
+mod capability;
 mod common;
 mod figures;
 mod shape;

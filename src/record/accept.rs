@@ -25,6 +25,8 @@ pub enum Kind {
     Accept,
     /// `expect`.
     Expect,
+    /// `plan`.
+    Plan,
 }
 
 /// What simple acceptance would have said, and whose risk it is.

@@ -9,6 +9,7 @@ mod compare;
 mod expect;
 mod facts;
 mod find;
+mod offers;
 mod plan;
 mod process;
 mod repeat;
@@ -31,6 +32,7 @@ pub use expect::{
 };
 pub use facts::{MemberFacts, RigFacts, StressFacts, TheoryFacts, WindowFacts};
 pub use find::{Key, find, occurring};
+pub use offers::{BenchFacts, CurvePoint, OfferFacts, OffersRecord};
 pub use plan::{ClassPlan, PlanFacts, SettlingFacts, StateFacts, VariablesFacts, ZeroAcceptFacts};
 pub use process::{EstimatedFacts, IntervalFacts, ProcessFacts, ShapeFacts};
 pub use repeat::{

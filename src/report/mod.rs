@@ -5,6 +5,7 @@ mod csv;
 mod error;
 mod gate;
 mod html;
+mod offers;
 mod pdf;
 mod plain;
 mod summary;
@@ -13,6 +14,7 @@ pub use csv::springs_csv;
 pub use error::ReportError;
 pub use summary::{page_summary, summary};
 
+pub use offers::{offers, offers_summary};
 use serde::Serialize;
 
 use crate::charts;

@@ -1,7 +1,7 @@
 //! The judgement for the terminal: the decision first, then why. About thirty lines for any number of springs.
 
 use crate::model::{Page, labelled};
-use crate::record::{AcceptRecord, RequirementFacts, SpringResult, Verdict};
+use crate::record::{AcceptRecord, Decision, RequirementFacts, SpringResult, Verdict};
 use crate::text::{Alphabet, printable};
 use crate::units::{Finite, System};
 use crate::wording;
@@ -31,6 +31,15 @@ pub fn summary(record: &AcceptRecord, show_in: System) -> String {
             .take(4)
             .map(|reason| format!("  {}", wording::why(reason))),
     );
+    let classes = || record.plan.classes.iter();
+    let mut besides: Vec<String> = classes().filter_map(wording::settled_early).collect();
+    if record.decision == Decision::Undecided {
+        besides.extend(classes().filter_map(wording::readings));
+    }
+    lines.extend(besides.into_iter().map(|line| format!("  {line}")));
+    if let Some(state) = record.plan.state.as_ref().filter(|of| of.reason.is_some()) {
+        lines.push(format!("  Inspection {}", wording::state(state)));
+    }
     lines.push(format!("  {}", wording::simple_line(record)));
     lines.extend(record.lot.note.iter().map(|note| format!("  Note: {note}")));
     let requirements = &record.drawing.requirements;

@@ -9,6 +9,7 @@ mod iso2859;
 mod iso2859_table;
 mod mil_std_414;
 mod mil_std_414_table;
+mod offer;
 mod switching;
 mod zero_accept;
 
@@ -17,6 +18,7 @@ pub use design::{Designed, Points, designed};
 pub use error::PlanError;
 pub use iso2859::{Aql, Arrow, CodeLetter, SinglePlan, probability_of_acceptance, single, tighter};
 pub use mil_std_414::{FREE_OF_SCATTER, VariablesPlan, most_share, variables_plan};
+pub use offer::Offer;
 pub use switching::{Next, Outcome, PastLot, Reason, next};
 pub use zero_accept::{ZeroAccept, zero_accept};
 

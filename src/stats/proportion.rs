@@ -9,6 +9,9 @@ use super::numeric::root;
 /// Most trials; the same limit as the binomial sum's.
 const MOST_TRIALS: u64 = 100_000;
 
+/// Below this a chance is none; the product of a huge lot's factors ends here.
+const NOTHING: f64 = 1e-30;
+
 /// Exact (Clopper–Pearson) bounds of a share after `hits` in `trials`, at this two-sided `confidence` (0 to 1).
 ///
 /// # Errors
@@ -61,13 +64,19 @@ pub fn none_drawn(all: u64, marked: u64, drawn: u64) -> Result<f64, StatsError> 
             });
         }
     }
-    if marked + drawn > all {
+    if drawn > all - marked {
         return Ok(0.0);
     }
     // The product is the same with marked and drawn exchanged; the shorter one is taken.
     let (fewer, more) = (marked.min(drawn), marked.max(drawn));
-    let factor = |i: u64| (all - more - i) as f64 / (all - i) as f64;
-    Ok((0..fewer).map(factor).product())
+    let mut chance = 1.0;
+    for i in 0..fewer {
+        chance *= (all - more - i) as f64 / (all - i) as f64;
+        if chance < NOTHING {
+            return Ok(0.0);
+        }
+    }
+    Ok(chance)
 }
 
 /// The share of a normal population beyond a limit, unbiased of least variance, from a sample of `n` whose mean lies

@@ -22,7 +22,7 @@ pub use figure::{
     with_uncertainty, with_unit,
 };
 pub(crate) use lot::{decided, decision_word, simple_line, terms, why};
-pub(crate) use plan::{compared, readings, state};
+pub(crate) use plan::{compared, readings, settled_early, state};
 pub(crate) use spring::{absence, advice, disposition, rule_used, verdict_reason, verdict_word};
 pub(crate) use strength::{stress_limit, stress_place, stress_rule, stress_taken};
 

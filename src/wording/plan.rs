@@ -135,9 +135,21 @@ fn by_variables(name: &str, decision: Decision, kind: Comparison, of: [Finite; 4
     format!("{name}: {what}; {shifts}: {end}.")
 }
 
+/// Of a class that is settled although springs of its sample are missing: that they change nothing.
+pub(crate) fn settled_early(of: &ClassPlan) -> Option<String> {
+    let settled = of.failing >= of.reject || of.to_accept == Some(0);
+    (of.missing > 0 && settled).then(|| {
+        format!(
+            "{} requirements: {} of the sample not measured; the decision on this class can no longer change.",
+            sentence(of.class.word()),
+            count(of.missing, "spring")
+        )
+    })
+}
+
 /// What the undecided springs of a class can make of it; `None` where it is settled.
 pub(crate) fn readings(of: &ClassPlan) -> Option<String> {
-    if of.if_undecided_conform == of.if_undecided_fail && of.missing == 0 {
+    if of.undecided == 0 || of.if_undecided_conform == of.if_undecided_fail && of.missing == 0 {
         return None;
     }
     let accept = of.to_accept.map_or_else(

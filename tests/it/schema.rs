@@ -15,13 +15,26 @@ fn published() -> Value {
         .unwrap()
 }
 
+/// Folder and lot file of every sample.
+const SAMPLES: [&str; 7] = [
+    "accepted/lot",
+    "rejected/lot",
+    "undecided/lot",
+    "nested/lot",
+    "plans/variables",
+    "plans/zero-accept",
+    "plans/state",
+];
+
 fn sample(name: &str) -> Value {
-    let output = Command::cargo_bin("coilassay")
-        .unwrap()
-        .args(["accept", "--json", "--date", "2026-12-01"])
-        .arg(root(&format!("samples/{name}/lot.toml")))
-        .output()
-        .unwrap();
+    let mut command = Command::cargo_bin("coilassay").unwrap();
+    command.args(["accept", "--json", "--date", "2026-12-01"]);
+    command.arg(root(&format!("samples/{name}.toml")));
+    if name == "plans/state" {
+        let history = root("samples/plans/history.csv");
+        command.arg("--history").arg(history);
+    }
+    let output = command.output().unwrap();
     serde_json::from_slice(&output.stdout).unwrap()
 }
 
@@ -112,7 +125,7 @@ fn the_schemas_of_the_rig() {
 #[test]
 fn every_sample_keeps_to_the_schema() {
     let schema = jsonschema::validator_for(&published()).unwrap();
-    for name in ["accepted", "rejected", "undecided", "nested"] {
+    for name in SAMPLES {
         let record = sample(name);
         let faults: Vec<String> = schema
             .iter_errors(&record)
@@ -138,6 +151,11 @@ fn every_key_of_the_schema_is_met() {
         "BudgetFigure",
         "PlanFacts",
         "ClassPlan",
+        "StateFacts",
+        "VariablesFacts",
+        "ZeroAcceptFacts",
+        "SettlingFacts",
+        "ProcessFacts",
         "LotFacts",
         "DrawingFacts",
         "TheoryFacts",
@@ -149,7 +167,7 @@ fn every_key_of_the_schema_is_met() {
         keys(&schema["$defs"][name]["properties"], &mut wanted);
     }
     let mut met = BTreeSet::new();
-    for name in ["accepted", "rejected", "undecided", "nested"] {
+    for name in SAMPLES {
         all_keys(&sample(name), &mut met);
     }
     let never: Vec<&String> = wanted.difference(&met).collect();

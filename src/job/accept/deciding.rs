@@ -1,6 +1,6 @@
 //! The decision on the lot: the state of inspection, the plan of each class or characteristic, what would settle it.
 
-use std::collections::HashMap;
+use std::collections::{HashMap, HashSet};
 
 use crate::drawing::{Acceptance, Drawing, PlanTerms, State};
 use crate::lot::{Decision, LotReason, Outcome, class_terms, decide, gravest, one_step_tighter};
@@ -166,6 +166,25 @@ fn merge(
     outcome.decision = gravest(&all);
     outcome.simple = gravest(&all_simple);
     outcome.reasons.extend(reasons);
+    // what decides stands first: a terminal shows only a few
+    outcome.reasons.sort_by_key(weight);
+}
+
+/// Rejection first, then what is undecided, then acceptance.
+const fn weight(reason: &LotReason) -> u8 {
+    match reason {
+        LotReason::ProvenFailures { .. }
+        | LotReason::ByVariables {
+            decision: Decision::Rejected,
+            ..
+        } => 0,
+        LotReason::WithinAcceptance { .. }
+        | LotReason::ByVariables {
+            decision: Decision::Accepted,
+            ..
+        } => 2,
+        _ => 1,
+    }
 }
 
 /// What a plan by variables does not decide: springs proven failing are named; what was seen has no agreed number.
@@ -176,19 +195,33 @@ fn beside(outcome: &mut Outcome, judged: &[Judged], sampled: &Ordered, size: u64
         .take(size)
         .filter(|(_, spring)| spring.simple == Verdict::Fails)
         .count() as u64;
-    let measured = |one: &&Judged| {
+    let measured = |one: &Judged| {
         let fails = |of: &CharacteristicResult| of.verdict == Some(Verdict::Fails);
         one.result.characteristics.iter().any(fails)
     };
     let springs: Vec<String> = judged
         .iter()
-        .filter(measured)
+        .filter(|one| measured(one))
         .map(|one| one.result.id.clone())
         .collect();
     if !springs.is_empty() {
         outcome.reasons.push(LotReason::ProvenBeside { springs });
     }
-    let mut seen = Vec::new();
+    let inside: HashSet<&str> = sampled
+        .iter()
+        .take(size)
+        .map(|(id, _)| id.as_str())
+        .collect();
+    let mut seen: Vec<LotReason> = judged
+        .iter()
+        .filter(|one| measured(one) && !inside.contains(one.result.id.as_str()))
+        .filter_map(|one| {
+            Some(LotReason::FailureBeyondSample {
+                spring: one.result.id.clone(),
+                class: one.overall.failing?,
+            })
+        })
+        .collect();
     for one in judged {
         let findings = one.result.findings.iter();
         seen.extend(

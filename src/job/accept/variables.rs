@@ -6,11 +6,12 @@ use crate::lot::{
 };
 use crate::process::Observation;
 use crate::quantity::Class;
-use crate::record::VariablesFacts;
+use crate::record::{VariablesFacts, Verdict};
 use crate::sampling::{PlanError, State, VariablesPlan};
 use crate::units::Finite;
 
 use super::super::facts::figure;
+use super::figures::value_of;
 use super::process::observation;
 use super::springs::Judged;
 use super::{Files, left_out};
@@ -36,7 +37,15 @@ pub(super) fn all(
 ) -> Result<Vec<One>, PlanError> {
     let size = files.lot.size.value;
     let mut found = Vec::new();
-    let inspected = |one: &&Requirement| !left_out(files, one);
+    // what was left out of the inspection is decided all the same where a spring is proven to fail it
+    let fails = |one: &Requirement| {
+        let of = sample
+            .iter()
+            .filter_map(|spring| value_of(&spring.result, one.quantity));
+        of.map(|of| of.verdict)
+            .any(|verdict| verdict == Some(Verdict::Fails))
+    };
+    let inspected = |one: &&Requirement| !left_out(files, one) || fails(one);
     for requirement in files.drawing.requirements.iter().filter(inspected) {
         if requirement.class == Class::Critical {
             continue;
