@@ -51,13 +51,13 @@ pub(super) enum Command {
         #[command(subcommand)]
         command: RigCommand,
     },
-    /// Sampling plans side by side: what each takes, and what it lets through
-    Plan(PlanArgs),
-    /// A commented starter file on stdout
+    /// A commented starter file, on stdout or as a file that is not there yet
     Draft {
         #[command(subcommand)]
         kind: Draft,
     },
+    /// Sampling plans side by side: what each takes, and what it lets through
+    Plan(PlanArgs),
     /// Completions for a shell, on stdout
     Completions {
         /// The shell
@@ -77,6 +77,18 @@ pub(super) enum Draft {
         /// An export as the tester wrote it
         #[arg(value_name = "EXPORT")]
         export: String,
+    },
+    /// A drawing with every key explained
+    Drawing {
+        /// The new file; without it the text goes to stdout
+        #[arg(value_name = "FILE")]
+        file: Option<PathBuf>,
+    },
+    /// A lot file with every key explained
+    Lot {
+        /// The new file; without it the text goes to stdout
+        #[arg(value_name = "FILE")]
+        file: Option<PathBuf>,
     },
 }
 

@@ -73,8 +73,8 @@ fn dispatch(arguments: &Arguments, out: &mut impl Write) -> miette::Result<u8> {
         Command::Expect(args) => expect::run(args, arguments.quiet, out),
         Command::Lots(args) => lots::run(args, out),
         Command::Recheck(args) => recheck::run(args, out),
-        Command::Plan(args) => plan::run(args, arguments.quiet, out),
         Command::Draft { kind } => draft::run(kind, out),
+        Command::Plan(args) => plan::run(args, arguments.quiet, out),
         Command::Completions { shell } => Ok(shell::completions(*shell, out)),
         Command::Manual { dir } => shell::manual(dir),
     }

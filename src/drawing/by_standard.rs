@@ -1,6 +1,6 @@
 //! Limits that a standard gives where the drawing names one. What the drawing states itself wins.
 
-use crate::formula::rate;
+use crate::formula::{Forming, rate};
 use crate::quantity::Quantity;
 use crate::spring::{Coil, Member, Sized};
 use crate::standard::{Drawn, Found, OutOfRange, Standard, Toleranced};
@@ -14,6 +14,8 @@ pub(super) struct Ruling {
     pub general: Option<Standard>,
     /// The springs.
     pub springs: Springs,
+    /// Whether the drawing requires a rate.
+    pub rate_required: bool,
 }
 
 /// What a standard could rule.
@@ -54,6 +56,7 @@ fn drawn(member: &Member) -> Option<Drawn> {
         free: member.free.nominal,
         rate: rate(wire, coil, active, member.material.shear)?.get(),
         ground: member.ends.ground(),
+        cold: member.forming == Forming::Cold,
     })
 }
 
@@ -72,6 +75,15 @@ impl Ruling {
         scale: f64,
     ) -> Option<(Limits, String)> {
         let standard = self.standard(table)?;
+        let jis = matches!(standard, Standard::Jis2704(_));
+        if jis && self.rate_required && quantity.at_length().is_some() {
+            table.fault(
+                &table.place("standard"),
+                "JIS B 2704-2 gives loads no tolerance where a rate is specified",
+                "write the load’s tolerance itself, or require no rate",
+            );
+            return None;
+        }
         let upper_only = matches!(quantity, Quantity::Squareness | Quantity::Parallelism);
         let nominal = table.number("nominal").map(|number| number.value * scale);
         if nominal.is_none() && !upper_only {
@@ -139,7 +151,7 @@ fn noted(table: Table<'_>, found: Result<Found, OutOfRange>) -> Option<Found> {
 const fn toleranced(quantity: Quantity, nominal: f64) -> Toleranced {
     match quantity {
         Quantity::LoadAt(_) => Toleranced::Load(nominal),
-        Quantity::Rate | Quantity::RateOf(_) => Toleranced::Rate,
+        Quantity::Rate | Quantity::RateOf(_) => Toleranced::Rate(nominal),
         Quantity::FreeLength => Toleranced::FreeLength,
         Quantity::OutsideDiameter | Quantity::InsideDiameter => Toleranced::CoilDiameter,
         Quantity::Squareness => Toleranced::Squareness,
@@ -183,10 +195,8 @@ pub(super) fn sizes(
                 .map(|found| Some(found.half_width));
         }
         match general {
-            // What the general standard does not cover keeps no tolerance here; a limit that needs it is a fault of its own.
             Some(standard) if !stated => {
-                let found = standard.half_width(&spring, what).ok();
-                Some(found.map(|found| found.half_width))
+                noted(table, standard.half_width(&spring, what)).map(|found| Some(found.half_width))
             }
             _ => Some(None),
         }

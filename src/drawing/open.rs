@@ -152,6 +152,7 @@ fn read(root: Table<'_>, input: &InputFile, own: Option<OwnTable>) -> Option<Dra
     let ruling = Ruling {
         general,
         springs: Springs::of(members.as_deref()),
+        rate_required: root.table("requirements").has("rate"),
     };
     let requirements = read_requirements(root.table("requirements"), units, arrangement, &ruling);
     let rate_test = read_rate_test(root.table("rate_test"), units.length(), units.force());

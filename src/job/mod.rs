@@ -2,6 +2,7 @@
 
 mod accept;
 mod draft;
+mod draft_files;
 mod expect;
 mod facts;
 mod history;
@@ -16,6 +17,7 @@ mod threads;
 
 pub use accept::{Accepted, Memory, Options, Past, accept};
 pub use draft::draft_rig;
+pub use draft_files::{Starter, starter};
 pub use expect::{Ask, expect};
 pub use history::read_history;
 pub use lots::{Listing, LotsError, Query, lots};

@@ -16,17 +16,17 @@ const ROUNDING: f64 = 1e-6;
 pub(super) fn findings(drawing: &Drawing) -> Vec<DrawingFinding> {
     let mut found = not_as_drawn(drawing);
     if drawing.theory.stages.len() > 1 {
-        return found; // the stages' rates are held against theory one by one
+        let by_stage = |one: &Requirement| matches!(one.quantity, Quantity::RateOf(_));
+        if drawing.requirements.iter().any(by_stage) {
+            found.extend(misses(drawing));
+        }
+        return found;
     }
     let rate = required(drawing, Quantity::Rate);
     match rate {
         Some(rate) => {
             found.extend(two_loads(drawing, &rate.limits));
-            let misses = drawing
-                .requirements
-                .iter()
-                .filter_map(|one| missed(drawing, one));
-            found.extend(misses);
+            found.extend(misses(drawing));
         }
         None => found.extend(free_length(drawing)),
     }
@@ -63,12 +63,48 @@ fn two_loads(drawing: &Drawing, rate: &Limits) -> Option<DrawingFinding> {
     })
 }
 
+fn misses(drawing: &Drawing) -> Vec<DrawingFinding> {
+    drawing
+        .requirements
+        .iter()
+        .filter_map(|one| missed(drawing, one))
+        .collect()
+}
+
+/// The rate of a stage, counted from 0: as stated, or else theory's.
+fn stage_rate(drawing: &Drawing, stage: usize) -> f64 {
+    if drawing.theory.stages.len() == 1 {
+        return nominal_rate(drawing);
+    }
+    let number = u8::try_from(stage + 1).unwrap_or(u8::MAX);
+    let stated = required(drawing, Quantity::RateOf(number)).and_then(|one| one.limits.nominal);
+    let theory = drawing.theory.stages.get(stage);
+    stated.unwrap_or_else(|| theory.map_or(0.0, |stage| stage.rate.get()))
+}
+
+/// Load at a length (mm) with the nominal rates and the drawn free lengths, N, and the rate there.
+fn nominal_load(drawing: &Drawing, length: f64) -> (f64, f64) {
+    let stages = &drawing.theory.stages;
+    let (mut load, mut rate) = (0.0, stage_rate(drawing, 0));
+    for (place, stage) in stages.iter().enumerate() {
+        let from = stage.from.get();
+        if length >= from {
+            break;
+        }
+        let to = stages
+            .get(place + 1)
+            .map_or(length, |next| next.from.get().max(length));
+        rate = stage_rate(drawing, place);
+        load += rate * (from - to);
+    }
+    (load, rate)
+}
+
 /// A spring of nominal rate and free length would fail this load.
 fn missed(drawing: &Drawing, load: &Requirement) -> Option<DrawingFinding> {
     let at_length_mm = load.quantity.at_length()?;
     let limits = &load.limits;
-    let rate = nominal_rate(drawing);
-    let expected = rate * (drawing.theory.free.get() - at_length_mm.get());
+    let (expected, rate) = nominal_load(drawing, at_length_mm.get());
     let outside = limits.lower.is_some_and(|lower| expected < lower)
         || limits.upper.is_some_and(|upper| expected > upper);
     if !outside {
@@ -81,12 +117,13 @@ fn missed(drawing: &Drawing, load: &Requirement) -> Option<DrawingFinding> {
             (one, other) => one.or(other),
         })?;
     let limit = |value: Option<f64>| value.and_then(|value| value.try_into().ok());
+    let fitting = drawing.theory.free.get() + (middle - expected) / rate;
     Some(DrawingFinding::LoadNotFromRate {
         at_length_mm,
         expected: expected.try_into().ok()?,
         lower: limit(limits.lower),
         upper: limit(limits.upper),
-        fitting_free_length_mm: (at_length_mm.get() + middle / rate).try_into().ok()?,
+        fitting_free_length_mm: fitting.try_into().ok()?,
     })
 }
 

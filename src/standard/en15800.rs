@@ -13,7 +13,7 @@ pub enum Grade {
 }
 
 impl Grade {
-    const fn number(self) -> usize {
+    pub(super) const fn number(self) -> usize {
         match self {
             Self::One => 1,
             Self::Two => 2,
@@ -22,7 +22,7 @@ impl Grade {
     }
 
     /// Of three values, the one for this grade.
-    const fn of(self, [one, two, three]: [f64; 3]) -> f64 {
+    pub(super) const fn of(self, [one, two, three]: [f64; 3]) -> f64 {
         match self {
             Self::One => one,
             Self::Two => two,
@@ -46,6 +46,8 @@ pub struct Drawn {
     pub rate: f64,
     /// Whether the ends are ground.
     pub ground: bool,
+    /// Whether it is coiled cold.
+    pub cold: bool,
 }
 
 impl Drawn {
@@ -60,8 +62,8 @@ impl Drawn {
 pub enum Toleranced {
     /// A load of this size, N.
     Load(f64),
-    /// The rate.
-    Rate,
+    /// The rate, of this nominal value, N/mm.
+    Rate(f64),
     /// Free length.
     FreeLength,
     /// Any of the coil diameters.
@@ -86,12 +88,32 @@ pub enum OutOfRange {
         from: f64,
         to: f64,
     },
+    #[error("{standard} covers springs coiled cold only")]
+    NotCold { standard: &'static str },
     #[error("{standard} gives no tolerance for {what}{why}")]
     Nothing {
         standard: &'static str,
         what: &'static str,
         why: &'static str,
     },
+}
+
+impl OutOfRange {
+    /// A figure outside the range of a standard.
+    pub(super) fn of(
+        standard: &'static str,
+        what: &'static str,
+        value: f64,
+        (from, to): (f64, f64),
+    ) -> Self {
+        Self::Range {
+            standard,
+            what,
+            value: shown(value),
+            from,
+            to,
+        }
+    }
 }
 
 const NAME: &str = "EN 15800";
@@ -104,6 +126,9 @@ fn shown(value: f64) -> String {
 
 /// The ranges of validity: wire 0.07 to 16 mm, D 0.63 to 200 mm, L0 up to 630 mm, n from 2, w 4 to 20.
 fn covered(spring: &Drawn) -> Result<(), OutOfRange> {
+    if !spring.cold {
+        return Err(OutOfRange::NotCold { standard: NAME });
+    }
     let ranges = [
         ("wire diameter d (mm)", spring.wire, 0.07, 16.0),
         ("mean coil diameter D (mm)", spring.coil, 0.63, 200.0),
@@ -114,13 +139,7 @@ fn covered(spring: &Drawn) -> Result<(), OutOfRange> {
     for (what, value, from, to) in ranges {
         // A size converted from inches may miss a bound by rounding.
         if value < from * (1.0 - 1e-9) || value > to * (1.0 + 1e-9) {
-            return Err(OutOfRange::Range {
-                standard: NAME,
-                what,
-                value: shown(value),
-                from,
-                to,
-            });
+            return Err(OutOfRange::of(NAME, what, value, (from, to)));
         }
     }
     Ok(())
@@ -185,7 +204,7 @@ pub fn en15800(grade: Grade, spring: &Drawn, what: Toleranced) -> Result<Found, 
         }
         Toleranced::Squareness => (grade.of(SQUARENESS) * spring.free, memory),
         Toleranced::Parallelism => (grade.of(PARALLELISM) * (spring.coil + spring.wire), memory),
-        Toleranced::Rate => {
+        Toleranced::Rate(_) => {
             let why = "; two loads imply it: state two loads, or a tolerance of the rate";
             return Err(nothing("the rate", why));
         }

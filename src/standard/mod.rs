@@ -3,6 +3,7 @@
 
 mod en15800;
 mod en15800_table;
+mod jis2704;
 
 pub use en15800::{Drawn, Grade, OutOfRange, Toleranced, en15800};
 
@@ -11,15 +12,20 @@ pub use en15800::{Drawn, Grade, OutOfRange, Toleranced, en15800};
 pub enum Standard {
     /// EN 15800.
     En15800(Grade),
+    /// JIS B 2704-2.
+    Jis2704(Grade),
 }
 
 impl Standard {
     /// The words a drawing may write; `EN 15800` alone is grade 2, as the standard says.
-    pub const WORDS: [(&'static str, Self); 4] = [
+    pub const WORDS: [(&'static str, Self); 7] = [
         ("EN 15800 grade 1", Self::En15800(Grade::One)),
         ("EN 15800 grade 2", Self::En15800(Grade::Two)),
         ("EN 15800 grade 3", Self::En15800(Grade::Three)),
         ("EN 15800", Self::En15800(Grade::Two)),
+        ("JIS B 2704-2 grade 1", Self::Jis2704(Grade::One)),
+        ("JIS B 2704-2 grade 2", Self::Jis2704(Grade::Two)),
+        ("JIS B 2704-2 grade 3", Self::Jis2704(Grade::Three)),
     ];
 
     /// The half-width of `what` for a spring as drawn.
@@ -29,6 +35,7 @@ impl Standard {
     pub fn half_width(self, spring: &Drawn, what: Toleranced) -> Result<Found, OutOfRange> {
         match self {
             Self::En15800(grade) => en15800(grade, spring, what),
+            Self::Jis2704(grade) => jis2704::jis2704(grade, spring, what),
         }
     }
 }

@@ -64,7 +64,7 @@ fn what_a_drawing_may_not_say() {
 
 #[test]
 #[rustfmt::skip] // keeps the table a table
-fn not_yet_judged_is_said_by_name() {
+fn sets_and_standards() {
     let single: &[Spoilt] = &[
         ("stack of one", |c| c.sub("tg-204.toml", "\"single\"", "\"stacked\""), &["tg-204.toml:10:", "do not fit", "a stack one for each"]),
         ("by standard", |c| { c.sub("tg-204.toml", RATE, "nominal = 10.6, standard = \"EN 15800 grade 2\", class") }, &["tg-204.toml:21:", "EN 15800", "two loads imply it"]),
