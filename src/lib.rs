@@ -24,10 +24,13 @@ pub mod rig;
 
 pub mod export;
 
+pub mod oddity;
+
 pub mod intake;
 
 pub mod curve;
 
+pub mod draft;
 pub mod review;
 
 pub mod fit;

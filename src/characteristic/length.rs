@@ -64,7 +64,7 @@ pub(super) fn free(
         Line::new(
             "resolution of travel",
             Part::Own,
-            setup.rig.travel.resolution.get() / 12.0_f64.sqrt(),
+            curve.travel_resolution / 12.0_f64.sqrt(),
         ),
         Line::new("seating", Part::Own, contact.seating()),
     ];
@@ -126,7 +126,7 @@ pub(super) fn solid(
     let resolution = Line::new(
         "resolution of travel",
         Part::Own,
-        setup.rig.travel.resolution.get() / 12.0_f64.sqrt(),
+        curve.travel_resolution / 12.0_f64.sqrt(),
     );
     let with = |mut shown: Vec<Line>, at: &Place| {
         shown.extend(lines(setup, at, origin.own));

@@ -63,13 +63,13 @@ pub(super) fn estimate(
     };
     let rig = setup.rig;
     let single = 12.0_f64.sqrt(); // one reading of one step
-    let by_travel = local.slope * rig.travel.resolution.get() / single;
+    let by_travel = local.slope * curve.travel_resolution / single;
     let shown = vec![
         local.scatter,
         Line::new(
             "resolution of load",
             Part::Own,
-            rig.force.resolution.get() / single,
+            curve.load_resolution / single,
         ),
         Line::new("resolution of travel", Part::Own, by_travel),
     ];

@@ -1,11 +1,14 @@
 //! Hysteresis and set: what differs between strokes.
 
-use crate::curve::Curve;
+use crate::curve::{Curve, Path};
 use crate::stats::StatsError;
 
 use super::budget::{Estimate, Line, Part, with_repeatability};
 use super::measure::{Absence, Setup};
 use super::scales;
+
+/// Readings a stroke has at least to be one side of a loop.
+const TRACED: usize = 10;
 
 /// Hysteresis of the last full cycle, (loading work − unloading work) / loading work over the travel common to
 /// both strokes and before any rise to solid, in %.
@@ -21,7 +24,9 @@ pub(super) fn hysteresis(
     let last = cycles
         .checked_sub(1)
         .and_then(|last| Some((curve.loading.get(last)?, curve.unloading.get(last)?)));
-    let Some((loading, unloading)) = last else {
+    let traced = |path: &Path| path.nodes.len() >= TRACED;
+    let Some((loading, unloading)) = last.filter(|(one, other)| traced(one) && traced(other))
+    else {
         return Ok(Err(Absence::NoFullCycle));
     };
     let common = || {
@@ -43,7 +48,7 @@ pub(super) fn hysteresis(
         Line::new(
             "resolution of load",
             Part::Own,
-            100.0 * setup.rig.force.resolution.get() / 6.0_f64.sqrt() / mean_load,
+            100.0 * curve.load_resolution / 6.0_f64.sqrt() / mean_load,
         ),
     ];
     let mut lines = with_repeatability(shown, setup.repeatability("hysteresis"));
@@ -81,7 +86,7 @@ pub(super) fn set(
         Line::new(
             "resolution of travel",
             Part::Own,
-            setup.rig.travel.resolution.get() / 6.0_f64.sqrt(),
+            curve.travel_resolution / 6.0_f64.sqrt(),
         ),
     ];
     let mut lines = with_repeatability(shown, setup.repeatability("set"));

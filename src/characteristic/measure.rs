@@ -11,7 +11,7 @@ use super::budget::{Estimate, Line, Part, with_repeatability};
 use super::length::{self, OwnFree, Solid};
 use super::rate::{self, RateFit};
 use super::stage::{self, StageWindow};
-use super::{load, loops};
+use super::{load, loops, odd};
 
 /// Work gained up to this is never called a reversal, %: drift of a load cell between strokes may look like it.
 const LEAST_GAIN: f64 = 0.5;
@@ -91,6 +91,16 @@ pub enum Absence {
     NoKnee,
     /// Nothing measured it.
     NotMeasured,
+    /// The load cell was at its end before the curve came there.
+    LoadCellAtItsEnd,
+    /// The load steps, or the travel leaps back, on its stroke or before it: the spring, the grip or the scale slipped.
+    LoadSteps,
+    /// Rows are missing where it is taken from.
+    RowsMissing,
+    /// The empty platens show another load on its stroke than before the first contact.
+    ZeroShifted,
+    /// Two strokes of the same travel differ in rate as no spring does from one stroke to the next.
+    StrokesDiffer,
 }
 
 /// What is known of a characteristic.
@@ -189,9 +199,13 @@ pub fn measure(
                 None => Measured::Absent(Absence::NotMeasured),
             }
         } else if matches!(quantity, Quantity::RateOf(_) | Quantity::Knee(_)) {
-            stage::measure(setup, curve, quantity, own)?
+            let path = rate::judged(setup, curve);
+            match odd::withheld(setup, curve, path, spring.fit.as_ref().ok(), quantity) {
+                Some(why) => Measured::Absent(why),
+                None => stage::measure(setup, curve, quantity, own)?,
+            }
         } else {
-            spring.measure(quantity).map_err(failed)?
+            spring.unless_odd(quantity).map_err(failed)?
         };
         refuse_reversed(curve, quantity, &measured)?;
         characteristics.push(Characteristic { quantity, measured });
@@ -263,6 +277,32 @@ struct Spring<'a> {
 }
 
 impl Spring<'_> {
+    /// Measures, unless something odd in the curve forbids it.
+    fn unless_odd(&self, quantity: Quantity) -> Result<Measured, StatsError> {
+        let (setup, curve, path) = (self.setup, self.curve, rate::judged(self.setup, self.curve));
+        if let Some(why) = odd::withheld(setup, curve, path, self.fit.as_ref().ok(), quantity) {
+            return Ok(Measured::Absent(why));
+        }
+        if let (Quantity::LoadAt(length), Some(path)) = (quantity, path)
+            && load::origin(setup, curve, self.own)
+                .is_some_and(|origin| path.is_missing(origin.u - length.get()))
+        {
+            return Ok(Measured::Absent(Absence::RowsMissing));
+        }
+        let short = |why: &Absence| {
+            matches!(
+                why,
+                Absence::WindowNotReached { .. } | Absence::LengthNotReached
+            )
+        };
+        Ok(match self.measure(quantity)? {
+            Measured::Absent(why) if curve.saturated && short(&why) => {
+                Measured::Absent(Absence::LoadCellAtItsEnd)
+            }
+            measured => measured,
+        })
+    }
+
     fn measure(&self, quantity: Quantity) -> Result<Measured, StatsError> {
         let (setup, curve) = (self.setup, self.curve);
         let residual_sd = self.fit.as_ref().ok().map(|fit| fit.line.residual_sd);

@@ -8,6 +8,7 @@ mod length;
 mod load;
 mod loops;
 mod measure;
+mod odd;
 mod rate;
 mod scales;
 mod stage;

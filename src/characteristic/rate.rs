@@ -83,7 +83,7 @@ pub(super) fn fit(
         }
         Err(WindowMiss::NoAbsoluteLength) => return Ok(Err(Absence::NoAbsoluteLength)),
     };
-    let resolution = setup.rig.travel.resolution.get();
+    let resolution = curve.travel_resolution;
     if to - from < 20.0 * resolution {
         return Err(CurveError::NarrowWindow {
             spring: curve.id.clone(),
@@ -157,12 +157,12 @@ pub(super) fn estimate(
     shown.push(Line::new(
         "resolution of load",
         Part::Own,
-        rig.force.resolution.get() / difference / wide,
+        curve.load_resolution / difference / wide,
     ));
     shown.push(Line::new(
         "resolution of travel",
         Part::Own,
-        rate * rig.travel.resolution.get() / difference / wide,
+        rate * curve.travel_resolution / difference / wide,
     ));
     let repeatability = setup.repeatability("rate");
     let mut lines = with_repeatability(shown, repeatability);

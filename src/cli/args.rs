@@ -53,6 +53,11 @@ pub(super) enum Command {
     },
     /// Sampling plans side by side: what each takes, and what it lets through
     Plan(PlanArgs),
+    /// A commented starter file on stdout
+    Draft {
+        #[command(subcommand)]
+        kind: Draft,
+    },
     /// Completions for a shell, on stdout
     Completions {
         /// The shell
@@ -62,6 +67,16 @@ pub(super) enum Command {
     Manual {
         /// The folder
         dir: PathBuf,
+    },
+}
+
+#[derive(Debug, Subcommand)]
+pub(super) enum Draft {
+    /// A rig file that reads this export, with the reason for each guess and a line for each doubt
+    Rig {
+        /// An export as the tester wrote it
+        #[arg(value_name = "EXPORT")]
+        export: String,
     },
 }
 

@@ -2,6 +2,7 @@
 
 mod accept;
 mod args;
+mod draft;
 mod expect;
 mod folder;
 mod lots;
@@ -72,6 +73,7 @@ fn dispatch(arguments: &Arguments, out: &mut impl Write) -> miette::Result<u8> {
         Command::Lots(args) => lots::run(args, out),
         Command::Recheck(args) => recheck::run(args, out),
         Command::Plan(args) => plan::run(args, arguments.quiet, out),
+        Command::Draft { kind } => draft::run(kind, out),
         Command::Completions { shell } => Ok(shell::completions(*shell, out)),
         Command::Manual { dir } => shell::manual(dir),
     }

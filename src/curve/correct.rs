@@ -2,10 +2,12 @@
 
 use crate::drawing::Way;
 use crate::export::RawCurve;
+use crate::oddity::Odd;
 use crate::rig::{Compliance, Means, Rig};
 
 use super::error::CurveError;
 use super::path::{Path, Points};
+use super::screen::{OddRows, keep, screen};
 use super::site::Site;
 use super::strokes::split;
 
@@ -57,6 +59,14 @@ pub struct Curve {
     pub short_strokes: usize,
     /// Whether the export starts above the contact load without an empty reading: then no load has a known zero.
     pub starts_loaded: bool,
+    /// What is odd, by kind and line; rows of some kinds are in no figure.
+    pub odd: Vec<OddRows>,
+    /// Whether the load cell was at its end; the rows there are set aside.
+    pub saturated: bool,
+    /// The step loads come in, N: as the rig file states, or as they really do where that is coarser.
+    pub load_resolution: f64,
+    /// The step travel comes in, mm.
+    pub travel_resolution: f64,
 }
 
 /// Corrects one spring's raw curve by what the rig file says.
@@ -69,23 +79,37 @@ pub fn correct(raw: &RawCurve, rig: &Rig) -> Result<Curve, CurveError> {
         last: raw.first_line + raw.load.len().saturating_sub(1) as u64,
     };
     let contact_load = rig.contact_load.get();
-    let mut u = site.travel(rig.means)?;
-    site.check_direction(&u, contact_load, rig.means)?;
-    let zero = empty_readings(&u, &raw.load, contact_load);
+    let indicated = site.travel(rig.means)?;
+    let screened = screen(raw, &indicated, rig);
+    let kept = screened.kept.as_deref();
+    let mut u = keep(indicated, kept);
+    let readings = keep(raw.load.clone(), kept);
+    site.check_direction(&u, &readings, contact_load, rig.means)?;
+    let zero = empty_readings(&u, &readings, contact_load);
     let offset = match zero {
         Zero::Read { mean, .. } => mean,
         Zero::NotRead => 0.0,
     };
-    let load: Vec<f64> = raw.load.iter().map(|f| f - offset).collect();
+    let load: Vec<f64> = readings.iter().map(|f| f - offset).collect();
     take_off_frame(&mut u, &load, rig);
     let points = Points {
         u: &u,
         load: &load,
-        first_line: raw.first_line,
-        resolution: rig.travel.resolution.get(),
+        raw,
+        kept,
+        resolution: screened.travel_resolution,
         contact_load,
     };
     let strokes = split(&u, points.resolution);
+    let leaps: Vec<OddRows> = strokes
+        .leaps
+        .iter()
+        .map(|(first, last)| OddRows {
+            first_line: points.line(*first),
+            last_line: points.line(*last),
+            what: Odd::LoadSteps,
+        })
+        .collect();
     let paths = strokes
         .full
         .into_iter()
@@ -97,7 +121,17 @@ pub fn correct(raw: &RawCurve, rig: &Rig) -> Result<Curve, CurveError> {
     if loading.is_empty() {
         return Err(site.no_contact(loads.1 - loads.0, contact_load));
     }
-    let first = raw.load.first().copied().unwrap_or(0.0);
+    let first = readings.first().copied().unwrap_or(0.0);
+    let starts_loaded = zero == Zero::NotRead && first > contact_load;
+    let mut odd = screened.odd;
+    odd.extend(starts_loaded.then_some(OddRows {
+        first_line: raw.first_line,
+        last_line: raw.first_line,
+        what: Odd::LateStart,
+    }));
+    odd.extend(&leaps);
+    odd.extend(loading.iter().chain(&unloading).flat_map(|path| &path.odd));
+    odd.sort();
     let curve = Curve {
         id: raw.id.clone(),
         export: raw.export.clone(),
@@ -112,7 +146,11 @@ pub fn correct(raw: &RawCurve, rig: &Rig) -> Result<Curve, CurveError> {
         unloading,
         loads,
         short_strokes: strokes.short,
-        starts_loaded: zero == Zero::NotRead && first > contact_load,
+        starts_loaded,
+        odd,
+        saturated: screened.saturated,
+        load_resolution: screened.load_resolution,
+        travel_resolution: screened.travel_resolution,
     };
     site.check_rising(&curve)?;
     Ok(curve)

@@ -96,6 +96,10 @@ mod tests {
             contact: None,
             start: 0.0,
             rate: None,
+            odd: Vec::new(),
+            gaps: Vec::new(),
+            steps: Vec::new(),
+            zero_shifted: false,
         }
     }
 

@@ -4,11 +4,19 @@ use std::ops::Range;
 
 use crate::drawing::Way;
 
+use crate::export::RawCurve;
+use crate::oddity::Odd;
+
 use super::contact::{self, Contact};
+use super::inspect::{Stretch, rows};
+use super::screen::OddRows;
 use super::solid::{self, Rise};
 
 /// Nodes averaged on either side when a crossing is looked for.
 const SMOOTH: usize = 2;
+/// The load of one dwell changes by less than this share of the largest (a spring held still relaxes by a per cent);
+/// beyond it the travel is stuck. Three rows at least.
+const STUCK: f64 = 0.03;
 
 /// Points of one dwell, averaged.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -39,6 +47,14 @@ pub struct Path {
     pub start: f64,
     /// A first idea of the rate, N/mm, for plausibility only: no window, no uncertainty.
     pub rate: Option<f64>,
+    /// What is odd on it; the rows that are set aside are in no node.
+    pub odd: Vec<OddRows>,
+    /// Stretches of travel in which rows are missing.
+    pub(super) gaps: Vec<Stretch>,
+    /// Travels at which the load steps, mm.
+    pub(super) steps: Vec<f64>,
+    /// Whether the empty platens show another load on this stroke than before the first contact.
+    pub zero_shifted: bool,
 }
 
 /// A curve's corrected points, before they are split into strokes.
@@ -48,69 +64,126 @@ pub(super) struct Points<'a> {
     pub(super) u: &'a [f64],
     /// Load, N.
     pub(super) load: &'a [f64],
-    /// Line of the first point.
-    pub(super) first_line: u64,
+    /// The rows they come from.
+    pub(super) raw: &'a RawCurve,
+    /// Which of those rows they are; `None` for all.
+    pub(super) kept: Option<&'a [usize]>,
     /// Resolution of travel, mm.
     pub(super) resolution: f64,
     /// Contact load, N.
     pub(super) contact_load: f64,
 }
 
-/// Points averaged over each dwell, in the order of measuring.
-fn dwells(points: Points<'_>, range: Range<usize>) -> Vec<Node> {
-    let mut nodes: Vec<(Node, f64, f64)> = Vec::with_capacity(range.len()); // node with sums, its first u, its count
+impl Points<'_> {
+    pub(super) fn line(&self, point: usize) -> u64 {
+        let row = self
+            .kept
+            .map_or(point, |rows| rows.get(point).copied().unwrap_or(point));
+        self.raw.line(row)
+    }
+}
+
+/// Points of one dwell: the sums, the first travel, how many, lowest and highest load.
+struct Dwell {
+    node: Node,
+    first: f64,
+    count: f64,
+    loads: (f64, f64),
+}
+
+impl Dwell {
+    fn mean(&self) -> Node {
+        Node {
+            u: self.node.u / self.count,
+            load: self.node.load / self.count,
+            ..self.node
+        }
+    }
+}
+
+/// The dwells of a stroke, in the order of measuring.
+fn dwells(points: Points<'_>, range: Range<usize>) -> Vec<Dwell> {
+    let mut dwells: Vec<Dwell> = Vec::with_capacity(range.len());
     let start = range.start;
     let (u, load) = (
         points.u.get(range.clone()).unwrap_or(&[]),
         points.load.get(range).unwrap_or(&[]),
     );
     for (offset, (x, f)) in u.iter().zip(load).enumerate() {
-        let line = points.first_line + (start + offset) as u64;
-        match nodes.last_mut() {
-            Some((node, first, count)) if (x - *first).abs() <= points.resolution / 2.0 => {
-                node.u += x;
-                node.load += f;
-                node.last_line = line;
-                *count += 1.0;
+        let line = points.line(start + offset);
+        match dwells.last_mut() {
+            Some(dwell) if (x - dwell.first).abs() <= points.resolution / 2.0 => {
+                dwell.node.u += x;
+                dwell.node.load += f;
+                dwell.node.last_line = line;
+                dwell.count += 1.0;
+                dwell.loads = (dwell.loads.0.min(*f), dwell.loads.1.max(*f));
             }
-            _ => nodes.push((
-                Node {
+            _ => dwells.push(Dwell {
+                node: Node {
                     u: *x,
                     load: *f,
                     first_line: line,
                     last_line: line,
                 },
-                *x,
-                1.0,
-            )),
+                first: *x,
+                count: 1.0,
+                loads: (*f, *f),
+            }),
         }
     }
-    let mean = |(node, _, count): (Node, f64, f64)| Node {
-        u: node.u / count,
-        load: node.load / count,
-        ..node
-    };
-    nodes.into_iter().map(mean).collect()
+    dwells
+}
+
+/// The nodes of some dwells, and those in which the travel is stuck: the load changes there by more than a spring held
+/// still, or four steps of travel, make.
+fn part_stuck(dwells: &[Dwell], resolution: f64) -> (Vec<Node>, Vec<OddRows>) {
+    let ends = dwells
+        .iter()
+        .flat_map(|dwell| [dwell.loads.0, dwell.loads.1]);
+    let largest = ends.fold(0.0, |most: f64, load| most.max(load.abs()));
+    let reach = |one: Option<&Dwell>| one.map_or(0.0, |dwell| dwell.first);
+    let travel = (reach(dwells.last()) - reach(dwells.first())).abs();
+    let by_step = 4.0 * resolution * largest / travel;
+    let bound = (STUCK * largest).max(by_step);
+    let mut odd = Vec::new();
+    let mut nodes = Vec::with_capacity(dwells.len());
+    for dwell in dwells {
+        if dwell.count > 2.5 && dwell.loads.1 - dwell.loads.0 > bound {
+            odd.push(rows(Odd::TravelStuck, &dwell.node, &dwell.node));
+        } else {
+            nodes.push(dwell.mean());
+        }
+    }
+    (nodes, odd)
 }
 
 impl Path {
     /// The path of one stroke, the points in `range`. Consecutive points within half a resolution of travel are one
     /// dwell, so that sampling density does not weigh.
     pub(super) fn new(points: Points<'_>, range: Range<usize>, side: Side) -> Self {
+        let (nodes, odd) = part_stuck(&dwells(points, range), points.resolution);
         let mut path = Self {
-            nodes: dwells(points, range),
+            nodes,
             side,
             contact: None,
             start: 0.0,
             rate: None,
+            odd,
+            gaps: Vec::new(),
+            steps: Vec::new(),
+            zero_shifted: false,
         };
         if side == Way::Unloading {
             path.nodes.reverse();
         }
+        path.take_off_stray();
         path.contact = contact::find(&path, points.contact_load);
         let begins = path.reach().map_or(0.0, |(begins, _)| begins);
         path.start = path.contact.map_or(begins, |contact| contact.u);
         path.rate = solid::plain_rate(&path, path.start);
+        path.note_oddities();
+        path.note_zero(points.contact_load);
         path
     }
 

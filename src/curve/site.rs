@@ -97,10 +97,10 @@ impl Site<'_> {
     pub(super) fn check_direction(
         &self,
         u: &[f64],
+        loads: &[f64],
         contact: f64,
         means: Means,
     ) -> Result<(), CurveError> {
-        let loads = &self.raw.load;
         let (Some(start), Some(from)) = (loads.first(), u.first()) else {
             return Err(self.no_contact(0.0, contact));
         };

@@ -9,6 +9,9 @@ const RETRACE: f64 = 0.02;
 /// A stroke shorter than this share of the longest of its way is no stroke of the test.
 const FULL: f64 = 0.5;
 
+/// Points of a leap at most.
+const LEAP: usize = 3;
+
 /// One pass of the platen.
 #[derive(Clone, Debug, PartialEq, Eq)]
 pub struct Stroke {
@@ -25,6 +28,8 @@ pub struct Strokes {
     pub full: Vec<Stroke>,
     /// Short ones left out (a jog, a stroke cut off).
     pub short: usize,
+    /// First and last point of each leap back: a short stroke within three points is no move of the platen.
+    pub leaps: Vec<(usize, usize)>,
 }
 
 /// The full strokes of a travel record `u` (mm, growing with compression), split where it turns back by
@@ -77,9 +82,14 @@ pub fn split(u: &[f64], resolution: f64) -> Strokes {
     let (full, short): (Vec<_>, Vec<_>) = strokes
         .into_iter()
         .partition(|(stroke, span)| is_full(stroke, *span));
+    let leap = |(stroke, _): &(Stroke, f64)| {
+        let Range { start, end } = stroke.points;
+        (end - start <= LEAP && start > 0 && end < u.len()).then(|| (start, end - 1))
+    };
     Strokes {
         full: full.into_iter().map(|(stroke, _)| stroke).collect(),
         short: short.len(),
+        leaps: short.iter().filter_map(leap).collect(),
     }
 }
 

@@ -214,6 +214,11 @@ impl Progress {
 }
 
 impl RawCurve {
+    /// The line of the export that row `row` (from 0) stands on.
+    pub fn line(&self, row: usize) -> u64 {
+        self.first_line + row as u64
+    }
+
     fn extend(&mut self, columns: &Columns, rows: std::ops::Range<usize>) {
         let add = |to: &mut Vec<f64>, from: &[f64]| {
             to.extend_from_slice(from.get(rows.clone()).unwrap_or_default());

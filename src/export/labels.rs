@@ -18,6 +18,42 @@ pub(super) enum Wanted {
     Seconds,
 }
 
+/// A unit that some word of an export names.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum UnitWord {
+    /// Of a load.
+    Force(ForceUnit),
+    /// Of a travel.
+    Length(LengthUnit),
+    /// Seconds.
+    Seconds,
+    /// A unit of something else, or of another size.
+    Other,
+}
+
+impl From<Stated> for UnitWord {
+    fn from(stated: Stated) -> Self {
+        match stated {
+            Stated::Is(Wanted::Force(unit)) => Self::Force(unit),
+            Stated::Is(Wanted::Length(unit)) => Self::Length(unit),
+            Stated::Is(Wanted::Seconds) => Self::Seconds,
+            Stated::Other => Self::Other,
+        }
+    }
+}
+
+/// The unit that `cell`, all of it, names.
+pub fn unit_word(cell: &str) -> Option<UnitWord> {
+    stated(cell).map(UnitWord::from)
+}
+
+/// The unit in a column name: in brackets, after ` in ` or the last `/`, or as its last word.
+pub fn unit_in_name(name: &str) -> Option<UnitWord> {
+    let clear = clear_labels(name).into_iter().find_map(stated);
+    let found = clear.or_else(|| last_word(name).and_then(stated));
+    found.map(UnitWord::from)
+}
+
 /// A unit that an export states.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 enum Stated {

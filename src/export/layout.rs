@@ -128,7 +128,10 @@ impl Layout {
                 Pushing::Negative => -dialect.load.unit.newtons(),
             }
         } else if column == self.travel {
-            dialect.travel.unit.millimetres()
+            match dialect.travel.pushing {
+                Pushing::Positive => dialect.travel.unit.millimetres(),
+                Pushing::Negative => -dialect.travel.unit.millimetres(),
+            }
         } else {
             1.0
         }

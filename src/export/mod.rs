@@ -30,6 +30,7 @@ use table::Suspect;
 
 pub use curves::RawCurve;
 pub use error::ExportError;
+pub use labels::{UnitWord, unit_in_name, unit_word};
 pub use ledger::{Aside, Ledger, WhyAside};
 pub use sketch::{Columns, Look, look, sketch};
 pub use small::{SmallTable, read_small};

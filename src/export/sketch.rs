@@ -95,6 +95,7 @@ pub fn sketch(head: &Head, columns: &Columns) -> Option<Dialect> {
                 travel: TravelColumn {
                     column: columns.travel.0.clone(),
                     unit: columns.travel.1,
+                    pushing: Pushing::Positive,
                 },
                 time: None,
                 spring: SpringFrom::FileName,

@@ -87,6 +87,7 @@ fn hand_written() -> Dialect {
         travel: TravelColumn {
             column: travel,
             unit: LengthUnit::Millimetre,
+            pushing: Pushing::Positive,
         },
         time: None,
         spring: SpringFrom::FileName,

@@ -1,10 +1,12 @@
 //! One folder or file per command: the only places that string rooms together.
 
 mod accept;
+mod draft;
 mod expect;
 mod facts;
 mod history;
 mod lots;
+mod odd;
 mod plan;
 mod rate;
 mod read;
@@ -13,6 +15,7 @@ mod rig;
 mod threads;
 
 pub use accept::{Accepted, Memory, Options, Past, accept};
+pub use draft::draft_rig;
 pub use expect::{Ask, expect};
 pub use history::read_history;
 pub use lots::{Listing, LotsError, Query, lots};

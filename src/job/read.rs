@@ -9,7 +9,8 @@ use rayon::prelude::*;
 
 use crate::characteristic::{MeasureError, Measurement, Setup, judged, measure};
 use crate::curve::{
-    Axis, Curve, Kept, MOST_POINTS, Path as Stroke, Reduced, Zero, correct, kept_points, thin,
+    Axis, Curve, Kept, MOST_POINTS, OddRows, Path as Stroke, Reduced, Zero, correct, kept_points,
+    thin,
 };
 use crate::drawing::Way;
 use crate::export::{BLOCK_BYTES, ExportError, Ledger, RawCurve};
@@ -39,6 +40,8 @@ pub(super) struct Reading {
     pub(super) loads: (f64, f64),
     /// Loading strokes.
     pub(super) strokes: usize,
+    /// What is odd in its rows.
+    pub(super) odd: Vec<OddRows>,
     /// What was measured.
     pub(super) measurement: Measurement,
     /// The curve for the charts, where they are wanted.
@@ -111,9 +114,12 @@ fn read_at(path: &Path, written: &str, how: How<'_>) -> Result<Batch, ExportErro
         path: shown.clone(),
         sha256: read.sha256,
     };
+    let mut ledger = ledger(shown, &read.ledger);
+    let measured = readings.iter().filter_map(|reading| reading.as_ref().ok());
+    super::odd::set_aside(&mut ledger, measured.flat_map(|reading| &reading.odd));
     Ok(Batch {
         readings,
-        ledger: ledger(shown, &read.ledger),
+        ledger,
         input,
     })
 }
@@ -159,6 +165,7 @@ fn reading(raw: &RawCurve, how: How<'_>) -> Result<Reading, MeasureError> {
         zero_read: matches!(curve.zero, Zero::Read { .. }),
         loads: curve.loads,
         strokes: curve.loading.len(),
+        odd: curve.odd,
         measurement,
         reduced,
         kept,

@@ -175,4 +175,26 @@ pub enum Oddity {
     GaugeDiffers,
     /// Repeats differ by more than their own uncertainty says.
     RepeatsDiffer,
+    /// The load cell stands at its end while the platen goes on; those rows are in no figure.
+    Saturated,
+    /// The travel stands still while the load changes; those rows are in no figure.
+    TravelStuck,
+    /// Single readings far off their neighbours; they are in no figure.
+    StrayReadings,
+    /// Rows that repeat the one before digit for digit; they count once.
+    RowsDoubled,
+    /// Rows are missing: the travel leaps.
+    RowsMissing,
+    /// The load steps, or the travel leaps back: the spring, the grip or the scale slipped.
+    LoadSteps,
+    /// The empty platens show another load than before the first contact.
+    ZeroShifted,
+    /// The recording starts on a loaded spring.
+    LateStart,
+    /// Loads come in steps coarser than the rig file states.
+    LoadCoarse,
+    /// Travel comes in steps coarser than the rig file states.
+    TravelCoarse,
+    /// Some stretches of the stroke are sampled much more densely than others.
+    UnevenSampling,
 }

@@ -40,7 +40,7 @@ pub use repeat::{
     VarianceRow, VariationShare,
 };
 pub use spring::{
-    BudgetFigure, CharacteristicResult, FindingResult, FitFacts, LackFacts, LedgerFacts,
+    BudgetFigure, CharacteristicResult, FindingResult, FitFacts, LackFacts, LedgerFacts, OddLines,
     RepeatFacts, SetAside, SpringResult,
 };
 

@@ -3,6 +3,7 @@
 use schemars::JsonSchema;
 use serde::{Deserialize, Serialize};
 
+use super::caution::Oddity;
 use crate::characteristic::Part;
 use crate::lot::Advice;
 use crate::quantity::{Class, Unit};
@@ -154,6 +155,19 @@ pub struct RepeatFacts {
     pub invalid: Option<String>,
 }
 
+/// Lines of an export in which something is odd.
+#[derive(Clone, Debug, PartialEq, Eq, Serialize, Deserialize, JsonSchema)]
+pub struct OddLines {
+    /// What.
+    pub what: Oddity,
+    /// The export.
+    pub export: String,
+    /// First such line.
+    pub first_line: u64,
+    /// Last such line.
+    pub last_line: u64,
+}
+
 /// Something seen or measured without the bench.
 #[derive(Clone, Debug, PartialEq, Eq, Serialize, Deserialize, JsonSchema)]
 pub struct FindingResult {
@@ -184,6 +198,8 @@ pub struct SpringResult {
     pub loading_strokes: u32,
     /// Measurements of this spring.
     pub measurements: Vec<RepeatFacts>,
+    /// What is odd in its rows, line by line; the cautions name the springs.
+    pub odd: Vec<OddLines>,
     /// Visual findings.
     pub findings: Vec<FindingResult>,
     /// What would settle what is undecided.

@@ -91,7 +91,7 @@ pub struct LoadColumn {
     pub pushing: Pushing,
 }
 
-/// The sign of a load that pushes the spring together.
+/// The sign of a load or a deflection that pushes the spring together.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 pub enum Pushing {
     /// Pushing is above zero.
@@ -107,6 +107,8 @@ pub struct TravelColumn {
     pub column: String,
     /// The unit its numbers are in.
     pub unit: LengthUnit,
+    /// The sign of a travel that pushes the spring together, for a deflection; lengths and positions keep theirs.
+    pub pushing: Pushing,
 }
 
 /// Where the name of a spring comes from.

@@ -42,7 +42,7 @@ pub const KEYS: Keys = &[
     ("rig", &["name", "check_every"]),
     ("export", &["header_line", "units_line", "delimiter", "decimal", "encoding", "quoted", "last_line_open", "load", "travel", "time", "spring"]),
     ("export.load", &["column", "unit", "pushing"]),
-    ("export.travel", &["column", "unit", "means", "at_zero_gap"]),
+    ("export.travel", &["column", "unit", "means", "at_zero_gap", "pushing"]),
     ("export.time", &["column", "unit"]),
     ("export.spring", &["from", "column"]),
     ("force", FORCE),

@@ -139,22 +139,24 @@ fn unit<T: Copy>(table: Table<'_>, parse: fn(&str) -> Option<T>, known: &str) ->
 fn read_load(table: Table<'_>) -> Option<LoadColumn> {
     let column = column(table);
     let unit = unit(table, ForceUnit::parse, "N, kN, kgf, lbf");
-    let pushing = if table.has("pushing") {
-        table.word(
-            "pushing",
-            &[
-                ("positive", Pushing::Positive),
-                ("negative", Pushing::Negative),
-            ],
-        )
-    } else {
-        Some(Pushing::Positive)
-    };
+    let pushing = read_pushing(table);
     Some(LoadColumn {
         column: column?,
         unit: unit?,
         pushing: pushing?,
     })
+}
+
+fn read_pushing(table: Table<'_>) -> Option<Pushing> {
+    let words = [
+        ("positive", Pushing::Positive),
+        ("negative", Pushing::Negative),
+    ];
+    if table.has("pushing") {
+        table.word("pushing", &words)
+    } else {
+        Some(Pushing::Positive)
+    }
 }
 
 #[derive(Clone, Copy, PartialEq)]
@@ -203,10 +205,21 @@ fn read_travel(table: Table<'_>) -> Option<(TravelColumn, Means)> {
             return None;
         }
     };
+    let pushing = read_pushing(table)?;
+    if pushing == Pushing::Negative && means != Means::Deflection {
+        let help = "remove it: a length says itself which way the spring goes, and so does a platen position with its at_zero_gap";
+        table.fault(
+            &table.place("pushing"),
+            "only a deflection has a sign of pushing",
+            help,
+        );
+        return None;
+    }
     Some((
         TravelColumn {
             column: column?,
             unit: unit?,
+            pushing,
         },
         means,
     ))

@@ -69,6 +69,16 @@ pub enum Reason {
     NotMeasured,
     /// Listed under `not_inspected` in the lot file.
     NotInspected,
+    /// The load cell was at its end before the curve came there.
+    LoadCellAtItsEnd,
+    /// The load steps, or the travel leaps back, on its stroke or before it: the spring, the grip or the scale slipped.
+    LoadSteps,
+    /// Rows are missing where it is taken from.
+    RowsMissing,
+    /// The empty platens show another load on its stroke than before the first contact.
+    ZeroShifted,
+    /// Two strokes of the same travel differ in rate as no spring does from one stroke to the next.
+    StrokesDiffer,
 }
 
 impl From<&Absence> for Reason {
@@ -89,6 +99,11 @@ impl From<&Absence> for Reason {
             Absence::OneLoadingStroke => Self::OneLoadingStroke,
             Absence::NoKnee => Self::NoKnee,
             Absence::NotMeasured => Self::NotMeasured,
+            Absence::LoadCellAtItsEnd => Self::LoadCellAtItsEnd,
+            Absence::LoadSteps => Self::LoadSteps,
+            Absence::RowsMissing => Self::RowsMissing,
+            Absence::ZeroShifted => Self::ZeroShifted,
+            Absence::StrokesDiffer => Self::StrokesDiffer,
         }
     }
 }

@@ -84,8 +84,39 @@ fn about_the_bench(of: &Caution, show_in: System) -> String {
     }
 }
 
-fn odd(what: Oddity) -> &'static str {
+pub(crate) fn odd(what: Oddity) -> &'static str {
     match what {
+        Oddity::Saturated => {
+            "the load cell stands at its end while the platen goes on; those rows are in no figure, and nothing is judged from there on"
+        }
+        Oddity::TravelStuck => {
+            "the travel stands still while the load changes; those rows are in no figure"
+        }
+        Oddity::StrayReadings => {
+            "single readings far off their neighbours are in no figure; is a cable loose?"
+        }
+        Oddity::RowsDoubled => "rows that repeat the one before digit for digit count once",
+        Oddity::RowsMissing => {
+            "rows are missing where the travel leaps; nothing is judged across them"
+        }
+        Oddity::LoadSteps => {
+            "the load steps, or the travel leaps back: the spring, the grip or the scale slipped; what is taken from there on is not judged, measure again"
+        }
+        Oddity::ZeroShifted => {
+            "the empty platens show another load later on than before the first contact; loads of those strokes are not judged"
+        }
+        Oddity::LateStart => {
+            "the recording starts on a loaded spring: contact and the zero of its loads are not known"
+        }
+        Oddity::LoadCoarse => {
+            "the loads come in steps coarser than the rig file states; the budget takes the steps"
+        }
+        Oddity::TravelCoarse => {
+            "the travel comes in steps coarser than the rig file states; the budget takes the steps"
+        }
+        Oddity::UnevenSampling => {
+            "some stretches of the stroke are sampled much more densely than others; the budget holds the difference to the two-point rate"
+        }
         Oddity::StrokesLeftOut => {
             "strokes much shorter than the others were left out; was the recording cut off?"
         }

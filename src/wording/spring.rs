@@ -69,6 +69,11 @@ pub(crate) fn absence(of: &Reason, show_in: System) -> String {
         }
         Reason::NotMeasured => "not measured".to_owned(),
         Reason::NotInspected => "not inspected, as the lot file says".to_owned(),
+        Reason::LoadCellAtItsEnd => "the load cell was at its end before the curve came there".to_owned(),
+        Reason::LoadSteps => "the load steps, or the travel leaps back, on its stroke or before it".to_owned(),
+        Reason::StrokesDiffer => "two strokes of the same travel differ in rate as no spring does; are they of two springs?".to_owned(),
+        Reason::ZeroShifted => "the empty platens show another load on its stroke than before the first contact".to_owned(),
+        Reason::RowsMissing => "rows are missing where it is taken from".to_owned(),
     }
 }
 

@@ -39,6 +39,7 @@ fn plain() -> Dialect {
         travel: TravelColumn {
             column: "Travel".into(),
             unit: LengthUnit::Millimetre,
+            pushing: Pushing::Positive,
         },
         time: None,
         spring: SpringFrom::Column("Specimen".into()),
@@ -61,6 +62,7 @@ fn bench() -> Dialect {
         travel: TravelColumn {
             column: "Weg".into(),
             unit: LengthUnit::Millimetre,
+            pushing: Pushing::Positive,
         },
         time: Some("t".into()),
         spring: SpringFrom::FileName,

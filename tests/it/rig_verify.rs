@@ -139,6 +139,13 @@ fn a_good_bench_serves() {
         assert!((got - want).abs() < 1e-9 * want, "{got} {want}");
     }
     let frame = record.frame.unwrap();
+    // The rig file states 0.00012 mm/N with U = 0.00001, k = 2.
+    let reach = frame.to_n.get() - frame.from_n.get();
+    let u = frame.standard_uncertainty_mm_per_n.unwrap().get();
+    let wanted = (frame.compliance_mm_per_n.get() - 0.000_12) * reach
+        / (2.0 * reach * (u * u + 0.000_005_f64.powi(2)).sqrt());
+    assert!((frame.e_n.unwrap().get() - wanted).abs() < 1e-9);
+    assert!((frame.stated_give_mm.unwrap().get() - 0.000_12 * reach).abs() < 1e-12);
     assert!((frame.compliance_mm_per_n.get() - 0.000_122).abs() < 4e-6 && frame.table.is_none());
 }
 

@@ -62,6 +62,54 @@ fn what_is_no_check_of_this_spring_on_this_day() {
     );
 }
 
+/// Of several drawings the tightest tolerance counts; a tolerance as stated counts as it stands; a certificate made after the
+/// check proves nothing of it.
+#[test]
+fn the_tightest_tolerance_and_the_certificate_of_the_day() {
+    let allowed = |folder: &tempfile::TempDir| -> Vec<f64> {
+        let record = verify(folder).record;
+        let all = record.comparisons.iter();
+        all.filter_map(|one| Some(one.allowed_error?.get()))
+            .collect()
+    };
+    let close = |got: &[f64], wanted: &[f64]| {
+        assert_eq!(got.len(), wanted.len());
+        for (got, wanted) in got.iter().zip(wanted) {
+            assert!((got - wanted).abs() < 1e-9 * wanted, "{got} {wanted}");
+        }
+    };
+    let folder = copy("check");
+    let check = folder.path().join("check.toml");
+    let drawing = std::fs::read_to_string(folder.path().join("tg-204.toml")).unwrap();
+    let wider = drawing
+        .replace("tolerance = \"5 %\"", "tolerance = \"9 %\"")
+        .replacen("tolerance = \"8 %\"", "tolerance = \"6 %\"", 1)
+        .replace(
+            "[requirements]",
+            "[requirements]\nfree_length = { nominal = 90.0, tolerance = 1.8 }",
+        );
+    std::fs::write(folder.path().join("other.toml"), wider).unwrap();
+    edit(
+        &check,
+        &[("[\"tg-204.toml\"]", "[\"tg-204.toml\", \"other.toml\"]")],
+    );
+    // A fifth of 5 %, of 6 % and of 1.8 mm.
+    close(
+        &allowed(&folder),
+        &[0.01 * 9.842, 0.012 * 140.84, 0.012 * 337.68, 0.36],
+    );
+    edit(
+        &check,
+        &[(
+            "drawings = [\"tg-204.toml\", \"other.toml\"]",
+            "share = \"50 %\"\ntolerances = { rate = 0.4, load = \"10 %\", free_length = 1.0 }",
+        )],
+    );
+    close(&allowed(&folder), &[0.2, 0.05 * 140.84, 0.05 * 337.68, 0.5]);
+    edit(&check, &[("on = 2026-02-10", "on = 2026-12-01")]);
+    assert_eq!(verify(&folder).record.decision, Serving::Undecided);
+}
+
 /// The same check written in inches and pounds-force.
 #[test]
 fn units_of_the_check_file_do_not_matter() {

@@ -10,6 +10,7 @@ use crate::stats::median;
 use crate::units::Finite;
 
 use super::super::facts::figure;
+use super::super::odd::{KINDS, oddity};
 use super::alike::alike;
 use super::drawing_cautions::of_drawing;
 use super::figures::value_of;
@@ -192,6 +193,12 @@ fn of_curves(rig: &Rig, full_load: f64, judged: &[Judged]) -> Vec<Caution> {
     ]
     .into_iter()
     .flatten()
+    .chain(KINDS.into_iter().filter_map(|kind| {
+        let what = oddity(kind);
+        odd(what, &|spring| {
+            spring.result.odd.iter().any(|one| one.what == what)
+        })
+    }))
     .collect()
 }
 

@@ -11,6 +11,7 @@ use crate::record::{CharacteristicResult, FindingResult, SpringResult};
 use crate::stats::StatsError;
 use crate::verdict::{self, Overall, Verdict, overall};
 
+use super::super::odd;
 use super::super::read::Reading;
 use super::Files;
 use super::figures::{fit_facts, result};
@@ -106,6 +107,11 @@ pub(super) fn judge(
             u32::try_from(reading.strokes).unwrap_or(u32::MAX)
         }),
         measurements: spring.measurements,
+        odd: spring
+            .readings
+            .iter()
+            .flat_map(|reading| odd::lines(&reading.odd, &reading.export))
+            .collect(),
         findings,
         advice: if overall.verdict == Verdict::Undecided {
             verdicts.advice

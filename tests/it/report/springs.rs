@@ -204,6 +204,7 @@ pub(crate) fn spring(id: &str, number: usize, draw: &mut Draw, off: f64) -> Spri
             reason: None,
             invalid: None,
         }],
+        odd: Vec::new(),
         findings: if number == 6 {
             vec![FindingResult {
                 text: "end not ground".to_owned(),
