@@ -4,7 +4,7 @@ mod asked;
 mod told;
 
 use crate::drawing::State;
-use crate::record::{BenchFacts, FORMAT, Kind, OffersRecord, Provenance, StateFacts, TOOL};
+use crate::record::{BenchFacts, FORMAT, Kind, OffersRecord, Provenance, StateFacts};
 use crate::sampling::{
     Aql, Bench, Offer, PlanError, Reason, designed, next, single, variables_plan, zero_accept,
 };
@@ -54,15 +54,12 @@ pub fn plan(options: &PlanOptions) -> miette::Result<OffersRecord> {
         state: state.map(|(_, told)| told),
         bench: options.bench.and_then(bench_facts),
         plans,
-        provenance: Provenance {
-            tool: TOOL.to_owned(),
-            version: env!("CARGO_PKG_VERSION").to_owned(),
-            date: options.date.to_string(),
-            flags: options.flags.clone(),
-            inputs: inputs.into_iter().collect(),
-            ledgers: Vec::new(),
-            archive: None,
-        },
+        provenance: Provenance::new(
+            options.date,
+            options.flags.clone(),
+            inputs.into_iter().collect(),
+            Vec::new(),
+        ),
         files: Vec::new(),
     })
 }
