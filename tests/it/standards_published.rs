@@ -58,12 +58,7 @@ fn worked_table_of_en_15800() {
             let drawn = spring(d, coil, active, 100.0);
             let of = |what| grade(number).half_width(&drawn, what).unwrap().half_width;
             let source = format!("{name} grade {number}");
-            misses.absolute(
-                &source,
-                of(load(newtons)),
-                loads[number - 1],
-                5.1e-5,
-            );
+            misses.absolute(&source, of(load(newtons)), loads[number - 1], 5.1e-5);
             misses.absolute(
                 &source,
                 of(Toleranced::FreeLength),
@@ -200,9 +195,7 @@ fn ranges_are_enforced() {
         ),
         (spring(4.0, 80.1, 8.5, 90.0), "index w"),
     ] {
-        let fault = grade(2)
-            .half_width(&drawn, load(10.0))
-            .unwrap_err();
+        let fault = grade(2).half_width(&drawn, load(10.0)).unwrap_err();
         assert!(fault.to_string().contains(said), "{said}: {fault}");
     }
     let hot = Drawn {
@@ -219,9 +212,6 @@ fn ranges_are_enforced() {
         spring(4.0, 16.0, 8.5, 90.0),
         spring(4.0, 80.0, 8.5, 90.0),
     ] {
-        assert!(
-            grade(2).half_width(&drawn, load(10.0)).is_ok(),
-            "{drawn:?}"
-        );
+        assert!(grade(2).half_width(&drawn, load(10.0)).is_ok(), "{drawn:?}");
     }
 }

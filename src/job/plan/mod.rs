@@ -1,6 +1,7 @@
 //! `plan`: plans side by side, and what each lets through.
 
 mod asked;
+mod flags;
 mod told;
 
 use crate::drawing::State;
@@ -13,6 +14,7 @@ use super::accept::Past;
 use super::facts::figure;
 
 pub use asked::{Asked, BenchAsked, CompareError, PlanOptions};
+pub use flags::PlanFlags;
 
 /// Beyond the quality accepted five times in a hundred by this factor nothing is drawn.
 const BEYOND: f64 = 1.1;
