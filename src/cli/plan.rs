@@ -4,10 +4,8 @@ use std::io::Write;
 
 use miette::IntoDiagnostic;
 
-use crate::drawing::{Level, Level414, State};
-use crate::job::{self, Asked, BenchAsked, PlanOptions};
+use crate::job::{self, PlanFlags};
 use crate::report;
-use crate::sampling::Points;
 
 use super::accept::{date, history, listed};
 use super::folder::{self, Target};
@@ -15,15 +13,7 @@ use super::plan_args::PlanArgs;
 
 pub(super) fn run(args: &PlanArgs, quiet: bool, out: &mut impl Write) -> miette::Result<u8> {
     let target = args.out.as_deref().map(Target::of).transpose()?;
-    let options = PlanOptions {
-        lot_size: args.lot_size,
-        asked: asked(args)?,
-        bench: args.bench.as_deref().map(bench).transpose()?,
-        past: history(args.history.as_deref())?,
-        reduced_agreed: args.reduced_agreed,
-        date: date(args.date)?,
-        flags: Vec::new(),
-    };
+    let options = written(args).options(history(args.history.as_deref())?, date(args.date)?)?;
     let mut record = job::plan(&options)?;
     if let Some(target) = &target {
         let files = report::offers(&record)?;
@@ -42,88 +32,17 @@ pub(super) fn run(args: &PlanArgs, quiet: bool, out: &mut impl Write) -> miette:
     Ok(0)
 }
 
-/// Every plan the flags ask for: levels, AQLs and states each with each, then the others.
-fn asked(args: &PlanArgs) -> miette::Result<Vec<Asked>> {
-    let levels = words(&args.level, "--level", &Level::WORDS)?;
-    let levels = if levels.is_empty() {
-        vec![Level::II]
-    } else {
-        levels
-    };
-    let states = words(&args.state, "--state", &State::WORDS)?;
-    let states: Vec<Option<State>> = if states.is_empty() {
-        vec![None]
-    } else {
-        states.into_iter().map(Some).collect()
-    };
-    let mut all = Vec::new();
-    for level in levels {
-        for aql in &args.aql {
-            all.extend(states.iter().map(|state| Asked::Attributes {
-                level,
-                aql: *aql,
-                state: *state,
-            }));
-        }
+fn written(args: &PlanArgs) -> PlanFlags {
+    PlanFlags {
+        lot_size: args.lot_size,
+        aql: args.aql.clone(),
+        level: args.level.clone(),
+        state: args.state.clone(),
+        mil_std_414: args.mil_std_414.clone(),
+        level_414: args.level_414.clone(),
+        designed: args.designed.clone(),
+        zero_accept: args.zero_accept.clone(),
+        bench: args.bench.clone(),
+        reduced_agreed: args.reduced_agreed,
     }
-    let level = word(&args.level_414, "--level-414", &Level414::WORDS)?;
-    for aql in &args.mil_std_414 {
-        all.extend(states.iter().map(|state| Asked::Variables {
-            level,
-            aql: *aql,
-            state: state.unwrap_or(State::Normal),
-        }));
-    }
-    for written in &args.designed {
-        let [p1, alpha, p2, beta] = shares(written, "--designed", "1%:5%:5%:10%")?;
-        all.push(Asked::Designed(Points {
-            p1,
-            alpha,
-            p2,
-            beta,
-        }));
-    }
-    for written in &args.zero_accept {
-        let [limiting_quality, consumer_risk] = shares(written, "--zero-accept", "4%:10%")?;
-        all.push(Asked::ZeroAccept {
-            limiting_quality,
-            consumer_risk,
-        });
-    }
-    Ok(all)
-}
-
-fn bench(written: &str) -> miette::Result<BenchAsked> {
-    let [expanded, spread, common] = shares(written, "--bench", "25%:33%:80%")?;
-    Ok(BenchAsked {
-        expanded,
-        spread,
-        common,
-    })
-}
-
-fn words<T: Copy>(written: &[String], flag: &str, known: &[(&str, T)]) -> miette::Result<Vec<T>> {
-    written.iter().map(|one| word(one, flag, known)).collect()
-}
-
-fn word<T: Copy>(written: &str, flag: &str, known: &[(&str, T)]) -> miette::Result<T> {
-    let found = known.iter().find(|(word, _)| *word == written);
-    found.map(|(_, meaning)| *meaning).ok_or_else(|| {
-        let words: Vec<&str> = known.iter().map(|(word, _)| *word).collect();
-        let help = format!("one of: {}", words.join(", "));
-        miette::miette!(help = help, "{flag} is `{written}`")
-    })
-}
-
-/// Shares written as `1%:5%`.
-fn shares<const N: usize>(written: &str, flag: &str, example: &str) -> miette::Result<[f64; N]> {
-    let share = |part: &str| {
-        let number = part.trim().strip_suffix('%')?.trim().parse::<f64>().ok()?;
-        number.is_finite().then_some(number / 100.0)
-    };
-    let read: Option<Vec<f64>> = written.split(':').map(share).collect();
-    read.and_then(|read| read.try_into().ok()).ok_or_else(|| {
-        let help = format!("write it as {example}");
-        miette::miette!(help = help, "{flag} is `{written}`")
-    })
 }

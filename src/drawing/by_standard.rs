@@ -55,7 +55,7 @@ fn drawn(member: &Member) -> Option<Drawn> {
         active,
         free: member.free.nominal,
         rate: rate(wire, coil, active, member.material.shear)?.get(),
-        ground: member.ends.ground(),
+        ends: member.ends,
         cold: member.forming == Forming::Cold,
     })
 }
@@ -150,7 +150,10 @@ fn noted(table: Table<'_>, found: Result<Found, OutOfRange>) -> Option<Found> {
 
 const fn toleranced(quantity: Quantity, nominal: f64) -> Toleranced {
     match quantity {
-        Quantity::LoadAt(_) => Toleranced::Load(nominal),
+        Quantity::LoadAt(length) => Toleranced::Load {
+            nominal,
+            length: length.get(),
+        },
         Quantity::Rate | Quantity::RateOf(_) => Toleranced::Rate(nominal),
         Quantity::FreeLength => Toleranced::FreeLength,
         Quantity::OutsideDiameter | Quantity::InsideDiameter => Toleranced::CoilDiameter,

@@ -10,7 +10,7 @@ use crate::formula::stress;
 use crate::quantity::Quantity;
 use crate::record::{
     Expected, ExpectedRequirement, FORMAT, Kind, MemberAnswer, MemberFacts, Provenance,
-    ServiceFacts, StageFacts, StressAnswer, TOOL,
+    ServiceFacts, StageFacts, StressAnswer,
 };
 use crate::review::{Weight, review};
 use crate::units::{Finite, Millimetres, Newtons, NewtonsPerMillimetre};
@@ -26,6 +26,30 @@ pub enum Ask {
     Load(Newtons),
     /// At this length.
     Length(Millimetres),
+}
+
+const AT_LOAD: &str = "--at-load ";
+const AT_LENGTH: &str = "--at-length ";
+
+impl Ask {
+    /// The flag that asks it, with every digit.
+    fn flag(self) -> Option<String> {
+        match self {
+            Self::Drawing => None,
+            Self::Load(load) => Some(format!("{AT_LOAD}{}", load.get())),
+            Self::Length(length) => Some(format!("{AT_LENGTH}{}", length.get())),
+        }
+    }
+
+    /// What such a flag asks; `None` where it is another.
+    pub(super) fn of_flag(flag: &str) -> Option<Self> {
+        if let Some(load) = flag.strip_prefix(AT_LOAD) {
+            let load: f64 = load.parse().ok()?;
+            return Some(Self::Load(load.try_into().ok()?));
+        }
+        let length: f64 = flag.strip_prefix(AT_LENGTH)?.parse().ok()?;
+        Some(Self::Length(length.try_into().ok()?))
+    }
 }
 
 /// Computes the theory of the drawing at `path` and reviews it.
@@ -68,7 +92,7 @@ pub fn expect(path: &Path, as_written: &str, ask: Ask, date: Date) -> miette::Re
         solid_order: reviewed.solid_order,
         modulus_notes: modulus_notes(&drawing),
         theory,
-        provenance: provenance(&drawing, date),
+        provenance: provenance(&drawing, ask, date),
         files: Vec::new(),
     })
 }
@@ -243,16 +267,8 @@ fn modulus_notes(drawing: &Drawing) -> Vec<String> {
         .collect()
 }
 
-fn provenance(drawing: &Drawing, date: Date) -> Provenance {
+fn provenance(drawing: &Drawing, ask: Ask, date: Date) -> Provenance {
     let mut inputs = vec![drawing.input.clone()];
     inputs.extend(drawing.materials.clone());
-    Provenance {
-        tool: TOOL.to_owned(),
-        version: env!("CARGO_PKG_VERSION").to_owned(),
-        date: date.to_string(),
-        flags: Vec::new(),
-        inputs,
-        ledgers: Vec::new(),
-        archive: None,
-    }
+    Provenance::new(date, ask.flag().into_iter().collect(), inputs, Vec::new())
 }

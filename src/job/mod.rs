@@ -21,7 +21,7 @@ pub use draft_files::{Starter, starter};
 pub use expect::{Ask, expect};
 pub use history::read_history;
 pub use lots::{Listing, LotsError, Query, lots};
-pub use plan::{Asked, BenchAsked, CompareError, PlanOptions, plan};
+pub use plan::{Asked, BenchAsked, CompareError, PlanFlags, PlanOptions, plan};
 pub use rate::{Bench, Guess, LoadAt, RateOptions, RateResult, rate};
 pub use read::Keep;
 pub use recheck::{

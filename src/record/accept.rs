@@ -2,6 +2,7 @@
 
 use std::collections::BTreeMap;
 
+use jiff::civil::Date;
 use schemars::JsonSchema;
 use serde::{Deserialize, Serialize};
 
@@ -159,6 +160,26 @@ pub struct Provenance {
     /// What an archive told; `null` where none was asked.
     #[serde(default)]
     pub archive: Option<Told>,
+}
+
+impl Provenance {
+    /// Of a result of this tool in this version, made without an archive.
+    pub fn new(
+        date: Date,
+        flags: Vec<String>,
+        inputs: Vec<InputFile>,
+        ledgers: Vec<LedgerFacts>,
+    ) -> Self {
+        Self {
+            tool: super::TOOL.to_owned(),
+            version: env!("CARGO_PKG_VERSION").to_owned(),
+            date: date.to_string(),
+            flags,
+            inputs,
+            ledgers,
+            archive: None,
+        }
+    }
 }
 
 /// `result.json` of `accept`.

@@ -2,6 +2,7 @@
 
 use super::Found;
 use super::en15800_table::{coil, from_memory};
+use crate::formula::Ends;
 
 /// Grade.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -44,8 +45,8 @@ pub struct Drawn {
     pub free: f64,
     /// Rate R, N/mm.
     pub rate: f64,
-    /// Whether the ends are ground.
-    pub ground: bool,
+    /// Its ends.
+    pub ends: Ends,
     /// Whether it is coiled cold.
     pub cold: bool,
 }
@@ -60,8 +61,13 @@ impl Drawn {
 /// What a tolerance is asked for.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub enum Toleranced {
-    /// A load of this size, N.
-    Load(f64),
+    /// A load.
+    Load {
+        /// Its nominal size, N.
+        nominal: f64,
+        /// The length it is asked at, mm.
+        length: f64,
+    },
     /// The rate, of this nominal value, N/mm.
     Rate(f64),
     /// Free length.
@@ -96,6 +102,14 @@ pub enum OutOfRange {
         what: &'static str,
         why: &'static str,
     },
+    #[error(
+        "{standard} prints no load tolerance for a deflection of {deflection} in of a spring whose free length has ±{length} in"
+    )]
+    NotPrinted {
+        standard: &'static str,
+        deflection: String,
+        length: String,
+    },
 }
 
 impl OutOfRange {
@@ -119,7 +133,7 @@ impl OutOfRange {
 const NAME: &str = "EN 15800";
 
 /// `value` to at most four places, for a message.
-fn shown(value: f64) -> String {
+pub(super) fn shown(value: f64) -> String {
     let text = format!("{value:.4}");
     text.trim_end_matches('0').trim_end_matches('.').to_owned()
 }
@@ -181,7 +195,7 @@ pub fn en15800(grade: Grade, spring: &Drawn, what: Toleranced) -> Result<Found, 
     let geometry = force_factor(spring) * coil_factor(spring.active);
     let memory = " (from memory)";
     let (half_width, note) = match what {
-        Toleranced::Load(load) => (
+        Toleranced::Load { nominal: load, .. } => (
             (geometry + 1.5 * load.abs() / 100.0) * q,
             if grade == Grade::Two {
                 ""
@@ -196,7 +210,7 @@ pub fn en15800(grade: Grade, spring: &Drawn, what: Toleranced) -> Result<Found, 
             let doubt = from_memory(spring.coil, spring.index(), grade.number());
             (cell, if doubt { memory } else { "" })
         }
-        Toleranced::Squareness | Toleranced::Parallelism if !spring.ground => {
+        Toleranced::Squareness | Toleranced::Parallelism if !spring.ends.ground() => {
             return Err(nothing(
                 "squareness and parallelism",
                 " of ends that are not ground",

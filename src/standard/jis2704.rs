@@ -46,7 +46,7 @@ pub(super) fn jis2704(grade: Grade, spring: &Drawn, what: Toleranced) -> Result<
         why: "",
     };
     let half_width = match what {
-        Toleranced::Load(nominal) | Toleranced::Rate(nominal) => {
+        Toleranced::Load { nominal, .. } | Toleranced::Rate(nominal) => {
             by_coils(grade, spring)? * nominal.abs()
         }
         Toleranced::FreeLength => by_index(&FREE, grade, spring, spring.free)?,

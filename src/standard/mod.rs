@@ -3,6 +3,8 @@
 
 mod en15800;
 mod en15800_table;
+mod handbook;
+mod handbook_tables;
 mod jis2704;
 
 pub use en15800::{Drawn, Grade, OutOfRange, Toleranced, en15800};
@@ -14,11 +16,13 @@ pub enum Standard {
     En15800(Grade),
     /// JIS B 2704-2.
     Jis2704(Grade),
+    /// Machinery's Handbook, tables 8, 10 and 11.
+    Handbook,
 }
 
 impl Standard {
     /// The words a drawing may write; `EN 15800` alone is grade 2, as the standard says.
-    pub const WORDS: [(&'static str, Self); 7] = [
+    pub const WORDS: [(&'static str, Self); 8] = [
         ("EN 15800 grade 1", Self::En15800(Grade::One)),
         ("EN 15800 grade 2", Self::En15800(Grade::Two)),
         ("EN 15800 grade 3", Self::En15800(Grade::Three)),
@@ -26,6 +30,7 @@ impl Standard {
         ("JIS B 2704-2 grade 1", Self::Jis2704(Grade::One)),
         ("JIS B 2704-2 grade 2", Self::Jis2704(Grade::Two)),
         ("JIS B 2704-2 grade 3", Self::Jis2704(Grade::Three)),
+        (handbook::NAME, Self::Handbook),
     ];
 
     /// The half-width of `what` for a spring as drawn.
@@ -36,6 +41,7 @@ impl Standard {
         match self {
             Self::En15800(grade) => en15800(grade, spring, what),
             Self::Jis2704(grade) => jis2704::jis2704(grade, spring, what),
+            Self::Handbook => handbook::handbook(spring, what),
         }
     }
 }

@@ -6,7 +6,7 @@ use coilassay::standard::{Drawn, Standard, Toleranced};
 use crate::drawn::expected;
 use crate::published::Misses;
 use crate::standards_drawn::sample;
-use crate::standards_published::spring;
+use crate::standards_published::{load, spring};
 
 /// d, D, n, L0.
 type Sizes = [f64; 4];
@@ -18,12 +18,12 @@ const SLENDER: Sizes = [1.0, 20.0, 5.0, 60.0]; // w 20
 type Row = (&'static str, Sizes, usize, Toleranced, f64);
 #[rustfmt::skip] // keeps the table a table
 const ROWS: [Row; 16] = [
-    ("load, few coils, grade 1", FEW, 1, Toleranced::Load(200.0), 10.0),
-    ("load, few coils, grade 2", FEW, 2, Toleranced::Load(200.0), 20.0),
+    ("load, few coils, grade 1", FEW, 1, load(200.0), 10.0),
+    ("load, few coils, grade 2", FEW, 2, load(200.0), 20.0),
     ("rate, few coils, grade 3", FEW, 3, Toleranced::Rate(10.0), 1.5),
-    ("load, many coils, grade 1", MANY, 1, Toleranced::Load(100.0), 4.0),
+    ("load, many coils, grade 1", MANY, 1, load(100.0), 4.0),
     ("rate, many coils, grade 2", MANY, 2, Toleranced::Rate(10.0), 0.8),
-    ("load, many coils, grade 3", MANY, 3, Toleranced::Load(100.0), 12.0),
+    ("load, many coils, grade 3", MANY, 3, load(100.0), 12.0),
     ("L0 to w 8, grade 1", FEW, 1, Toleranced::FreeLength, 0.9),
     ("L0 to w 8, grade 2", FEW, 2, Toleranced::FreeLength, 1.8),
     ("L0 to w 15, grade 1, least", MANY, 1, Toleranced::FreeLength, 0.6),
@@ -59,7 +59,7 @@ fn ranges_and_what_it_does_not_give() {
     for (drawn, what, said) in [
         (
             spring(4.0, 32.0, 2.5, 90.0),
-            Toleranced::Load(1.0),
+            load(1.0),
             "active coils n 2.5",
         ),
         (drawn(SLENDER), Toleranced::CoilDiameter, "covers 3 to 15"),

@@ -53,6 +53,8 @@ mod export;
 mod fit_published;
 mod folder;
 mod folder_interrupted;
+mod handbook_drawn;
+mod handbook_published;
 mod independent;
 mod jis_published;
 mod knee_coverage;

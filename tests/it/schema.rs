@@ -122,6 +122,61 @@ fn the_schemas_of_the_rig() {
     }
 }
 
+/// The result of `expect`: its schema as the types say, the samples keep to it, every key of its own objects is met.
+#[test]
+fn the_schema_of_expect() {
+    let path = root("templates/expect.schema.json");
+    let made = serde_json::to_value(schemars::schema_for!(coilassay::record::Expected)).unwrap();
+    if std::env::var_os("UPDATE_SCHEMA").is_some() {
+        let text = serde_json::to_string_pretty(&made).unwrap();
+        std::fs::write(&path, text + "\n").unwrap();
+    }
+    let published: Value = serde_json::from_str(&std::fs::read_to_string(&path).unwrap()).unwrap();
+    assert!(
+        published == made,
+        "templates/expect.schema.json is not what the types say"
+    );
+    let schema = jsonschema::validator_for(&published).unwrap();
+    let (mut wanted, mut met) = (BTreeSet::new(), BTreeSet::new());
+    keys(&published["properties"], &mut wanted);
+    for name in [
+        "MemberAnswer",
+        "StressAnswer",
+        "StageFacts",
+        "ServiceFacts",
+        "ExpectedRequirement",
+        "StrengthLine",
+    ] {
+        keys(&published["$defs"][name]["properties"], &mut wanted);
+    }
+    for drawing in ["accepted/tg-204", "nested/tg-350", "rejected/tg-231"] {
+        let output = Command::cargo_bin("coilassay")
+            .unwrap()
+            .args([
+                "expect",
+                "--json",
+                "--date",
+                "2026-12-01",
+                "--at-load",
+                "100",
+            ])
+            .arg(root(&format!("samples/{drawing}.toml")))
+            .output()
+            .unwrap();
+        let mut record: Value = serde_json::from_slice(&output.stdout).unwrap();
+        let faults: Vec<String> = schema
+            .iter_errors(&record)
+            .map(|fault| fault.to_string())
+            .collect();
+        assert!(faults.is_empty(), "{drawing}: {faults:#?}");
+        all_keys(&record, &mut met);
+        record["rate_n_per_mm"] = Value::from("10.6");
+        assert!(!schema.is_valid(&record), "a text for a figure passes");
+    }
+    let never: Vec<&String> = wanted.difference(&met).collect();
+    assert!(never.is_empty(), "never met: {never:?}");
+}
+
 #[test]
 fn every_sample_keeps_to_the_schema() {
     let schema = jsonschema::validator_for(&published()).unwrap();

@@ -27,7 +27,7 @@ use crate::curve::{Kept, Reduced, full_load, nominal_rate, window_of};
 use crate::doubt::doubt;
 use crate::drawing::{Drawing, Requirement, Rule};
 use crate::quantity::Class;
-use crate::record::{AcceptRecord, FORMAT, Kind, LedgerFacts, Provenance, TOOL};
+use crate::record::{AcceptRecord, FORMAT, Kind, LedgerFacts, Provenance};
 use crate::rig::SpringFrom;
 use crate::text::{InputFile, announce};
 
@@ -255,13 +255,13 @@ fn provenance(mut sources: Sources, options: &Options) -> Provenance {
     let history = options.past.as_ref().and_then(|past| past.input.clone());
     sources.inputs.extend(history);
     Provenance {
-        tool: TOOL.to_owned(),
-        version: env!("CARGO_PKG_VERSION").to_owned(),
-        date: options.date.to_string(),
-        flags: options.flags.clone(),
-        inputs: sources.inputs,
-        ledgers: sources.ledgers,
         archive: options.memory.told().cloned(),
+        ..Provenance::new(
+            options.date,
+            options.flags.clone(),
+            sources.inputs,
+            sources.ledgers,
+        )
     }
 }
 

@@ -1,10 +1,11 @@
 //! `plan`: plans side by side, and what each lets through.
 
 mod asked;
+mod flags;
 mod told;
 
 use crate::drawing::State;
-use crate::record::{BenchFacts, FORMAT, Kind, OffersRecord, Provenance, StateFacts, TOOL};
+use crate::record::{BenchFacts, FORMAT, Kind, OffersRecord, Provenance, StateFacts};
 use crate::sampling::{
     Aql, Bench, Offer, PlanError, Reason, designed, next, single, variables_plan, zero_accept,
 };
@@ -13,6 +14,7 @@ use super::accept::Past;
 use super::facts::figure;
 
 pub use asked::{Asked, BenchAsked, CompareError, PlanOptions};
+pub use flags::PlanFlags;
 
 /// Beyond the quality accepted five times in a hundred by this factor nothing is drawn.
 const BEYOND: f64 = 1.1;
@@ -54,15 +56,12 @@ pub fn plan(options: &PlanOptions) -> miette::Result<OffersRecord> {
         state: state.map(|(_, told)| told),
         bench: options.bench.and_then(bench_facts),
         plans,
-        provenance: Provenance {
-            tool: TOOL.to_owned(),
-            version: env!("CARGO_PKG_VERSION").to_owned(),
-            date: options.date.to_string(),
-            flags: options.flags.clone(),
-            inputs: inputs.into_iter().collect(),
-            ledgers: Vec::new(),
-            archive: None,
-        },
+        provenance: Provenance::new(
+            options.date,
+            options.flags.clone(),
+            inputs.into_iter().collect(),
+            Vec::new(),
+        ),
         files: Vec::new(),
     })
 }

@@ -83,6 +83,12 @@ pub enum RecheckError {
         help("use the version of coilassay that wrote it, or a later one")
     )]
     Unknown { file: String, what: String },
+    #[error("`{file}` does not state {what}")]
+    #[diagnostic(
+        code(coilassay::recheck::unstated),
+        help("run the command anew; this version writes it into the result")
+    )]
+    Unstated { file: String, what: &'static str },
 }
 
 /// The runs of the archive at `dir`.

@@ -7,6 +7,8 @@ use serde_json::Value;
 use crate::record::{Closeness, Difference, FORMAT, OutputFile, Provenance, TOOL, differences};
 use crate::text::{InputFile, beside, read_bytes, sha256_of};
 
+use super::super::expect::Ask;
+use super::super::plan::PlanFlags;
 use super::super::read::Keep;
 use super::again::{Again, Given, Kind};
 use super::{ChangedInput, Outcome, RecheckError, Rechecked};
@@ -75,6 +77,10 @@ impl Sealed {
         besides: impl FnOnce(&Again) -> miette::Result<Vec<Difference>>,
     ) -> miette::Result<Rechecked> {
         let (path, written) = self.file(from)?;
+        if let Some(what) = self.unstated() {
+            let file = self.name.clone();
+            return Err(RecheckError::Unstated { file, what }.into());
+        }
         let changed = self.changed_inputs(&path, from);
         if !changed.is_empty() {
             return Ok(self.rechecked(Outcome::InputsChanged { inputs: changed }));
@@ -98,9 +104,11 @@ impl Sealed {
         }
     }
 
-    /// Where the file of the command line lies, and its path as written.
+    /// Where the file of the command line lies, and its path as written; both empty where the job has none.
     fn file(&self, from: &Path) -> Result<(PathBuf, String), RecheckError> {
-        let role = self.kind.role();
+        let Some(role) = self.kind.role() else {
+            return Ok((PathBuf::new(), String::new()));
+        };
         let file = self
             .provenance
             .inputs
@@ -117,7 +125,8 @@ impl Sealed {
     /// Paths of the command line are meant from the folder of the call, all others from the folder of its file.
     fn changed_inputs(&self, file: &Path, from: &Path) -> Vec<ChangedInput> {
         let check = |input: &InputFile| {
-            let path = if input.role == self.kind.role() || input.role == "history" {
+            let of_call = Some(input.role.as_str()) == self.kind.role();
+            let path = if of_call || input.role == "history" {
                 from.join(&input.path)
             } else {
                 beside(file, &input.path)
@@ -131,6 +140,20 @@ impl Sealed {
             })
         };
         self.provenance.inputs.iter().filter_map(check).collect()
+    }
+
+    /// What earlier versions did not write into a result although it was made with it.
+    fn unstated(&self) -> Option<&'static str> {
+        let no_flags = self.provenance.flags.is_empty();
+        let answers = self
+            .value
+            .get("deflection_mm")
+            .is_some_and(Value::is_number);
+        match self.kind {
+            Kind::Plan if no_flags => Some("the flags that asked for its plans"),
+            Kind::Expect if no_flags && answers => Some("the load or length it was asked at"),
+            _ => None,
+        }
     }
 
     fn given(&self) -> Result<Given<'_>, RecheckError> {
@@ -148,15 +171,19 @@ impl Sealed {
                 .map_err(|_| unknown(format!("the date `{date}`")))?,
             strict: false,
             units_confirmed: false,
+            ask: Ask::Drawing,
+            plan: PlanFlags::default(),
             earlier: earlier
                 .map_or(Ok(Vec::new()), serde_json::from_value)
                 .map_err(|fault| unknown(format!("earlier checks: {fault}")))?,
         };
+        if self.kind == Kind::Plan {
+            given.plan = PlanFlags::of_kept(&self.provenance.flags).map_err(unknown)?;
+            return Ok(given);
+        }
         for flag in &self.provenance.flags {
-            match flag.as_str() {
-                "--strict" => given.strict = true,
-                "--units-confirmed" => given.units_confirmed = true,
-                other => return Err(unknown(format!("the flag `{other}`"))),
+            if !given.take(flag) {
+                return Err(unknown(format!("the flag `{flag}`")));
             }
         }
         Ok(given)

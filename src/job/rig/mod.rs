@@ -14,7 +14,7 @@ mod verify_outcome;
 
 use jiff::civil::Date;
 
-use crate::record::{Provenance, TOOL};
+use crate::record::Provenance;
 use crate::rig::Edited;
 use crate::text::InputFile;
 
@@ -44,13 +44,5 @@ pub struct Proposal {
 fn provenance(inputs: Vec<InputFile>, sources: Sources, options: &RigOptions) -> Provenance {
     let mut inputs = inputs;
     inputs.extend(sources.inputs);
-    Provenance {
-        tool: TOOL.to_owned(),
-        version: env!("CARGO_PKG_VERSION").to_owned(),
-        date: options.date.to_string(),
-        flags: options.flags.clone(),
-        inputs,
-        ledgers: sources.ledgers,
-        archive: None,
-    }
+    Provenance::new(options.date, options.flags.clone(), inputs, sources.ledgers)
 }

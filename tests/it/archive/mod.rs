@@ -5,6 +5,7 @@ mod interrupted;
 mod lots;
 mod memory;
 mod recheck;
+mod recheck_theory;
 mod spoilt;
 
 use std::fs;

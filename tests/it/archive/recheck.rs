@@ -118,7 +118,7 @@ fn no_entry_escapes() {
     }
 }
 
-fn leaves(value: &Value, path: &mut Vec<String>, found: &mut Vec<Vec<String>>) {
+pub(super) fn leaves(value: &Value, path: &mut Vec<String>, found: &mut Vec<Vec<String>>) {
     let mut below = |key: String, value: &Value| {
         path.push(key);
         leaves(value, path, found);
