@@ -21,6 +21,9 @@ use polars::prelude::{CsvReadOptions, SerReader};
 
 const PAIRS: usize = 7;
 
+/// A measurement in a folder of its own.
+type Case = fn(&Path);
+
 fn main() {
     let words: Vec<String> = std::env::args().collect();
     if let [_, task, file] = words.as_slice()
@@ -29,7 +32,7 @@ fn main() {
         return polars_alone(Path::new(file));
     }
     let work = tempfile::tempdir().unwrap();
-    let cases: [(&str, fn(&Path)); 5] = [
+    let cases: [(&str, Case); 5] = [
         ("fifty", fifty_exports),
         ("large", one_large_file),
         ("small", thousand_small),
