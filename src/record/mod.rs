@@ -15,6 +15,7 @@ mod process;
 mod repeat;
 mod spring;
 mod told;
+mod track;
 
 pub use accept::{
     AcceptRecord, ConditionFacts, DrawingFacts, Kind, LotFacts, OutputFile, Provenance,
@@ -46,6 +47,13 @@ pub use spring::{
 
 pub use crate::bench::{Finding, Serving};
 pub use told::Told;
+pub use track::{
+    AbleFacts, AlarmFacts, ChartKind, ComponentFacts, CrossingFacts, GroupFacts, LimitFacts,
+    LotOrder, ReferenceMoved, StepFacts, TrackCaution, TrackKind, TrackRecord, Tracked, TrackedLot,
+    TrendFacts,
+};
+
+pub use crate::drift::{Culprit, Rule, Unclear};
 
 pub use crate::characteristic::Part;
 pub use crate::curve::WindowOf;
