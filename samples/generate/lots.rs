@@ -5,6 +5,7 @@ use std::io::Write;
 use std::path::Path;
 
 use crate::Outcome;
+use crate::accepted::REPEATABILITY;
 use crate::bench::{Bench, Programme, run};
 use crate::random::Random;
 use crate::rigs::{FORCE_TRAVEL_FRAME, drawing, spring};
@@ -17,7 +18,7 @@ const NEW_HEAT: u64 = 26;
 /// Springs of a lot: level S-3, lots of 80, letter C.
 const SPRINGS: u64 = 5;
 /// Checks of the bench.
-const CHECKS: u64 = 20;
+const CHECKS: u64 = 40;
 /// Days of the year before the first lot, 2026-03-09.
 const FIRST: u64 = 68;
 
@@ -26,14 +27,14 @@ const FIRST: u64 = 68;
 /// # Errors
 /// What the file system says.
 pub(crate) fn write(folder: &Path) -> Outcome {
-    let rig = format!("{RIG}\n{FORCE_TRAVEL_FRAME}");
+    let rig = format!("{RIG}\n{FORCE_TRAVEL_FRAME}\n{REPEATABILITY}");
     text::file(
         &folder.join("tg-204.toml"),
         drawing(REQUIREMENTS, ACCEPTANCE),
     )?;
     text::file(&folder.join("bench-6.toml"), rig)?;
     for lot in 1..=LOTS {
-        let mut random = Random::new(0x10_75, lot);
+        let mut random = Random::new(0x10_7A, lot);
         let day = day(FIRST + 6 * (lot - 1));
         let place = folder.join(format!("lot-{day}"));
         let heat = if lot < NEW_HEAT { "H-051" } else { "H-063" };
@@ -53,15 +54,16 @@ pub(crate) fn write(folder: &Path) -> Outcome {
     }
     for check in 1..=CHECKS {
         let mut random = Random::new(0x10_76, check);
-        let day = day(FIRST + 12 * (check - 1));
+        let day = day(FIRST + 6 * (check - 1));
         let place = folder.join(format!("check-{day}"));
         text::file(&place.join("check.toml"), CHECK.replace("DAY", &day))?;
         let reference = Specimen::single(Member {
             rate: 9.842,
-            line: 84.1,
-            toe: 1.0,
-            toe_start: 0.5,
-            solid: 36.0,
+            // Its line and toe give a free length of 84.355 mm, as certified within U.
+            line: 84.31,
+            toe: 0.30,
+            toe_start: 0.7,
+            solid: 30.0,
         });
         text::file(&place.join("rs-3.csv"), export(&reference, &mut random)?)?;
     }
@@ -96,7 +98,7 @@ fn export(specimen: &Specimen, random: &mut Random) -> std::io::Result<Vec<u8>> 
         air: 2.2,
         bottom: 46.0,
         cycles: 1,
-        loading: 60,
+        loading: 90,
         unloading: 12,
         dwell: 0,
         slow_below: 0.0,
@@ -165,7 +167,7 @@ units = "mm-N"
 
 [rig]
 name = "Bench 6"
-check_every = "14 d"
+check_every = "7 d"
 
 [export]
 header_line = 1
@@ -192,6 +194,19 @@ name = "RS-3"
 certificate = "CC-0219 (invented)"
 calibrated = { on = 2026-02-10, until = 2027-02-10 }
 rate = { value = 9.842, uncertainty = 0.012, k = 2, from = 75.0, to = 50.0 }
+free_length = { value = 84.35, uncertainty = 0.03, k = 2 }
+
+[[reference.load]]
+at_length = 70.0
+value = 140.84
+uncertainty = 0.30
+k = 2
+
+[[reference.load]]
+at_length = 50.0
+value = 337.68
+uncertainty = 0.60
+k = 2
 
 [conditions]
 temperature = 20.3

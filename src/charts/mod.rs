@@ -13,6 +13,7 @@ pub(crate) mod operating;
 mod share;
 mod study;
 mod track;
+mod track_line;
 mod trend;
 mod values;
 

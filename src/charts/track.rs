@@ -1,35 +1,16 @@
 //! A characteristic over lots: means, spreads, EWMA, CUSUM, and the rig's own line.
 
+use super::track_line::{Line, TALL, draw};
 use super::{Chart, chart};
 use crate::record::{ChartKind, EarlierCheck, LimitFacts, TrackRecord, Verdict};
 use crate::sheet::ChartError;
-use crate::sheet::canvas::{
-    Anchor, Drawn, FAINT, FIELD, INK, LIMIT, OPEN, Sheet, THEORY, TYPE, WIDTH,
-};
-use crate::sheet::plot::{self, EDGE, Entry, LEADING, Plot, Sample, Scale};
+use crate::sheet::canvas::{LIMIT, OPEN, THEORY};
+use crate::sheet::plot::{self, Entry, LEADING, Sample};
 use crate::units::{Finite, System};
-use crate::wording::{self, font, per_unit, unit_symbol};
+use crate::wording::{self, per_unit, unit_symbol};
 
-/// Height of a plot.
-const TALL: f64 = 150.0;
 /// Lots drawn, the newest.
 const DRAWN: usize = 400;
-
-/// A line of values over lots, and what it is held against.
-#[derive(Default)]
-struct Line {
-    values: Vec<Option<f64>>,
-    /// A second line in the same plot.
-    beside: Vec<Option<f64>>,
-    /// Limits of each lot, lower and upper.
-    limits: Vec<Option<(f64, f64)>>,
-    centre: Option<f64>,
-    drawing: Vec<f64>,
-    nominal: Option<f64>,
-    fires: Vec<bool>,
-    labels: Vec<String>,
-    baseline: Vec<bool>,
-}
 
 /// The charts, plots first.
 ///
@@ -172,10 +153,12 @@ fn one(
     line: &Line,
     unit: &str,
 ) -> Result<Chart, ChartError> {
+    let lots = ["lot", "a rule fires", "limits of the chart"];
+    let [plain, out, dashes] = line.words.unwrap_or(lots);
     let mut entries: Vec<Entry> = vec![
-        (Sample::Mark(Verdict::Conforms), "lot".to_owned()),
-        (Sample::Mark(Verdict::Fails), "a rule fires".to_owned()),
-        (Sample::Dashes(OPEN), "limits of the chart".to_owned()),
+        (Sample::Mark(Verdict::Conforms), plain.to_owned()),
+        (Sample::Mark(Verdict::Fails), out.to_owned()),
+        (Sample::Dashes(OPEN), dashes.to_owned()),
     ];
     if !line.drawing.is_empty() {
         entries.push((Sample::Line(LIMIT, 1.8), "limits of the drawing".to_owned()));
@@ -191,122 +174,6 @@ fn one(
         height,
         |sheet| draw(sheet, line, &entries, unit),
     )
-}
-
-fn draw(sheet: &mut Sheet<'_>, line: &Line, entries: &[Entry], unit: &str) -> Drawn {
-    let ends = line
-        .limits
-        .iter()
-        .flatten()
-        .flat_map(|(low, high)| [*low, *high]);
-    let values = line.values.iter().chain(&line.beside).flatten().copied();
-    let y = plot::range(
-        values
-            .chain(ends)
-            .chain(line.drawing.iter().copied())
-            .chain(line.nominal),
-        0.06,
-    );
-    let top = plot::legend_height(entries) + LEADING * 1.6;
-    let last = line.values.len().max(2) as f64 - 1.0;
-    let plot = Plot {
-        x: Scale {
-            value: (-0.02 * last, 1.02 * last),
-            paper: (EDGE + plot::labels_width(y, 6) + 10.0, WIDTH - EDGE),
-        },
-        y: Scale {
-            value: y,
-            paper: (top + TALL, top),
-        },
-    };
-    plot::legend(sheet, entries)?;
-    let first = line.baseline.iter().position(|of| *of);
-    if let (Some(first), Some(last)) = (first, line.baseline.iter().rposition(|of| *of)) {
-        let left = plot.x.at(first as f64 - 0.5).max(plot.x.paper.0);
-        let corner = (plot.x.at(last as f64 + 0.5), plot.y.paper.1);
-        sheet.block((left, plot.y.paper.0), corner, FIELD, 0.06)?;
-    }
-    plot::upward_axis(sheet, &plot, 6, unit)?;
-    across(sheet, &plot, line)?;
-    points(sheet, &plot, line)?;
-    labels(sheet, &plot, &line.labels)?;
-    plot::frame(sheet, &plot)
-}
-
-/// What goes straight across, and the limits of each lot.
-fn across(sheet: &mut Sheet<'_>, plot: &Plot, line: &Line) -> Drawn {
-    let (left, right) = plot.x.paper;
-    for bound in &line.drawing {
-        let at = plot.y.at(*bound);
-        sheet.line(&[(left, at), (right, at)], LIMIT, 1.8)?;
-    }
-    if let Some(nominal) = line.nominal {
-        let at = plot.y.at(nominal);
-        sheet.dashes((left, at), (right, at), THEORY, 1.4)?;
-    }
-    if let Some(centre) = line.centre {
-        let at = plot.y.at(centre);
-        sheet.line(&[(left, at), (right, at)], FAINT, 1.0)?;
-    }
-    for upper in [false, true] {
-        let mut place = 0;
-        // Stretches of equal limits are one line.
-        for stretch in line.limits.chunk_by(|one, next| one == next) {
-            let to = place + stretch.len();
-            if let Some(Some(limits)) = stretch.first() {
-                let at = plot.y.at(if upper { limits.1 } else { limits.0 });
-                let ends =
-                    [place as f64 - 0.5, to as f64 - 0.5].map(|x| plot.x.at(x).clamp(left, right));
-                let [from, till] = ends;
-                sheet.dashes((from, at), (till, at), OPEN, 1.4)?;
-            }
-            place = to;
-        }
-    }
-    Ok(())
-}
-
-fn points(sheet: &mut Sheet<'_>, plot: &Plot, line: &Line) -> Drawn {
-    for values in [&line.values, &line.beside] {
-        let path: Vec<(f64, f64)> = values
-            .iter()
-            .enumerate()
-            .filter_map(|(place, value)| value.map(|value| plot.at((place as f64, value))))
-            .collect();
-        if path.len() > 1 {
-            sheet.line(&path, FIELD, 0.9)?;
-        }
-    }
-    let size = if line.values.len() > 100 { 2.2 } else { 3.6 };
-    for (place, fires) in line.fires.iter().enumerate() {
-        let mark = if *fires {
-            Verdict::Fails
-        } else {
-            Verdict::Conforms
-        };
-        for values in [&line.values, &line.beside] {
-            if let Some(Some(value)) = values.get(place) {
-                sheet.mark(mark, plot.at((place as f64, *value)), size)?;
-            }
-        }
-    }
-    Ok(())
-}
-
-/// Names under the points, as many as keep clear of each other; the last one first.
-fn labels(sheet: &mut Sheet<'_>, plot: &Plot, names: &[String]) -> Drawn {
-    let mut free = WIDTH - EDGE + 1.0;
-    for (place, name) in names.iter().enumerate().rev() {
-        let text = font::shortened(&font::fitting(name), TYPE, 64.0);
-        let half = font::width(&text, TYPE, false) / 2.0;
-        let x = plot.x.at(place as f64).min(WIDTH - EDGE - half);
-        if x + half < free && x - half > plot.x.paper.0 - 20.0 {
-            let at = (x, plot.y.paper.0 + LEADING * 0.75);
-            sheet.text(&text, at, Anchor::Middle, INK)?;
-            free = x - half - 10.0;
-        }
-    }
-    Ok(())
 }
 
 /// The error of the reference spring over the checks of each rig.
@@ -332,6 +199,7 @@ fn rig(of: &TrackRecord, show_in: System) -> Result<Vec<Chart>, ChartError> {
                 .map(|u| Some((-u, u)))
                 .collect(),
             centre: Some(0.0),
+            words: Some(["check", "disagrees", "± U (k = 2) of the measured value"]),
             fires: checks().map(|one| one.e_n.get().abs() > 1.0).collect(),
             labels: checks().map(|one| one.date.to_string()).collect(),
             ..Line::default()

@@ -4,11 +4,11 @@ use super::facts::{Facts, fact};
 use super::page::{Page, PageDecision};
 use super::short;
 use super::track_tables as tables;
-use crate::record::{TrackRecord, Tracked};
+use crate::record::{AlarmFacts, TrackRecord, Tracked, TrackedLot};
 use crate::units::System;
 use crate::wording::{self, Place, count, number, with_unit};
 
-/// Alarms written out.
+/// Lots written out on which a rule fires.
 const SHOWN: usize = 6;
 
 /// The page of a characteristic over lots, its figures in the units of `show_in`.
@@ -45,22 +45,11 @@ fn decision(of: &TrackRecord, subject: &str, show_in: System) -> PageDecision {
         Tracked::TooFewLots => ("undecided", "TOO FEW LOTS"),
     };
     let first = of.lots.len().saturating_sub(of.newest as usize);
-    let newest = of.alarms.iter().filter(|alarm| alarm.at as usize >= first);
-    let mut why: Vec<String> = Vec::new();
-    let lines: Vec<String> = newest
-        .map(|alarm| {
-            let lot = of
-                .lots
-                .get(alarm.at as usize)
-                .map_or("", |lot| lot.lot.as_str());
-            let (chart, rule) = (wording::chart(alarm.chart), wording::rule(alarm.rule));
-            format!("Lot {lot}: {rule}, chart of {chart}.")
-        })
-        .collect();
-    let more = lines.len().saturating_sub(SHOWN);
-    why.extend(lines.into_iter().rev().take(SHOWN));
+    let mut why = firing(of, first);
+    let more = why.len().saturating_sub(SHOWN);
+    why.truncate(SHOWN);
     if more > 0 {
-        why.push(format!("And {more} more on the newest lots."));
+        why.push(format!("And {more} more of the newest lots."));
     }
     if of.decision == Tracked::TooFewLots {
         why.push(format!(
@@ -77,6 +66,28 @@ fn decision(of: &TrackRecord, subject: &str, show_in: System) -> PageDecision {
         about: format!("{subject}: the newest {}.", count(of.newest, "lot")),
         why,
     }
+}
+
+/// What fires on the lots from `first` on, a line for each lot, the newest first.
+fn firing(of: &TrackRecord, first: usize) -> Vec<String> {
+    let lots = of.lots.iter().enumerate().skip(first).rev();
+    let line = |(place, lot): (usize, &TrackedLot)| {
+        let alarms: Vec<&AlarmFacts> = of
+            .alarms
+            .iter()
+            .filter(|alarm| alarm.at as usize == place)
+            .collect();
+        let charts = alarms.chunk_by(|one, next| one.chart == next.chart);
+        let words: Vec<String> = charts
+            .filter_map(|alarms| {
+                let rules: Vec<&str> = alarms.iter().map(|of| wording::rule(of.rule)).collect();
+                let chart = wording::chart(alarms.first()?.chart);
+                Some(format!("{chart} ({})", rules.join("; ")))
+            })
+            .collect();
+        (!words.is_empty()).then(|| format!("Lot {}: {}.", lot.lot, words.join(", ")))
+    };
+    lots.filter_map(line).collect()
 }
 
 fn facts(of: &TrackRecord, show_in: System) -> Facts {

@@ -49,7 +49,7 @@ fn method(of: &TrackRecord) -> Vec<String> {
         .map(|rule| wording::rule(*rule).to_owned())
         .collect();
     vec![
-        "Means: each lot’s mean as an individual, limits at the baseline’s mean ± 3·MR̄/d2 of its moving ranges, so that what lots \
+        "Means: each lot’s mean as an individual, limits at the baseline’s mean ± 3/d2 times the mean of its moving ranges, so that what lots \
          always differ by is no alarm. Standard deviations: c4·σ ± 3σ·√(1 − c4²), σ pooled within the baseline’s lots. EWMA: λ 0.2, \
          limits 2.86 standard deviations of the settled mean. CUSUM: k 0.5, h 5 standard deviations of the lots’ means."
             .to_owned(),
@@ -115,7 +115,7 @@ fn components(of: &TrackRecord, parts: &ComponentFacts, show_in: System) -> Tabl
     table.note = format!(
         "F of the lots {}, p {}.",
         number(parts.f, 3),
-        number(parts.p, 2)
+        wording::chance(parts.p)
     );
     table
 }

@@ -16,6 +16,7 @@ mod repeat;
 mod spring;
 mod told;
 mod track;
+mod track_parts;
 
 pub use accept::{
     AcceptRecord, ConditionFacts, DrawingFacts, Kind, LotFacts, OutputFile, Provenance,
@@ -48,9 +49,11 @@ pub use spring::{
 pub use crate::bench::{Finding, Serving};
 pub use told::Told;
 pub use track::{
-    AbleFacts, AlarmFacts, ChartKind, ComponentFacts, CrossingFacts, GroupFacts, LimitFacts,
-    LotOrder, ReferenceMoved, StepFacts, TrackCaution, TrackKind, TrackRecord, Tracked, TrackedLot,
-    TrendFacts,
+    AlarmFacts, ChartKind, LimitFacts, LotOrder, TrackCaution, TrackKind, TrackRecord, Tracked,
+    TrackedLot,
+};
+pub use track_parts::{
+    AbleFacts, ComponentFacts, CrossingFacts, GroupFacts, ReferenceMoved, StepFacts, TrendFacts,
 };
 
 pub use crate::drift::{Culprit, Rule, Unclear};

@@ -26,7 +26,7 @@ pub(crate) use lot::{decided, decision_word, simple_line, terms, why};
 pub(crate) use plan::{compared, readings, settled_early, state};
 pub(crate) use spring::{absence, advice, disposition, rule_used, verdict_reason, verdict_word};
 pub(crate) use strength::{stress_limit, stress_place, stress_rule, stress_taken};
-pub(crate) use track::{chart, culprit, rule, step, tracked, trend};
+pub(crate) use track::{chance, chart, culprit, rule, step, tracked, trend};
 
 use crate::quantity::{Quantity, Unit};
 use crate::units::{Millimetres, System};

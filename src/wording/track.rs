@@ -72,7 +72,7 @@ pub(crate) fn step(of: &StepFacts, record: &TrackRecord, show_in: System) -> Str
         culprit(of.culprit)
     );
     if !of.changed_with.is_empty() {
-        text = format!("{text} With it changed {}.", of.changed_with.join(", "));
+        text = format!("{text} With it changed {}.", of.changed_with.join("; "));
     }
     text
 }
@@ -91,8 +91,11 @@ pub(crate) fn trend(record: &TrackRecord, show_in: System) -> Option<String> {
         value(of.slope_per_lot),
         value(of.lower),
         value(of.upper),
-        number(Some(of.p), 2)
+        chance(Some(of.p))
     );
+    if of.moves && !record.steps.is_empty() {
+        text.push_str(", its jumps counted in");
+    }
     match &of.crossing {
         Some(at) => {
             let latest = at
@@ -110,6 +113,14 @@ pub(crate) fn trend(record: &TrackRecord, show_in: System) -> Option<String> {
     }
     text.push('.');
     Some(text)
+}
+
+/// A chance; below a ten-thousandth its digits say nothing.
+pub(crate) fn chance(p: Option<Finite>) -> String {
+    match p {
+        Some(p) if p.get() < 1e-4 => "below 0.0001".to_owned(),
+        _ => number(p, 2),
+    }
 }
 
 /// A caution in a sentence.
@@ -131,6 +142,10 @@ pub(crate) fn tracked(of: &TrackCaution) -> String {
         TrackCaution::SeveralRigs { rigs } => format!(
             "the lots were measured on {}: differences across rigs hold what each rig has of its own",
             count(*rigs, "rig")
+        ),
+        TrackCaution::LotsWithout { lots } => format!(
+            "{} without a value of it: in no chart and no figure",
+            count(*lots, "lot")
         ),
         TrackCaution::LimitsChanged => {
             "the drawing's limits changed over the lots; those of the newest lot are shown"

@@ -34,9 +34,15 @@ fn main() {
     {
         return archive::found_again(work.path());
     }
+    if let [_, name, ..] = words.as_slice()
+        && name == "track"
+    {
+        return archive::tracked(work.path());
+    }
     fifty_exports(work.path());
     one_large_file(work.path());
     archive::found_again(work.path());
+    archive::tracked(work.path());
 }
 
 /// The baseline: the whole file read by polars with its own inference.
@@ -148,9 +154,14 @@ fn one_large_file(work: &Path) {
 }
 
 fn alone(name: &str, ours: &dyn Fn() -> Command) {
-    let seconds: Vec<f64> = (0..PAIRS).map(|_| seconds(&mut ours()).0).collect();
+    let runs: Vec<(f64, u64)> = (0..PAIRS).map(|_| seconds(&mut ours())).collect();
+    let memory = runs.iter().map(|run| run.1).max().unwrap_or(0);
+    let seconds = median(runs.iter().map(|run| run.0).collect());
     println!("{name}");
-    println!("  ours {:.3} s (median of {PAIRS})", median(seconds));
+    println!(
+        "  ours {seconds:.3} s (median of {PAIRS}), at most {} MB",
+        memory / 1024
+    );
 }
 
 fn compare(name: &str, ours: &dyn Fn() -> Command, baseline: &dyn Fn() -> Command) {

@@ -15,9 +15,7 @@ fn rows(file: &str) -> Vec<Vec<f64>> {
     let path = format!("{}/tests/data/{file}", env!("CARGO_MANIFEST_DIR"));
     let text = std::fs::read_to_string(path).unwrap();
     let numbers = |line: &str| line.split(',').map(|cell| cell.parse().ok()).collect();
-    text.lines()
-        .filter_map(|line| numbers(line))
-        .collect::<Vec<Vec<f64>>>()
+    text.lines().filter_map(numbers).collect::<Vec<Vec<f64>>>()
 }
 
 /// c4, B3, B4, B5, B6, A3 by exact integration (own computation, `control_chart_constants.csv`), 8 decimals.
@@ -25,8 +23,7 @@ fn rows(file: &str) -> Vec<Vec<f64>> {
 fn chart_constants_to_a_millionth() {
     let rows = rows("control_chart_constants.csv");
     assert_eq!(rows.len(), 24);
-    for row in &rows {
-        let n = row[0] as u64;
+    for (n, row) in (2_u64..).zip(&rows) {
         let c = c4(n).unwrap();
         let limits = spread_limits(n, 1.0).unwrap();
         let a3 = 3.0 / (c * row[0].sqrt());
@@ -140,12 +137,11 @@ fn certified_analyses_of_variance() {
         ),
     ];
     for (file, between, within, f, variance, variance_between, to) in cases {
-        let mut groups: Vec<Vec<f64>> = Vec::new();
-        for row in rows(file) {
-            let group = row[0] as usize;
-            groups.resize(groups.len().max(group), Vec::new());
-            groups[group - 1].push(row[1]);
-        }
+        // The rows of a group stand together.
+        let groups: Vec<Vec<f64>> = rows(file)
+            .chunk_by(|one, next| one[0].total_cmp(&next[0]).is_eq())
+            .map(|group| group.iter().map(|row| row[1]).collect())
+            .collect();
         let found = components(&lots(&groups)).unwrap();
         assert_relative_eq!(
             found.sum_between,

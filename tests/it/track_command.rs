@@ -75,7 +75,7 @@ fn quiet_lots_are_quiet_and_a_jump_is_found_with_what_changed() {
     );
     assert_eq!(step["culprit"]["whose"], "cannot_be_told");
     assert_eq!(step["culprit"]["why"], "no_checks");
-    assert_eq!(step["changed_with"][0], "wire_heat: H-1 → H-2");
+    assert_eq!(step["changed_with"][0], "wire_heat: H-1, then H-2");
     let by = json(&[&moved, "--by", "wire_heat"]).1;
     assert_eq!(by["groups"][0]["value"], "H-1");
     assert_eq!(by["groups"][0]["lots"], 28);
@@ -151,6 +151,24 @@ fn lots_in_the_order_of_their_numbers() {
     let result = json(&[&path, "--order", "lot"]).1;
     assert_eq!(result["lots"][0]["lot"], "9");
     assert_eq!(result["lots"][1]["lot"], "10");
+}
+
+/// The sample archive: the rate falls after a change of wire heat, and the reference spring says that it is the springs.
+#[test]
+fn the_sample_archive_names_the_springs_and_the_wire_heat() {
+    let archive = concat!(env!("CARGO_MANIFEST_DIR"), "/samples/archive");
+    let (code, result) = json(&[archive, "--by", "wire_heat"]);
+    assert_eq!(code, 1);
+    assert_eq!(result["lots"].as_array().unwrap().len(), 40);
+    let step = &result["steps"][0];
+    assert_eq!(step["culprit"]["whose"], "springs");
+    assert_eq!(step["changed_with"][0], "wire_heat: H-051, then H-063");
+    assert!(step["from"].as_u64().unwrap() <= 25 && step["to"].as_u64().unwrap() >= 25);
+    assert_eq!(result["trend"]["moves"], true);
+    assert!(result["trend"]["slope_per_lot"].as_f64().unwrap() < 0.0);
+    // The loads fall with it.
+    let (code, loads) = json(&[archive, "--characteristic", "load@70"]);
+    assert_eq!((code, &loads["unit"]), (1, &Value::from("N")));
 }
 
 /// The page, its charts and the result, the same on a second run.

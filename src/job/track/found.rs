@@ -35,6 +35,8 @@ pub(super) struct Series {
     pub(super) limits: Limits,
     /// Whether some lot has others.
     pub(super) limits_changed: bool,
+    /// Lots that have no value of it.
+    pub(super) without: usize,
     pub(super) lots: Vec<Charted>,
     /// Checks of the same quantity, oldest first.
     pub(super) checks: Vec<Referenced>,
@@ -61,23 +63,12 @@ pub(super) fn series(
         mut checks,
         inputs,
     } = read;
-    let since = |lot: &LotFigures| options.since.is_none_or(|since| lot.head.when() >= since);
-    let wanted = |lot: &LotFigures| {
-        let drawing = options.drawing.as_ref();
-        drawing.is_none_or(|drawing| *drawing == lot.head.drawing)
-    };
-    lots.retain(|lot| since(lot) && wanted(lot));
+    lots.retain(|lot| options.wants(&lot.head));
     let drawing = drawing(&lots)?;
     once(&lots)?;
     let (characteristic, at) = asked(&lots, options.characteristic.as_deref())?;
-    let mut charted: Vec<(LotFigures, Figure)> = Vec::with_capacity(lots.len());
-    for mut lot in lots {
-        let is = |one: &Figure| one.characteristic == characteristic && same(one.at_length_mm, at);
-        if let Some(place) = lot.figures.iter().position(is) {
-            let figure = lot.figures.swap_remove(place);
-            charted.push((lot, figure));
-        }
-    }
+    let all = lots.len();
+    let mut charted = with_value(lots, &characteristic, at);
     charted.sort_by(|(a, _), (b, _)| order(options.order, &a.head, &b.head));
     let (_, newest) = charted.last().ok_or(TrackError::NoLot)?;
     let (unit, limits) = (newest.unit, limits(newest));
@@ -100,10 +91,26 @@ pub(super) fn series(
         unit,
         limits,
         limits_changed: lots.iter().any(|lot| !alike(lot.limits, limits)),
+        without: all - lots.len(),
         lots,
         checks,
         inputs,
     })
+}
+
+/// The lots that have a value of the characteristic, each with its figure.
+fn with_value(
+    lots: Vec<LotFigures>,
+    characteristic: &str,
+    at: Option<f64>,
+) -> Vec<(LotFigures, Figure)> {
+    let is = |one: &Figure| one.characteristic == characteristic && same(one.at_length_mm, at);
+    let with = |mut lot: LotFigures| {
+        let place = lot.figures.iter().position(is)?;
+        let figure = lot.figures.swap_remove(place);
+        Some((lot, figure))
+    };
+    lots.into_iter().filter_map(with).collect()
 }
 
 impl From<(LotFigures, Figure)> for Charted {
@@ -119,6 +126,13 @@ impl From<(LotFigures, Figure)> for Charted {
                 own: figure.own_uncertainty,
             },
         }
+    }
+}
+
+impl TrackOptions {
+    fn wants(&self, lot: &LotHead) -> bool {
+        self.since.is_none_or(|since| lot.when() >= since)
+            && (self.drawing.as_ref()).is_none_or(|drawing| *drawing == lot.drawing)
     }
 }
 

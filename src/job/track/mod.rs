@@ -11,7 +11,9 @@ use std::path::PathBuf;
 use jiff::civil::Date;
 
 use crate::drift::{LotPoint, Rule};
-use crate::record::{FORMAT, LotOrder, Provenance, TOOL, TrackKind, TrackRecord, Tracked};
+use crate::record::{
+    FORMAT, LotOrder, Provenance, TOOL, TrackCaution, TrackKind, TrackRecord, Tracked,
+};
 use crate::units::Finite;
 
 pub use error::TrackError;
@@ -119,7 +121,12 @@ fn begun(
         by: options.by.clone(),
         groups: Vec::new(),
         checks: series.checks.iter().map(|(one, _)| one.clone()).collect(),
-        cautions: Vec::new(),
+        cautions: (series.without > 0)
+            .then(|| TrackCaution::LotsWithout {
+                lots: count(series.without),
+            })
+            .into_iter()
+            .collect(),
         lots: charted::lots(series, baseline)?,
         provenance: Provenance {
             tool: TOOL.to_owned(),

@@ -65,18 +65,7 @@ fn step(series: &Series, of: &Step) -> Result<StepFacts, TrackError> {
         lots.get(of.begins..of.at).unwrap_or_default(),
         lots.get(of.at..of.ends).unwrap_or_default(),
     );
-    let level = f64::midpoint(of.before, of.after);
-    let points: Vec<ReferencePoint> = series
-        .checks
-        .iter()
-        .map(|(check, certified)| ReferencePoint {
-            day: day(check.date),
-            rig: check.rig.clone(),
-            reference: check.reference.clone(),
-            error: check.error.get(),
-            factor: factor(series.unit, level, certified.get()),
-        })
-        .collect();
+    let points = reference_points(series, f64::midpoint(of.before, of.after));
     let mut later = side(after);
     if of.ends == lots.len() {
         later.to = f64::INFINITY;
@@ -96,8 +85,27 @@ fn step(series: &Series, of: &Step) -> Result<StepFacts, TrackError> {
         chance: finite(of.chance, "a chance")?,
         culprit: whose,
         reference: moved.map(reference).transpose()?,
-        changed_with: changed_with(before, after),
+        // Lots inside the interval of its place may be of either side.
+        changed_with: changed_with(
+            lots.get(of.begins..of.from).unwrap_or_default(),
+            lots.get(of.to..of.ends).unwrap_or_default(),
+        ),
     })
+}
+
+/// The checks as points, for lots about a level.
+fn reference_points(series: &Series, level: f64) -> Vec<ReferencePoint> {
+    series
+        .checks
+        .iter()
+        .map(|(check, certified)| ReferencePoint {
+            day: day(check.date),
+            rig: check.rig.clone(),
+            reference: check.reference.clone(),
+            error: check.error.get(),
+            factor: factor(series.unit, level, certified.get()),
+        })
+        .collect()
 }
 
 /// What an error on the reference spring stands for on the lots' springs: an error of the force scale grows with the load, one of
@@ -133,7 +141,7 @@ fn changed_with(before: &[Charted], after: &[Charted]) -> Vec<String> {
     let (old, new) = (common(before), common(after));
     let changed = |(name, value): (String, String)| {
         let now = new.get(&name).filter(|now| **now != value)?;
-        Some(format!("{name}: {value} → {now}"))
+        Some(format!("{name}: {value}, then {now}"))
     };
     old.into_iter().filter_map(changed).collect()
 }
