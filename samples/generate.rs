@@ -5,6 +5,7 @@
 //!
 //! ```text
 //! cargo run --release --example samples -- write samples
+//! cargo run --release --example samples -- lots lots
 //! cargo run --release --example samples -- large big.csv --springs 10000 --rows 1000
 //! cargo run --release --example samples -- many fifty --springs 50 --rows 2000
 //! cargo run --release --example samples -- known known --lots 2000 --seed 1
@@ -20,6 +21,8 @@ mod check;
 mod known;
 #[path = "generate/known_text.rs"]
 mod known_text;
+#[path = "generate/lots.rs"]
+mod lots;
 #[path = "generate/nested.rs"]
 mod nested;
 #[path = "generate/plans.rs"]
@@ -50,7 +53,7 @@ use std::process::ExitCode;
 type Outcome = Result<(), Box<dyn Error>>;
 
 const USAGE: &str = "usage: samples write DIR | large FILE [--springs N] [--rows N] \
-    | many DIR [--springs N] [--rows N] | known DIR [--lots N] [--seed S]";
+    | lots DIR | many DIR [--springs N] [--rows N] | known DIR [--lots N] [--seed S]";
 
 fn main() -> ExitCode {
     let words: Vec<String> = std::env::args().skip(1).collect();
@@ -71,6 +74,10 @@ fn run(words: &[String]) -> Outcome {
     let rest = words.get(2..).unwrap_or_default();
     let place = Path::new(place);
     match task.as_str() {
+        "lots" => {
+            options(rest, [])?;
+            lots::write(place)
+        }
         "write" => {
             options(rest, [])?;
             accepted::write(&place.join("accepted"))?;

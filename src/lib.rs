@@ -46,6 +46,8 @@ pub mod sampling;
 
 pub mod process;
 
+pub mod drift;
+
 pub mod lot;
 
 pub mod record;

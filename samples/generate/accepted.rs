@@ -134,7 +134,7 @@ time = { column = "Time [s]", unit = "s" }
 spring = { from = "file name" }
 "#;
 
-const REPEATABILITY: &str = r#"[[repeatability]]
+pub(crate) const REPEATABILITY: &str = r#"[[repeatability]]
 of = "rate"
 standard_deviation = 0.006
 

@@ -9,6 +9,7 @@ use rayon::prelude::*;
 use super::error::{ArchiveError, shown};
 use super::frame::{self, Columns, LAYOUT_COLUMN, bools, f64s, texts, unword, word};
 use super::place::{Archive, LAYOUT};
+use super::results::Referenced;
 use super::springs::Run;
 use super::sums::Sums;
 use super::walk;
@@ -17,7 +18,7 @@ use crate::record::{CheckRecord, ComparisonFacts, EarlierCheck, LastCheck};
 use crate::units::{Finite, Millimetres};
 
 /// The columns that a reading takes up.
-const COLUMNS: [&str; 14] = [
+const COLUMNS: [&str; 15] = [
     LAYOUT_COLUMN,
     "run",
     "judged_at",
@@ -29,6 +30,7 @@ const COLUMNS: [&str; 14] = [
     "characteristic",
     "at_length_mm",
     "unit",
+    "reference_value",
     "error",
     "expanded_uncertainty",
     "e_n",
@@ -43,7 +45,7 @@ pub struct KeptCheck {
     reference: Option<String>,
     decision: Serving,
     passed: bool,
-    quantities: Vec<EarlierCheck>,
+    quantities: Vec<Referenced>,
 }
 
 impl KeptCheck {
@@ -57,6 +59,11 @@ impl KeptCheck {
 
     /// Its quantities, as a later check looks back at them.
     pub fn into_earlier(self) -> Vec<EarlierCheck> {
+        self.quantities.into_iter().map(|(one, _)| one).collect()
+    }
+
+    /// The same, each beside its certified value.
+    pub fn into_referenced(self) -> Vec<Referenced> {
         self.quantities
     }
 }
@@ -208,7 +215,8 @@ fn kept(frame: &DataFrame) -> Result<KeptCheck, PolarsError> {
         let at = f64s(frame, "at_length_mm")?
             .get(row)
             .map(Millimetres::try_from);
-        quantities.push(EarlierCheck {
+        let certified = figure("reference_value")?.ok_or_else(|| wrong("reference_value"))?;
+        let quantity = EarlierCheck {
             date,
             rig: rig.clone(),
             reference: reference.clone(),
@@ -219,7 +227,8 @@ fn kept(frame: &DataFrame) -> Result<KeptCheck, PolarsError> {
             expanded_uncertainty,
             e_n,
             passed,
-        });
+        };
+        quantities.push((quantity, certified));
     }
     Ok(KeptCheck {
         order: (date, must("judged_at")?, must("run")?),

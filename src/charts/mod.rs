@@ -12,12 +12,15 @@ mod ids;
 pub(crate) mod operating;
 mod share;
 mod study;
+mod track;
+mod track_line;
 mod trend;
 mod values;
 
 pub(crate) use check::check;
 pub(crate) use expected::expected;
 pub(crate) use study::study;
+pub(crate) use track::tracked;
 
 use crate::curve::{Axis, Reduced};
 use crate::record::{AcceptRecord, Verdict};

@@ -8,6 +8,7 @@ use jiff::civil::Date;
 use crate::units::System;
 
 use super::plan_args::PlanArgs;
+use super::track_args::TrackArgs;
 
 /// Judges coil springs from what a bench tester measured.
 #[derive(Debug, Parser)]
@@ -44,6 +45,8 @@ pub(super) enum Command {
     Expect(ExpectArgs),
     /// Finds lots in an archive, or in a table of per-lot figures
     Lots(LotsArgs),
+    /// Charts a characteristic over lots: what moved, when, how fast, springs or rig (exit 0 no rule fires, 1 one does on the newest lots, 3 too few lots, 2 could not)
+    Track(TrackArgs),
     /// Recomputes sealed results from their inputs (exit 0 same, 1 different, 2 could not or an input changed)
     Recheck(RecheckArgs),
     /// What a rig is worth: a check on a reference spring, a repeatability study

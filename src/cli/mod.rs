@@ -15,6 +15,8 @@ mod rig;
 mod rig_file;
 mod shell;
 mod show;
+mod track;
+mod track_args;
 
 use std::ffi::OsString;
 use std::io::{ErrorKind, Write};
@@ -72,6 +74,7 @@ fn dispatch(arguments: &Arguments, out: &mut impl Write) -> miette::Result<u8> {
         Command::Rig { command } => rig::run(command, arguments.quiet, out),
         Command::Expect(args) => expect::run(args, arguments.quiet, out),
         Command::Lots(args) => lots::run(args, out),
+        Command::Track(args) => track::run(args, arguments.quiet, out),
         Command::Recheck(args) => recheck::run(args, out),
         Command::Draft { kind } => draft::run(kind, out),
         Command::Plan(args) => plan::run(args, arguments.quiet, out),

@@ -14,6 +14,7 @@ mod read;
 mod recheck;
 mod rig;
 mod threads;
+mod track;
 
 pub use accept::{Accepted, Memory, Options, Past, accept};
 pub use draft::draft_rig;
@@ -28,3 +29,4 @@ pub use recheck::{
     ChangedInput, Outcome, RecheckError, Rechecked, recheck, recheck_run, stored_runs,
 };
 pub use rig::{Proposal, Repeated, RigOptions, Verified, rig_repeat, rig_verify};
+pub use track::{TrackError, TrackOptions, track};

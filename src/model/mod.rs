@@ -21,6 +21,8 @@ mod study;
 mod supplier;
 mod table;
 mod theory;
+mod track;
+mod track_tables;
 
 use serde::Serialize;
 
@@ -34,6 +36,7 @@ pub use page_one::{Deciding, Note};
 pub(crate) use springs::remarks;
 pub use study::study_page;
 pub use table::{Cell, Column, Holds, Row, Section, Table};
+pub use track::track_page;
 
 use crate::record::AcceptRecord;
 use crate::units::System;

@@ -15,6 +15,8 @@ mod process;
 mod repeat;
 mod spring;
 mod told;
+mod track;
+mod track_parts;
 
 pub use accept::{
     AcceptRecord, ConditionFacts, DrawingFacts, Kind, LotFacts, OutputFile, Provenance,
@@ -46,6 +48,15 @@ pub use spring::{
 
 pub use crate::bench::{Finding, Serving};
 pub use told::Told;
+pub use track::{
+    AlarmFacts, ChartKind, LimitFacts, LotOrder, TrackCaution, TrackKind, TrackRecord, Tracked,
+    TrackedLot,
+};
+pub use track_parts::{
+    AbleFacts, ComponentFacts, CrossingFacts, GroupFacts, ReferenceMoved, StepFacts, TrendFacts,
+};
+
+pub use crate::drift::{Culprit, Rule, Unclear};
 
 pub use crate::characteristic::Part;
 pub use crate::curve::WindowOf;

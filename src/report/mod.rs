@@ -21,7 +21,7 @@ use crate::charts;
 use crate::charts::Chart;
 use crate::curve::Reduced;
 use crate::model::{Model, Page};
-use crate::record::{AcceptRecord, CheckRecord, Expected, RepeatRecord};
+use crate::record::{AcceptRecord, CheckRecord, Expected, RepeatRecord, TrackRecord};
 use crate::units::System;
 
 /// A template and the name of its file, for faults.
@@ -152,6 +152,19 @@ pub fn expected(
     templates: &Templates,
 ) -> Result<Vec<OutFile>, ReportError> {
     files(page, charts::expected(record, show_in)?, templates)
+}
+
+/// The files of a characteristic over lots: its page and its charts.
+///
+/// # Errors
+/// [`ReportError`] as in [`accept`].
+pub fn tracked(
+    record: &TrackRecord,
+    page: &Page,
+    show_in: System,
+    templates: &Templates,
+) -> Result<Vec<OutFile>, ReportError> {
+    files(page, charts::tracked(record, show_in)?, templates)
 }
 
 /// A whole page for the terminal; it ends with a line end.

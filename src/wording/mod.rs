@@ -12,6 +12,7 @@ mod odd;
 mod plan;
 mod spring;
 mod strength;
+mod track;
 
 pub(crate) use bench::{
     bench_caution, check_reason, component_word, finding, repeat_reason, serving_word,
@@ -27,6 +28,7 @@ pub(crate) use odd::odd_lines;
 pub(crate) use plan::{compared, readings, settled_early, state};
 pub(crate) use spring::{absence, advice, disposition, rule_used, verdict_reason, verdict_word};
 pub(crate) use strength::{stress_limit, stress_place, stress_rule, stress_taken};
+pub(crate) use track::{chance, chart, culprit, rule, step, tracked, trend};
 
 use crate::quantity::{Quantity, Unit};
 use crate::units::{Millimetres, System};

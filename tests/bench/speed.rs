@@ -32,12 +32,13 @@ fn main() {
         return polars_alone(Path::new(file));
     }
     let work = tempfile::tempdir().unwrap();
-    let cases: [(&str, Case); 5] = [
+    let cases: [(&str, Case); 6] = [
         ("fifty", fifty_exports),
         ("large", one_large_file),
         ("small", thousand_small),
         ("tenfold", ten_times_larger),
         ("archive", archive::found_again),
+        ("track", archive::tracked),
     ];
     // Cargo adds `--bench`; any other word is the name of a case.
     let named: Vec<&String> = words
@@ -161,9 +162,14 @@ fn one_large_file(work: &Path) {
 }
 
 fn alone(name: &str, ours: &dyn Fn() -> Command) {
-    let seconds: Vec<f64> = (0..PAIRS).map(|_| seconds(&mut ours()).0).collect();
+    let runs: Vec<(f64, u64)> = (0..PAIRS).map(|_| seconds(&mut ours())).collect();
+    let memory = runs.iter().map(|run| run.1).max().unwrap_or(0);
+    let seconds = median(runs.iter().map(|run| run.0).collect());
     println!("{name}");
-    println!("  ours {:.3} s (median of {PAIRS})", median(seconds));
+    println!(
+        "  ours {seconds:.3} s (median of {PAIRS}), at most {} MB",
+        memory / 1024
+    );
 }
 
 /// 1000 exports of 100 rows: what reading and judging each costs beyond the bytes, on top of a lot of one.

@@ -53,6 +53,57 @@ fn the_schema_is_what_the_types_say() {
     );
 }
 
+/// The result of `track`: its schema as the types say, the sample keeps to it, every key is met.
+#[test]
+fn the_schema_of_track() {
+    let path = root("templates/track.schema.json");
+    let made = serde_json::to_value(schemars::schema_for!(coilassay::record::TrackRecord)).unwrap();
+    if std::env::var_os("UPDATE_SCHEMA").is_some() {
+        let text = serde_json::to_string_pretty(&made).unwrap();
+        std::fs::write(&path, text + "\n").unwrap();
+    }
+    let published: Value = serde_json::from_str(&std::fs::read_to_string(&path).unwrap()).unwrap();
+    assert!(published == made, "{path:?} is not what the types say");
+    let output = Command::cargo_bin("coilassay")
+        .unwrap()
+        .args([
+            "track",
+            "--json",
+            "--by",
+            "wire_heat",
+            "--date",
+            "2026-11-30",
+        ])
+        .arg(root("samples/archive"))
+        .output()
+        .unwrap();
+    let mut record: Value = serde_json::from_slice(&output.stdout).unwrap();
+    let schema = jsonschema::validator_for(&published).unwrap();
+    let faults: Vec<String> = schema
+        .iter_errors(&record)
+        .map(|fault| fault.to_string())
+        .collect();
+    assert!(faults.is_empty(), "{faults:#?}");
+    let (mut wanted, mut met) = (BTreeSet::new(), BTreeSet::new());
+    keys(&published["properties"], &mut wanted);
+    for name in [
+        "TrackedLot",
+        "StepFacts",
+        "ReferenceMoved",
+        "TrendFacts",
+        "CrossingFacts",
+        "AbleFacts",
+        "GroupFacts",
+    ] {
+        keys(&published["$defs"][name]["properties"], &mut wanted);
+    }
+    all_keys(&record, &mut met);
+    let never: Vec<&String> = wanted.difference(&met).collect();
+    assert!(never.is_empty(), "never met: {never:?}");
+    record["decision"] = Value::from("fine");
+    assert!(!schema.is_valid(&record), "a word that is none passes");
+}
+
 /// The results of `rig verify` and `rig repeat`: schemas as the types say, the samples keep to them, every key is met.
 #[test]
 fn the_schemas_of_the_rig() {
