@@ -48,6 +48,8 @@ pub mod process;
 
 pub mod lot;
 
+pub mod cause;
+
 pub mod record;
 
 pub mod archive;
