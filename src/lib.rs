@@ -50,6 +50,8 @@ pub mod drift;
 
 pub mod lot;
 
+pub mod cause;
+
 pub mod record;
 
 pub mod archive;

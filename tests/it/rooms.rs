@@ -32,6 +32,7 @@ const ROOMS: [&str; 35] = [
     "process",
     "drift",
     "lot",
+    "cause",
     "record",
     "archive",
     "wording",
