@@ -101,6 +101,12 @@ pub enum Absence {
     ZeroShifted,
     /// Two strokes of the same travel differ in rate as no spring does from one stroke to the next.
     StrokesDiffer,
+    /// It needs a curve, and the bench read loads at a few lengths.
+    PointReadings,
+    /// No load was read at this length.
+    LengthNotRead,
+    /// Fewer than two loads were read within the window of the rate.
+    WindowNotRead,
 }
 
 /// What is known of a characteristic.
@@ -134,6 +140,8 @@ pub struct Measurement {
     pub gauge_differs: bool,
     /// Origin of lengths in `u` on the judged stroke, mm; `None` where there are none.
     pub origin: Option<f64>,
+    /// Where loads were read at a few lengths only: the two lengths that the rate is drawn from, longer first, mm.
+    pub read_between: Option<(f64, f64)>,
 }
 
 /// Why a spring cannot be measured.
@@ -165,16 +173,7 @@ pub fn measure(
     curve: &Curve,
     caliper: &[(Quantity, f64)],
 ) -> Result<Measurement, MeasureError> {
-    let by_caliper = |quantity: Quantity| {
-        caliper
-            .iter()
-            .find(|(known, _)| *known == quantity)
-            .map(|(_, value)| *value)
-    };
-    let own = by_caliper(Quantity::FreeLength).map(|value| OwnFree {
-        value,
-        standard: setup.caliper(Quantity::FreeLength),
-    });
+    let own = own_free(setup, caliper);
     let path = rate::judged(setup, curve);
     let fit = match path {
         Some(path) => rate::fit(setup, curve, path, own.map(|own| own.value))?,
@@ -193,11 +192,7 @@ pub fn measure(
     let mut characteristics = Vec::new();
     for quantity in setup.wanted.iter().copied() {
         let measured = if quantity.by_caliper() {
-            let lines = vec![Line::new("gauge", Part::Common, setup.caliper(quantity))];
-            match by_caliper(quantity) {
-                Some(value) => Measured::Value(Estimate::new(value, lines).map_err(failed)?),
-                None => Measured::Absent(Absence::NotMeasured),
-            }
+            by_gauge(setup, caliper, quantity).map_err(failed)?
         } else if matches!(quantity, Quantity::RateOf(_) | Quantity::Knee(_)) {
             let path = rate::judged(setup, curve);
             match odd::withheld(setup, curve, path, spring.fit.as_ref().ok(), quantity) {
@@ -219,7 +214,37 @@ pub fn measure(
         characteristics,
         gauge_differs,
         origin,
+        read_between: None,
     })
+}
+
+fn by_caliper(caliper: &[(Quantity, f64)], quantity: Quantity) -> Option<f64> {
+    let found = caliper.iter().find(|(known, _)| *known == quantity);
+    found.map(|(_, value)| *value)
+}
+
+/// The spring's own free length by gauge.
+pub(super) fn own_free(setup: &Setup<'_>, caliper: &[(Quantity, f64)]) -> Option<OwnFree> {
+    by_caliper(caliper, Quantity::FreeLength).map(|value| OwnFree {
+        value,
+        standard: setup.caliper(Quantity::FreeLength),
+    })
+}
+
+/// What a gauge measured.
+///
+/// # Errors
+/// [`StatsError`] from the coverage factor.
+pub(super) fn by_gauge(
+    setup: &Setup<'_>,
+    caliper: &[(Quantity, f64)],
+    quantity: Quantity,
+) -> Result<Measured, StatsError> {
+    let lines = vec![Line::new("gauge", Part::Common, setup.caliper(quantity))];
+    match by_caliper(caliper, quantity) {
+        Some(value) => Estimate::new(value, lines).map(Measured::Value),
+        None => Ok(Measured::Absent(Absence::NotMeasured)),
+    }
 }
 
 /// A spring gives back less than it takes: work gained beyond the uncertainty means rows out of order.

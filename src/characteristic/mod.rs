@@ -9,6 +9,7 @@ mod load;
 mod loops;
 mod measure;
 mod odd;
+mod points;
 mod rate;
 mod scales;
 mod stage;
@@ -19,6 +20,7 @@ pub use length::OwnFree;
 pub use measure::{
     Absence, Characteristic, MeasureError, Measured, Measurement, Setup, measure, wanted,
 };
+pub use points::measure_points;
 pub use rate::{RateFit, judged};
 pub use scales::scale_lines;
 pub use stage::{StageWindow, stage_windows};

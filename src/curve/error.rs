@@ -124,6 +124,51 @@ pub enum CurveError {
         travel: f64,
     },
     #[error(
+        "spring `{spring}` in `{export}` (line {line}) has one reading; a rate needs loads at two lengths"
+    )]
+    #[diagnostic(
+        code(coilassay::curve::one_reading),
+        help("are the rows sorted by length? the rows of a spring must follow each other")
+    )]
+    OneReading {
+        spring: String,
+        export: String,
+        line: u64,
+    },
+    #[error(
+        "spring `{spring}` in `{export}` (lines {first}–{last}) has two loads at {length:.3} mm"
+    )]
+    #[diagnostic(
+        code(coilassay::curve::length_twice),
+        help(
+            "write a second measurement of a spring into an export of its own and list it under [[repeat]]; loads on the way back belong to a curve"
+        )
+    )]
+    LengthTwice {
+        spring: String,
+        export: String,
+        first: u64,
+        last: u64,
+        length: f64,
+    },
+    #[error(
+        "spring `{spring}` in `{export}` (lines {first}–{last}): at {length:.3} mm the load is {fall:.3} N lower than at a longer length"
+    )]
+    #[diagnostic(
+        code(coilassay::curve::reading_falls),
+        help(
+            "check the columns, their lengths and `pushing` in the rig file: a shorter spring pushes harder"
+        )
+    )]
+    ReadingFalls {
+        spring: String,
+        export: String,
+        first: u64,
+        last: u64,
+        length: f64,
+        fall: f64,
+    },
+    #[error(
         "spring `{spring}` in `{export}` (lines {first}–{last}): the unloading work is larger than the loading work by {percent:.2} %, more than the uncertainty of the difference"
     )]
     #[diagnostic(

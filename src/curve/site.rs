@@ -36,6 +36,38 @@ impl Site<'_> {
         }
     }
 
+    pub(super) fn one_reading(&self) -> CurveError {
+        let (spring, export, line, _) = self.names();
+        CurveError::OneReading {
+            spring,
+            export,
+            line,
+        }
+    }
+
+    pub(super) fn length_twice(&self, length: f64) -> CurveError {
+        let (spring, export, first, last) = self.names();
+        CurveError::LengthTwice {
+            spring,
+            export,
+            first,
+            last,
+            length,
+        }
+    }
+
+    pub(super) fn load_falls_at(&self, length: f64, fall: f64) -> CurveError {
+        let (spring, export, first, last) = self.names();
+        CurveError::ReadingFalls {
+            spring,
+            export,
+            first,
+            last,
+            length,
+            fall,
+        }
+    }
+
     /// Refuses a loading stroke in which the load stands still while the platen goes on.
     pub(super) fn check_rising(&self, curve: &Curve) -> Result<(), CurveError> {
         for path in &curve.loading {

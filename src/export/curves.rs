@@ -25,6 +25,8 @@ pub struct RawCurve {
     pub load: Vec<f64>,
     /// Travel in mm, as indicated.
     pub travel: Vec<f64>,
+    /// Loads at the further lengths of a table with a column for every length, column by column, N.
+    pub beside: Vec<Vec<f64>>,
     /// Time in s, where the rig file names a column of it.
     pub time: Option<Vec<f64>>,
 }
@@ -144,6 +146,7 @@ impl Progress {
                     breaks: Vec::new(),
                     load: Vec::new(),
                     travel: Vec::new(),
+                    beside: vec![Vec::new(); columns.beside.len()],
                     time: columns.time.as_ref().map(|_| Vec::new()),
                 };
                 done.extend(self.open.replace(next));
@@ -272,6 +275,9 @@ impl RawCurve {
         };
         add(&mut self.load, &columns.load);
         add(&mut self.travel, &columns.travel);
+        for (to, from) in self.beside.iter_mut().zip(&columns.beside) {
+            add(to, from);
+        }
         if let (Some(time), Some(more)) = (&mut self.time, &columns.time) {
             add(time, more);
         }

@@ -21,7 +21,10 @@ pub(super) struct Layout {
     /// The names of all columns, as the header writes them.
     pub(super) names: Vec<String>,
     pub(super) load: usize,
-    pub(super) travel: usize,
+    /// `None` where the rig file says at which length each column of loads was read.
+    pub(super) travel: Option<usize>,
+    /// Further columns of loads, one for every length after the first.
+    pub(super) beside: Vec<usize>,
     pub(super) time: Option<usize>,
     pub(super) spring: Option<usize>,
 }
@@ -76,9 +79,17 @@ impl Layout {
             SpringFrom::Column(name) => Some(header.position(SPRING, name)?),
         };
         let time = dialect.time.as_ref();
+        let wide = dialect.rarer.length_columns();
+        let travel = wide.is_empty().then_some(&dialect.travel.column);
+        let further = wide.iter().skip(1);
         let layout = Self {
             load: header.position(LOAD, &dialect.load.column)?,
-            travel: header.position(TRAVEL, &dialect.travel.column)?,
+            travel: travel
+                .map(|name| header.position(TRAVEL, name))
+                .transpose()?,
+            beside: further
+                .map(|one| header.position(LOAD, &one.column))
+                .collect::<Result<_, _>>()?,
             time: time.map(|name| header.position(TIME, name)).transpose()?,
             spring,
             names: header.names.clone(),
@@ -88,9 +99,11 @@ impl Layout {
     }
 
     fn roles(&self) -> impl Iterator<Item = (&'static str, usize)> {
-        let some = [(LOAD, Some(self.load)), (TRAVEL, Some(self.travel))];
+        let some = [(LOAD, Some(self.load)), (TRAVEL, self.travel)];
         let more = [(TIME, self.time), (SPRING, self.spring)];
+        let beside = self.beside.iter().map(|column| (LOAD, Some(*column)));
         some.into_iter()
+            .chain(beside)
             .chain(more)
             .filter_map(|(role, column)| Some((role, column?)))
     }
@@ -117,17 +130,22 @@ impl Layout {
 
     /// Whether a column holds numbers that are used.
     pub(super) fn is_number(&self, column: usize) -> bool {
-        column == self.load || column == self.travel || Some(column) == self.time
+        self.is_load(column) || [self.travel, self.time].contains(&Some(column))
+    }
+
+    /// Whether a column holds loads.
+    fn is_load(&self, column: usize) -> bool {
+        column == self.load || self.beside.contains(&column)
     }
 
     /// What a number of a column is multiplied by: its unit in N (pushing positive), mm or s.
     pub(super) fn factor(&self, column: usize, dialect: &Dialect) -> f64 {
-        if column == self.load {
+        if self.is_load(column) {
             match dialect.load.pushing {
                 Pushing::Positive => dialect.load.unit.newtons(),
                 Pushing::Negative => -dialect.load.unit.newtons(),
             }
-        } else if column == self.travel {
+        } else if Some(column) == self.travel {
             match dialect.travel.pushing {
                 Pushing::Positive => dialect.travel.unit.millimetres(),
                 Pushing::Negative => -dialect.travel.unit.millimetres(),
@@ -139,10 +157,12 @@ impl Layout {
 
     fn units(&self, context: &Context<'_>) -> Vec<(usize, Wanted)> {
         let dialect = context.dialect;
-        let mut wanted = vec![
-            (self.load, Wanted::Force(dialect.load.unit)),
-            (self.travel, Wanted::Length(dialect.travel.unit)),
-        ];
+        let loads = std::iter::once(self.load).chain(self.beside.iter().copied());
+        let mut wanted: Vec<(usize, Wanted)> = loads
+            .map(|column| (column, Wanted::Force(dialect.load.unit)))
+            .collect();
+        let travel = self.travel.into_iter();
+        wanted.extend(travel.map(|column| (column, Wanted::Length(dialect.travel.unit))));
         wanted.extend(self.time.map(|time| (time, Wanted::Seconds)));
         wanted
     }

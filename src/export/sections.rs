@@ -284,7 +284,10 @@ impl Reading<'_> {
                     .is_ok()
             })
         };
-        if cells.len() == layout.names.len() && number(layout.load) && number(layout.travel) {
+        if cells.len() == layout.names.len()
+            && number(layout.load)
+            && layout.travel.is_none_or(number)
+        {
             let at = self.context.spot(line, text, 0..text.len(), None);
             return Err(ExportError::RowOutside { at });
         }

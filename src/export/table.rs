@@ -27,6 +27,8 @@ pub(super) struct Suspect;
 pub(super) struct Columns {
     pub(super) load: Vec<f64>,
     pub(super) travel: Vec<f64>,
+    /// Loads at the further lengths, column by column.
+    pub(super) beside: Vec<Vec<f64>>,
     pub(super) time: Option<Vec<f64>>,
     pub(super) springs: Option<StringChunked>,
 }
@@ -203,9 +205,20 @@ pub(super) fn parse(
         let column = frame.columns().get(column).ok_or(Suspect)?;
         column.str().cloned().map_err(|_| Suspect)
     };
+    let load = numbers(layout.load)?;
+    let travel = match (layout.travel, dialect.rarer.length_columns()) {
+        (Some(column), _) => numbers(column)?,
+        (None, [first, ..]) => vec![first.length; load.len()],
+        (None, []) => return Err(Suspect),
+    };
     Ok(Columns {
-        load: numbers(layout.load)?,
-        travel: numbers(layout.travel)?,
+        load,
+        travel,
+        beside: layout
+            .beside
+            .iter()
+            .map(|column| numbers(*column))
+            .collect::<Result<_, _>>()?,
         time: layout.time.map(numbers).transpose()?,
         springs: layout.spring.map(springs).transpose()?,
     })

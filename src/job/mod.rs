@@ -9,6 +9,7 @@ mod history;
 mod lots;
 mod odd;
 mod plan;
+mod points;
 mod rate;
 mod read;
 mod recheck;

@@ -19,6 +19,8 @@ use crate::quantity::Quantity;
 use crate::record::{LedgerFacts, SetAside};
 use crate::text::InputFile;
 
+use super::points;
+
 /// One measurement of one spring.
 #[derive(Debug)]
 pub(super) struct Reading {
@@ -48,6 +50,13 @@ pub(super) struct Reading {
     pub(super) reduced: Option<Reduced>,
     /// The curve for the archive, where one is kept.
     pub(super) kept: Option<Kept>,
+}
+
+impl Reading {
+    /// Whether loads were read at a few lengths only.
+    pub(super) const fn is_points(&self) -> bool {
+        self.strokes == 0 // a curve without a loading stroke is refused
+    }
 }
 
 /// What is kept of a curve beside its figures.
@@ -94,7 +103,13 @@ fn read_at(path: &Path, written: &str, how: How<'_>) -> Result<Batch, ExportErro
             let measure = |curves: Vec<RawCurve>| {
                 curves
                     .into_par_iter()
-                    .map(|raw| reading(&raw, how))
+                    .map(|raw| {
+                        if how.setup.rig.dialect.rarer.points.is_some() {
+                            points::reading(&raw, how)
+                        } else {
+                            reading(&raw, how)
+                        }
+                    })
                     .collect::<Vec<_>>()
             };
             take.into_iter().flat_map(measure).collect::<Vec<_>>()
@@ -108,6 +123,8 @@ fn read_at(path: &Path, written: &str, how: How<'_>) -> Result<Batch, ExportErro
         (read, readings)
     });
     let read = read?;
+    let mut readings = readings;
+    points::tell_apart(&mut readings);
     let shown = crate::text::printable(written, &crate::text::Alphabet::Any);
     let input = InputFile {
         role: "export".to_owned(),

@@ -154,6 +154,15 @@ pub enum Caution {
         /// Median of measured less drawn.
         shift_mm: Millimetres,
     },
+    /// Loads were read at a few lengths only: there is no curve behind the figures.
+    PointReadings {
+        /// The springs.
+        springs: Vec<String>,
+        /// The longer of the two lengths the rate is drawn from; `null` where there is no rate.
+        from_mm: Option<Millimetres>,
+        /// The shorter one.
+        to_mm: Option<Millimetres>,
+    },
     /// The frame is said to take up a large share of the travel.
     ComplianceLarge {
         /// Compliance times the expected rate, 0 … 1.

@@ -33,7 +33,7 @@ pub struct Dialect {
 }
 
 /// What few testers do; nothing of it unless the rig file says so.
-#[derive(Clone, Debug, Default, PartialEq, Eq)]
+#[derive(Clone, Debug, Default, PartialEq)]
 pub struct Rarer {
     /// Every row ends with a delimiter.
     pub trailing_delimiter: bool,
@@ -49,6 +49,36 @@ pub struct Rarer {
     pub tables: Option<Tables>,
     /// The file is a workbook, and this sheet holds the table.
     pub sheet: Option<String>,
+    /// The rows are no curves but loads at a few lengths.
+    pub points: Option<PointTable>,
+}
+
+/// How a table of loads at a few lengths is laid out.
+#[derive(Clone, Debug, PartialEq)]
+pub enum PointTable {
+    /// One row for every spring and length.
+    Long,
+    /// One row for every spring, a column of loads for every length.
+    Wide(Vec<LengthColumn>),
+}
+
+/// A column of loads at one length.
+#[derive(Clone, Debug, PartialEq)]
+pub struct LengthColumn {
+    /// Its name in the header.
+    pub column: String,
+    /// The length, mm.
+    pub length: f64,
+}
+
+impl Rarer {
+    /// The columns of loads, where there is one for every length; else none.
+    pub fn length_columns(&self) -> &[LengthColumn] {
+        match &self.points {
+            Some(PointTable::Wide(columns)) => columns,
+            Some(PointTable::Long) | None => &[],
+        }
+    }
 }
 
 /// Several tables in one file, each below a line of column names like the first.

@@ -7,12 +7,13 @@ mod every;
 mod frame;
 mod open;
 mod read_dialect;
+mod read_points;
 mod read_rarer;
 mod scale;
 
 pub use dialect::{
-    Decimal, Delimiter, Dialect, Each, Encoding, LoadColumn, Pushing, Rarer, SpringFrom, TableEnd,
-    Tables, TravelColumn,
+    Decimal, Delimiter, Dialect, Each, Encoding, LengthColumn, LoadColumn, PointTable, Pushing,
+    Rarer, SpringFrom, TableEnd, Tables, TravelColumn,
 };
 pub use edit::{Change, Changed, Edited, RigEditError, edit};
 pub use every::Every;

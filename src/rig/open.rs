@@ -11,6 +11,7 @@ use super::dialect::Dialect;
 use super::every::{Every, read_every};
 use super::frame::{Compliance, read_frame};
 use super::read_dialect::read_export;
+use super::read_points::refuse_give;
 use super::scale::{
     FORCE_CLASSES, Known, Scale, TRAVEL_CLASSES, declared_negligible, read_scale, standard_of,
 };
@@ -40,11 +41,13 @@ const STATED: &[&str] = &["value", "uncertainty", "k", "unknown"];
 pub const KEYS: Keys = &[
     ("", &["units", "rig", "export", "force", "travel", "frame", "contact", "repeatability"]),
     ("rig", &["name", "check_every"]),
-    ("export", &["header_line", "units_line", "delimiter", "decimal", "encoding", "quoted", "last_line_open", "trailing_delimiter", "thousands", "footer", "line_end", "tables", "sheet", "load", "travel", "time", "spring"]),
+    ("export", &["header_line", "units_line", "delimiter", "decimal", "encoding", "quoted", "last_line_open", "trailing_delimiter", "thousands", "footer", "line_end", "tables", "sheet", "points", "load", "travel", "time", "spring"]),
     ("export.load", &["column", "unit", "unit_after", "pushing"]),
     ("export.travel", &["column", "unit", "means", "at_zero_gap", "pushing", "unit_after"]),
     ("export.time", &["column", "unit"]),
     ("export.tables", &["each", "end", "end_line"]),
+    ("export.points", &["wide", "unit", "pushing"]),
+    ("export.points.wide", &["column", "length"]),
     ("export.spring", &["from", "column", "after"]),
     ("force", FORCE),
     ("force.certificate", &["relative", "k", "error", "drift"]),
@@ -130,7 +133,7 @@ fn read(root: Table<'_>, input: &InputFile) -> Option<Rig> {
     let head = root.table("rig");
     let name = head.required_text("name", "write the rig's name under [rig]");
     let check_every = read_every(head);
-    let export = read_export(root.table("export"));
+    let export = read_export(root.table("export"), units.length());
     let force = read_scale(root.table("force"), &FORCE_CLASSES, units.force());
     let travel = read_scale(root.table("travel"), &TRAVEL_CLASSES, units.length());
     let frame = read_frame(root.table("frame"), units);
@@ -146,6 +149,10 @@ fn read(root: Table<'_>, input: &InputFile) -> Option<Rig> {
     }
     let repeatability = read_repeatability(root, units);
     let (dialect, means) = export?;
+    let frame = frame?;
+    if dialect.rarer.points.is_some() {
+        refuse_give(root, &frame)?;
+    }
     let zero = read_zero(root.table("travel"), means, units.length());
     let number = |key| {
         root.table("travel")
@@ -163,7 +170,7 @@ fn read(root: Table<'_>, input: &InputFile) -> Option<Rig> {
         zero: zero?,
         set_at_length: number("set_at_length") * units.length(),
         zeroed_at_load: number("zeroed_at_load") * units.force(),
-        frame: frame?,
+        frame,
         contact_load: Newtons::try_from(contact_load?).ok()?,
         repeatability: repeatability?,
     })

@@ -4,12 +4,14 @@ use crate::text::Table;
 use crate::units::{ForceUnit, LengthUnit};
 
 use super::dialect::{
-    Decimal, Delimiter, Dialect, Encoding, LoadColumn, Pushing, SpringFrom, TravelColumn,
+    Decimal, Delimiter, Dialect, Encoding, LoadColumn, Pushing, Rarer, SpringFrom, TravelColumn,
 };
 use super::open::Means;
+use super::read_points::{Wide, check_long, read_wide};
 use super::read_rarer::read_rarer;
 
-pub(super) fn read_export(table: Table<'_>) -> Option<(Dialect, Means)> {
+/// `length` is the unit of the rig file's lengths in mm.
+pub(super) fn read_export(table: Table<'_>, length: f64) -> Option<(Dialect, Means)> {
     if !table.is_present() {
         table.fault(
             &table.span(),
@@ -25,9 +27,24 @@ pub(super) fn read_export(table: Table<'_>) -> Option<(Dialect, Means)> {
             "write the line the column names stand on, counted from 1; 0 where there is none";
         table.missing("header_line", help);
     }
-    let load = read_load(table.table("load"));
-    let travel = read_travel(table.table("travel"));
     let spring = read_spring(table.table("spring"));
+    let (load, travel, points) = if table.is_table("points") {
+        let Wide {
+            load,
+            travel,
+            points,
+        } = read_wide(table, length, spring.as_ref())?;
+        (Some(load), Some((travel, Means::Length)), Some(points))
+    } else {
+        let travel = read_travel(table.table("travel"));
+        let means = travel.as_ref().map(|(_, means)| *means);
+        let points = if table.has("points") {
+            Some(check_long(table, means?)?)
+        } else {
+            None
+        };
+        (read_load(table.table("load")), travel, points)
+    };
     let rarer = read_rarer(table);
     let time = table.table("time");
     let time = if time.is_present() {
@@ -48,7 +65,7 @@ pub(super) fn read_export(table: Table<'_>) -> Option<(Dialect, Means)> {
         travel,
         time,
         spring: spring?,
-        rarer: rarer?,
+        rarer: Rarer { points, ..rarer? },
     };
     check_lines(table, &dialect)?;
     Some((dialect, means))
@@ -140,7 +157,8 @@ fn check_lines(table: Table<'_>, dialect: &Dialect) -> Option<()> {
         );
         return None;
     }
-    if dialect.load.column == dialect.travel.column {
+    let wide = !dialect.rarer.length_columns().is_empty();
+    if !wide && dialect.load.column == dialect.travel.column {
         table.fault(
             &table.place("load"),
             "load and travel name the same column",
@@ -151,14 +169,18 @@ fn check_lines(table: Table<'_>, dialect: &Dialect) -> Option<()> {
     Some(())
 }
 
-fn column(table: Table<'_>) -> Option<String> {
+pub(super) fn column(table: Table<'_>) -> Option<String> {
     if !table.has("column") {
         table.missing("column", "write column = \"…\" as it stands in the export");
     }
     table.raw_text("column").map(|column| column.value)
 }
 
-fn unit<T: Copy>(table: Table<'_>, parse: fn(&str) -> Option<T>, known: &str) -> Option<T> {
+pub(super) fn unit<T: Copy>(
+    table: Table<'_>,
+    parse: fn(&str) -> Option<T>,
+    known: &str,
+) -> Option<T> {
     if !table.has("unit") {
         table.missing("unit", format!("write unit = one of {known}"));
     }
@@ -185,7 +207,7 @@ fn read_load(table: Table<'_>) -> Option<LoadColumn> {
     })
 }
 
-fn read_pushing(table: Table<'_>) -> Option<Pushing> {
+pub(super) fn read_pushing(table: Table<'_>) -> Option<Pushing> {
     let words = [
         ("positive", Pushing::Positive),
         ("negative", Pushing::Negative),

@@ -78,6 +78,7 @@ pub(super) fn read_rarer(table: Table<'_>) -> Option<Rarer> {
             "sheet",
             "write sheet = \"…\", the name on the sheet's tab",
         )?,
+        points: None,
     })
 }
 

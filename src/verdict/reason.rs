@@ -79,6 +79,12 @@ pub enum Reason {
     ZeroShifted,
     /// Two strokes of the same travel differ in rate as no spring does from one stroke to the next.
     StrokesDiffer,
+    /// It needs a curve, and the bench read loads at a few lengths.
+    PointReadings,
+    /// No load was read at this length.
+    LengthNotRead,
+    /// Fewer than two loads were read within the window of the rate.
+    WindowNotRead,
 }
 
 impl From<&Absence> for Reason {
@@ -104,6 +110,9 @@ impl From<&Absence> for Reason {
             Absence::RowsMissing => Self::RowsMissing,
             Absence::ZeroShifted => Self::ZeroShifted,
             Absence::StrokesDiffer => Self::StrokesDiffer,
+            Absence::PointReadings => Self::PointReadings,
+            Absence::LengthNotRead => Self::LengthNotRead,
+            Absence::WindowNotRead => Self::WindowNotRead,
         }
     }
 }

@@ -1,9 +1,9 @@
 //! Words for what page one must say besides the decision.
 
-use super::{characteristic, count, list, sentence, springs};
+use super::{characteristic, count, length, list, sentence, springs};
 use crate::quantity::{Quantity, Unit};
 use crate::record::{Caution, Oddity};
-use crate::units::System;
+use crate::units::{Millimetres, System};
 use crate::wording::{Place, number, percent, with_unit};
 
 /// The cautions every report carries.
@@ -35,6 +35,7 @@ pub(crate) fn caution(of: &Caution, show_in: System) -> String {
         | Caution::FrameBeyondTable { .. }
         | Caution::OddRatio { .. }
         | Caution::OddCurves { .. }
+        | Caution::PointReadings { .. }
         | Caution::LengthsShifted { .. } => about_the_curves(of, show_in),
         Caution::ComplianceNotCorrected
         | Caution::DeclaredNegligible { .. }
@@ -133,6 +134,28 @@ pub(crate) fn odd(what: Oddity) -> &'static str {
     }
 }
 
+/// Loads at a few lengths, and which of them the rate is drawn from.
+fn few_lengths(
+    names: &[String],
+    between: Option<(Millimetres, Millimetres)>,
+    show_in: System,
+) -> String {
+    let rate = match between {
+        Some((from, to)) => format!(
+            "the rate is drawn from the loads at {} and {}",
+            length(Some(from), show_in),
+            length(Some(to), show_in)
+        ),
+        None => {
+            "two of them within the window of the rate are missing, so there is no rate".to_owned()
+        }
+    };
+    format!(
+        "Loads at a few lengths, no curve: {rate}; straightness, hysteresis, scatter and a bend in between are not known: {}.",
+        springs(names)
+    )
+}
+
 fn about_the_curves(of: &Caution, show_in: System) -> String {
     let verb = |names: &[String], one: &str, more: &str| {
         if names.len() == 1 {
@@ -154,6 +177,11 @@ fn about_the_curves(of: &Caution, show_in: System) -> String {
                 "; {text} would give such a ratio"
             ))
         ),
+        Caution::PointReadings {
+            springs: names,
+            from_mm,
+            to_mm,
+        } => few_lengths(names, from_mm.zip(*to_mm), show_in),
         Caution::LoadOutsideRange { springs: names } => {
             format!(
                 "Loads outside the usable range of the force scale: {}.",

@@ -72,6 +72,9 @@ pub(crate) fn absence(of: &Reason, show_in: System) -> String {
         Reason::LoadCellAtItsEnd => "the load cell was at its end before the curve came there".to_owned(),
         Reason::LoadSteps => "the load steps, or the travel leaps back, on its stroke or before it".to_owned(),
         Reason::StrokesDiffer => "two strokes of the same travel differ in rate as no spring does; are they of two springs?".to_owned(),
+        Reason::PointReadings => "it needs a curve, and loads were read at a few lengths only".to_owned(),
+        Reason::LengthNotRead => "no load was read at this length, and none is interpolated".to_owned(),
+        Reason::WindowNotRead => "fewer than two loads were read within the window of the rate".to_owned(),
         Reason::ZeroShifted => "the empty platens show another load on its stroke than before the first contact".to_owned(),
         Reason::RowsMissing => "rows are missing where it is taken from".to_owned(),
     }

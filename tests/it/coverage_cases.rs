@@ -234,6 +234,7 @@ pub(crate) fn draw(case: &Case, random: &mut Random) -> (Specimen, RawCurve, f64
         first_line: 2,
         load: Vec::new(),
         travel: Vec::new(),
+        beside: Vec::new(),
         time: None,
     };
     run(&warm, &bench, &programme, random, |reading| {

@@ -77,6 +77,7 @@ mod plan_published;
 mod plan_switching;
 mod plan_terms;
 mod plan_variables;
+mod points;
 mod prints;
 mod process_coverage;
 mod published;

@@ -7,7 +7,7 @@ use crate::quantity::Quantity;
 use crate::record::{BudgetFigure, Caution, CharacteristicResult, Oddity, Reason};
 use crate::rig::Rig;
 use crate::stats::median;
-use crate::units::Finite;
+use crate::units::{Finite, Millimetres};
 
 use super::super::facts::figure;
 use super::super::odd::{KINDS, oddity};
@@ -15,7 +15,7 @@ use super::alike::alike;
 use super::drawing_cautions::of_drawing;
 use super::figures::value_of;
 use super::rig_cautions::{beyond_table, large_compliance, of_check, of_rig};
-use super::springs::Judged;
+use super::springs::{Basis, Judged};
 use super::{Files, Options, guards};
 
 /// U over the half tolerance beyond which a requirement carries a caution: a third under the guarded rule, a quarter
@@ -50,6 +50,7 @@ pub(super) fn cautions(
     found.extend(of_check(&files.rig, options));
     found.extend(large_compliance(&files.rig, nominal_rate(&files.drawing)));
     found.extend(of_curves(&files.rig, full_load(&files.drawing), judged));
+    found.extend(of_points(judged));
     found.extend(of_measurements(files, judged));
     let beyond = judged
         .iter()
@@ -200,6 +201,28 @@ fn of_curves(rig: &Rig, full_load: f64, judged: &[Judged]) -> Vec<Caution> {
         })
     }))
     .collect()
+}
+
+/// Springs of which only loads at a few lengths are known, by the two that their rates are drawn from.
+fn of_points(judged: &[Judged]) -> Vec<Caution> {
+    let mut seen: Vec<Basis> = Vec::new();
+    for spring in judged {
+        if !seen.contains(&spring.basis) {
+            seen.push(spring.basis);
+        }
+    }
+    let length = |value: f64| Millimetres::try_from(value).ok();
+    let told = |basis: Basis| {
+        let Basis::Readings(between) = basis else {
+            return None;
+        };
+        Some(Caution::PointReadings {
+            springs: ids(judged.iter().filter(|spring| spring.basis == basis)),
+            from_mm: between.and_then(|(from, _)| length(from)),
+            to_mm: between.and_then(|(_, to)| length(to)),
+        })
+    };
+    seen.into_iter().filter_map(told).collect()
 }
 
 /// Robust and fitted rate differ by more than 0.5 % and more than three standard uncertainties of the fit.

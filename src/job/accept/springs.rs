@@ -34,6 +34,17 @@ pub(super) struct Judged {
     pub(super) short_strokes: bool,
     /// Whether gauge and bench disagree.
     pub(super) gauge_differs: bool,
+    /// What its figures rest on.
+    pub(super) basis: Basis,
+}
+
+/// What a spring's figures rest on.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub(super) enum Basis {
+    /// A curve.
+    Curve,
+    /// Loads at a few lengths, and the two that the rate is drawn from, longer first, mm; `None` without a rate.
+    Readings(Option<(f64, f64)>),
 }
 
 /// Why statistics failed on a spring.
@@ -149,6 +160,12 @@ fn with_readings(overall: Overall, result: SpringResult, mut readings: Vec<Readi
         zero_read: !zero_missing,
         short_strokes,
         gauge_differs,
+        basis: last
+            .as_ref()
+            .filter(|reading| reading.is_points())
+            .map_or(Basis::Curve, |reading| {
+                Basis::Readings(reading.measurement.read_between)
+            }),
         loads: loads.unwrap_or((0.0, 0.0)),
         reduced: last
             .and_then(|reading| reading.reduced)
