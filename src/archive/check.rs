@@ -42,7 +42,13 @@ impl Archive {
     /// [`ArchiveError::Read`] where a folder cannot be listed.
     pub fn stored_runs(&self) -> Result<StoredRuns, ArchiveError> {
         let (lots, rigs) = (self.root().join("springs"), self.root().join("checks"));
-        let mut stored = StoredRuns::default();
+        let records = self.root().join("records");
+        let mut gone = self.gone(&walk::runs(&records, "json", None)?.runs, "springs");
+        gone.extend(self.gone(&walk::checks(&records, "json")?.runs, "checks"));
+        let mut stored = StoredRuns {
+            runs: Vec::new(),
+            unreadable: gone.into_iter().map(Unreadable::from).collect(),
+        };
         for (tree, root, files) in [
             ("springs", &lots, walk::runs(&lots, "parquet", None)?),
             ("checks", &rigs, walk::checks(&rigs, "parquet")?),

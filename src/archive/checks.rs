@@ -74,6 +74,10 @@ impl Archive {
     /// # Errors
     /// [`ArchiveError`] where one cannot be read: a check that is passed over may be the one that failed.
     pub fn checks(&self) -> Result<Vec<KeptCheck>, ArchiveError> {
+        let records = walk::checks(&self.root().join("records"), "json")?;
+        if let Some(fault) = self.gone(&records.runs, "checks").pop() {
+            return Err(fault);
+        }
         let files = walk::checks(&self.root().join("checks"), "parquet")?;
         let read: Result<Vec<KeptCheck>, _> =
             files.runs.par_iter().map(|path| self.check(path)).collect();

@@ -25,6 +25,7 @@ mod error;
 mod figures;
 mod frame;
 mod key;
+mod orphans;
 mod past;
 mod place;
 mod read;

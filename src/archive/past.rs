@@ -2,8 +2,6 @@
 
 use std::collections::HashMap;
 
-use jiff::civil::Date;
-
 use super::error::ArchiveError;
 use super::place::Archive;
 use super::read::LotRun;
@@ -11,7 +9,9 @@ use crate::record::Decision;
 use crate::sampling::{Outcome, PastLot};
 
 impl Archive {
-    /// The lots of `drawing` from `supplier` decided up to `day`, but for `lot` itself, in the order of their decisions.
+    /// The lots of `drawing` from `supplier` before `lot`, in the order of their decisions: all that are there, whatever the
+    /// date of this judgement, so that an early date escapes no history; for a lot that was judged before, those before its
+    /// first run, so that waiting changes nothing.
     ///
     /// Of a lot judged several times the first decision other than undecided counts: that of a lot brought back after sorting
     /// does not (ISO 2859-1, original inspection).
@@ -23,18 +23,18 @@ impl Archive {
         drawing: &str,
         supplier: Option<&str>,
         lot: &str,
-        day: Date,
     ) -> Result<Vec<PastLot>, ArchiveError> {
         let mut found = self.runs(Some(drawing))?;
         if let Some(fault) = found.broken.pop() {
             return Err(fault);
         }
+        let order = |run: &LotRun| (run.head.date, run.run.judged_at.clone());
         found.runs.retain(|run| {
-            let head = &run.head;
-            (head.drawing.as_str(), head.supplier.as_deref()) == (drawing, supplier)
-                && head.lot != lot
-                && head.date <= day
+            (run.head.drawing.as_str(), run.head.supplier.as_deref()) == (drawing, supplier)
         });
+        let own = found.runs.iter().filter(|run| run.head.lot == lot);
+        let begun = own.min_by_key(|run| run.run.number).map(order);
+        found.runs.retain(|run| run.head.lot != lot);
         let mut counting: Vec<LotRun> = Vec::new();
         let mut places: HashMap<String, usize> = HashMap::new();
         for run in found.runs {
@@ -45,8 +45,8 @@ impl Archive {
                 Some(_) => {}
             }
         }
-        counting
-            .sort_by(|a, b| (a.head.date, &a.run.judged_at).cmp(&(b.head.date, &b.run.judged_at)));
+        counting.retain(|run| begun.as_ref().is_none_or(|begun| order(run) < *begun));
+        counting.sort_by_key(order);
         Ok(counting.iter().map(past).collect())
     }
 }

@@ -121,6 +121,7 @@ impl Archive {
                 .and_then(|changed| now.duration_since(changed).ok());
             if age.is_some_and(|age| age > STALE) {
                 let path = entry.path();
+                self.take_out(Path::new(&entry.file_name()));
                 // Another process may remove it at the same time; what cannot be removed harms nobody.
                 let _ = fs::remove_dir_all(&path).or_else(|_| fs::remove_file(&path));
             }

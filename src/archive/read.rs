@@ -153,6 +153,7 @@ impl Archive {
     /// # Errors
     /// [`ArchiveError::Read`] where a folder cannot be listed.
     pub fn runs(&self, drawing: Option<&str>) -> Result<Found, ArchiveError> {
+        let records = walk::runs(&self.root().join("records"), "json", drawing)?;
         let files = walk::runs(&self.root().join("springs"), "parquet", drawing)?;
         let read: Vec<_> = files
             .runs
@@ -161,7 +162,7 @@ impl Archive {
             .collect();
         let mut found = Found {
             runs: Vec::with_capacity(read.len()),
-            broken: Vec::new(),
+            broken: self.gone(&records.runs, "springs"),
             foreign: files.foreign,
         };
         for one in read {

@@ -43,12 +43,7 @@ impl Options {
             let terms = drawing.acceptance.as_ref().map(|terms| &terms.plan);
             let by_attributes = matches!(terms, Some(PlanTerms::Attributes { .. }));
             let past_lots = if by_attributes {
-                archive.past_lots(
-                    &drawing.number,
-                    lot.supplier.as_deref(),
-                    &lot.number,
-                    self.date,
-                )?
+                archive.past_lots(&drawing.number, lot.supplier.as_deref(), &lot.number)?
             } else {
                 Vec::new()
             };

@@ -274,6 +274,12 @@ fn the_state_of_inspection_follows_from_the_archive() {
     );
     let told = &fourth["provenance"]["archive"]["past_lots"];
     assert_eq!(told.as_array().unwrap().len(), 3);
+    // An early date escapes no history, and a lot judged again has the state of its first inspection.
+    let early = lot(&case, "5", "2026-10-01", true);
+    assert_eq!(state(&early).0, "tightened");
+    assert_eq!(state(&lot(&case, "1", "2026-11-20", true)).0, "normal");
+    let later = lot(&case, "4", "2026-11-21", true);
+    assert_eq!(state(&later).1, "two_of_five");
     // Another supplier's lots say nothing about this one's.
     case.sub("lot.toml", "Marshlight Coil", "Another coil maker");
     assert_eq!(state(&lot(&case, "9", "2026-11-06", true)).0, "normal");

@@ -211,3 +211,37 @@ fn a_damaged_table_of_another_engine_is_a_fault() {
         );
     }
 }
+
+/// A rejected lot must not vanish from a history in silence.
+#[test]
+fn a_run_whose_springs_file_was_taken_away_is_named() {
+    let case = two_lots();
+    let file = files(&root(&case), "springs").remove(0);
+    fs::remove_file(&file).unwrap();
+    for words in [["lots", "archive"], ["recheck", "archive"]] {
+        let ran = tool(&case, &words);
+        assert_eq!(ran.code, Some(2), "{words:?}");
+        assert!(
+            ran.err.contains("its record is there and this file is not"),
+            "{}",
+            ran.err
+        );
+    }
+    case.sub("lot.toml", "number = \"0426\"", "number = \"0427\"");
+    let ran = keep(&case);
+    assert_eq!((ran.code, ran.out.len()), (Some(2), 0));
+    assert!(squeezed(&ran.err).contains("itsrecordisthereandthisfileisnot"));
+    // The staging folder of a run that was killed on its way says that it never was one.
+    let run = file.file_stem().unwrap();
+    let staging = root(&case).join("staging").join(run);
+    fs::create_dir(&staging).unwrap();
+    assert_eq!(tool(&case, &["lots", "archive"]).code, Some(0));
+    assert_eq!(keep(&case).code, Some(3));
+    // After a day what it had moved in goes with it.
+    let day = std::time::SystemTime::now() - std::time::Duration::from_hours(25);
+    fs::File::open(&staging).unwrap().set_modified(day).unwrap();
+    assert_eq!(keep(&case).code, Some(3));
+    let left: Vec<_> = files(&root(&case), "records");
+    assert!(!staging.exists() && left.iter().all(|path| path.file_stem() != Some(run)));
+    assert_eq!(tool(&case, &["lots", "archive"]).code, Some(0));
+}
