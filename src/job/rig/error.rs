@@ -23,6 +23,14 @@ pub(super) enum RigJobError {
     #[error(transparent)]
     #[diagnostic(transparent)]
     Text(#[from] TextError),
+    #[error(
+        "`{export}` would be read as loads at a few lengths; the platens on each other are a recorded run"
+    )]
+    #[diagnostic(
+        code(coilassay::rig::plates_points),
+        help("leave `plates` out, or name a rig file without `points` for this run")
+    )]
+    PlatesAsPoints { export: String },
     #[error("{count} exports cannot be used")]
     #[diagnostic(code(coilassay::rig::exports))]
     Exports {

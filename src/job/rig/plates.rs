@@ -23,6 +23,11 @@ pub(super) fn measure(
     rig: &Rig,
     sources: &mut Sources,
 ) -> Result<Frame, RigJobError> {
+    if rig.dialect.rarer.points.is_some() {
+        return Err(RigJobError::PlatesAsPoints {
+            export: printable(&export.written, &Alphabet::Any),
+        });
+    }
     let mut curves: Vec<RawCurve> = Vec::new();
     let mut each = |more: Vec<RawCurve>| curves.extend(more);
     let read = crate::export::read(
