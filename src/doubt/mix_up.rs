@@ -28,6 +28,28 @@ const FACTORS: [(f64, &str); 11] = [
     (-1.0, "a sign is turned"),
 ];
 
+/// What a factor between measured and drawn lengths means.
+const LENGTH_FACTORS: [(f64, &str); 2] = [
+    (25.4, "millimetres were written under inches"),
+    (0.03937, "inches were written under millimetres"),
+];
+
+/// The ratio that at least 80 % of `values` share with a mistake of units about `nominal`, and what it means; both in mm.
+pub fn lengths(values: &[f64], nominal: f64) -> Option<(f64, &'static str)> {
+    let near = |factor: f64| {
+        values
+            .iter()
+            .filter(|value| (*value / nominal / factor - 1.0).abs() <= NEAR)
+            .count()
+    };
+    let shared = |factor: f64| near(factor) as f64 >= SHARED * values.len() as f64;
+    let (factor, finding) = LENGTH_FACTORS
+        .into_iter()
+        .find(|(factor, _)| !values.is_empty() && shared(*factor))?;
+    let ratios: Vec<f64> = values.iter().map(|value| value / nominal).collect();
+    Some((median(ratios).unwrap_or(factor), finding))
+}
+
 /// What a lot's rates say of its units.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Doubt {

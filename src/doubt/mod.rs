@@ -4,5 +4,5 @@
 mod mix_up;
 mod reading;
 
-pub use mix_up::{Doubt, DoubtError, doubt};
+pub use mix_up::{Doubt, DoubtError, doubt, lengths};
 pub use reading::{is_odd, reading};

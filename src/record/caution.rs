@@ -176,6 +176,8 @@ pub enum Caution {
 pub enum Oddity {
     /// Strokes much shorter than the others were left out: a jog, or a stroke cut off.
     StrokesLeftOut,
+    /// The recording holds fewer or more loading strokes than those of most springs.
+    OtherStrokeCount,
     /// The rate differs from stroke to stroke by more than 1 %.
     StrokesDiffer,
     /// Loads scatter about the fitted line by more than 0.5 % of Fn.

@@ -121,6 +121,9 @@ pub(crate) fn odd(what: Oddity) -> &'static str {
         Oddity::StrokesLeftOut => {
             "strokes much shorter than the others were left out; was the recording cut off?"
         }
+        Oddity::OtherStrokeCount => {
+            "another number of loading strokes than most springs have, so another stroke may be judged; was the recording cut off?"
+        }
         Oddity::StrokesDiffer => "the rate differs from stroke to stroke by more than 1 %",
         Oddity::Scatter => {
             "the loads scatter about the fitted line by more than 0.5 % of Fn; are strokes mixed?"

@@ -26,6 +26,7 @@ const fn word(what: Oddity) -> &'static str {
         Oddity::TravelCoarse => "travel in coarser steps than stated",
         Oddity::UnevenSampling => "unevenly sampled",
         Oddity::StrokesLeftOut => "short strokes left out",
+        Oddity::OtherStrokeCount => "another number of strokes",
         Oddity::StrokesDiffer => "strokes differ",
         Oddity::Scatter => "loads scatter",
         Oddity::GaugeDiffers => "gauge and bench differ",

@@ -2,7 +2,7 @@
 
 use std::fmt::Write;
 
-use crate::bad_input::{Case, not_silent};
+use crate::bad_input::{Case, not_silent, squeezed};
 
 fn refused(what: &str, case: &Case) {
     let ran = case.run(&[]);
@@ -195,4 +195,41 @@ fn repeats_that_contradict_each_other_are_named() {
         named || seven["verdict"] == "undecided",
         "91 N and 82 N averaged to a conforming 86 N"
     );
+}
+
+/// Every gauge value 25.4 times where the drawing has it: no spring is rejected on that.
+#[test]
+fn findings_under_the_wrong_unit_are_not_judged() {
+    let case = Case::of("accepted");
+    case.sub("caliper.csv", ",mm", ",in");
+    let ran = case.run(&[]);
+    assert_eq!((ran.code, ran.out.len()), (Some(2), 0), "{}", ran.err);
+    assert!(
+        squeezed(&ran.err).contains("millimetreswerewrittenunderinches"),
+        "{}",
+        ran.err
+    );
+}
+
+/// One recording cut off where a stroke turns: whole strokes are left, and another one is the last.
+#[test]
+fn a_spring_of_fewer_strokes_than_the_others_is_named() {
+    let case = Case::of("accepted");
+    let (_, whole) = case.judged(&[]);
+    assert!(!whole["cautions"].to_string().contains("other_stroke_count"));
+    let lines: Vec<String> = case
+        .text("springs/TG-01.csv")
+        .lines()
+        .take(294)
+        .map(|line| format!("{line}\n"))
+        .collect();
+    case.set("springs/TG-01.csv", lines.concat());
+    let (_, result) = case.judged(&[]);
+    let strokes = |spring: usize| result["springs"][spring]["loading_strokes"].as_u64();
+    assert!(strokes(0) < strokes(1));
+    let cautions = result["cautions"].as_array().unwrap();
+    let named = cautions
+        .iter()
+        .find(|one| one["what"] == "other_stroke_count");
+    assert_eq!(named.unwrap()["springs"], serde_json::json!(["TG-01"]));
 }

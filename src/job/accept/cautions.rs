@@ -1,5 +1,7 @@
 //! What page one must say besides the decision.
 
+use std::collections::BTreeMap;
+
 use crate::curve::{full_load, nominal_rate};
 use crate::doubt::{is_odd, reading};
 use crate::drawing::{Drawing, Requirement, Rule};
@@ -152,6 +154,7 @@ fn of_requirement(requirement: &Requirement, rule: Rule, judged: &[Judged]) -> O
 }
 
 fn of_curves(rig: &Rig, full_load: f64, judged: &[Judged]) -> Vec<Caution> {
+    let usual = usual_strokes(judged);
     let named = |of: &dyn Fn(&Judged) -> bool| {
         let springs = ids(judged.iter().filter(|spring| of(spring)));
         if springs.is_empty() {
@@ -186,6 +189,9 @@ fn of_curves(rig: &Rig, full_load: f64, judged: &[Judged]) -> Vec<Caution> {
         named(&robust_differs).map(|springs| Caution::RobustDiffers { springs }),
         named(&bends).map(|springs| Caution::LackOfFit { springs }),
         odd(Oddity::StrokesLeftOut, &|spring| spring.short_strokes),
+        odd(Oddity::OtherStrokeCount, &|spring| {
+            spring.result.loading_strokes != usual
+        }),
         odd(Oddity::StrokesDiffer, &strokes_differ),
         odd(Oddity::Scatter, &|spring| scatters(spring, full_load)),
         odd(Oddity::GaugeDiffers, &|spring| spring.gauge_differs),
@@ -201,6 +207,18 @@ fn of_curves(rig: &Rig, full_load: f64, judged: &[Judged]) -> Vec<Caution> {
         })
     }))
     .collect()
+}
+
+/// The number of loading strokes that most springs have; of two such the larger.
+fn usual_strokes(judged: &[Judged]) -> u32 {
+    let mut counts: BTreeMap<u32, usize> = BTreeMap::new();
+    for spring in judged {
+        *counts.entry(spring.result.loading_strokes).or_default() += 1;
+    }
+    let most = counts
+        .into_iter()
+        .max_by_key(|(strokes, springs)| (*springs, *strokes));
+    most.map_or(0, |(strokes, _)| strokes)
 }
 
 /// Springs of which only loads at a few lengths are known, by the two that their rates are drawn from.

@@ -143,6 +143,20 @@ pub(super) enum AcceptError {
         help("write ids as the exports do; springs here: {known}")
     )]
     UnknownFinding { spring: String, known: String },
+    #[error(
+        "the caliper findings of {column} lie {ratio:.3} times where the drawing has them: {finding}"
+    )]
+    #[diagnostic(
+        code(coilassay::accept::finding_units),
+        help(
+            "check the units in the second line of the findings, and `units` at the top of the drawing"
+        )
+    )]
+    FindingUnits {
+        column: &'static str,
+        ratio: f64,
+        finding: &'static str,
+    },
     #[error("nothing that the drawing requires was inspected")]
     #[diagnostic(
         code(coilassay::accept::nothing),

@@ -2,8 +2,10 @@
 
 use std::path::Path;
 
+use crate::doubt::lengths;
 use crate::drawing::{self, Drawing, Requirement};
 use crate::intake::{self, Caliper, Lot, read_findings};
+use crate::quantity::Quantity;
 use crate::rig::{self, Rig};
 use crate::text::{Fault, Faults, Place};
 
@@ -85,14 +87,40 @@ fn check_requirements(lot: &Lot, drawing: &Drawing) -> miette::Result<()> {
     Ok(())
 }
 
-/// Every row of the caliper findings must belong to a spring.
-pub(super) fn check_findings(caliper: &Caliper, springs: &[Spring]) -> Result<(), AcceptError> {
+/// Every row of the caliper findings must belong to a spring, and no column may lie off the drawing by what only a mistake of
+/// units explains.
+pub(super) fn check_findings(files: &Files, springs: &[Spring]) -> Result<(), AcceptError> {
+    let caliper = &files.caliper;
     let known = |id: &String| springs.iter().any(|spring| spring.id == group::printed(id));
-    match caliper.springs.keys().find(|id| !known(id)) {
-        Some(id) => Err(AcceptError::UnknownFinding {
+    if let Some(id) = caliper.springs.keys().find(|id| !known(id)) {
+        return Err(AcceptError::UnknownFinding {
             spring: group::printed(id),
             known: group::known(springs),
-        }),
-        None => Ok(()),
+        });
     }
+    let by_caliper = files
+        .drawing
+        .requirements
+        .iter()
+        .filter(|one| one.quantity.by_caliper() || one.quantity == Quantity::FreeLength);
+    for requirement in by_caliper {
+        let quantity = requirement.quantity;
+        let found = caliper.springs.values().flatten();
+        let values: Vec<f64> = found
+            .filter(|(of, _)| *of == quantity)
+            .map(|(_, value)| *value)
+            .collect();
+        let doubt = requirement
+            .limits
+            .nominal
+            .and_then(|nominal| lengths(&values, nominal));
+        if let Some((ratio, finding)) = doubt {
+            return Err(AcceptError::FindingUnits {
+                column: quantity.name(),
+                ratio,
+                finding,
+            });
+        }
+    }
+    Ok(())
 }

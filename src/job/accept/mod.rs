@@ -113,7 +113,7 @@ pub fn accept(path: &Path, as_written: &str, options: &Options) -> miette::Resul
         .map_err(|fault| AcceptError::Measure(Box::new(fault)))?;
     let by_column = matches!(files.rig.dialect.spring, SpringFrom::Column(_));
     let springs = group::springs(&files.lot, readings, by_column)?;
-    files::check_findings(&files.caliper, &springs)?;
+    files::check_findings(&files, &springs)?;
     judge(&files, springs, sources, finding, options)
 }
 
